@@ -1,0 +1,4 @@
+// Command stillroom plans preparative chemistry runs against the shelf.
+package main
+
+func main() {}
