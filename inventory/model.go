@@ -37,6 +37,9 @@ type StockForm struct {
 	ID          int64 `gorm:"primaryKey"`
 	SubstanceID int64
 	Name        string // "sodium dichromate dihydrate 99.5 %"
+	// CAS is the registry number of the form as stored where it has one of its
+	// own, as a hydrate does; "" where the substance's holds.
+	CAS string
 	// HydrateWaters is the water of hydration in moles per mole; 0 for anhydrous.
 	HydrateWaters float64
 	// AssayLow and AssayHigh bound the mass fraction of the form as named (the
@@ -166,6 +169,9 @@ type Offer struct {
 	LeadDays      int    // working habit: median days from order to shelf
 	LeadDays90    int    // nine orders in ten have come by then
 	ShelfLifeDays int    // on arrival; 0 for no limit known
+	MinOrder      int64  // least value of an order at this supplier, minor units; 0 for none
+	// Breaks are the prices a pack from a number of packs on, rising by number.
+	Breaks PriceBreaks
 }
 
 // Order is an offer that was ordered and has not been put on the shelf yet.
