@@ -220,6 +220,8 @@ type Content struct {
 type Carrier struct {
 	N       int
 	Bottles []string // codes in walking order
+	Mass    chem.Mass
+	Note    string // such as that a bottle is over the weight by itself
 }
 
 // Purchase is a pack to buy against a shortfall.
