@@ -1,5 +1,7 @@
 package planner
 
+import "stillroom/chem"
+
 // Recipe is a written procedure, read from a YAML file. ParseRecipe makes it;
 // it is never changed afterwards.
 type Recipe struct {
@@ -17,4 +19,10 @@ type Recipe struct {
 	Limiting string
 	// Sources are publications and remarks the recipe rests on.
 	Sources []string
+	// Yield is the isolated yield as a distribution.
+	Yield Yield
+	// ProvenScale is the largest amount of limiting reagent run so far, in
+	// ProvenRuns runs; 0 if nothing is proven.
+	ProvenScale chem.Amount
+	ProvenRuns  int
 }
