@@ -1,0 +1,171 @@
+package chem
+
+import (
+	"fmt"
+	"slices"
+	"strings"
+)
+
+// supplements adds the supplemental statements that ingredients bring along
+// (CLP Annex II): from their specific limit or, without one, from 1 % on; and
+// EUH208 for sensitisers below their limit (Annex I Table 3.4.6).
+func (m *mixture) supplements() {
+	for _, p := range m.parts {
+		for _, code := range p.Hazard.EUH {
+			if low, found := lowest(p.limits, func(l specificLimit) bool { return l.Code == code }); found && !atLeast(p.limited, low) {
+				continue
+			} else if !found && !atLeast(p.percent, 1) {
+				continue
+			}
+			m.supplement(StatementLine(code))
+		}
+		m.elicitation(p)
+	}
+}
+
+func (m *mixture) supplement(line string) {
+	if !slices.Contains(m.euh, line) {
+		m.euh = append(m.euh, line)
+	}
+}
+
+func (m *mixture) elicitation(p mixPart) {
+	for _, name := range []string{"Skin Sens.", "Resp. Sens."} {
+		c, ok := p.class(name)
+		if !ok || m.has(name, "") {
+			continue
+		}
+		limit := ruleLimit("SE-013")
+		if c.Category == "1A" {
+			limit = ruleLimit("SE-014")
+		}
+		if low, found := lowest(p.limitsOf(name), func(specificLimit) bool { return true }); found {
+			limit = min(limit, low/10) // SE-015: a tenth of the specific limit
+		}
+		if atLeast(p.percent, limit) {
+			m.supplement("EUH208 Contains " + p.Name + ". May produce an allergic reaction")
+		}
+	}
+}
+
+// physical lists the physical hazards of the ingredients from 1 % on.
+func (m *mixture) physical() {
+	var classes []HazardClass
+	var from []string
+	for _, p := range m.parts {
+		if !atLeast(p.percent, 1) {
+			continue
+		}
+		for _, c := range p.classes {
+			if classRank(c.Name) < classRank("Acute Tox.") && !slices.Contains(classes, c) {
+				classes = append(classes, c)
+				from = append(from, p.Name)
+			}
+		}
+	}
+	if len(classes) == 0 {
+		m.note("physical hazards of the mixture not determined; its ingredients from 1 %% on have none on record")
+		return
+	}
+	var words []string
+	for i, c := range classes {
+		words = append(words, fmt.Sprintf("%s (%s)", c, from[i]))
+	}
+	m.note("physical hazards not determined, a flash point or other test is needed; treat as the worst ingredient: %s", strings.Join(words, ", "))
+	sortClasses(classes)
+	for _, c := range classes {
+		m.out.Physical = append(m.out.Physical, c.String())
+	}
+}
+
+func (m *mixture) label() {
+	sortClasses(m.classes)
+	for _, c := range m.classes {
+		m.out.Classes = append(m.out.Classes, c.String())
+	}
+	label := LabelOf(m.classes)
+	m.out.Signal, m.out.Pictograms, m.out.P = label.Signal, label.Pictograms, label.P
+	m.out.Statements = append(label.Statements, m.euh...)
+}
+
+// Label is what stands on a label for a set of classes.
+type Label struct {
+	Signal     string
+	Pictograms []string
+	Statements []string // codes with words
+	P          []string // codes
+}
+
+// LabelOf puts the label elements of classes together by the standard's rules
+// of precedence (CLP Art. 20, 26 and 27): one signal word, pictograms that a
+// graver one covers left out, statements that another covers left out.
+func LabelOf(classes []HazardClass) Label {
+	var l Label
+	for _, c := range classes {
+		e, _ := LabelElementsOf(c)
+		if e.Signal == "Danger" || l.Signal == "" {
+			l.Signal = e.Signal
+		}
+		l.P = appendNew(l.P, e.P...)
+		if !covered(c, classes) {
+			l.Statements = appendNew(l.Statements, StatementLine(c.Code))
+		}
+	}
+	l.Pictograms = pictogramsOf(classes)
+	return l
+}
+
+func appendNew(list []string, items ...string) []string {
+	for _, item := range items {
+		if !slices.Contains(list, item) {
+			list = append(list, item)
+		}
+	}
+	return list
+}
+
+// covered reports a statement that another one says already: H314 covers H318,
+// H410 covers H400 (rules LB-007 to LB-009).
+func covered(c HazardClass, classes []HazardClass) bool {
+	over := map[string][]string{"H318": {"H314"}, "H400": {"H410"}, "H401": {"H410", "H411"}}[c.Code]
+	return slices.ContainsFunc(classes, func(other HazardClass) bool { return slices.Contains(over, other.Code) })
+}
+
+// pictogramsOf applies rules LB-003 to LB-005: GHS07 stays only if a class asks
+// for it that no graver pictogram covers. Pictograms that the standard makes
+// optional (LB-001, LB-002) stay.
+func pictogramsOf(classes []HazardClass) []string {
+	shown := map[string]bool{}
+	for _, c := range classes {
+		e, _ := LabelElementsOf(c)
+		for _, p := range e.Pictograms {
+			shown[p] = true
+		}
+	}
+	if shown["GHS07"] {
+		shown["GHS07"] = slices.ContainsFunc(classes, func(c HazardClass) bool { return keepsExclamation(c, classes, shown) })
+	}
+	var list []string
+	for n := 1; n <= 9; n++ {
+		if code := fmt.Sprintf("GHS%02d", n); shown[code] {
+			list = append(list, code)
+		}
+	}
+	return list
+}
+
+func keepsExclamation(c HazardClass, classes []HazardClass, shown map[string]bool) bool {
+	e, _ := LabelElementsOf(c)
+	if !slices.Contains(e.Pictograms, "GHS07") || shown["GHS06"] {
+		return false
+	}
+	irritant := c.Name == "Skin Irrit." || c.Name == "Eye Irrit."
+	respiratory := slices.ContainsFunc(classes, func(o HazardClass) bool { return o.Name == "Resp. Sens." })
+	switch {
+	case irritant && shown["GHS05"]:
+		return false
+	case respiratory && (irritant || c.Name == "Skin Sens."):
+		return false
+	}
+	return true
+}
