@@ -1,0 +1,64 @@
+package chem
+
+import (
+	"fmt"
+	"slices"
+	"strings"
+	"sync"
+)
+
+// A DryingAgent is a solid that binds water out of an organic liquid.
+type DryingAgent struct {
+	Name, CAS, Formula, Hydrate string
+	// Theoretical is the capacity of the highest hydrate, Low and High the
+	// range met in practice, in gram water per gram agent; 0 means no data.
+	Theoretical, Low, High float64
+	// Residual is the water left in dried air in mg/L, the usual measure of
+	// intensity; HasResidual is false where there is no data.
+	Residual         float64
+	HasResidual      bool
+	Speed, Intensity string
+	Suitable         []string // classes the table recommends it for
+	Incompatible     []string // classes it must not meet
+	Notes, Source    string
+}
+
+var dryingAgents = sync.OnceValue(func() []DryingAgent {
+	var agents []DryingAgent
+	for _, row := range dataRows(phaseTables, "drying_agents.csv") {
+		agent := DryingAgent{
+			Name: row["agent"], CAS: row["cas"], Formula: row["formula"], Hydrate: row["hydrate_formed"],
+			Speed: row["speed"], Intensity: row["intensity"],
+			Suitable: row.list("suitable_for"), Incompatible: row.list("incompatible_with"),
+			Notes: row["notes"], Source: row["source"],
+		}
+		agent.Theoretical, _ = row.number("theoretical_capacity_g_water_per_g")
+		agent.Low, _ = row.number("practical_capacity_low_g_water_per_g")
+		agent.High, _ = row.number("practical_capacity_high_g_water_per_g")
+		agent.Residual, agent.HasResidual = row.number("residual_water_mg_per_L_air")
+		agents = append(agents, agent)
+	}
+	return agents
+})
+
+// DryingAgents returns all agents of the table in its order.
+func DryingAgents() []DryingAgent { return slices.Clone(dryingAgents()) }
+
+// DryingAgentOf finds an agent by name or CAS number. The name of a salt may
+// carry "anhydrous". The error wraps ErrNoData and lists the agents there are.
+func DryingAgentOf(nameOrCAS string) (DryingAgent, error) {
+	want := strings.ToLower(strings.TrimSpace(nameOrCAS))
+	want = strings.TrimSpace(strings.TrimSuffix(strings.TrimPrefix(want, "anhydrous "), ", anhydrous"))
+	var names []string
+	for _, agent := range dryingAgents() {
+		name := strings.ToLower(agent.Name)
+		if want == name || want == agent.CAS || (agent.Formula != "" && nameOrCAS == agent.Formula) {
+			return agent, nil
+		}
+		names = append(names, agent.Name)
+	}
+	return DryingAgent{}, &DataError{
+		Of: fmt.Sprintf("drying agent %q", nameOrCAS), Err: ErrNoData,
+		Limit: "there are " + strings.Join(names, ", "), Remedy: "name one of them or give its capacity in g water per g",
+	}
+}
