@@ -22,20 +22,20 @@ type Azeotrope struct {
 
 var azeotropes = sync.OnceValue(func() map[string]Azeotrope {
 	table := make(map[string]Azeotrope)
-	for _, row := range dataRows(phaseTables, "azeotropes.csv") {
-		if _, kept := table[row["cas_2"]]; kept {
+	for _, row := range readTable("azeotropes.csv") {
+		if _, kept := table[row.text("cas_2")]; kept {
 			continue // the first row of a pair is the better sourced one
 		}
 		a := Azeotrope{
-			Partner: row["component_2"], CAS: row["cas_2"], Forms: row["azeotrope"] == "yes",
+			Partner: row.text("component_2"), CAS: row.text("cas_2"), Forms: row.text("azeotrope") == "yes",
 			Pressure: Pressure(row.must("pressure_kPa")) * Kilopascal,
-			Source:   row["source"],
+			Source:   row.text("source"),
 		}
 		if a.Forms {
 			a.Temperature = Celsius(row.must("temperature_C"))
 			a.PartnerFraction = Fraction(row.must("component_2_w_w_percent")) * Percent
-			a.Heterogeneous = strings.HasPrefix(row["kind"], "heterogeneous")
-			a.MaximumBoiling = strings.Contains(row["kind"], "maximum boiling")
+			a.Heterogeneous = strings.HasPrefix(row.text("kind"), "heterogeneous")
+			a.MaximumBoiling = strings.Contains(row.text("kind"), "maximum boiling")
 		}
 		table[a.CAS] = a
 	}

@@ -6,7 +6,7 @@ import (
 )
 
 // Boiling returns the temperature at which the vapour pressure equals p. The
-// error wraps ErrOutsideRange where that lies outside the equation's range.
+// error wraps ErrOutOfRange where that lies outside the equation's range.
 func (e VapourEquation) Boiling(p Pressure) (Temperature, error) {
 	of := fmt.Sprintf("boiling point at %.4g kPa", p.Kilopascals())
 	if err := mustBePositive(of, "pressure", p); err != nil {
@@ -21,7 +21,7 @@ func (e VapourEquation) Boiling(p Pressure) (Temperature, error) {
 	highLn, _ := e.log(high)
 	const slack = 1e-9 // in ln p: the ends of the range belong to it
 	if !(want >= lowLn-slack && want <= highLn+slack) {
-		return 0, &DataError{Of: of, Err: ErrOutsideRange,
+		return 0, &DataError{Of: of, Err: ErrOutOfRange,
 			Limit:  fmt.Sprintf("%s, that is %.4g to %.4g kPa", e.Range(), math.Exp(lowLn)/1e3, math.Exp(highLn)/1e3),
 			Remedy: "give a pressure inside it or antoine=A;B;C"}
 	}
@@ -65,7 +65,7 @@ func (e *VapourEquation) solveBoiling(want float64, low, high Temperature) Tempe
 
 // BoilingPoint returns the boiling point of a pure liquid by CAS number at a
 // pressure, from the first equation that reaches there. The error wraps
-// ErrNoData or ErrOutsideRange.
+// ErrNoData or ErrOutOfRange.
 func BoilingPoint(cas string, p Pressure) (Temperature, error) {
 	of := fmt.Sprintf("boiling point of %s at %.4g kPa", nameOfCAS(cas), p.Kilopascals())
 	if err := mustBePositive(of, "pressure", p); err != nil {
@@ -97,7 +97,7 @@ const (
 func PressureAtAltitude(metres float64) (Pressure, error) {
 	if !(metres >= -2000 && metres <= 11000) {
 		return 0, &DataError{
-			Of: fmt.Sprintf("air pressure at %.0f m", metres), Err: ErrOutsideRange,
+			Of: fmt.Sprintf("air pressure at %.0f m", metres), Err: ErrOutOfRange,
 			Limit: "-2000 to 11000 m", Remedy: "give the height of the lab above the sea or the barometer's reading",
 		}
 	}

@@ -36,10 +36,10 @@ type CoDistillation struct {
 	Notes    []string
 }
 
-var diluteVolatilities = sync.OnceValue(func() map[string]dataRow {
-	table := make(map[string]dataRow)
-	for _, row := range dataRows(phaseTables, "relative_volatility.csv") {
-		table[row["cas"]] = row
+var diluteVolatilities = sync.OnceValue(func() map[string]row {
+	table := make(map[string]row)
+	for _, row := range readTable("relative_volatility.csv") {
+		table[row.text("cas")] = row
 	}
 	return table
 })
@@ -48,9 +48,9 @@ var diluteVolatilities = sync.OnceValue(func() map[string]dataRow {
 // from grams per 100 mL of solution, its density taken as that of water.
 var waterSolubilities = sync.OnceValue(func() map[string]Fraction {
 	table := make(map[string]Fraction)
-	for _, row := range dataRows(phaseTables, "substances.csv") {
+	for _, row := range readTable("substances.csv") {
 		if s, ok := row.number("water_solubility_g_100mL_25C"); ok {
-			table[row["cas"]] = Fraction(s) * Percent
+			table[row.text("cas")] = Fraction(s) * Percent
 		}
 	}
 	return table
@@ -93,7 +93,7 @@ func CoDistillate(c CoDistilling) (CoDistillation, error) {
 	}
 	d := CoDistillation{Alpha: alpha, Source: azeotrope.Source, Start: azeotrope.Temperature}
 	if row, ok := diluteVolatilities()[c.CAS]; ok && c.Alpha == 0 {
-		d.cite(row["source"])
+		d.cite(row.text("source"))
 	}
 	switch {
 	case known && azeotrope.Forms && azeotrope.Heterogeneous:
@@ -220,6 +220,3 @@ func (c CoDistilling) dissolved(of string, d CoDistillation, partner, water, lef
 	d.Water, d.PotWater = d.Layered+water-kept, kept
 	return d, nil
 }
-
-// waterCAS is the CAS number of water.
-const waterCAS = "7732-18-5"

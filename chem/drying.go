@@ -25,12 +25,12 @@ type DryingAgent struct {
 
 var dryingAgents = sync.OnceValue(func() []DryingAgent {
 	var agents []DryingAgent
-	for _, row := range dataRows(phaseTables, "drying_agents.csv") {
+	for _, row := range readTable("drying_agents.csv") {
 		agent := DryingAgent{
-			Name: row["agent"], CAS: row["cas"], Formula: row["formula"], Hydrate: row["hydrate_formed"],
-			Speed: row["speed"], Intensity: row["intensity"],
+			Name: row.text("agent"), CAS: row.text("cas"), Formula: row.text("formula"), Hydrate: row.text("hydrate_formed"),
+			Speed: row.text("speed"), Intensity: row.text("intensity"),
 			Suitable: row.list("suitable_for"), Incompatible: row.list("incompatible_with"),
-			Notes: row["notes"], Source: row["source"],
+			Notes: row.text("notes"), Source: row.text("source"),
 		}
 		agent.Theoretical, _ = row.number("theoretical_capacity_g_water_per_g")
 		agent.Low, _ = row.number("practical_capacity_low_g_water_per_g")

@@ -20,7 +20,7 @@ type AgentNeed struct{ Low, Typical, High Mass }
 func (a DryingAgent) For(water Mass) (AgentNeed, error) {
 	of := fmt.Sprintf("amount of %s for %.3g g of water", a.Name, water.Grams())
 	if !(water >= 0) || !Finite(water) {
-		return AgentNeed{}, &DataError{Of: of, Err: ErrOutsideRange, Limit: "water must not be below zero", Remedy: "give the mass of water"}
+		return AgentNeed{}, &DataError{Of: of, Err: ErrOutOfRange, Limit: "water must not be below zero", Remedy: "give the mass of water"}
 	}
 	low, high := a.practical()
 	if low <= 0 || high <= 0 {
@@ -73,7 +73,7 @@ func HeldBack(agent Mass, heldPerMass float64, solution, rinse Volume, rinses in
 		return 0, err
 	}
 	if !(agent >= 0) || !(heldPerMass >= 0) || !(rinse >= 0) || rinses < 0 || !Finite(agent) || !Finite(heldPerMass) {
-		return 0, &DataError{Of: of, Err: ErrOutsideRange, Limit: "no input may be below zero", Remedy: "give the mass of agent and the liquid it holds in m³/kg"}
+		return 0, &DataError{Of: of, Err: ErrOutOfRange, Limit: "no input may be below zero", Remedy: "give the mass of agent and the liquid it holds in m³/kg"}
 	}
 	held := Volume(float64(agent) * heldPerMass)
 	if held == 0 {

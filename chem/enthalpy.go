@@ -17,14 +17,14 @@ type Formation struct {
 
 var formations = sync.OnceValue(func() []Formation {
 	var list []Formation
-	for _, row := range dataRows(phaseTables, "formation_enthalpy.csv") {
+	for _, row := range readTable("formation_enthalpy.csv") {
 		h, ok := row.number("delta_f_H_kJ_mol")
-		if !ok || strings.Contains(row["formula"], "·nH2O") {
+		if !ok || strings.Contains(row.text("formula"), "·nH2O") {
 			continue // entropy only, or a strength of acid that HeatOfDilution reads
 		}
 		list = append(list, Formation{
-			Species: row["species"], Formula: row["formula"], CAS: row["cas"], State: row["state"],
-			Enthalpy: MolarEnergy(h) * KilojoulePerMole, Source: row["source"],
+			Species: row.text("species"), Formula: row.text("formula"), CAS: row.text("cas"), State: row.text("state"),
+			Enthalpy: MolarEnergy(h) * KilojoulePerMole, Source: row.text("source"),
 		})
 	}
 	return list

@@ -62,10 +62,6 @@ func (c CoDistilling) towardsAzeotrope(of string, d CoDistillation, a Azeotrope)
 	return d.unlessDry(c.dry(of, d, d.Water))
 }
 
-// waterMolarMass is the molar mass of water in kg/mol (IUPAC abridged atomic
-// weights, substances.csv).
-const waterMolarMass = 0.018015
-
 // tableMolarMass returns a molar mass from substances.csv.
 func tableMolarMass(cas string) (MolarMass, bool) {
 	m, ok := tableMolarMasses()[cas]

@@ -35,13 +35,13 @@ type solubilityTable struct{ waterInSolvent, solventInWater []solubilityPoint }
 
 var mutualSolubilities = sync.OnceValue(func() map[string]*solubilityTable {
 	tables := make(map[string]*solubilityTable)
-	for _, row := range dataRows(phaseTables, "mutual_solubility.csv") {
-		table := tables[row["cas"]]
+	for _, row := range readTable("mutual_solubility.csv") {
+		table := tables[row.text("cas")]
 		if table == nil {
 			table = &solubilityTable{}
-			tables[row["cas"]] = table
+			tables[row.text("cas")] = table
 		}
-		point := solubilityPoint{at: Celsius(row.must("temperature_C")), source: row["source"], rank: solubilityRank(row)}
+		point := solubilityPoint{at: Celsius(row.must("temperature_C")), source: row.text("source"), rank: solubilityRank(row)}
 		if w, ok := row.number("water_in_solvent_w_w_percent"); ok {
 			point.value = Fraction(w) * Percent
 			table.waterInSolvent = append(table.waterInSolvent, point)
@@ -60,13 +60,13 @@ var mutualSolubilities = sync.OnceValue(func() map[string]*solubilityTable {
 
 // solubilityRank puts evaluated data first, then handbook layers, then pairs
 // from memory, then single solubilities without the other layer.
-func solubilityRank(row dataRow) int {
-	switch source := row["source"]; {
+func solubilityRank(r row) int {
+	switch source := r.text("source"); {
 	case strings.Contains(source, "IUPAC"):
 		return 0
 	case strings.Contains(source, "Lange"):
 		return 1
-	case row["water_in_solvent_w_w_percent"] != "":
+	case r.text("water_in_solvent_w_w_percent") != "":
 		return 2
 	default:
 		return 3
@@ -84,7 +84,7 @@ func bestPoints(points []solubilityPoint) []solubilityPoint {
 // MutualSolubilityOf returns how much water a solvent takes up and how much of
 // the solvent goes into water at a temperature, between tabulated temperatures
 // by a straight line. Up to 10 K outside them the nearest value is taken and a
-// note says so; further away the error wraps ErrOutsideRange. It wraps
+// note says so; further away the error wraps ErrOutOfRange. It wraps
 // ErrNoData where the solvent has no row. Salt in the water lowers both.
 func MutualSolubilityOf(solvent string, t Temperature) (MutualSolubility, error) {
 	of := fmt.Sprintf("mutual solubility of water and %s", nameOfCAS(solvent))
@@ -107,7 +107,7 @@ func (s *MutualSolubility) read(of string, points []solubilityPoint, t Temperatu
 	low, high := points[0].at, points[len(points)-1].at
 	if !(t >= low-solubilityReach && t <= high+solubilityReach) {
 		return 0, false, &DataError{
-			Of: fmt.Sprintf("%s at %.1f °C", of, t.Celsius()), Err: ErrOutsideRange,
+			Of: fmt.Sprintf("%s at %.1f °C", of, t.Celsius()), Err: ErrOutOfRange,
 			Limit:  fmt.Sprintf("%.0f to %.0f °C", (low - solubilityReach).Celsius(), (high + solubilityReach).Celsius()),
 			Remedy: "let the layers come to room temperature or give the solubilities",
 		}

@@ -14,8 +14,8 @@ var tableNames = sync.OnceValue(func() map[string]string {
 		"partition.csv":         {"cas", "solute"},
 		"azeotropes.csv":        {"cas_2", "component_2"},
 	} {
-		for _, row := range dataRows(phaseTables, table) {
-			names[row[columns[0]]] = row[columns[1]]
+		for _, row := range readTable(table) {
+			names[row.text(columns[0])] = row.text(columns[1])
 		}
 	}
 	return names
@@ -32,9 +32,9 @@ func nameOfCAS(cas string) string {
 // tableMolarMasses are the molar masses of substances.csv by CAS number.
 var tableMolarMasses = sync.OnceValue(func() map[string]MolarMass {
 	table := make(map[string]MolarMass)
-	for _, row := range dataRows(phaseTables, "substances.csv") {
+	for _, row := range readTable("substances.csv") {
 		if m, ok := row.number("molar_mass_g_mol"); ok {
-			table[row["cas"]] = MolarMass(m) * GramPerMole
+			table[row.text("cas")] = MolarMass(m) * GramPerMole
 		}
 	}
 	return table

@@ -35,18 +35,18 @@ var solventCAS = map[string]string{
 
 var partitions = sync.OnceValue(func() map[partitionKey]Partition {
 	table := make(map[partitionKey]Partition)
-	for _, row := range dataRows(phaseTables, "partition.csv") {
+	for _, row := range readTable("partition.csv") {
 		value := Partition{
 			P:        math.Pow(10, row.must("value")),
-			Measured: row["quantity"] != "log10_K_monomer",
+			Measured: row.text("quantity") != "log10_K_monomer",
 			At:       Celsius(row.must("temperature_C")),
-			Species:  row["species"],
-			Source:   row["source"],
+			Species:  row.text("species"),
+			Source:   row.text("source"),
 		}
 		if strings.Contains(value.Source, "+/-0.3") {
 			value.Spread = 0.3
 		}
-		key := partitionKey{row["cas"], solventCAS[row["organic_phase"]]}
+		key := partitionKey{row.text("cas"), solventCAS[row.text("organic_phase")]}
 		if kept, ok := table[key]; ok && (kept.Measured || !value.Measured) {
 			continue // the first measured row wins, else the first computed one
 		}

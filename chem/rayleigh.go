@@ -75,7 +75,7 @@ func RaoultVapour(x1 Fraction, p1, p2 Pressure) (first, second Pressure, y1 Frac
 	}
 	first, second = p1*Pressure(x1), p2*Pressure(1-x1)
 	if !(first >= 0) || !(second >= 0) || !(first+second > 0) || !Finite(first+second) {
-		return 0, 0, 0, &DataError{Of: of, Err: ErrOutsideRange, Limit: "one vapour pressure at least must be above zero", Remedy: "give the vapour pressures of the pure liquids"}
+		return 0, 0, 0, &DataError{Of: of, Err: ErrOutOfRange, Limit: "one vapour pressure at least must be above zero", Remedy: "give the vapour pressures of the pure liquids"}
 	}
 	return first, second, Fraction(first / (first + second)), nil
 }

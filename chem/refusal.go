@@ -6,23 +6,14 @@ import (
 	"strings"
 )
 
-// Why a number can't be had. They are the causes inside a DataError; ask for
-// them with errors.Is.
-var (
-	// ErrNoData says that no embedded table holds the value.
-	ErrNoData = errors.New("no data")
-	// ErrOutsideRange says that a value lies outside the range in which the
-	// method or the table holds.
-	ErrOutsideRange = errors.New("outside the range")
-	// ErrImpossible says that no amount of anything gives what was asked.
-	ErrImpossible = errors.New("can't be reached")
-)
+// ErrImpossible is the cause where no amount of anything gives what was asked.
+var ErrImpossible = errors.New("can't be reached")
 
 // A DataError is a refusal: what was asked, why there is no answer, the limit
 // that was met, and what would do instead.
 type DataError struct {
 	Of     string // what was being computed: "vapour pressure of pentanal at 300.0 °C"
-	Err    error  // ErrNoData, ErrOutsideRange, ErrImpossible
+	Err    error  // ErrNoData, ErrOutOfRange or ErrImpossible
 	Limit  string // the range or limit in words; may be empty
 	Remedy string // what would do: "give antoine=A;B;C"; may be empty
 }
@@ -48,7 +39,7 @@ func mustBePositive[Q ~float64](of, name string, x Q) error {
 	if x > 0 && Finite(x) {
 		return nil
 	}
-	return &DataError{Of: of, Err: ErrOutsideRange, Limit: name + " must be above zero", Remedy: "give a positive " + name}
+	return &DataError{Of: of, Err: ErrOutOfRange, Limit: name + " must be above zero", Remedy: "give a positive " + name}
 }
 
 // mustBeShare refuses a value that isn't from zero to below one, or to one
@@ -61,5 +52,5 @@ func mustBeShare[Q ~float64](of, name string, x Q, oneCounts bool) error {
 	if oneCounts {
 		limit = name + " must be from 0 % to 100 %"
 	}
-	return &DataError{Of: of, Err: ErrOutsideRange, Limit: limit, Remedy: "give a share such as 95 %"}
+	return &DataError{Of: of, Err: ErrOutOfRange, Limit: limit, Remedy: "give a share such as 95 %"}
 }

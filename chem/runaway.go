@@ -14,7 +14,7 @@ func AdiabaticRise(heat Energy, mass Mass, cp SpecificHeat) (Temperature, error)
 		return 0, err
 	}
 	if !Finite(heat) {
-		return 0, &DataError{Of: of, Err: ErrOutsideRange, Limit: "heat must be a number"}
+		return 0, &DataError{Of: of, Err: ErrOutOfRange, Limit: "heat must be a number"}
 	}
 	return Temperature(float64(heat) / (float64(mass) * float64(cp))), nil
 }
@@ -36,7 +36,7 @@ func MTSR(process Temperature, accumulated Fraction, rise Temperature, massRatio
 		return 0, err
 	}
 	if !(massRatio >= 1) || !Finite(massRatio) || !(rise >= 0) || !Finite(rise) {
-		return 0, &DataError{Of: of, Err: ErrOutsideRange, Limit: "the rise must not be below zero and the mass ratio not below one", Remedy: "give the final mass over the mass at the moment"}
+		return 0, &DataError{Of: of, Err: ErrOutOfRange, Limit: "the rise must not be below zero and the mass ratio not below one", Remedy: "give the final mass over the mass at the moment"}
 	}
 	return process + Temperature(float64(accumulated)*float64(rise)*massRatio), nil
 }
@@ -61,7 +61,7 @@ func CriticalityClass(process, mtsr, mtt, td24 Temperature) (int, error) {
 	}
 	if mtsr < process {
 		return 0, &DataError{
-			Of: of, Err: ErrOutsideRange,
+			Of: of, Err: ErrOutOfRange,
 			Limit:  fmt.Sprintf("MTSR %.1f °C lies below the process temperature %.1f °C", mtsr.Celsius(), process.Celsius()),
 			Remedy: "MTSR is the process temperature plus the rise of what has accumulated",
 		}
@@ -124,7 +124,7 @@ func ShortestDose(heat Energy, cooling Power) (Duration, error) {
 		return 0, err
 	}
 	if !(heat >= 0) || !Finite(heat) {
-		return 0, &DataError{Of: of, Err: ErrOutsideRange, Limit: "heat must not be below zero", Remedy: "give the heat given off"}
+		return 0, &DataError{Of: of, Err: ErrOutOfRange, Limit: "heat must not be below zero", Remedy: "give the heat given off"}
 	}
 	return Duration(float64(heat) / float64(cooling)), nil
 }

@@ -22,7 +22,7 @@ type SteamDistillation struct {
 //	p(substance) + p(water) = p
 //	m(substance)/m(water) = p(substance) · M / (p(water) · M(water))
 //
-// by CAS number. The error wraps ErrOutsideRange where the vapour-pressure
+// by CAS number. The error wraps ErrOutOfRange where the vapour-pressure
 // equation doesn't reach the temperature.
 func SteamDistilling(cas string, p Pressure) (SteamDistillation, error) {
 	of := fmt.Sprintf("steam distillation of %s at %.4g kPa", nameOfCAS(cas), p.Kilopascals())
@@ -78,7 +78,7 @@ func (e VapourEquation) SteamDistilling(m MolarMass, p Pressure) (SteamDistillat
 	}
 	total := func(t Temperature) Pressure { a, b := sum(t); return a + b }
 	if !(low < high) || !(total(low) <= p && total(high) >= p) {
-		return SteamDistillation{}, &DataError{Of: of, Err: ErrOutsideRange, Limit: "the vapour-pressure equation holds from " + e.Range(), Remedy: "give antoine=A;B;C that reaches lower"}
+		return SteamDistillation{}, &DataError{Of: of, Err: ErrOutOfRange, Limit: "the vapour-pressure equation holds from " + e.Range(), Remedy: "give antoine=A;B;C that reaches lower"}
 	}
 	for range 200 {
 		middle := (low + high) / 2

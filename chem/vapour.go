@@ -48,18 +48,18 @@ func (f VapourForm) String() string {
 
 var vapourEquations = sync.OnceValue(func() map[string][]VapourEquation {
 	equations := make(map[string][]VapourEquation)
-	for _, row := range dataRows(phaseTables, "antoine.csv") {
-		form, ok := vapourForms[row["form"]]
+	for _, row := range readTable("antoine.csv") {
+		form, ok := vapourForms[row.text("form")]
 		if !ok {
-			panic("chem: antoine.csv has an unknown form " + row["form"])
+			panic("chem: antoine.csv has an unknown form " + row.text("form"))
 		}
 		e := VapourEquation{
 			Form: form, A: row.must("A"), B: row.must("B"), C: row.must("C"),
-			From: Temperature(row.must("T_min_K")), To: Temperature(row.must("T_max_K")), Source: row["source"],
+			From: Temperature(row.must("T_min_K")), To: Temperature(row.must("T_max_K")), Source: row.text("source"),
 		}
 		e.D, _ = row.number("D")
 		e.E, _ = row.number("E")
-		equations[row["cas"]] = append(equations[row["cas"]], e)
+		equations[row.text("cas")] = append(equations[row.text("cas")], e)
 	}
 	for _, list := range equations {
 		// the widest range first: one equation then serves a whole run, and
@@ -108,7 +108,7 @@ func (e VapourEquation) Range() string {
 
 // Pressure returns the vapour pressure at a temperature. Outside the stated
 // range, or where the equation has no finite value, the error wraps
-// ErrOutsideRange.
+// ErrOutOfRange.
 func (e VapourEquation) Pressure(t Temperature) (Pressure, error) {
 	if e.holds(t) && t > 0 {
 		ln, slope := e.log(t)
@@ -116,12 +116,12 @@ func (e VapourEquation) Pressure(t Temperature) (Pressure, error) {
 			return p, nil
 		}
 	}
-	return 0, &DataError{Of: fmt.Sprintf("vapour pressure at %.1f °C", t.Celsius()), Err: ErrOutsideRange, Limit: e.Range(), Remedy: "give a temperature inside it"}
+	return 0, &DataError{Of: fmt.Sprintf("vapour pressure at %.1f °C", t.Celsius()), Err: ErrOutOfRange, Limit: e.Range(), Remedy: "give a temperature inside it"}
 }
 
 // VapourPressure returns the vapour pressure of a pure liquid by CAS number,
 // from the equation with the widest range that holds at the temperature. The
-// error wraps ErrNoData where the table has no equation, ErrOutsideRange where
+// error wraps ErrNoData where the table has no equation, ErrOutOfRange where
 // none holds at this temperature.
 func VapourPressure(cas string, t Temperature) (Pressure, error) {
 	equations := vapourEquations()[cas]
@@ -146,7 +146,7 @@ func noVapourEquation(cas, of string) error {
 		low, high = min(low, e.From), max(high, e.To)
 	}
 	return &DataError{
-		Of: of, Err: ErrOutsideRange,
+		Of: of, Err: ErrOutOfRange,
 		Limit:  fmt.Sprintf("the table reaches from %.1f to %.1f °C", low.Celsius(), high.Celsius()),
 		Remedy: remedy,
 	}
