@@ -6,13 +6,12 @@ import (
 	"strings"
 )
 
-// Kinds of refusal of a quantity, for errors.Is; ErrAmbiguous is shared with
-// formulas.
+// Kinds of refusal of a quantity, for errors.Is, beside ErrAmbiguous and
+// ErrOutOfRange.
 var (
 	ErrNoNumber    = errors.New("no number")
 	ErrNoUnit      = errors.New("no unit")
 	ErrUnknownUnit = errors.New("unknown unit")
-	ErrOutOfRange  = errors.New("out of range")
 )
 
 // QuantityError says what is wrong with a quantity as typed and what would do.
