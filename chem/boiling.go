@@ -8,24 +8,34 @@ import (
 // Boiling returns the temperature at which the vapour pressure equals p. The
 // error wraps ErrOutOfRange where that lies outside the equation's range.
 func (e VapourEquation) Boiling(p Pressure) (Temperature, error) {
-	of := fmt.Sprintf("boiling point at %.4g kPa", p.Kilopascals())
-	if err := mustBePositive(of, "pressure", p); err != nil {
+	if err := mustBePositive("boiling point", "pressure", p); err != nil {
 		return 0, err
 	}
-	low, high := e.From, e.To
+	want := math.Log(float64(p))
+	low, high, ok := e.boilingRange(want)
+	if !ok {
+		lowLn, _ := e.log(low)
+		highLn, _ := e.log(high)
+		return 0, &DataError{
+			Of: fmt.Sprintf("boiling point at %.4g kPa", p.Kilopascals()), Err: ErrOutOfRange,
+			Limit:  fmt.Sprintf("%s, that is %.4g to %.4g kPa", e.Range(), math.Exp(lowLn)/1e3, math.Exp(highLn)/1e3),
+			Remedy: "give a pressure inside it or antoine=A;B;C",
+		}
+	}
+	return e.solveBoiling(want, low, high), nil
+}
+
+// boilingRange returns the range of temperature in which to look for a
+// ln p; false where the equation doesn't reach it.
+func (e *VapourEquation) boilingRange(want float64) (low, high Temperature, ok bool) {
+	low, high = e.From, e.To
 	if !e.rangeStated() {
 		low, high = e.openRange()
 	}
-	want := math.Log(float64(p))
 	lowLn, _ := e.log(low)
 	highLn, _ := e.log(high)
 	const slack = 1e-9 // in ln p: the ends of the range belong to it
-	if !(want >= lowLn-slack && want <= highLn+slack) {
-		return 0, &DataError{Of: of, Err: ErrOutOfRange,
-			Limit:  fmt.Sprintf("%s, that is %.4g to %.4g kPa", e.Range(), math.Exp(lowLn)/1e3, math.Exp(highLn)/1e3),
-			Remedy: "give a pressure inside it or antoine=A;B;C"}
-	}
-	return e.solveBoiling(want, low, high), nil
+	return low, high, want >= lowLn-slack && want <= highLn+slack
 }
 
 // openRange brackets the temperatures a bench could meet, for an equation
@@ -67,16 +77,16 @@ func (e *VapourEquation) solveBoiling(want float64, low, high Temperature) Tempe
 // pressure, from the first equation that reaches there. The error wraps
 // ErrNoData or ErrOutOfRange.
 func BoilingPoint(cas string, p Pressure) (Temperature, error) {
-	of := fmt.Sprintf("boiling point of %s at %.4g kPa", nameOfCAS(cas), p.Kilopascals())
-	if err := mustBePositive(of, "pressure", p); err != nil {
+	if err := mustBePositive("boiling point", "pressure", p); err != nil {
 		return 0, err
 	}
-	for _, e := range vapourEquations()[cas] {
-		if t, err := e.Boiling(p); err == nil {
-			return t, nil
+	equations := vapourEquations()[cas]
+	for i := range equations {
+		if low, high, ok := equations[i].boilingRange(math.Log(float64(p))); ok {
+			return equations[i].solveBoiling(math.Log(float64(p)), low, high), nil
 		}
 	}
-	return 0, noVapourEquation(cas, of)
+	return 0, noVapourEquation(cas, fmt.Sprintf("boiling point of %s at %.4g kPa", nameOfCAS(cas), p.Kilopascals()))
 }
 
 // The standard atmosphere below 11 km (ISO 2533:1975, 2.1 to 2.8).

@@ -75,7 +75,7 @@ var waterSolubilities = sync.OnceValue(func() map[string]Fraction {
 // error wraps ErrNoData where nothing is known of the pair and ErrImpossible
 // where the pot would boil dry, with what would do.
 func CoDistillate(c CoDistilling) (CoDistillation, error) {
-	of := fmt.Sprintf("carrying %s over with water", nameOfCAS(c.CAS))
+	const of = "co-distillation with water"
 	if err := firstError(
 		mustBePositive(of, "mass of the substance", c.Partner),
 		mustBePositive(of, "mass of water", c.Water),
@@ -87,7 +87,7 @@ func CoDistillate(c CoDistilling) (CoDistillation, error) {
 	if c.VapourFraction > 0 {
 		azeotrope.PartnerFraction, azeotrope.Heterogeneous, azeotrope.Forms, known = c.VapourFraction, true, true, true
 	}
-	alpha, err := c.alpha(of, azeotrope)
+	alpha, err := c.alpha(azeotrope)
 	if err != nil {
 		return CoDistillation{}, err
 	}
@@ -97,11 +97,16 @@ func CoDistillate(c CoDistilling) (CoDistillation, error) {
 	}
 	switch {
 	case known && azeotrope.Forms && azeotrope.Heterogeneous:
-		return c.overTwoLayers(of, d, azeotrope)
+		return c.overTwoLayers(d, azeotrope)
 	case known && azeotrope.Forms && !azeotrope.MaximumBoiling:
-		return c.towardsAzeotrope(of, d, azeotrope)
+		return c.towardsAzeotrope(d, azeotrope)
 	}
-	return c.dissolved(of, d, c.Partner, c.Water, c.Partner*Mass(1-c.Recovery))
+	return c.dissolved(d, c.Partner, c.Water, c.Partner*Mass(1-c.Recovery))
+}
+
+// String names the distillation for a message.
+func (c CoDistilling) String() string {
+	return fmt.Sprintf("carrying %s over with water", nameOfCAS(c.CAS))
 }
 
 // cite adds a source once.
@@ -114,7 +119,7 @@ func (d *CoDistillation) cite(source string) {
 }
 
 // alpha returns the relative volatility of the dilute solution.
-func (c CoDistilling) alpha(of string, a Azeotrope) (float64, error) {
+func (c CoDistilling) alpha(a Azeotrope) (float64, error) {
 	if c.Alpha > 0 {
 		return c.Alpha, nil
 	}
@@ -125,7 +130,7 @@ func (c CoDistilling) alpha(of string, a Azeotrope) (float64, error) {
 	if a.Forms && a.Heterogeneous && s > 0 {
 		return perWater(a.PartnerFraction) / s, nil
 	}
-	return 0, &DataError{Of: of, Err: ErrNoData, Limit: "no azeotrope with a solubility and no relative volatility", Remedy: "give the relative volatility over water of the dilute solution"}
+	return 0, &DataError{Of: c.String(), Err: ErrNoData, Limit: "no azeotrope with a solubility and no relative volatility", Remedy: "give the relative volatility over water of the dilute solution"}
 }
 
 // saturation returns the partner dissolved per mass of water at saturation, 0
@@ -142,7 +147,7 @@ func perWater(w Fraction) float64 { return float64(w / (1 - w)) }
 
 // overTwoLayers distils at the heteroazeotrope until the layer is used up or
 // the recovery is met, then goes on with the dissolved part.
-func (c CoDistilling) overTwoLayers(of string, d CoDistillation, a Azeotrope) (CoDistillation, error) {
+func (c CoDistilling) overTwoLayers(d CoDistillation, a Azeotrope) (CoDistillation, error) {
 	ratio := perWater(a.PartnerFraction)
 	saturated := c.saturation()
 	if saturated == 0 {
@@ -153,7 +158,7 @@ func (c CoDistilling) overTwoLayers(of string, d CoDistillation, a Azeotrope) (C
 	layer := c.Partner - c.Water*Mass(saturated)
 	if layer <= 0 {
 		d.Notes = append(d.Notes, "all is dissolved from the start: there is no second layer in the pot")
-		return c.dissolved(of, d, c.Partner, c.Water, left)
+		return c.dissolved(d, c.Partner, c.Water, left)
 	}
 	d.Two = true
 	gone := layer / Mass(ratio) // water over when the layer is used up, pot kept up
@@ -169,7 +174,7 @@ func (c CoDistilling) overTwoLayers(of string, d CoDistillation, a Azeotrope) (C
 			d.PotWater -= need
 		}
 		d.Alpha = 0
-		return d.unlessDry(c.dry(of, d, need))
+		return d.unlessDry(c.dry(d, need))
 	}
 	d.Layered = gone
 	pot := c.Water
@@ -177,9 +182,9 @@ func (c CoDistilling) overTwoLayers(of string, d CoDistillation, a Azeotrope) (C
 		pot -= gone
 	}
 	if pot <= 0 {
-		return CoDistillation{}, c.dry(of, CoDistillation{}, gone)
+		return CoDistillation{}, c.dry(CoDistillation{}, gone)
 	}
-	return c.dissolved(of, d, c.Partner-gone*Mass(ratio), pot, left)
+	return c.dissolved(d, c.Partner-gone*Mass(ratio), pot, left)
 }
 
 // unlessDry returns the distillation, or only the error where there is one.
@@ -191,17 +196,17 @@ func (d CoDistillation) unlessDry(err error) (CoDistillation, error) {
 }
 
 // dry refuses a distillation for which the pot hasn't the water.
-func (c CoDistilling) dry(of string, d CoDistillation, need Mass) error {
+func (c CoDistilling) dry(d CoDistillation, need Mass) error {
 	if c.Level || d.PotWater > 0 {
 		return nil
 	}
-	return &DataError{Of: of, Err: ErrImpossible,
+	return &DataError{Of: c.String(), Err: ErrImpossible,
 		Limit:  fmt.Sprintf("needs %.4g g of water over, the pot has %.4g g", need.Grams(), c.Water.Grams()),
 		Remedy: "add water or keep the level up"}
 }
 
 // dissolved carries a dissolved partner over from a pot until a mass is left.
-func (c CoDistilling) dissolved(of string, d CoDistillation, partner, water, left Mass) (CoDistillation, error) {
+func (c CoDistilling) dissolved(d CoDistillation, partner, water, left Mass) (CoDistillation, error) {
 	if d.Start == 0 {
 		d.Start, _ = BoilingPoint(waterCAS, Atmosphere)
 	}

@@ -9,10 +9,10 @@ import (
 // it as a homogeneous azeotrope of lowest boiling point. Below the azeotrope's
 // composition the partner is the more volatile one; above it no distillation
 // carries it over to a high recovery, and the error says how much water would.
-func (c CoDistilling) towardsAzeotrope(of string, d CoDistillation, a Azeotrope) (CoDistillation, error) {
+func (c CoDistilling) towardsAzeotrope(d CoDistillation, a Azeotrope) (CoDistillation, error) {
 	molar, ok := tableMolarMass(c.CAS)
 	if !ok {
-		return c.dissolved(of, d, c.Partner, c.Water, c.Partner*Mass(1-c.Recovery))
+		return c.dissolved(d, c.Partner, c.Water, c.Partner*Mass(1-c.Recovery))
 	}
 	// amount of water per amount of partner, times mass of partner per mass of
 	// water, is a constant
@@ -22,7 +22,7 @@ func (c CoDistilling) towardsAzeotrope(of string, d CoDistillation, a Azeotrope)
 	start := float64(c.Partner / c.Water)
 	if start >= ratio {
 		return CoDistillation{}, &DataError{
-			Of: of, Err: ErrImpossible,
+			Of: c.String(), Err: ErrImpossible,
 			Limit:  fmt.Sprintf("the pot has %.3g g per g of water, the azeotrope %.3g", start, ratio),
 			Remedy: fmt.Sprintf("add at least %.4g g of water", (c.Partner/Mass(ratio) - c.Water).Grams()),
 		}
@@ -59,7 +59,7 @@ func (c CoDistilling) towardsAzeotrope(of string, d CoDistillation, a Azeotrope)
 	if !c.Level {
 		d.PotWater -= Mass(over)
 	}
-	return d.unlessDry(c.dry(of, d, d.Water))
+	return d.unlessDry(c.dry(d, d.Water))
 }
 
 // tableMolarMass returns a molar mass from substances.csv.

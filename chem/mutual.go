@@ -87,27 +87,31 @@ func bestPoints(points []solubilityPoint) []solubilityPoint {
 // note says so; further away the error wraps ErrOutOfRange. It wraps
 // ErrNoData where the solvent has no row. Salt in the water lowers both.
 func MutualSolubilityOf(solvent string, t Temperature) (MutualSolubility, error) {
-	of := fmt.Sprintf("mutual solubility of water and %s", nameOfCAS(solvent))
 	table, ok := mutualSolubilities()[solvent]
 	if !ok {
-		return MutualSolubility{}, &DataError{Of: of, Err: ErrNoData, Remedy: "give the water in the solvent and the solvent in water as % w/w"}
+		return MutualSolubility{}, &DataError{Of: mutualSolubilityOf(solvent), Err: ErrNoData, Remedy: "give the water in the solvent and the solvent in water as % w/w"}
 	}
 	var s MutualSolubility
 	var errWater, errSolvent error
-	s.WaterInSolvent, s.HasWaterInSolvent, errWater = s.read(of, table.waterInSolvent, t)
-	s.SolventInWater, s.HasSolventInWater, errSolvent = s.read(of, table.solventInWater, t)
+	s.WaterInSolvent, s.HasWaterInSolvent, errWater = s.read(solvent, table.waterInSolvent, t)
+	s.SolventInWater, s.HasSolventInWater, errSolvent = s.read(solvent, table.solventInWater, t)
 	return s, firstError(errWater, errSolvent)
 }
 
+// mutualSolubilityOf names the quantity for a message.
+func mutualSolubilityOf(solvent string) string {
+	return "mutual solubility of water and " + nameOfCAS(solvent)
+}
+
 // read interpolates in one column and adds the source and note of the value.
-func (s *MutualSolubility) read(of string, points []solubilityPoint, t Temperature) (Fraction, bool, error) {
+func (s *MutualSolubility) read(solvent string, points []solubilityPoint, t Temperature) (Fraction, bool, error) {
 	if len(points) == 0 {
 		return 0, false, nil
 	}
 	low, high := points[0].at, points[len(points)-1].at
 	if !(t >= low-solubilityReach && t <= high+solubilityReach) {
 		return 0, false, &DataError{
-			Of: fmt.Sprintf("%s at %.1f °C", of, t.Celsius()), Err: ErrOutOfRange,
+			Of: fmt.Sprintf("%s at %.1f °C", mutualSolubilityOf(solvent), t.Celsius()), Err: ErrOutOfRange,
 			Limit:  fmt.Sprintf("%.0f to %.0f °C", (low - solubilityReach).Celsius(), (high + solubilityReach).Celsius()),
 			Remedy: "let the layers come to room temperature or give the solubilities",
 		}
