@@ -1,0 +1,50 @@
+// What htmx doesn't do by itself: after a part of a page has been exchanged the
+// focus goes to the heading of what is new, or to the list of faults; a note
+// that was opened can be closed with Escape and gives the focus back.
+(function () {
+  "use strict";
+
+  var opener = null;
+
+  function focusOn(element) {
+    if (!element) return;
+    if (!element.hasAttribute("tabindex")) element.setAttribute("tabindex", "-1");
+    element.focus({ preventScroll: false });
+  }
+
+  document.addEventListener("htmx:beforeRequest", function (event) {
+    if (event.detail.elt.closest("a")) opener = event.detail.elt;
+  });
+
+  document.addEventListener("htmx:afterSwap", function (event) {
+    var target = document.getElementById(event.detail.target.id) || event.detail.target;
+    var cause = event.detail.requestConfig && event.detail.requestConfig.triggeringEvent;
+    // While somebody goes from field to field the focus stays where it is.
+    if (cause && cause.type === "change") return;
+    focusOn(target.querySelector("[data-faults]") || target.querySelector("[data-focus]"));
+  });
+
+  function closeNote(note) {
+    note.remove();
+    if (opener && document.contains(opener)) opener.focus();
+    opener = null;
+  }
+
+  document.addEventListener("keydown", function (event) {
+    var note = document.querySelector("dialog.why[open]");
+    if (event.key === "Escape" && note) closeNote(note);
+  });
+
+  document.addEventListener("close", function (event) {
+    if (event.target.matches("dialog.why")) closeNote(event.target);
+  }, true);
+
+  document.addEventListener("click", function (event) {
+    if (event.target.closest("[data-print]")) window.print();
+  });
+
+  // A list of faults on a page that came whole gets the focus as well.
+  document.addEventListener("DOMContentLoaded", function () {
+    focusOn(document.querySelector("[data-faults]"));
+  });
+})();

@@ -1,0 +1,88 @@
+package views
+
+import (
+	"context"
+	"net/http"
+	"strconv"
+	"strings"
+
+	"github.com/gin-gonic/gin"
+
+	"stillroom/chem"
+	"stillroom/inventory"
+	"stillroom/planner"
+)
+
+// newRunPage is the form for a run that isn't on the slate yet.
+type newRunPage struct {
+	frame
+	Recipes []*planner.Recipe
+	Chosen  string
+	Owner   string
+	Ask     askForm
+}
+
+// newRun answers /runs/new.
+func (s *Server) newRun(c *gin.Context) error {
+	p := s.newRunForm()
+	p.Chosen = c.Query("recipe")
+	p.Ask.Wanted, p.Ask.On = c.Query("wanted"), c.DefaultQuery("on", s.Today().AddDays(14).Short())
+	return s.render(c, http.StatusOK, "newrun", p)
+}
+
+func (s *Server) newRunForm() *newRunPage {
+	p := &newRunPage{Recipes: s.Recipes}
+	p.Title, p.Section = "Pencil in a run", "/slate"
+	return p
+}
+
+// addRun answers the form. The run is planned before it is written down, so
+// that nothing comes on the slate that can't be planned at all.
+func (s *Server) addRun(c *gin.Context) error {
+	p := s.newRunForm()
+	p.Chosen, p.Owner = c.PostForm("recipe"), strings.TrimSpace(c.PostForm("owner"))
+	p.Ask, p.Faults = readAsk(c.PostForm("wanted"), c.PostForm("on"), "", s.Today())
+	recipe, ok := s.recipeNamed(p.Chosen)
+	if !ok {
+		p.Faults = append(faults{{"recipe", "Choose one of the recipes."}}, p.Faults...)
+	}
+	if len(p.Faults) == 0 {
+		if err := s.tryPlan(c.Request.Context(), recipe, p.Ask); err != nil {
+			wrong, ok := askFault(err)
+			if !ok {
+				return err
+			}
+			p.Faults = append(p.Faults, wrong)
+		}
+	}
+	if len(p.Faults) > 0 {
+		return s.render(c, http.StatusUnprocessableEntity, "newrun", p)
+	}
+	id, err := s.Lab.AddRun(c.Request.Context(), inventory.Run{
+		Recipe: recipe.Name, RecipeText: recipe.Text, TargetUG: int64(p.Ask.target/chem.Microgram + 0.5),
+		On: p.Ask.on, State: inventory.Pencilled, Owner: p.Owner,
+	})
+	if err != nil {
+		return err
+	}
+	c.Redirect(http.StatusSeeOther, "/runs/"+strconv.FormatInt(id, 10))
+	return nil
+}
+
+func (s *Server) recipeNamed(name string) (*planner.Recipe, bool) {
+	for _, r := range s.Recipes {
+		if r.Name == name {
+			return r, true
+		}
+	}
+	return nil, false
+}
+
+func (s *Server) tryPlan(ctx context.Context, recipe *planner.Recipe, ask askForm) error {
+	shelf, err := s.Lab.Shelf(ctx)
+	if err != nil {
+		return err
+	}
+	_, err = s.Plan(planner.Request{Recipe: recipe, Target: ask.target, On: ask.on, Today: s.Today()}, shelf)
+	return err
+}

@@ -1,0 +1,187 @@
+package views
+
+import (
+	"html/template"
+	"net/http"
+	"strconv"
+	"strings"
+
+	"github.com/gin-gonic/gin"
+
+	"stillroom/chem"
+	"stillroom/inventory"
+	"stillroom/planner"
+)
+
+// runPage is a run: what was asked, whether the shelf can give it, and
+// everything that follows from the walk-through.
+type runPage struct {
+	frame
+	Run    inventory.Run
+	Recipe *planner.Recipe
+	Ask    askForm
+	// Kept says that what is shown is what is on the slate; otherwise it only
+	// tries a change.
+	Kept bool
+	// Plan is nil where what was asked can't be read.
+	Plan     *planner.Plan
+	Lead     string // first sentence of the verdict
+	Rest     string
+	Needs    []needRow
+	Steps    []stepRow
+	Contents []contentRow
+	Flow     template.HTML
+	Risk     []string
+	Hazards  []planner.HazardNote
+	Waste    []wasteRow
+	Paper    *paperCheck // set when the address came from a printed sheet
+}
+
+// Query carries what is asked to the addresses of papers and explanations. It
+// is empty where the run is shown as it is kept.
+func (p *runPage) Query() template.URL {
+	if p.Kept {
+		return ""
+	}
+	return template.URL("?" + p.Ask.query())
+}
+
+// PaperQuery is Query with the paper size of North America.
+func (p *runPage) PaperQuery() template.URL {
+	if p.Kept {
+		return "?paper=letter"
+	}
+	return template.URL("?" + p.Ask.query() + "&paper=letter")
+}
+
+// Word is the verdict as a need state.
+func (p *runPage) Word() string { return stateWord(p.Plan.Verdict) }
+
+// Covered says that nothing is short, late or unfit.
+func (p *runPage) Covered() bool { return p.Plan != nil && p.Plan.Verdict <= planner.Tight }
+
+// showRun answers /runs/:id. With a query it shows the run as if that were
+// wanted and changes nothing.
+func (s *Server) showRun(c *gin.Context) error {
+	shelf, run, recipe, err := s.findRun(c)
+	if err != nil {
+		return err
+	}
+	p := s.runPageFor(run, recipe)
+	if typed := c.Request.URL.Query(); typed.Has("wanted") || typed.Has("on") {
+		p.tryAsk(typed.Get("wanted"), typed.Get("on"), typed.Get("certainty"), s.Today())
+	}
+	return s.answerRun(c, p, shelf)
+}
+
+// answerRun plans what the page asks and renders it; a page with faults is
+// shown with what was typed.
+func (s *Server) answerRun(c *gin.Context, p *runPage, shelf *inventory.Shelf) error {
+	if len(p.Faults) == 0 {
+		if err := s.planRun(p, shelf); err != nil {
+			return err
+		}
+	}
+	if len(p.Faults) > 0 {
+		return s.render(c, http.StatusUnprocessableEntity, "run", p)
+	}
+	p.Paper = checkPaper(c.Query("printed"), p.Plan)
+	return s.render(c, http.StatusOK, "run", p)
+}
+
+// runPageFor makes the page of a run as it is kept.
+func (s *Server) runPageFor(run inventory.Run, recipe *planner.Recipe) *runPage {
+	target := chem.Mass(run.TargetUG) * chem.Microgram
+	p := &runPage{Run: run, Recipe: recipe, Kept: true}
+	p.Section = "/slate"
+	p.Ask = askForm{Wanted: plainSpaces(massPlain(target)), On: run.On.Short(), target: target, on: run.On}
+	p.Title = massPlain(target) + " " + recipe.Product + ", run " + strconv.FormatInt(run.ID, 10)
+	return p
+}
+
+// tryAsk puts what was typed in place of what is kept.
+func (p *runPage) tryAsk(wanted, on, certainty string, today inventory.Date) {
+	kept := p.Ask
+	if wanted == "" {
+		wanted = kept.Wanted
+	}
+	if on == "" {
+		on = kept.On
+	}
+	p.Ask, p.Faults = readAsk(wanted, on, certainty, today)
+	p.Kept = p.Ask.target == kept.target && p.Ask.on == kept.on && p.Ask.certainty == 0
+	if len(p.Faults) == 0 {
+		p.Title = massPlain(p.Ask.target) + " " + p.Recipe.Product + ", run " + strconv.FormatInt(p.Run.ID, 10)
+	}
+}
+
+// planRun makes the plan and everything the page shows of it. What the planner
+// refuses becomes a fault of the field it is about.
+func (s *Server) planRun(p *runPage, shelf *inventory.Shelf) error {
+	plan, err := s.Plan(planner.Request{
+		Recipe: p.Recipe, Target: p.Ask.target, On: p.Ask.on, Today: s.Today(),
+		Run: p.Run.ID, Certainty: p.Ask.certainty,
+	}, shelf)
+	if err != nil {
+		return p.refused(err)
+	}
+	p.Plan = plan
+	p.Lead, p.Rest = firstSentence(plan.Sentence)
+	p.Needs = p.needRows()
+	p.Steps = stepRows(plan.Steps)
+	p.Contents = contentRows(plan.Steps)
+	p.Flow = drawFlow(plan.Flow)
+	p.Risk = riskWords(plan.Risk)
+	p.Hazards = plan.Hazards
+	p.Waste = wasteRows(plan.Waste, shelf.Carboys)
+	return nil
+}
+
+// refused makes a fault out of what the planner says can't be planned, or hands
+// an unexpected error on.
+func (p *runPage) refused(err error) error {
+	wrong, ok := askFault(err)
+	if !ok {
+		return err
+	}
+	p.Faults = append(p.Faults, wrong)
+	return nil
+}
+
+// findRun reads the run and the recipe it was planned with.
+func (s *Server) findRun(c *gin.Context) (*inventory.Shelf, inventory.Run, *planner.Recipe, error) {
+	shelf, err := s.Lab.Shelf(c.Request.Context())
+	if err != nil {
+		return nil, inventory.Run{}, nil, err
+	}
+	id, err := strconv.ParseInt(c.Param("id"), 10, 64)
+	run, ok := shelf.Run(id)
+	if err != nil || !ok {
+		return nil, run, nil, &missing{"run", c.Param("id"), "The runs to come are on the slate."}
+	}
+	recipe, err := s.recipeOf(run)
+	return shelf, run, recipe, err
+}
+
+// recipeOf returns the recipe a run was planned with: the text kept with the
+// run, so that a later version of the recipe changes nothing in it.
+func (s *Server) recipeOf(run inventory.Run) (*planner.Recipe, error) {
+	for _, r := range s.Recipes {
+		if r.Name == run.Recipe && (run.RecipeText == "" || run.RecipeText == r.Text) {
+			return r, nil
+		}
+	}
+	return nil, &missing{"recipe", run.Recipe, "The recipe of this run is no longer among the recipes."}
+}
+
+// firstSentence cuts a text after its first sentence.
+func firstSentence(text string) (first, rest string) {
+	if i := strings.Index(text, ". "); i >= 0 {
+		return text[:i+1], text[i+2:]
+	}
+	return text, ""
+}
+
+// plainSpaces puts an ordinary space for the narrow one, for text in a field
+// that somebody is going to change.
+func plainSpaces(s string) string { return strings.ReplaceAll(s, narrow, " ") }

@@ -1,0 +1,293 @@
+package views
+
+import (
+	"fmt"
+	"html/template"
+	"strings"
+
+	"stillroom/chem"
+	"stillroom/inventory"
+	"stillroom/planner"
+)
+
+// stateWords are the words of the need states, in the order of the constants.
+var stateWords = [...]string{"covered", "tight", "late", "unfit", "short"}
+
+func stateWord(s planner.State) string {
+	if s < 0 || int(s) >= len(stateWords) {
+		return "not assessed"
+	}
+	return stateWords[s]
+}
+
+// needRow is a line of the needs table.
+type needRow struct {
+	planner.Need
+	N       int
+	Word    string
+	Amount  string // pure, or pieces
+	Draws   []drawRow
+	Lack    string // what is short, in words
+	Chance  string
+	Note    string
+	Explain string // address part of the derivation
+}
+
+// drawRow is a bottle in a line of the needs table.
+type drawRow struct {
+	Code, Place string
+	Picture     template.HTML
+	Amount      string
+	Why         string
+	Explain     string
+}
+
+func (p *runPage) needRows() []needRow {
+	rows := make([]needRow, len(p.Plan.Needs))
+	for i, n := range p.Plan.Needs {
+		rows[i] = needRow{
+			Need: n, N: i + 1, Word: stateWord(n.State), Amount: neededText(n), Lack: lackText(n),
+			Chance: chanceOf(n), Note: noteOf(n), Explain: fmt.Sprintf("need-%d", i+1),
+		}
+		for j, d := range n.Draws {
+			rows[i].Draws = append(rows[i].Draws, drawRow{
+				Code: d.Bottle.Code, Place: d.Place.String(), Picture: drawBottle(d.Bottle, d.Form, 27),
+				Amount: drawnText(d), Why: d.Why, Explain: fmt.Sprintf("draw-%d-%d", i+1, j+1),
+			})
+		}
+	}
+	return rows
+}
+
+func neededText(n planner.Need) string {
+	if n.Count {
+		return piecesText(n.Pieces)
+	}
+	return massText(n.Mass)
+}
+
+// drawnText gives a draw as it is measured out: by volume where the bottle is
+// measured by volume and the density is known, else by mass or by count.
+func drawnText(d planner.Draw) string {
+	switch {
+	case d.Form.Measure == inventory.ByCount:
+		return piecesText(d.Pieces)
+	case d.Form.Measure == inventory.ByVolume && d.HasVolume:
+		return volumeText(d.Volume)
+	}
+	return massText(d.Mass)
+}
+
+// lackText says what no fit bottle covers.
+func lackText(n planner.Need) string {
+	switch {
+	case n.Count && n.ShortPieces > 0:
+		return piecesText(n.ShortPieces) + " short"
+	case n.Short > 0:
+		return massText(n.Short) + " short"
+	}
+	return ""
+}
+
+// chanceOf is the chance of running short in words; what nothing covers has
+// none to speak of.
+func chanceOf(n planner.Need) string {
+	if n.State == planner.Short || n.State == planner.Unfit {
+		return "–"
+	}
+	return chanceText(n.ChanceShort)
+}
+
+// noteOf is the small print beside a substance: why it is needed where the
+// recipe doesn't say, and why its state isn't "covered".
+func noteOf(n planner.Need) string {
+	var parts []string
+	if n.Hidden && n.Why != "" {
+		parts = append(parts, n.Why)
+	}
+	if n.Because != "" && n.State != planner.Covered {
+		parts = append(parts, n.Because)
+	}
+	return strings.Join(parts, " · ")
+}
+
+// stepRow is one vessel of the walk-through strip.
+type stepRow struct {
+	planner.StepReport
+	Picture template.HTML
+	Ware    string
+	Into    []string
+	Lines   []string
+	Explain string
+}
+
+func stepRows(steps []planner.StepReport) []stepRow {
+	largest := largestVessel(steps)
+	rows := make([]stepRow, len(steps))
+	for i, s := range steps {
+		rows[i] = stepRow{StepReport: s, Picture: drawStep(s, largest), Ware: wareText(s.Vessel), Into: intoLines(s.Adds), Lines: stepLines(s)}
+		if len(s.Derivations) > 0 || len(s.Adds) > 0 {
+			rows[i].Explain = fmt.Sprintf("step-%d", s.N)
+		}
+	}
+	return rows
+}
+
+func largestVessel(steps []planner.StepReport) chem.Volume {
+	var v chem.Volume
+	for _, s := range steps {
+		v = max(v, s.Vessel.Size)
+	}
+	return v
+}
+
+// wareText names the vessel of a step with its size and fill.
+func wareText(v planner.VesselReport) string {
+	kind := v.Kind
+	if kind == "" {
+		kind = v.Name
+	}
+	switch {
+	case v.Size > 0 && v.Fits:
+		return volumePlain(v.Size) + " " + kind + ", " + percentText(v.Fill) + " full"
+	case v.Size > 0:
+		return volumePlain(v.Size) + " " + kind + " is too small: " + percentText(v.Fill) + " full, at most " + percentText(v.Limit)
+	}
+	return kind + ", size not chosen"
+}
+
+func intoLines(adds []planner.Add) []string {
+	var lines []string
+	for _, a := range adds {
+		amount := massText(a.Mass)
+		switch {
+		case a.Pieces > 0:
+			amount = piecesText(a.Pieces)
+		case a.HasVolume && a.Volume > 0:
+			amount = volumeText(a.Volume)
+		}
+		lines = append(lines, amount+" "+a.Substance)
+	}
+	return lines
+}
+
+// stepLines are the numbers of a step in words, the telling ones first.
+func stepLines(s planner.StepReport) []string {
+	lines := append([]string(nil), s.Says...)
+	if s.Shortest > 0 {
+		lines = append(lines, "no faster than "+timeText(s.Shortest))
+	}
+	if s.Temperature > 0 {
+		lines = append(lines, "at "+celsiusText(s.Temperature))
+	}
+	if q := s.Heat.Kilojoules(); q >= 0.5 {
+		lines = append(lines, heatText(s.Heat)+" given off")
+	} else if q <= -0.5 {
+		lines = append(lines, heatText(-s.Heat)+" taken up")
+	}
+	if s.Ice > 0 {
+		lines = append(lines, massText(s.Ice)+" of ice")
+	}
+	if s.Gas > chem.Millilitre {
+		lines = append(lines, strings.TrimSpace(volumeText(s.Gas)+" of gas "+s.GasOf))
+	}
+	if s.IfCoolingLost > 0 {
+		lines = append(lines, "if cooling stops: "+celsiusText(s.IfCoolingLost))
+	}
+	switch {
+	case s.TimeNotAssessed:
+		lines = append(lines, "time not assessed")
+	case s.Time > 0:
+		lines = append(lines, "takes "+timeText(s.Time))
+	}
+	if s.HoldPoint {
+		lines = append(lines, strings.TrimSpace("may stand here "+s.HoldNote))
+	}
+	return lines
+}
+
+// contentRow is a component of a vessel at the fullest moment of a step.
+type contentRow struct {
+	First bool // of its step
+	Rows  int  // of its step
+	N     int
+	Name  string
+	planner.Content
+}
+
+func contentRows(steps []planner.StepReport) []contentRow {
+	var rows []contentRow
+	for _, s := range steps {
+		for i, c := range s.Contents {
+			rows = append(rows, contentRow{First: i == 0, Rows: len(s.Contents), N: s.N, Name: s.Name, Content: c})
+		}
+	}
+	return rows
+}
+
+// wasteRow is a waste lot with the carboy that takes it, drawn as it would
+// stand afterwards.
+type wasteRow struct {
+	planner.WasteLot
+	Picture template.HTML
+	After   string
+}
+
+func wasteRows(lots []planner.WasteLot, carboys []inventory.Carboy) []wasteRow {
+	rows := make([]wasteRow, len(lots))
+	for i, lot := range lots {
+		rows[i].WasteLot = lot
+		for _, c := range carboys {
+			if c.Code == lot.Carboy && c.SizeUL > 0 {
+				c.ContentUL += int64(lot.Volume / chem.Microlitre)
+				rows[i].Picture = drawCarboy(c, 40)
+				rows[i].After = percentText(chem.Fraction(float64(c.ContentUL)/float64(c.SizeUL))) + " full after this run"
+			}
+		}
+	}
+	return rows
+}
+
+// riskWords says what the draws of the whole run say. Nothing is said of what
+// was not assessed but that.
+func riskWords(r planner.Risk) []string {
+	if r.Draws == 0 {
+		return []string{"The chance of running short is not assessed."}
+	}
+	words := []string{fmt.Sprintf("Drawn %d times with seed %d: the product comes to %s, in nine runs of ten between %s and %s.",
+		r.Draws, r.Seed, massText(r.MassMedian), massText(r.MassLow), massText(r.MassHigh))}
+	if r.TargetMet >= 0 {
+		words = append(words, "What is wanted is reached in "+chanceText(r.TargetMet)+" of runs.")
+	}
+	if r.RunEnough >= 0 {
+		words = append(words, "Everything suffices in "+chanceText(r.RunEnough)+" of runs"+decides(r)+".")
+	}
+	if r.WeighFirst != "" {
+		words = append(words, "Weighing bottle "+r.WeighFirst+" first takes the chance of running short from "+
+			chanceText(r.WeighBefore)+" to "+chanceText(r.WeighAfter)+".")
+	}
+	if r.ScaleFor90 > 0 {
+		words = append(words, "With the same charge "+massText(r.ScaleFor90)+" can be promised with "+with("90", "%")+" certainty.")
+	}
+	return words
+}
+
+func decides(r planner.Risk) string {
+	if r.Decides == "" {
+		return ""
+	}
+	return "; what decides it is " + r.Decides
+}
+
+// paperCheck says whether a printed sheet still holds.
+type paperCheck struct {
+	Printed string
+	Current bool
+}
+
+func checkPaper(printed string, plan *planner.Plan) *paperCheck {
+	if printed == "" || plan == nil {
+		return nil
+	}
+	return &paperCheck{printed, printed == plan.Revision}
+}

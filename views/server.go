@@ -1,0 +1,119 @@
+// Package views shows the lab to people: pages that a server renders and htmx
+// shortens the way to, drawings that are computed from the numbers beside them,
+// papers to print, and the plan as JSON.
+//
+// A page is a typed value that embeds frame; a handler reads the request, calls
+// one function of the planner or the stock records, and renders the value with
+// the template of its name. The same address answers a whole page or, when htmx
+// asks for a part of it, the block of that name. Everything works without
+// JavaScript.
+//
+// No chemistry and no SQL live here: numbers come from the planner and are only
+// rounded for the eye.
+package views
+
+import (
+	"context"
+	"errors"
+	"log/slog"
+	"net/http"
+	"time"
+
+	"github.com/gin-gonic/gin"
+
+	"stillroom/inventory"
+	"stillroom/planner"
+	"stillroom/planner/reckoner"
+	"stillroom/static"
+)
+
+// Lab is what the pages ask of the stock records.
+type Lab interface {
+	// Shelf returns the present picture of the stock.
+	Shelf(ctx context.Context) (*inventory.Shelf, error)
+	// AddRun puts a run on the slate and returns its number.
+	AddRun(ctx context.Context, run inventory.Run) (int64, error)
+}
+
+// Config is what a Server needs. Lab, Plan and Today must be set.
+type Config struct {
+	Lab Lab
+	// Plan makes a plan for a request; planner.MakePlan in the program.
+	Plan    func(planner.Request, *inventory.Shelf) (*planner.Plan, error)
+	Recipes []*planner.Recipe
+	Sums    []reckoner.Sum
+	// Today gives the present day of the lab.
+	Today func() inventory.Date
+	// Log takes what went wrong; nil means the default logger.
+	Log *slog.Logger
+}
+
+// Server answers the pages. It is safe for use by several requests at once.
+type Server struct {
+	Config
+	sets    templateSets
+	meters  *meters
+	handler http.Handler
+}
+
+// New checks the configuration, reads the templates and joins the routes.
+func New(c Config) (*Server, error) {
+	if c.Lab == nil || c.Plan == nil || c.Today == nil {
+		return nil, errors.New("views: Lab, Plan and Today have to be set")
+	}
+	if c.Log == nil {
+		c.Log = slog.Default()
+	}
+	sets, err := parseTemplates()
+	if err != nil {
+		return nil, err
+	}
+	s := &Server{Config: c, sets: sets, meters: newMeters()}
+	s.handler = secured(s.routes())
+	return s, nil
+}
+
+// ServeHTTP implements http.Handler.
+func (s *Server) ServeHTTP(w http.ResponseWriter, r *http.Request) { s.handler.ServeHTTP(w, r) }
+
+// routes is the whole list of addresses.
+func (s *Server) routes() http.Handler {
+	gin.SetMode(gin.ReleaseMode)
+	e := gin.New()
+	e.HandleMethodNotAllowed = true
+	e.Use(s.recovered, s.measured)
+
+	e.GET("/", redirectTo("/slate"))
+	e.GET("/slate", s.page(s.showSlate))
+
+	e.GET("/runs", redirectTo("/slate"))
+	e.GET("/runs/new", s.page(s.newRun))
+	e.POST("/runs/new", s.page(s.addRun))
+	e.GET("/runs/:id", s.page(s.showRun))
+	e.GET("/runs/:id/explain/:what", s.page(s.explain))
+
+	e.GET(static.Root+"*file", gin.WrapH(static.Handler()))
+	e.GET("/healthz", s.page(s.health))
+	e.GET("/metrics", gin.WrapH(s.meters.handler()))
+
+	e.NoRoute(s.page(func(*gin.Context) error { return errNoPage }))
+	e.NoMethod(s.page(func(*gin.Context) error { return errNoMethod }))
+	return e
+}
+
+func redirectTo(address string) gin.HandlerFunc {
+	return func(c *gin.Context) { c.Redirect(http.StatusSeeOther, address) }
+}
+
+// health answers as long as the stock can be read.
+func (s *Server) health(c *gin.Context) error {
+	ctx, cancel := context.WithTimeout(c.Request.Context(), 5*time.Second)
+	defer cancel()
+	if _, err := s.Lab.Shelf(ctx); err != nil {
+		s.Log.Error("health", "cause", err)
+		c.String(http.StatusServiceUnavailable, "the stock can't be read\n")
+		return nil
+	}
+	c.String(http.StatusOK, "ok\n")
+	return nil
+}
