@@ -9,7 +9,7 @@ import (
 )
 
 //go:embed data/ghs_statements.csv data/ghs_classes.csv data/ghs_mixture_rules.csv
-//go:embed data/incompatibility.csv data/incompatibility_codes.csv data/substance_groups.csv
+//go:embed data/incompatibility.csv data/incompatibility_more.csv data/incompatibility_codes.csv data/substance_groups.csv
 //go:embed data/waste_rules.csv data/regulated_precursors.csv data/substance_hazards.csv
 var hazardFiles embed.FS
 
