@@ -47,16 +47,16 @@ func listedGroups(name string) ([]int, bool) {
 
 var substanceGroups = sync.OnceValue(func() map[string][]int {
 	byKey := map[string][]int{}
-	for _, row := range hazardRows("substance_groups.csv") {
+	for _, row := range readTable("substance_groups.csv") {
 		var groups []int
-		for g := range strings.FieldsSeq(row["epa_groups"]) {
+		for g := range strings.FieldsSeq(row.text("epa_groups")) {
 			n, err := strconv.Atoi(g)
 			if err != nil {
 				panic("chem: substance_groups.csv: group " + g)
 			}
 			groups = append(groups, n)
 		}
-		byKey[substanceKey(row["substance_id"])] = groups
+		byKey[substanceKey(row.text("substance_id"))] = groups
 	}
 	return byKey
 })
@@ -71,16 +71,16 @@ type chartRow struct {
 
 var epaChart = sync.OnceValue(func() []chartRow {
 	var rows []chartRow
-	for _, row := range hazardRows("incompatibility.csv") {
-		if row["chart"] != "EPA" {
+	for _, row := range readTable("incompatibility.csv") {
+		if row.text("chart") != "EPA" {
 			continue
 		}
-		a, errA := strconv.Atoi(row["group_a"])
-		b, errB := strconv.Atoi(row["group_b"])
+		a, errA := strconv.Atoi(row.text("group_a"))
+		b, errB := strconv.Atoi(row.text("group_b"))
 		if errA != nil || errB != nil {
-			panic("chem: incompatibility.csv: groups " + row["group_a"] + ", " + row["group_b"])
+			panic("chem: incompatibility.csv: groups " + row.text("group_a") + ", " + row.text("group_b"))
 		}
-		rows = append(rows, chartRow{a, b, row["group_a_name"], row["group_b_name"], strings.Fields(row["codes"]), row["note"], row["source"]})
+		rows = append(rows, chartRow{a, b, row.text("group_a_name"), row.text("group_b_name"), strings.Fields(row.text("codes")), row.text("note"), row.text("source")})
 	}
 	return rows
 })
@@ -180,9 +180,9 @@ func gravity(codes []string) int {
 
 var codeMeanings = sync.OnceValue(func() map[string]string {
 	meaning := map[string]string{}
-	for _, row := range hazardRows("incompatibility_codes.csv") {
-		if strings.HasPrefix(row["chart"], "EPA") {
-			meaning[row["code"]] = row["meaning"]
+	for _, row := range readTable("incompatibility_codes.csv") {
+		if strings.HasPrefix(row.text("chart"), "EPA") {
+			meaning[row.text("code")] = row.text("meaning")
 		}
 	}
 	return meaning

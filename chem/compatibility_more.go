@@ -23,14 +23,14 @@ type supplementRow struct {
 var supplementRows = sync.OnceValue(func() []supplementRow {
 	var rows []supplementRow
 	for _, file := range []string{"incompatibility.csv", "incompatibility_more.csv"} {
-		for _, row := range hazardRows(file) {
-			a, okA := sides[row["group_a_name"]]
-			b, okB := sides[row["group_b_name"]]
-			if row["chart"] != "SUP" || !okA || !okB || surroundings[row["group_b_name"]] {
+		for _, row := range readTable(file) {
+			a, okA := sides[row.text("group_a_name")]
+			b, okB := sides[row.text("group_b_name")]
+			if row.text("chart") != "SUP" || !okA || !okB || surroundings[row.text("group_b_name")] {
 				continue
 			}
-			rows = append(rows, supplementRow{a, b, row["group_a_name"], row["group_b_name"],
-				strings.Fields(row["codes"]), row["note"], row["source"]})
+			rows = append(rows, supplementRow{a, b, row.text("group_a_name"), row.text("group_b_name"),
+				strings.Fields(row.text("codes")), row.text("note"), row.text("source")})
 		}
 	}
 	return rows

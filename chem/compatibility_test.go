@@ -64,16 +64,16 @@ func TestIncompatibleReactantsUnknown(t *testing.T) {
 // Every wording of the supplementary rows has its predicate.
 func TestSupplementSides(t *testing.T) {
 	for _, file := range []string{"incompatibility.csv", "incompatibility_more.csv"} {
-		for _, row := range hazardRows(file) {
-			if row["chart"] != "SUP" {
+		for _, row := range readTable(file) {
+			if row.text("chart") != "SUP" {
 				continue
 			}
-			for _, name := range []string{row["group_a_name"], row["group_b_name"]} {
+			for _, name := range []string{row.text("group_a_name"), row.text("group_b_name")} {
 				if sides[name] == nil {
 					t.Errorf("no predicate for %q", name)
 				}
 			}
-			for code := range strings.FieldsSeq(row["codes"]) {
+			for code := range strings.FieldsSeq(row.text("codes")) {
 				if codeMeanings()[code] == "" {
 					t.Errorf("no meaning for code %q", code)
 				}

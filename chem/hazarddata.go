@@ -1,40 +1,9 @@
 package chem
 
 import (
-	"embed"
-	"encoding/csv"
-	"strconv"
 	"strings"
 	"sync"
 )
-
-//go:embed data/ghs_statements.csv data/ghs_classes.csv data/ghs_mixture_rules.csv
-//go:embed data/incompatibility.csv data/incompatibility_more.csv data/incompatibility_codes.csv data/substance_groups.csv
-//go:embed data/waste_rules.csv data/regulated_precursors.csv data/substance_hazards.csv
-var hazardFiles embed.FS
-
-// hazardRows reads one embedded hazard table as rows by column name. It panics
-// if the table is broken, which a test would have shown.
-func hazardRows(name string) []map[string]string {
-	f, err := hazardFiles.Open("data/" + name)
-	if err != nil {
-		panic("chem: " + err.Error())
-	}
-	defer f.Close()
-	records, err := csv.NewReader(f).ReadAll()
-	if err != nil {
-		panic("chem: " + name + ": " + err.Error())
-	}
-	rows := make([]map[string]string, 0, len(records)-1)
-	for _, rec := range records[1:] {
-		row := make(map[string]string, len(rec))
-		for i, column := range records[0] {
-			row[column] = rec[i]
-		}
-		rows = append(rows, row)
-	}
-	return rows
-}
 
 // substanceKey reduces a name to its letters and digits, so that "1-Pentanol",
 // "1-pentanol" and the row identity "1-pentanol" are one.
@@ -58,12 +27,11 @@ type mixtureRule struct {
 
 var mixtureRules = sync.OnceValue(func() []mixtureRule {
 	var rules []mixtureRule
-	for _, row := range hazardRows("ghs_mixture_rules.csv") {
-		r := mixtureRule{id: row["rule_id"], kind: row["rule_type"], ingredient: row["ingredient_category"],
-			result: row["result_category"], condition: row["condition"], source: row["source"]}
-		r.low, _ = strconv.ParseFloat(row["lower_limit"], 64)
-		high, err := strconv.ParseFloat(row["upper_limit"], 64)
-		r.high, r.hasHigh = high, err == nil
+	for _, row := range readTable("ghs_mixture_rules.csv") {
+		r := mixtureRule{id: row.text("rule_id"), kind: row.text("rule_type"), ingredient: row.text("ingredient_category"),
+			result: row.text("result_category"), condition: row.text("condition"), source: row.text("source")}
+		r.low, _ = row.number("lower_limit")
+		r.high, r.hasHigh = row.number("upper_limit")
 		rules = append(rules, r)
 	}
 	return rules

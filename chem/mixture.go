@@ -128,12 +128,10 @@ type mixPart struct {
 	Ingredient
 	percent float64
 	// limited is the per cent that specific limits count.
-	limited  float64
-	classes  []HazardClass
-	limits   []specificLimit
-	acute    []AcuteEstimate
-	mAcute   float64
-	mChronic float64
+	limited float64
+	classes []HazardClass
+	limits  []specificLimit
+	acute   []AcuteEstimate
 }
 
 func (m *mixture) read(ingredients []Ingredient) error {
@@ -165,13 +163,11 @@ func (m *mixture) add(in Ingredient) {
 	if in.LimitShare > 0 {
 		p.limited *= float64(in.LimitShare)
 	}
-	for _, text := range in.Hazard.Classes {
-		c, ok := ParseHazardClass(text)
-		if !ok {
-			m.note("%s: classification %q not understood; read the supplier's sheet", in.Name, text)
-			continue
+	p.classes = in.Hazard.HazardClasses()
+	for _, c := range p.classes {
+		if _, ok := LabelElementsOf(c); !ok {
+			m.note("%s: classification %q not understood; read the supplier's sheet", in.Name, c)
 		}
-		p.classes = append(p.classes, c)
 	}
 	limits, acute, bad := parseSpecificLimits(in.Hazard.SCL)
 	for _, text := range bad {
@@ -179,7 +175,6 @@ func (m *mixture) add(in Ingredient) {
 	}
 	p.limits = limits
 	p.acute = append(append(p.acute, in.Estimates...), acute...)
-	p.mAcute, p.mChronic = p.mFactors()
 	m.parts = append(m.parts, p)
 }
 

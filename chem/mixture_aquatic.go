@@ -5,28 +5,6 @@ import (
 	"strings"
 )
 
-// mFactors reads "M=10" or "M=10; M=1": the acute and the chronic factor. A
-// single one counts for both. 0 means that the record has none.
-func (p mixPart) mFactors() (acute, chronic float64) {
-	var values []float64
-	for item := range strings.SplitSeq(p.Hazard.MFactor, ";") {
-		item = strings.TrimSpace(item)
-		if cut := strings.LastIndexAny(item, "= "); cut >= 0 {
-			item = item[cut+1:]
-		}
-		if x, ok := limitNumber(item); ok && x > 0 {
-			values = append(values, x)
-		}
-	}
-	switch len(values) {
-	case 0:
-		return 0, 0
-	case 1:
-		return values[0], values[0]
-	}
-	return values[0], values[1]
-}
-
 // aquatic classifies hazards to the aquatic environment by the summation method
 // (CLP Annex I 4.1.3.5.5, Tables 4.1.1 and 4.1.2): shares weighted by M-factors
 // and by 10 for each step of category, 25 % being the limit; the first category
@@ -38,11 +16,11 @@ func (m *mixture) aquatic() {
 	var assumed []string
 	for _, p := range m.parts {
 		if c, ok := p.class("Aquatic Acute"); ok {
-			a := p.factored(c, p.mAcute, &assumed)
+			a := p.factored(c, p.Hazard.MAcute, &assumed)
 			acute[c.Category[0]-'1'] += a
 		}
 		if c, ok := p.class("Aquatic Chronic"); ok {
-			chronic[c.Category[0]-'1'] += p.factored(c, p.mChronic, &assumed)
+			chronic[c.Category[0]-'1'] += p.factored(c, p.Hazard.MChronic, &assumed)
 			if atLeast(p.percent, ruleLimit("AQ-002")) || c.Category == "1" {
 				plain += p.percent
 			}

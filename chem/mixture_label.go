@@ -156,7 +156,10 @@ func pictogramsOf(classes []HazardClass) []string {
 
 func keepsExclamation(c HazardClass, classes []HazardClass, shown map[string]bool) bool {
 	e, _ := LabelElementsOf(c)
-	if !slices.Contains(e.Pictograms, "GHS07") || shown["GHS06"] {
+	switch {
+	case c.Name == "Ozone":
+		return true // the precedences are between health hazards
+	case !slices.Contains(e.Pictograms, "GHS07") || shown["GHS06"]:
 		return false
 	}
 	irritant := c.Name == "Skin Irrit." || c.Name == "Eye Irrit."

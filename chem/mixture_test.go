@@ -33,15 +33,14 @@ func withSCL(in Ingredient, scl string) Ingredient {
 // tableIngredient takes the classification from the embedded hazard table.
 func tableIngredient(t *testing.T, id string, percent float64) Ingredient {
 	t.Helper()
-	for _, r := range hazardRows("substance_hazards.csv") {
-		if r["id"] == id {
-			in := exampleIngredient(r["name"], percent, r["classification"])
-			in.Hazard.SCL, in.State = r["scl"], r["state_20C"]
-			if r["m_acute"] != "" {
-				in.Hazard.MFactor = "M=" + r["m_acute"] + "; M=" + r["m_chronic"]
-			}
-			if r["euh"] != "" {
-				in.Hazard.EUH = strings.Fields(r["euh"])
+	for _, r := range readTable("substance_hazards.csv") {
+		if r.text("id") == id {
+			in := exampleIngredient(r.text("name"), percent, r.text("classification"))
+			in.Hazard.SCL, in.State = r.text("scl"), r.text("state_20C")
+			in.Hazard.MAcute, _ = r.number("m_acute")
+			in.Hazard.MChronic, _ = r.number("m_chronic")
+			if r.text("euh") != "" {
+				in.Hazard.EUH = strings.Fields(r.text("euh"))
 			}
 			return in
 		}
@@ -272,25 +271,25 @@ func TestClassifyMixtureBadInput(t *testing.T) {
 // Every classification and specific limit of the embedded table can be read,
 // and every class but the gases under pressure has its label elements.
 func TestHazardTableReads(t *testing.T) {
-	for _, r := range hazardRows("substance_hazards.csv") {
-		if r["classification"] == "" {
+	for _, r := range readTable("substance_hazards.csv") {
+		if r.text("classification") == "" {
 			continue
 		}
-		for item := range strings.SplitSeq(r["classification"], "; ") {
+		for item := range strings.SplitSeq(r.text("classification"), "; ") {
 			c, ok := ParseHazardClass(item)
 			if !ok {
-				t.Errorf("%s: %q can't be read", r["id"], item)
+				t.Errorf("%s: %q can't be read", r.text("id"), item)
 				continue
 			}
 			if _, ok := LabelElementsOf(c); !ok {
-				t.Errorf("%s: no label elements for %v", r["id"], c)
+				t.Errorf("%s: no label elements for %v", r.text("id"), c)
 			}
 			if _, ok := Statement(c.Code); !ok {
-				t.Errorf("%s: no words for %s", r["id"], c.Code)
+				t.Errorf("%s: no words for %s", r.text("id"), c.Code)
 			}
 		}
-		if _, _, bad := parseSpecificLimits(r["scl"]); len(bad) > 0 {
-			t.Errorf("%s: limits %q can't be read", r["id"], bad)
+		if _, _, bad := parseSpecificLimits(r.text("scl")); len(bad) > 0 {
+			t.Errorf("%s: limits %q can't be read", r.text("id"), bad)
 		}
 	}
 }
@@ -298,18 +297,18 @@ func TestHazardTableReads(t *testing.T) {
 // The signal words and pictograms of the embedded table are those that Annex VI
 // of CLP prints; LabelOf derives them from the classes.
 func TestLabelOfTable(t *testing.T) {
-	for _, r := range hazardRows("substance_hazards.csv") {
+	for _, r := range readTable("substance_hazards.csv") {
 		var classes []HazardClass
-		for item := range strings.SplitSeq(r["classification"], "; ") {
+		for item := range strings.SplitSeq(r.text("classification"), "; ") {
 			if c, ok := ParseHazardClass(item); ok {
 				classes = append(classes, c)
 			}
 		}
-		want := strings.FieldsFunc(r["pictograms"], func(r rune) bool { return r == ';' || r == ' ' })
+		want := strings.FieldsFunc(r.text("pictograms"), func(r rune) bool { return r == ';' || r == ' ' })
 		slices.Sort(want)
 		got := LabelOf(classes)
-		if got.Signal != r["signal_word"] || !slices.Equal(got.Pictograms, want) {
-			t.Errorf("%s: %s %v, table has %s %v", r["id"], got.Signal, got.Pictograms, r["signal_word"], want)
+		if got.Signal != r.text("signal_word") || !slices.Equal(got.Pictograms, want) {
+			t.Errorf("%s: %s %v, table has %s %v", r.text("id"), got.Signal, got.Pictograms, r.text("signal_word"), want)
 		}
 	}
 }

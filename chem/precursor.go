@@ -59,14 +59,14 @@ func (row purchaseRow) over(w Fraction) bool {
 
 var purchaseRows = sync.OnceValue(func() []purchaseRow {
 	var rows []purchaseRow
-	for _, r := range hazardRows("regulated_precursors.csv") {
-		row := purchaseRow{key: substanceKey(r["substance_id"])}
-		unit := r["threshold_unit"]
+	for _, r := range readTable("regulated_precursors.csv") {
+		row := purchaseRow{key: substanceKey(r.text("substance_id"))}
+		unit := r.text("threshold_unit")
 		if strings.HasPrefix(unit, "% w/w (above)") {
-			row.above, _ = strconv.ParseFloat(r["threshold"], 64)
+			row.above, _ = strconv.ParseFloat(r.text("threshold"), 64)
 		}
-		row.note = PurchaseNote{r["jurisdiction"], r["instrument"], r["list_entry"], strings.TrimSpace(r["threshold"] + " " + unit),
-			r["meaning_for_purchase"], r["other_note"], r["flag"], r["source"]}
+		row.note = PurchaseNote{r.text("jurisdiction"), r.text("instrument"), r.text("list_entry"), strings.TrimSpace(r.text("threshold") + " " + unit),
+			r.text("meaning_for_purchase"), r.text("other_note"), r.text("flag"), r.text("source")}
 		rows = append(rows, row)
 	}
 	return rows

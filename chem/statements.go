@@ -41,8 +41,8 @@ func StatementLine(code string) string {
 
 var statements = sync.OnceValue(func() map[string]string {
 	byCode := map[string]string{}
-	for _, row := range hazardRows("ghs_statements.csv") {
-		byCode[strings.ReplaceAll(row["code"], " ", "")] = row["statement"]
+	for _, row := range readTable("ghs_statements.csv") {
+		byCode[strings.ReplaceAll(row.text("code"), " ", "")] = row.text("statement")
 	}
 	return byCode
 })
@@ -145,21 +145,21 @@ func baseCode(code string) string {
 
 var labelElements = sync.OnceValue(func() map[string]LabelElements {
 	byClass := map[string]LabelElements{}
-	for _, row := range hazardRows("ghs_classes.csv") {
-		e := LabelElements{Signal: row["signal_word"]}
-		for p := range strings.SplitSeq(row["pictogram"], ";") {
+	for _, row := range readTable("ghs_classes.csv") {
+		e := LabelElements{Signal: row.text("signal_word")}
+		for p := range strings.SplitSeq(row.text("pictogram"), ";") {
 			if p = strings.TrimSpace(p); p != "" {
 				e.Pictograms = append(e.Pictograms, p)
 			}
 		}
 		for _, column := range []string{"p_prevention_clp", "p_response_clp", "p_storage_clp", "p_disposal_clp"} {
-			e.P = append(e.P, strings.Fields(row[column])...)
+			e.P = append(e.P, strings.Fields(row.text(column))...)
 		}
-		name := row["clp_abbreviation"]
+		name := row.text("clp_abbreviation")
 		if strings.HasPrefix(name, "Press. Gas") {
 			name = "Press. Gas"
 		}
-		for code := range strings.SplitSeq(row["h_code"], ";") {
+		for code := range strings.SplitSeq(row.text("h_code"), ";") {
 			byClass[name+"|"+strings.TrimSpace(code)] = e
 		}
 	}

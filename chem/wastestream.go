@@ -24,10 +24,10 @@ func WasteStreams() []WasteStream { return wasteStreams() }
 
 var wasteStreams = sync.OnceValue(func() []WasteStream {
 	var streams []WasteStream
-	for _, row := range hazardRows("waste_rules.csv") {
-		if row["category"] == "stream" {
-			streams = append(streams, WasteStream{row["stream_or_item"], row["applies_when"], row["code_us"], row["code_eu"],
-				row["text"], row["caution"], row["source"]})
+	for _, row := range readTable("waste_rules.csv") {
+		if row.text("category") == "stream" {
+			streams = append(streams, WasteStream{row.text("stream_or_item"), row.text("applies_when"), row.text("code_us"), row.text("code_eu"),
+				row.text("text"), row.text("caution"), row.text("source")})
 		}
 	}
 	return streams

@@ -262,8 +262,11 @@ type HazardNote struct {
 	Basis  string
 	Limits []string // exposure limits, or "no data"
 	Formed bool     // arises in the run
-	// P are the precautionary statements.
+	// P are the codes of the precautionary statements.
 	P []string
+	// Notes are cautions that belong to the classification: what is unknown,
+	// what was assumed, what suppliers add.
+	Notes []string
 }
 
 // Metrics are the green metrics of the run.

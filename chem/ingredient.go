@@ -1,0 +1,93 @@
+package chem
+
+import (
+	"slices"
+	"strings"
+)
+
+// IngredientOf returns a substance as an ingredient of a mixture, with what its
+// record knows. A nil substance, or one without a classification, is unknown.
+func IngredientOf(name string, s *Substance, w Fraction) Ingredient {
+	if s == nil {
+		return Ingredient{Name: name, Fraction: w}
+	}
+	in := Ingredient{Name: name, CAS: s.CAS, Fraction: w, Hazard: s.Hazard, Known: s.Hazard.Assessed || s.NotClassified(),
+		State: s.State, LimitShare: chromateShare(s)}
+	a := s.Hazard.Acute
+	add := func(route string, value float64) {
+		if value > 0 && w.Percent() >= ruleLimit("AT-047") {
+			in.Estimates = append(in.Estimates, AcuteEstimate{Route: route, Value: value})
+		}
+	}
+	add(Oral, a.Oral)
+	add(Dermal, a.Dermal)
+	switch a.InhalationForm {
+	case "gas":
+		add(InhaledGas, a.Inhalation)
+	case "vapour":
+		add(InhaledVapour, a.Inhalation)
+	case "dust/mist":
+		add(InhaledDust, a.Inhalation)
+	}
+	return in
+}
+
+// NotClassified reports a record that says, from memory, that common suppliers
+// don't classify the substance. It is a statement, unlike a missing record, but
+// an unverified one.
+func (s *Substance) NotClassified() bool {
+	return len(s.Hazard.Classes) == 0 && (s.Hazard.Basis == "none" || s.Hazard.Basis == "not classified")
+}
+
+// chromateShare is the part of a chromium(VI) compound's mass that note 3 of
+// CLP Annex VI counts: chromate ion. 0 for everything else.
+func chromateShare(s *Substance) Fraction {
+	if !strings.Contains(s.Hazard.Notes, "3") || !isChromateVI(Reactant{Name: s.Name}) {
+		return 0
+	}
+	f, err := ParseFormula(s.Formula)
+	if err != nil || f.MolarMass() <= 0 {
+		return 0
+	}
+	ion, err := ParseFormula("CrO4^2-")
+	if err != nil {
+		return 0
+	}
+	// CrO3 binds water to become chromate, so its share may exceed its mass.
+	return Fraction(f.Count("Cr") * float64(ion.MolarMass()) / float64(f.MolarMass()))
+}
+
+// HazardClasses returns the classes of a record with category and code apart.
+func (h HazardRecord) HazardClasses() []HazardClass {
+	var classes []HazardClass
+	for _, class := range h.Classes {
+		c, ok := ParseHazardClass(class)
+		if !ok {
+			c = HazardClass{Name: class} // a mixture or a label says that it isn't understood
+		}
+		classes = append(classes, c)
+	}
+	return classes
+}
+
+// ReactantOf returns a substance as the compatibility chart sees it.
+func ReactantOf(s *Substance) Reactant {
+	groups := slices.Clone(s.ReactiveGroups)
+	r := ReactantNamed(s.Name, s.Formula, groups...)
+	for _, name := range s.Synonyms {
+		if listed, ok := listedGroups(name); ok && !r.Assessed {
+			r.Groups, r.Assessed = listed, true
+		}
+	}
+	return r
+}
+
+// IncompatiblePairs returns the pairs of substances that must not meet: see
+// IncompatibleReactants.
+func IncompatiblePairs(subs []*Substance) []Incompatibility {
+	var rs []Reactant
+	for _, s := range subs {
+		rs = append(rs, ReactantOf(s))
+	}
+	return IncompatibleReactants(rs)
+}

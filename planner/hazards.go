@@ -1,0 +1,374 @@
+package planner
+
+import (
+	"fmt"
+	"slices"
+	"strings"
+
+	"stillroom/chem"
+)
+
+// The three places a hazard note speaks of besides steps.
+const (
+	AsStored = "as stored"
+	InWaste  = "waste"
+)
+
+// Words for where a classification came from.
+const (
+	basisNoData     = "no data: not assessed, read the supplier's sheet"
+	basisUnverified = "from memory, unverified: read the supplier's sheet"
+	basisCalculated = "calculated by the UN GHS mixture rules from the ingredients; physical hazards not determined, taken from the worst ingredient"
+	noLimit         = "no data"
+)
+
+// NoteHazards says what in a run can hurt, in the order of the papers: every
+// stock form at its strength, what is in each vessel at the fullest moment of
+// each step, layer by layer, what is formed on the way, and the waste lots.
+// What has no record gets a note that says so.
+func NoteHazards(needs []Need, steps []StepReport, waste []WasteLot) []HazardNote {
+	var notes []HazardNote
+	stored := map[string]bool{}
+	for _, n := range needs {
+		if n.Count {
+			continue
+		}
+		notes = append(notes, storedNotes(n)...)
+		stored[n.Substance] = true
+		for _, d := range n.Draws {
+			stored[d.Form.Name] = true
+		}
+	}
+	notes = append(notes, formedNotes(steps, stored)...)
+	for _, s := range steps {
+		notes = append(notes, vesselNotes(s)...)
+	}
+	for _, w := range waste {
+		if note, ok := mixtureNote(InWaste, w.Stream, w.Contains); ok {
+			notes = append(notes, note)
+		}
+	}
+	return notes
+}
+
+// storedNotes speak of each stock form drawn; of the substance itself where
+// nothing is drawn.
+func storedNotes(n Need) []HazardNote {
+	if len(n.Draws) == 0 {
+		return []HazardNote{substanceNote(AsStored, n.Substance, n.CAS)}
+	}
+	var notes []HazardNote
+	seen := map[string]bool{}
+	for _, d := range n.Draws {
+		if seen[d.Form.Name] {
+			continue
+		}
+		seen[d.Form.Name] = true
+		note := formNote(n, d)
+		note.What = d.Form.Name
+		notes = append(notes, note)
+	}
+	return notes
+}
+
+// formNote classifies a stock form at the high end of its strength, which is the
+// end for hazards. A solution in water is a mixture; the impurity of a reagent
+// that nobody named is not.
+func formNote(n Need, d Draw) HazardNote {
+	strength := chem.Fraction(max(d.Form.AssayHigh, d.Bottle.LotAssay))
+	if !strings.EqualFold(d.Form.Diluent, "water") || strength <= 0 || strength >= 1 {
+		return substanceNote(AsStored, hydrateName(n, d), n.CAS)
+	}
+	solute := substance(n.Substance, n.CAS)
+	water := substance("water", "")
+	got, err := chem.ClassifyMixture([]chem.Ingredient{
+		chem.IngredientOf(n.Substance, solute, strength),
+		chem.IngredientOf("water", water, 1-strength),
+	})
+	if err != nil || solute == nil {
+		return unknownNote(AsStored, d.Form.Name)
+	}
+	note := noteOf(AsStored, d.Form.Name, got)
+	note.Limits = limits(solute)
+	if solute.Hazard.Unverified {
+		note.Basis = basisUnverified
+	}
+	return note
+}
+
+// hydrateName finds the record of the hydrate that a form is, if there is one.
+func hydrateName(n Need, d Draw) string {
+	if d.Form.HydrateWaters == 0 {
+		return n.Substance
+	}
+	for _, suffix := range hydrateSuffixes {
+		if strings.Contains(d.Form.Name, suffix) {
+			if name := n.Substance + " " + suffix; substance(name, "") != nil {
+				return name
+			}
+		}
+	}
+	return n.Substance
+}
+
+var hydrateSuffixes = []string{"hemihydrate", "monohydrate", "dihydrate", "trihydrate", "tetrahydrate", "pentahydrate",
+	"hexahydrate", "heptahydrate", "octahydrate", "nonahydrate", "decahydrate", "dodecahydrate"}
+
+// formedNotes speak of what arises in the run: contents and gases that no need
+// brings. Ions and the products of a run that have no record say "no data".
+func formedNotes(steps []StepReport, stored map[string]bool) []HazardNote {
+	seen := map[string]bool{}
+	for name := range stored {
+		if s := substance(name, ""); s != nil {
+			seen[s.Name] = true
+		}
+		seen[name] = true
+	}
+	var notes []HazardNote
+	add := func(step, name string) {
+		key := name
+		if s := substance(name, ""); s != nil {
+			key = s.Name
+		}
+		if name == "" || seen[key] {
+			return
+		}
+		seen[key] = true
+		note := substanceNote(step, name, "")
+		note.Formed = true
+		notes = append(notes, note)
+	}
+	for _, s := range steps {
+		for _, a := range s.Adds {
+			if r := substance(a.Substance, ""); r != nil {
+				seen[r.Name] = true
+			}
+			seen[a.Substance] = true
+		}
+		for _, c := range s.Contents {
+			add(s.Name, c.Substance)
+		}
+		add(s.Name, s.GasOf)
+	}
+	return notes
+}
+
+// vesselNotes classify each liquid or solid phase of a step's contents. Layers
+// are apart, because each is a mixture by itself.
+func vesselNotes(s StepReport) []HazardNote {
+	var phases []string
+	byPhase := map[string][]Content{}
+	for _, c := range s.Contents {
+		if _, ok := byPhase[c.Phase]; !ok {
+			phases = append(phases, c.Phase)
+		}
+		byPhase[c.Phase] = append(byPhase[c.Phase], c)
+	}
+	var notes []HazardNote
+	for _, phase := range phases {
+		if phase == "gas" {
+			continue
+		}
+		if note, ok := mixtureNote(s.Name, phaseName(phase, len(phases)), byPhase[phase]); ok {
+			notes = append(notes, note)
+		}
+	}
+	return notes
+}
+
+func phaseName(phase string, phases int) string {
+	switch {
+	case phase == "solid":
+		return "solid"
+	case phases == 1:
+		return phase + " contents"
+	}
+	return phase + " layer"
+}
+
+// mixtureNote classifies contents by mass; false where there is nothing.
+func mixtureNote(at, what string, contents []Content) (HazardNote, bool) {
+	total := chem.Mass(0)
+	for _, c := range contents {
+		total += max(c.Mass, 0)
+	}
+	if !(total > 0) {
+		return HazardNote{}, false
+	}
+	var ingredients []chem.Ingredient
+	for _, c := range contents {
+		if c.Mass > 0 {
+			ingredients = append(ingredients, chem.IngredientOf(c.Substance, substance(c.Substance, ""), chem.Fraction(c.Mass/total)))
+		}
+	}
+	got, err := chem.ClassifyMixture(ingredients)
+	if err != nil {
+		return unknownNote(at, what), true
+	}
+	note := noteOf(at, what+": "+shares(contents, total), got)
+	if note.Signal == "" && got.Unknown > 0 {
+		note.Basis = basisNoData + fmt.Sprintf(" (%.3g %% of it)", got.Unknown.Percent())
+	}
+	return note, true
+}
+
+// shares writes contents from the largest, down to one per cent.
+func shares(contents []Content, total chem.Mass) string {
+	sorted := slices.Clone(contents)
+	slices.SortStableFunc(sorted, func(a, b Content) int {
+		if a.Mass != b.Mass {
+			if a.Mass > b.Mass {
+				return -1
+			}
+			return 1
+		}
+		return strings.Compare(a.Substance, b.Substance)
+	})
+	var words []string
+	for _, c := range sorted {
+		if percent := 100 * float64(c.Mass/total); percent >= 1 {
+			words = append(words, fmt.Sprintf("%s %.0f %%", c.Substance, percent))
+		}
+	}
+	return strings.Join(words, ", ")
+}
+
+// noteOf turns a classified mixture into a note, with its physical hazards as
+// those of the worst ingredient.
+func noteOf(at, what string, c chem.Classification) HazardNote {
+	var classes []chem.HazardClass
+	for _, text := range append(slices.Clone(c.Physical), c.Classes...) {
+		if class, ok := chem.ParseHazardClass(text); ok {
+			classes = append(classes, class)
+		}
+	}
+	label := chem.LabelOf(classes)
+	note := HazardNote{At: at, What: what, Signal: label.Signal, Pictograms: label.Pictograms, P: label.P,
+		Statements: label.Statements, Basis: basisCalculated, Limits: []string{noLimit}, Notes: c.Notes}
+	for _, class := range classes {
+		note.Classes = append(note.Classes, class.String())
+	}
+	for _, s := range c.Statements { // supplemental ones
+		if strings.HasPrefix(s, "EUH") {
+			note.Statements = append(note.Statements, s)
+		}
+	}
+	return note
+}
+
+// substanceNote is the note of a substance by itself.
+func substanceNote(at, name, cas string) HazardNote {
+	s := substance(name, cas)
+	if s == nil || !s.Hazard.Assessed && !s.NotClassified() {
+		return unknownNote(at, name)
+	}
+	classes := s.Hazard.HazardClasses()
+	label := chem.LabelOf(classes)
+	note := HazardNote{At: at, What: name, Signal: label.Signal, Pictograms: label.Pictograms, Statements: label.Statements,
+		P: label.P, Limits: limits(s), Basis: basis(s)}
+	for _, c := range classes {
+		note.Classes = append(note.Classes, c.String())
+	}
+	for _, code := range s.Hazard.EUH {
+		note.Statements = append(note.Statements, chem.StatementLine(code))
+	}
+	if s.Hazard.SupplierAdditions != "" {
+		note.Notes = append(note.Notes, "suppliers add: "+s.Hazard.SupplierAdditions)
+	}
+	return note
+}
+
+func basis(s *chem.Substance) string {
+	switch {
+	case s.NotClassified():
+		return "not classified, " + basisUnverified
+	case s.Hazard.Unverified:
+		return basisUnverified
+	}
+	return s.Hazard.Basis
+}
+
+func limits(s *chem.Substance) []string {
+	if s == nil || s.Hazard.Limits == "" {
+		return []string{noLimit}
+	}
+	var list []string
+	for l := range strings.SplitSeq(s.Hazard.Limits, ";") {
+		list = append(list, strings.TrimSpace(l))
+	}
+	return list
+}
+
+func unknownNote(at, what string) HazardNote {
+	return HazardNote{At: at, What: what, Basis: basisNoData, Limits: []string{noLimit}}
+}
+
+// substance finds the record of a substance, by CAS number first; nil without.
+func substance(name, cas string) *chem.Substance {
+	if cas != "" {
+		if s, ok := chem.SubstanceByCAS(cas); ok {
+			return s
+		}
+	}
+	if s, ok := chem.LookupSubstance(name); ok {
+		return s
+	}
+	return nil
+}
+
+// reactant is a substance as the compatibility chart sees it.
+func reactant(name, formula string) chem.Reactant {
+	if s := substance(name, ""); s != nil {
+		return chem.ReactantOf(s)
+	}
+	return chem.ReactantNamed(name, formula)
+}
+
+// PairsOf returns what must never meet out of everything a run brings together:
+// what it needs, adds, forms and throws away.
+func PairsOf(needs []Need, steps []StepReport) []chem.Incompatibility {
+	var rs []chem.Reactant
+	seen := map[string]bool{}
+	add := func(name, formula string) {
+		r := reactant(name, formula)
+		if name == "" || seen[r.Name] {
+			return
+		}
+		seen[r.Name] = true
+		rs = append(rs, r)
+	}
+	for _, n := range needs {
+		if !n.Count {
+			add(n.Substance, n.Formula)
+		}
+	}
+	for _, s := range steps {
+		for _, c := range s.Contents {
+			add(c.Substance, c.Formula)
+		}
+	}
+	return chem.IncompatibleReactants(rs)
+}
+
+// CarriersFor groups the bottles that a plan draws from: bottles that must not
+// meet travel apart, within the limits.
+func CarriersFor(needs []Need, limits CarrierLimits) ([]Carrier, error) {
+	var items []CarrierItem
+	var rs []chem.Reactant
+	seen := map[string]bool{}
+	for _, n := range needs {
+		for _, d := range n.Draws {
+			if n.Count || seen[d.Bottle.Code] {
+				continue
+			}
+			seen[d.Bottle.Code] = true
+			gross := d.Mass + d.Leaves + chem.Mass(d.Bottle.TareUG)*chem.Microgram
+			items = append(items, CarrierItem{Code: d.Bottle.Code, Mass: gross, Walk: d.Place.Walk})
+			rs = append(rs, reactant(n.Substance, n.Formula))
+		}
+	}
+	return GroupCarriers(items, func(i, j int) bool {
+		_, apart := chem.CarryApart(rs[i], rs[j])
+		return apart
+	}, limits)
+}
