@@ -1,7 +1,6 @@
 package chem
 
 import (
-	"fmt"
 	"slices"
 	"strings"
 	"sync"
@@ -13,6 +12,7 @@ type Formation struct {
 	State                 string // s, l, g or aq
 	Enthalpy              MolarEnergy
 	Source                string
+	hill                  string // formula in Hill order, for comparison
 }
 
 var formations = sync.OnceValue(func() []Formation {
@@ -25,6 +25,7 @@ var formations = sync.OnceValue(func() []Formation {
 		list = append(list, Formation{
 			Species: row.text("species"), Formula: row.text("formula"), CAS: row.text("cas"), State: row.text("state"),
 			Enthalpy: MolarEnergy(h) * KilojoulePerMole, Source: row.text("source"),
+			hill: mustFormula(row.text("formula")).Hill(),
 		})
 	}
 	return list
@@ -42,9 +43,10 @@ var elementStates = map[string]string{
 
 // FormationEnthalpy returns the standard enthalpy of formation at 25 °C of a
 // species by name, CAS number or formula ("SO4^2-"), in a state (s, l, g, aq).
-// With an empty state the species must be tabulated in one state only, except
-// that an ion is taken in water. Ions stand on the scale on which H+(aq) is
-// zero. Where isomers share a formula the error names them; it wraps ErrNoData.
+// With an empty state an ion is taken in water and anything else in the first of
+// s, l, g, aq that is tabulated, which is its normal state at 25 °C. Ions stand
+// on the scale on which H⁺(aq) is zero. Where isomers share a formula the error
+// names them; it wraps ErrNoData.
 func FormationEnthalpy(species, state string) (MolarEnergy, error) {
 	f, err := FormationOf(species, state)
 	return f.Enthalpy, err
@@ -52,44 +54,81 @@ func FormationEnthalpy(species, state string) (MolarEnergy, error) {
 
 // FormationOf is FormationEnthalpy with the row it came from.
 func FormationOf(species, state string) (Formation, error) {
-	of := fmt.Sprintf("enthalpy of formation of %s", species)
+	of := "enthalpy of formation of " + species
 	if state != "" {
 		of += " (" + state + ")"
 	}
-	want := formulaKey(species)
-	if f, ok := elementFormation(want, state); ok {
-		return f, nil
+	found := formationsOf(species)
+	if len(found) == 0 {
+		return Formation{}, &DataError{Of: of, Err: ErrNoData, Remedy: "give its enthalpy of formation in kJ/mol"}
 	}
-	if state == "" && strings.ContainsAny(want, "+-") {
-		state = "aq"
+	if names := speciesNames(found); len(names) > 1 {
+		return Formation{}, &DataError{Of: of, Err: ErrNoData, Limit: "it may be " + strings.Join(names, " or "), Remedy: "name the substance"}
+	}
+	for _, wanted := range []string{state, "s", "l", "g", "aq"} {
+		for _, f := range found {
+			if f.State == wanted {
+				return f, nil
+			}
+		}
+		if state != "" {
+			break
+		}
+	}
+	return Formation{}, &DataError{Of: of, Err: ErrNoData, Limit: "tabulated as " + statesOf(found), Remedy: "take that state or give its enthalpy of formation in kJ/mol"}
+}
+
+// formationsOf returns all rows of a species, in every state.
+func formationsOf(species string) []Formation {
+	key, hill := formulaKey(species), ""
+	if formula, err := ParseFormula(species); err == nil {
+		hill = formula.Hill()
+		key = hill
 	}
 	var found []Formation
+	if reference, ok := elementStates[key]; ok {
+		found = append(found, Formation{Species: key, Formula: key, State: reference, Source: "zero by definition: element in its reference state"})
+	}
 	for _, f := range formations() {
-		if f.named(species, want) && (state == "" || f.State == state) {
+		if f.named(species) || (hill != "" && f.hill == hill && !hasState(found, f)) {
 			found = append(found, f)
 		}
 	}
-	switch {
-	case len(found) == 1:
-		return found[0], nil
-	case len(found) == 0:
-		return Formation{}, &DataError{Of: of, Err: ErrNoData, Limit: statesOf(species, want), Remedy: "give its enthalpy of formation in kJ/mol"}
-	}
-	return Formation{}, &DataError{Of: of, Err: ErrNoData, Limit: "it may be " + formationNames(found), Remedy: "name the substance and its state"}
+	return found
 }
 
-// named says whether a species is this one by name, number or formula.
-func (f Formation) named(species, formula string) bool {
-	return strings.EqualFold(f.Species, strings.TrimSpace(species)) || (f.CAS != "" && f.CAS == species) || formulaKey(f.Formula) == formula
+// hasState says whether an element's reference row is listed already.
+func hasState(found []Formation, f Formation) bool {
+	return len(found) > 0 && found[0].Formula == f.hill && found[0].State == f.State
 }
 
-// elementFormation is zero for an element in its reference state.
-func elementFormation(formula, state string) (Formation, bool) {
-	reference, ok := elementStates[formula]
-	if !ok || (state != "" && state != reference) {
-		return Formation{}, false
+// named says whether a word is the name or number of this species.
+func (f Formation) named(word string) bool {
+	word = strings.TrimSpace(word)
+	return strings.EqualFold(f.Species, word) || (f.CAS != "" && f.CAS == word)
+}
+
+// speciesNames lists the different species among rows; an element counts as
+// its own name.
+func speciesNames(list []Formation) []string {
+	var names []string
+	for _, f := range list {
+		if f.Formula != f.Species && !slices.Contains(names, f.Species) {
+			names = append(names, f.Species)
+		}
 	}
-	return Formation{Species: formula, Formula: formula, State: reference, Source: "zero by definition: element in its reference state"}, true
+	return names
+}
+
+// statesOf lists the states of rows.
+func statesOf(list []Formation) string {
+	var states []string
+	for _, f := range list {
+		if !slices.Contains(states, f.State) {
+			states = append(states, f.State)
+		}
+	}
+	return strings.Join(states, ", ")
 }
 
 // formulaKey brings ways to write a formula together: carets, dots for water
@@ -97,28 +136,6 @@ func elementFormation(formula, state string) (Formation, bool) {
 func formulaKey(formula string) string {
 	key := strings.NewReplacer("^", "", " ", "", "*", "·", "−", "-", "–", "-").Replace(strings.TrimSpace(formula))
 	return strings.ReplaceAll(key, ".", "·")
-}
-
-// statesOf lists the states in which a species is tabulated.
-func statesOf(species, formula string) string {
-	var states []string
-	for _, f := range formations() {
-		if f.named(species, formula) && !slices.Contains(states, f.State) {
-			states = append(states, f.State)
-		}
-	}
-	if len(states) == 0 {
-		return ""
-	}
-	return "tabulated as " + strings.Join(states, ", ")
-}
-
-func formationNames(list []Formation) string {
-	names := make([]string, len(list))
-	for i, f := range list {
-		names[i] = fmt.Sprintf("%s (%s)", f.Species, f.State)
-	}
-	return strings.Join(names, ", ")
 }
 
 // A HeatPart is one ingredient of a mixture whose heat capacity is wanted.
