@@ -88,9 +88,6 @@ func (v Vat) Degas(carbon Amount, p Pressure) (Degassed, error) {
 		return Degassed{}, err
 	}
 	one, two := b.carbonIons(pH)
-	if held == 0 {
-		one, two = 0, 0
-	}
 	left := min(total, held+Concentration(one+two))
 	return Degassed{pH, Amount(float64(total-left) * float64(v.Volume)), left}, nil
 }

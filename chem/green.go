@@ -11,11 +11,12 @@ func AtomEconomy(e Equation, product string) (Fraction, error) {
 	if err != nil {
 		return 0, err
 	}
-	var in, out MolarMass
+	var in, out, all MolarMass
 	for _, t := range e.Left {
 		in += t.Formula.MolarMass() * MolarMass(t.Coefficient)
 	}
 	for _, t := range e.Right {
+		all += t.Formula.MolarMass() * MolarMass(t.Coefficient)
 		if t.Species == product || t.Formula.Hill() == want.Hill() {
 			out += t.Formula.MolarMass() * MolarMass(t.Coefficient)
 		}
@@ -23,9 +24,9 @@ func AtomEconomy(e Equation, product string) (Fraction, error) {
 	switch {
 	case out == 0:
 		return 0, fmt.Errorf("atom economy: %q isn't on the right side of the equation", product)
-	case !(in > 0) || out > in*(1+1e-6):
-		return 0, fmt.Errorf("atom economy: the equation doesn't balance; %.6g g/mol go in and %.6g g/mol of %s come out",
-			in.GramsPerMole(), out.GramsPerMole(), product)
+	case !(in > 0) || all > in*(1+1e-6) || all < in*(1-1e-6):
+		return 0, fmt.Errorf("atom economy: the equation doesn't balance; %.6g g/mol go in and %.6g g/mol come out",
+			in.GramsPerMole(), all.GramsPerMole())
 	}
 	return Fraction(out / in), nil
 }
