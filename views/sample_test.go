@@ -7,6 +7,7 @@ import (
 	"stillroom/chem"
 	"stillroom/inventory"
 	"stillroom/planner"
+	"stillroom/planner/reckoner"
 )
 
 // sampleToday is the day on which every test page is made.
@@ -94,9 +95,26 @@ func sampleRecipes() []*planner.Recipe {
 // plan.
 func newSampleServer(t testing.TB) *Server {
 	t.Helper()
-	s, err := New(Config{Lab: newSampleLab(), Plan: samplePlan, Recipes: sampleRecipes(), Today: func() inventory.Date { return sampleToday }})
+	s, err := New(Config{Lab: newSampleLab(), Plan: samplePlan, Recipes: sampleRecipes(), Sums: sampleSums(), Today: func() inventory.Date { return sampleToday }})
 	if err != nil {
 		t.Fatal(err)
 	}
 	return s
+}
+
+// sampleSums is one sum that adds nothing to chemistry, for the form around it.
+func sampleSums() []reckoner.Sum {
+	return []reckoner.Sum{{
+		Name: "amount", Title: "Amount of substance", Group: "Amounts", About: "How many moles a mass is.",
+		Keys:    []reckoner.Key{{Name: "mass", Label: "mass", Hint: "50 g"}, {Name: "purity", Label: "purity", Hint: "98 %", Optional: true}},
+		Example: []string{"mass=50 g"}, Range: "any mass", Source: "made up",
+		Run: func(_ context.Context, a reckoner.Args) (reckoner.Answer, error) {
+			m, err := chem.ParseMass(a["mass"])
+			if err != nil {
+				return reckoner.Answer{}, err
+			}
+			return reckoner.Answer{Sum: "amount", Results: []reckoner.Result{{Name: "amount", Value: m.Grams() / 98.0785, Unit: "mol"}},
+				Derivation: chem.Derivation{Formula: "n = m / M", Inserted: "n = 50 g / 98.08 g/mol"}}, nil
+		},
+	}}
 }

@@ -92,6 +92,16 @@ func (s *Server) routes() http.Handler {
 	e.GET("/runs/:id", s.page(s.showRun))
 	e.GET("/runs/:id/explain/:what", s.page(s.explain))
 
+	e.GET("/shelf", s.page(s.showShelf))
+	e.GET("/shelf/bottles/:code", s.page(s.showBottle))
+	e.GET("/recipes", s.page(s.showRecipes))
+	e.GET("/recipes/:name", s.page(s.showRecipe))
+	e.GET("/shortfalls", s.page(s.showShortfalls))
+	e.GET("/buying", s.page(s.showBuying))
+	e.GET("/waste", s.page(s.showWaste))
+	e.GET("/reckoner", s.page(s.showReckoner))
+	e.GET("/reckoner/:sum", s.page(s.showSum))
+
 	e.GET(static.Root+"*file", gin.WrapH(static.Handler()))
 	e.GET("/healthz", s.page(s.health))
 	e.GET("/metrics", gin.WrapH(s.meters.handler()))
