@@ -19,6 +19,14 @@ type Request struct {
 	Certainty chem.Fraction
 	// Off lists hidden needs switched off, by their key.
 	Off []string
+	// Store is the store whose bottles may be used; 0 means the run's, or the
+	// first. Leave lists further stores from which there is leave to take.
+	Store int64
+	Leave []int64
+	// Free lists earmarks, by ID, that are taken as freed.
+	Free []int64
+	// Batches splits the run into equal batches; 0 means as few as the ware allows.
+	Batches int
 }
 
 // Plan is the answer to a Request against a shelf: everything that is shown,
@@ -100,6 +108,8 @@ type Need struct {
 	Hidden bool
 	Key    string
 	Why    string // reason of a hidden need, in words with its arithmetic
+	// Parts are the hidden charges in it, also where others are listed.
+	Parts []HiddenPart
 
 	OnShelf     chem.Mass // pure, in fit bottles, before anybody's earmarks
 	Earmarked   chem.Mass // pure, promised to other runs
@@ -114,7 +124,27 @@ type Need struct {
 	CoveredOn   inventory.Date // for Late: when cover arrives
 	Draws       []Draw
 	Barred      []Barred
-	Derivation  chem.Derivation
+	BarredMore  int // barred bottles beyond those listed
+	// Spares are bottles to have at hand, because without them the chance of
+	// running short would exceed the lab's limit. ChanceShort counts them.
+	Spares     []Spare
+	Derivation chem.Derivation
+}
+
+// HiddenPart is a charge the recipe's text doesn't list, within a need.
+type HiddenPart struct {
+	Key, Why string
+	Step     int
+	Mass     chem.Mass
+	Pieces   float64
+}
+
+// Spare is a bottle that isn't drawn on but should be at hand.
+type Spare struct {
+	Bottle inventory.Bottle
+	Form   inventory.StockForm
+	Place  inventory.Place
+	Why    string
 }
 
 // Draw is an amount to be taken out of one bottle.
@@ -149,6 +179,7 @@ type StepDraw struct {
 type Barred struct {
 	Bottle inventory.Bottle
 	Form   inventory.StockForm
+	Kind   string // "expired", "too weak", "hydrate", "promised", …
 	Why    string
 }
 
