@@ -115,6 +115,8 @@ type Need struct {
 	Earmarked   chem.Mass // pure, promised to other runs
 	Short       chem.Mass // pure, covered by nothing
 	ShortPieces float64
+	// OnShelfPieces and EarmarkedPieces are for consumables.
+	OnShelfPieces, EarmarkedPieces float64
 	// ChanceShort is the chance that what was drawn doesn't suffice; negative means not assessed.
 	ChanceShort float64
 	ChanceError float64   // its standard error
@@ -129,6 +131,8 @@ type Need struct {
 	// running short would exceed the lab's limit. ChanceShort counts them.
 	Spares     []Spare
 	Derivation chem.Derivation
+
+	buys []int // into the plan's purchases
 }
 
 // HiddenPart is a charge the recipe's text doesn't list, within a need.
@@ -267,7 +271,9 @@ type Purchase struct {
 	Arrives   inventory.Date // at the 90 % lead time if ordered today
 	InTime    bool
 	Leftover  chem.Mass
-	Why       string
+	// LeftoverPieces is for consumables.
+	LeftoverPieces float64
+	Why            string
 }
 
 // WasteLot is what goes into one waste stream.
