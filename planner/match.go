@@ -372,7 +372,7 @@ func (f *formMatch) onTheDay(b *inventory.Bottle, w0 chem.Fraction) chem.Fractio
 	if b.Received.Set() {
 		days = max(0, float64(f.req.On-b.Received))
 	}
-	w, err := agedFraction(f.form.Ageing, w0, days, chem.Celsius(f.roomC))
+	w, err := chem.AgedFraction(f.form.Ageing, w0, days, chem.Celsius(f.roomC))
 	if err != nil {
 		w = 0
 	}
