@@ -67,6 +67,53 @@ func (s *Store) migrate(ctx context.Context) error {
 	return err
 }
 
+// upgrade runs what is missing without a backup.
+func (s *Store) upgrade(ctx context.Context) error {
+	m, err := s.migrator()
+	if err != nil {
+		return err
+	}
+	_, err = m.Up(ctx)
+	return err
+}
+
+// openAt opens a database for a restore: one without a schema is brought to the
+// schema of the backup, so that its rows fit, and upgraded afterwards.
+func openAt(ctx context.Context, o Options, version int64) (*Store, error) {
+	const doing = "restore"
+	s := &Store{options: o}
+	s.options.Now = clockOr(o.Now)
+	if o.BusyTimeout == 0 {
+		s.options.BusyTimeout = defaultBusyTimeout
+	}
+	if err := s.open(ctx); err != nil {
+		s.Close()
+		return nil, err
+	}
+	if err := s.migrateTo(ctx, version); err != nil {
+		s.Close()
+		return nil, translate(doing, err)
+	}
+	return s, nil
+}
+
+func (s *Store) migrateTo(ctx context.Context, version int64) error {
+	m, err := s.migrator()
+	if err != nil {
+		return err
+	}
+	sources := m.ListSources()
+	if last := sources[len(sources)-1].Version; version > last {
+		return &Error{Doing: "restore", Kind: ErrNewerSchema, Why: fmt.Sprintf("the backup's schema is number %d, this program knows up to %d", version, last), Would: "use the newer program"}
+	}
+	has, err := s.schemaVersion(ctx)
+	if err != nil || has >= version {
+		return err
+	}
+	_, err = m.UpTo(ctx, version)
+	return err
+}
+
 // schemaVersion returns the highest migration that ran, 0 for a new database.
 func (s *Store) schemaVersion(ctx context.Context) (int64, error) {
 	var there int

@@ -56,11 +56,9 @@ const (
 // a newer program, ErrCorrupt for a damaged one, ErrReadOnly, ErrBusy or
 // ErrUnreachable.
 func Open(ctx context.Context, o Options) (*Store, error) {
-	if o.Now == nil {
-		o.Now = time.Now
-	}
+	o.Now = clockOr(o.Now)
 	if o.BusyTimeout == 0 {
-		o.BusyTimeout = 5 * time.Second
+		o.BusyTimeout = defaultBusyTimeout
 	}
 	s := &Store{options: o}
 	if err := s.open(ctx); err != nil {
@@ -72,6 +70,15 @@ func Open(ctx context.Context, o Options) (*Store, error) {
 		return nil, translate("open", err)
 	}
 	return s, nil
+}
+
+const defaultBusyTimeout = 5 * time.Second
+
+func clockOr(now func() time.Time) func() time.Time {
+	if now == nil {
+		return time.Now
+	}
+	return now
 }
 
 func (s *Store) open(ctx context.Context) error {
