@@ -27,6 +27,7 @@ type bottlePage struct {
 	Lapsed    bool
 	Earmarks  []earmarkRow
 	Ledger    []ledgerRow
+	Count     countForm
 }
 
 // earmarkRow is a promise on the bottle's page.
@@ -37,25 +38,56 @@ type earmarkRow struct {
 	Lapsed bool
 }
 
-// ledgerRow is a line of the bottle's ledger, oldest first, with the content
+// ledgerRow is a line of the bottle's ledger, the newest first, with the content
 // after it.
 type ledgerRow struct {
-	On, Change, After, Why, Who string
+	On, Kind, Change, After, Why, Who string
+	RunID                             int64
 }
 
 // showBottle answers /shelf/bottles/:code.
 func (s *Server) showBottle(c *gin.Context) error {
-	shelf, err := s.Lab.Shelf(c.Request.Context())
+	p, err := s.findBottle(c)
 	if err != nil {
 		return err
+	}
+	return s.render(c, http.StatusOK, "bottle", p)
+}
+
+// findBottle makes the page of the bottle an address names.
+func (s *Server) findBottle(c *gin.Context) (*bottlePage, error) {
+	shelf, err := s.Lab.Load(c.Request.Context())
+	if err != nil {
+		return nil, err
 	}
 	code, err := inventory.NormalCode(c.Param("code"))
 	b, ok := shelf.BottleByCode(code)
 	if err != nil || !ok {
-		return &missing{"bottle", c.Param("code"), "Look for it by the name of what is in it, with the field at the top. " + wrongCode(err)}
+		return nil, &missing{"bottle", c.Param("code"), "Look for it by the name of what is in it, with the field at the top. " + wrongCode(err)}
 	}
 	p := s.bottlePage(shelf, b)
-	return s.render(c, http.StatusOK, "bottle", p)
+	entries, err := s.Lab.Ledger(c.Request.Context(), b.Code, ledgerLines)
+	if err != nil {
+		return nil, err
+	}
+	p.Ledger = ledgerRows(entries, p.Form.Measure)
+	return p, nil
+}
+
+// ledgerLines is how many of the last entries of the ledger a page shows.
+const ledgerLines = 50
+
+func ledgerRows(entries []inventory.Entry, measure inventory.Measure) []ledgerRow {
+	rows := make([]ledgerRow, len(entries))
+	for i, e := range entries {
+		change := stored(e.Amount, measure)
+		if e.Amount > 0 {
+			change = "+" + change
+		}
+		rows[i] = ledgerRow{On: inventory.DateOf(e.At.Time).Short(), Kind: string(e.Kind), Change: change,
+			After: stored(e.Content, measure), Why: e.Why, Who: e.ByWhom, RunID: e.RunID}
+	}
+	return rows
 }
 
 func wrongCode(err error) string {

@@ -36,7 +36,7 @@ type orderRow struct {
 
 // showBuying answers /buying.
 func (s *Server) showBuying(c *gin.Context) error {
-	shelf, err := s.Lab.Shelf(c.Request.Context())
+	shelf, err := s.Lab.Load(c.Request.Context())
 	if err != nil {
 		return err
 	}

@@ -3,6 +3,7 @@ package views
 import (
 	"context"
 	"testing"
+	"time"
 
 	"stillroom/chem"
 	"stillroom/inventory"
@@ -13,20 +14,20 @@ import (
 // sampleToday is the day on which every test page is made.
 var sampleToday = inventory.NewDate(2026, 12, 1)
 
-// sampleLab is the demonstration lab without a database: what is added stays in
-// memory.
-type sampleLab struct{ lab inventory.Lab }
-
-func newSampleLab() *sampleLab { return &sampleLab{inventory.DemoLab(sampleToday)} }
-
-func (l *sampleLab) Shelf(context.Context) (*inventory.Shelf, error) {
-	return inventory.NewShelf(l.lab), nil
-}
-
-func (l *sampleLab) AddRun(_ context.Context, r inventory.Run) (int64, error) {
-	r.ID = int64(len(l.lab.Runs) + 1)
-	l.lab.Runs = append(l.lab.Runs, r)
-	return r.ID, nil
+// newSampleLab is the demonstration lab in memory.
+func newSampleLab(t testing.TB) *inventory.Store {
+	t.Helper()
+	ctx := context.Background()
+	noon := sampleToday.Time().Add(12 * time.Hour)
+	store, err := inventory.Open(ctx, inventory.Options{Memory: true, Now: func() time.Time { return noon }})
+	if err != nil {
+		t.Fatal(err)
+	}
+	t.Cleanup(func() { store.Close() })
+	if err := store.Fill(ctx, inventory.DemoLab(sampleToday), inventory.Act{By: "test"}); err != nil {
+		t.Fatal(err)
+	}
+	return store
 }
 
 // samplePlan is a plan with every need state, made up to look at; the amounts
@@ -95,7 +96,7 @@ func sampleRecipes() []*planner.Recipe {
 // plan.
 func newSampleServer(t testing.TB) *Server {
 	t.Helper()
-	s, err := New(Config{Lab: newSampleLab(), Plan: samplePlan, Recipes: sampleRecipes(), Sums: sampleSums(), Today: func() inventory.Date { return sampleToday }})
+	s, err := New(Config{Lab: newSampleLab(t), Plan: samplePlan, Recipes: sampleRecipes(), Sums: sampleSums(), Today: func() inventory.Date { return sampleToday }})
 	if err != nil {
 		t.Fatal(err)
 	}

@@ -84,7 +84,7 @@ func lastIfNone(d inventory.Date) inventory.Date {
 // showShelf answers /shelf. A bottle's code, typed or scanned, leads straight to
 // the bottle.
 func (s *Server) showShelf(c *gin.Context) error {
-	shelf, err := s.Lab.Shelf(c.Request.Context())
+	shelf, err := s.Lab.Load(c.Request.Context())
 	if err != nil {
 		return err
 	}

@@ -36,7 +36,7 @@ type shortNeed struct {
 
 // showShortfalls answers /shortfalls.
 func (s *Server) showShortfalls(c *gin.Context) error {
-	shelf, err := s.Lab.Shelf(c.Request.Context())
+	shelf, err := s.Lab.Load(c.Request.Context())
 	if err != nil {
 		return err
 	}

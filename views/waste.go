@@ -38,7 +38,7 @@ type unfitWaste struct {
 
 // showWaste answers /waste.
 func (s *Server) showWaste(c *gin.Context) error {
-	shelf, err := s.Lab.Shelf(c.Request.Context())
+	shelf, err := s.Lab.Load(c.Request.Context())
 	if err != nil {
 		return err
 	}
