@@ -283,15 +283,28 @@ func addStepDraw(out []StepDraw, step int, part float64, x *fit) []StepDraw {
 	return out
 }
 
+// stockSum adds up what is drawn under one name.
+type stockSum struct {
+	mass, pure, water, volume float64
+	form                      string
+	noVolume                  bool
+}
+
+// dilute adds a draw that is made up before it is used: the walk-through sees
+// the made-up solution, whose density isn't known.
+func (s *stockSum) dilute(c *coverage, x *fit, mass float64) {
+	pure := mass * float64(x.share)
+	made := pure / float64(c.demand.accept.Most)
+	s.mass += made
+	s.pure += pure
+	s.water += made - pure
+	s.noVolume = true
+}
+
 // stocksOf is the composition of what is drawn, by the recipe's name of each
 // substance, for the next pass of the walk-through.
 func stocksOf(covers []coverage, asks []Ask) map[string]Stock {
-	type sum struct {
-		mass, pure, water, volume float64
-		form                      string
-		noVolume                  bool
-	}
-	sums := map[string]*sum{}
+	sums := map[string]*stockSum{}
 	for i := range covers {
 		c := &covers[i]
 		if c.demand.count {
@@ -305,10 +318,14 @@ func stocksOf(covers []coverage, asks []Ask) map[string]Stock {
 			for _, name := range namesOf(c, asks) {
 				s := sums[name]
 				if s == nil {
-					s = &sum{form: x.form.Name}
+					s = &stockSum{form: x.form.Name}
 					sums[name] = s
 				}
 				mass := d.amount / x.pure * x.content
+				if x.dilute {
+					s.dilute(c, x, mass)
+					continue
+				}
 				s.mass += mass
 				s.pure += mass * float64(x.share)
 				s.water += mass * float64(x.water)

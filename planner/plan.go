@@ -91,6 +91,14 @@ const (
 	Short
 )
 
+// String returns the state's word.
+func (s State) String() string {
+	if s < Covered || s > Short {
+		return "unknown"
+	}
+	return [...]string{"covered", "tight", "late", "unfit", "short"}[s]
+}
+
 // Need is what a run asks of one substance, summed over its charges.
 type Need struct {
 	Substance string
