@@ -149,8 +149,7 @@ func TestBadDistributions(t *testing.T) {
 }
 
 func BenchmarkNormalDraw(b *testing.B) {
-	s := NewStream(1, "x")
-	var d Dist = must(NewNormal(1, 1))
+	s, d := NewStream(1, "x"), must(NewNormal(1, 1))
 	b.ReportAllocs()
 	i := 0
 	for b.Loop() {

@@ -25,4 +25,69 @@ type Recipe struct {
 	// ProvenRuns runs; 0 if nothing is proven.
 	ProvenScale chem.Amount
 	ProvenRuns  int
+	// Controls are what keeps people from harm in every step.
+	Controls   []string
+	Substances []SubstanceNote
+	Vessels    []VesselNote
+	Reactions  []Reaction
+	Steps      []Step
+}
+
+// SubstanceNote is what a recipe says of a substance itself, because the
+// table of substances doesn't hold it or because the run treats it specially.
+type SubstanceNote struct {
+	Name, Formula, CAS string
+	// Phase is the phase it belongs to; "" means as its record says.
+	Phase   string
+	Density chem.Density
+	Boiling chem.Temperature
+	// Source says where the formula and figures come from.
+	Source string
+	at     place
+}
+
+// VesselNote is a vessel of a recipe: one piece of ware used over several steps.
+type VesselNote struct {
+	Name string
+	Ware string // kind of ware, as in inventory.Equipment
+	For  string
+	at   place
+}
+
+// Reaction is a balanced reaction between substances of the recipe.
+type Reaction struct {
+	Name     string
+	Consumes []Term
+	Forms    []Term
+	// IonsConsumed and IonsFormed are the same reaction in ions, for the
+	// enthalpy; they may be empty.
+	IonsConsumed, IonsFormed []Term
+	// Enthalpy is per mole of the first substance consumed; EnthalpySource is
+	// "" if nothing is stated.
+	Enthalpy       chem.MolarEnergy
+	EnthalpySource string
+	at             place
+}
+
+// Term is a substance with its stoichiometric number.
+type Term struct {
+	Substance string
+	Number    float64
+	at        place
+}
+
+// Step is one operation of a recipe.
+type Step struct {
+	N      int
+	Do     string // the step kind
+	Name   string
+	Vessel string
+	// Time the step takes; 0 with ForScale means that it is set for this scale.
+	Time     chem.Duration
+	ForScale bool
+	Hold     string // where one may stop: for how long and how; "" for nowhere
+	Cautions []string
+	Controls []string
+	at       place
+	spec     operation
 }

@@ -3,9 +3,12 @@ package views
 import (
 	"context"
 	"net/http"
+	"strconv"
+	"strings"
 
 	"github.com/gin-gonic/gin"
 
+	"stillroom/chem"
 	"stillroom/inventory"
 	"stillroom/planner"
 )
@@ -15,7 +18,7 @@ type newRunPage struct {
 	frame
 	Recipes []*planner.Recipe
 	Chosen  string
-	Who     string
+	Owner   string
 	Ask     askForm
 }
 
@@ -37,9 +40,8 @@ func (s *Server) newRunForm() *newRunPage {
 // that nothing comes on the slate that can't be planned at all.
 func (s *Server) addRun(c *gin.Context) error {
 	p := s.newRunForm()
-	p.Chosen, p.Who = c.PostForm("recipe"), c.PostForm("who")
+	p.Chosen, p.Owner = c.PostForm("recipe"), strings.TrimSpace(c.PostForm("owner"))
 	p.Ask, p.Faults = readAsk(c.PostForm("wanted"), c.PostForm("on"), "", s.Today())
-	act := actOf(c, "pencilled in", &p.Faults)
 	recipe, ok := s.recipeNamed(p.Chosen)
 	if !ok {
 		p.Faults = append(faults{{"recipe", "Choose one of the recipes."}}, p.Faults...)
@@ -56,13 +58,15 @@ func (s *Server) addRun(c *gin.Context) error {
 	if len(p.Faults) > 0 {
 		return s.render(c, http.StatusUnprocessableEntity, "newrun", p)
 	}
-	run, err := s.Lab.AddRun(c.Request.Context(), inventory.Run{
-		Recipe: recipe.Name, RecipeText: recipe.Text, TargetUG: micrograms(p.Ask.target), On: p.Ask.on, Owner: act.By,
-	}, act)
+	id, err := s.Lab.AddRun(c.Request.Context(), inventory.Run{
+		Recipe: recipe.Name, RecipeText: recipe.Text, TargetUG: int64(p.Ask.target/chem.Microgram + 0.5),
+		On: p.Ask.on, State: inventory.Pencilled, Owner: p.Owner,
+	})
 	if err != nil {
 		return err
 	}
-	return s.goTo(c, runAddress(run.ID))
+	c.Redirect(http.StatusSeeOther, "/runs/"+strconv.FormatInt(id, 10))
+	return nil
 }
 
 func (s *Server) recipeNamed(name string) (*planner.Recipe, bool) {
@@ -75,7 +79,7 @@ func (s *Server) recipeNamed(name string) (*planner.Recipe, bool) {
 }
 
 func (s *Server) tryPlan(ctx context.Context, recipe *planner.Recipe, ask askForm) error {
-	shelf, err := s.Lab.Load(ctx)
+	shelf, err := s.Lab.Shelf(ctx)
 	if err != nil {
 		return err
 	}

@@ -1,0 +1,214 @@
+package planner
+
+import (
+	"cmp"
+	"errors"
+	"fmt"
+	"math"
+	"slices"
+
+	"stillroom/chem"
+)
+
+// Walk walks the recipe through once at the means of everything uncertain and
+// reports what it finds. The error is a *StepError: a step that can't be done,
+// with the number that decides and the nearest thing that works.
+func (p *Program) Walk(in Conditions) (*Walk, error) {
+	if !(in.Limiting > 0) || !chem.Finite(in.Limiting) {
+		return nil, &StepError{Recipe: p.Recipe.Name, What: fmt.Sprintf("the amount of %s is %v mol", p.Recipe.Limiting, float64(in.Limiting)), Would: "give an amount above 0", Err: ErrScale}
+	}
+	w := p.Workspace(in)
+	w.report = newReporter(p)
+	if err := w.run(); err != nil {
+		return nil, err
+	}
+	return w.report.finish(w), nil
+}
+
+// Sample walks the recipe through with the uncertain quantities at the
+// quantiles u, one for each, and returns what came of it. The result belongs to
+// the workspace.
+func (p *Program) Sample(w *Workspace, u []float64) Outcome {
+	w.u, w.report = u, nil
+	err := w.run()
+	for i := range w.used {
+		w.used[i] *= w.batches
+	}
+	return Outcome{Product: chem.Mass(w.isolated * p.matter[p.product].molar * w.batches), Asks: w.used, Failed: err != nil}
+}
+
+// Run walks the recipe through at the means without a report, and returns the
+// mass of product of all batches.
+func (p *Program) Run(w *Workspace) (chem.Mass, error) {
+	w.u, w.report = nil, nil
+	err := w.run()
+	return chem.Mass(w.isolated * p.matter[p.product].molar * w.batches), err
+}
+
+// run carries out every step and balances it.
+func (w *Workspace) run() error {
+	w.reset()
+	for i := range w.p.steps {
+		w.step = &w.p.steps[i]
+		w.heat = 0
+		if w.report != nil {
+			w.report.begin(w.step)
+		}
+		if err := w.step.run.run(w); err != nil {
+			return err
+		}
+		w.vent(w.step.vessel)
+		if w.report != nil {
+			w.report.end(w)
+		}
+		if err := w.checkStep(); err != nil {
+			return err
+		}
+	}
+	return w.checkRun()
+}
+
+// finish puts the walk together.
+func (r *reporter) finish(w *Workspace) *Walk {
+	walk := r.walk
+	walk.Batches = int(w.batches)
+	walk.Balance = w.balance
+	for i := range r.asks {
+		a := r.asks[i]
+		a.Pure *= chem.Mass(w.batches)
+		a.Amount *= chem.Amount(w.batches)
+		a.Pieces *= w.batches
+		walk.Asks = append(walk.Asks, a)
+	}
+	for i := range walk.Waste {
+		walk.Waste[i].times(w.batches)
+	}
+	walk.Product = r.product(w)
+	walk.Flow = r.flowList()
+	walk.Findings = append(walk.Findings, r.p.notes...)
+	r.chooseWare(w)
+	for i := range walk.Steps {
+		walk.Time += walk.Steps[i].Time
+		if walk.Steps[i].TimeNotAssessed {
+			walk.NotAssessed++
+		}
+	}
+	return walk
+}
+
+func (d *Discard) times(x float64) {
+	d.Mass *= chem.Mass(x)
+	d.Volume *= chem.Volume(x)
+	for i := range d.Contents {
+		d.Contents[i].Amount *= chem.Amount(x)
+		d.Contents[i].Mass *= chem.Mass(x)
+		d.Contents[i].Volume *= chem.Volume(x)
+	}
+}
+
+func (r *reporter) product(w *Workspace) Product {
+	m := &r.p.matter[r.p.product]
+	return Product{
+		Substance: m.name, CAS: m.cas, Formula: m.formula.String(),
+		Amount: chem.Amount(w.isolated * w.batches), Mass: chem.Mass(w.isolated * m.molar * w.batches),
+		Arriving: chem.Amount(w.arriving * w.batches), Yield: r.p.Recipe.Yield, PerLimiting: r.p.perLimiting,
+	}
+}
+
+// flowList returns the flows in the order of places and then of mass.
+func (r *reporter) flowList() []Flow {
+	keys := make([]flowKey, 0, len(r.flows))
+	for k := range r.flows {
+		keys = append(keys, k)
+	}
+	slices.SortFunc(keys, func(a, b flowKey) int {
+		return cmp.Or(cmp.Compare(a.from, b.from), cmp.Compare(a.to, b.to), cmp.Compare(a.component, b.component))
+	})
+	var list []Flow
+	for _, k := range keys {
+		mass := r.flows[k] * r.p.matter[k.component].molar
+		if mass == 0 {
+			continue
+		}
+		from := "shelf"
+		if k.from >= 0 {
+			from = r.p.places[k.from]
+		}
+		list = append(list, Flow{From: from, To: r.p.places[k.to], Substance: r.p.matter[k.component].name, Mass: chem.Mass(mass)})
+	}
+	return list
+}
+
+// checkStep compares what the step's places hold, element by element, with what
+// they held before and what came from the shelf since.
+func (w *Workspace) checkStep() error { return w.checkTotals() }
+
+// checkRun is checkStep over the whole run.
+func (w *Workspace) checkRun() error { return w.checkTotals() }
+
+// checkTotals sums mass, charge and every element over all places and compares
+// them with what came from the shelf. It allocates nothing.
+func (w *Workspace) checkTotals() error {
+	n := len(w.p.matter)
+	sums := w.before[:len(w.p.elements)+2]
+	sizes := w.before[len(sums) : 2*len(sums)]
+	clear(sums)
+	clear(sizes)
+	totals := w.totals()
+	for c := range n {
+		m := &w.p.matter[c]
+		off := totals[c] - w.came[c]
+		size := math.Abs(totals[c]) + math.Abs(w.came[c])
+		for _, e := range m.elements {
+			sums[e.index] += off * e.count
+			sizes[e.index] += size * e.count
+		}
+		sums[len(w.p.elements)] += off * m.molar
+		sizes[len(w.p.elements)] += size * m.molar
+		sums[len(w.p.elements)+1] += off * m.charge
+		sizes[len(w.p.elements)+1] += size * math.Abs(m.charge)
+	}
+	for k := range sums {
+		if sizes[k] == 0 {
+			continue
+		}
+		error := math.Abs(sums[k]) / sizes[k]
+		w.balance = math.Max(w.balance, error)
+		if !(error <= balanceTolerance) {
+			return w.refuse(ErrUnbalanced, fmt.Sprintf("%s doesn't balance: off by %.3g of what went in", w.elementName(k), error), "mend the reactions of the step")
+		}
+	}
+	return nil
+}
+
+func (w *Workspace) elementName(k int) string {
+	switch {
+	case k < len(w.p.elements):
+		return w.p.elements[k]
+	case k == len(w.p.elements):
+		return "mass"
+	}
+	return "charge"
+}
+
+// totals sums every component over all places and phases.
+func (w *Workspace) totals() []float64 {
+	n := len(w.p.matter)
+	totals := w.sums
+	clear(totals)
+	for at := 0; at < len(w.amounts); at += n {
+		for c, x := range w.amounts[at : at+n] {
+			totals[c] += x
+		}
+	}
+	return totals
+}
+
+// IsStep returns the *StepError in err, or nil.
+func IsStep(err error) *StepError {
+	var step *StepError
+	if errors.As(err, &step) {
+		return step
+	}
+	return nil
+}

@@ -1,0 +1,178 @@
+package planner
+
+import (
+	"cmp"
+	"fmt"
+	"math"
+	"slices"
+	"strings"
+
+	"stillroom/chem"
+	"stillroom/inventory"
+)
+
+// The ware of a run: every vessel of the recipe is one piece from its first
+// step to its last, the smallest that keeps the fill limit at its fullest.
+
+// use is what a vessel of the recipe has to hold.
+type use struct {
+	vessel      int
+	first, last int     // step numbers
+	most        float64 // m3 at its fullest
+	step        int     // when that is
+	limit       float64
+	piece       int // index in the equipment; -1 for none
+}
+
+// uses gathers the peaks of a walk by vessel, in order of first use.
+func (r *reporter) uses(policy inventory.Policy) []use {
+	list := make([]use, r.p.vessels)
+	for i := range list {
+		list[i] = use{vessel: i, piece: -1}
+		list[i].limit, _ = policy.Value("fill." + strings.ReplaceAll(r.p.Recipe.Vessels[i].Ware, " ", "-"))
+	}
+	for _, k := range r.peaks {
+		u := &list[k.vessel]
+		if u.first == 0 {
+			u.first = k.step
+		}
+		u.last = k.step
+		if k.volume > u.most {
+			u.most, u.step = k.volume, k.step
+		}
+	}
+	list = slices.DeleteFunc(list, func(u use) bool { return u.first == 0 })
+	slices.SortStableFunc(list, func(a, b use) int { return cmp.Compare(a.first, b.first) })
+	return list
+}
+
+// chooseWare picks the pieces and writes them into the reports of the steps.
+func (r *reporter) chooseWare(w *Workspace) {
+	list := r.uses(w.conditions.Policy)
+	for i := range list {
+		r.pick(&list[i], list[:i], w.conditions.Equipment)
+		if list[i].piece < 0 && w.conditions.Equipment != nil {
+			r.walk.Findings = append(r.walk.Findings, r.tooSmall(&list[i], w.conditions.Equipment))
+		}
+	}
+	byVessel := map[int]use{}
+	for _, u := range list {
+		byVessel[u.vessel] = u
+	}
+	for i := range r.walk.Steps {
+		s := &r.walk.Steps[i]
+		r.describeWare(s, r.p.steps[i].vessel, byVessel, w.conditions.Equipment)
+		r.coolingOf(s, w)
+	}
+}
+
+// pick takes the smallest piece of the right kind that holds the vessel's
+// contents within the limit and is free from its first step to its last; ties
+// go to the name.
+func (r *reporter) pick(u *use, earlier []use, owned []inventory.Equipment) {
+	if u.limit <= 0 {
+		return
+	}
+	kind := r.p.Recipe.Vessels[u.vessel].Ware
+	for i, e := range owned {
+		if e.Kind != kind || float64(e.Size)*1e-9*u.limit < u.most {
+			continue
+		}
+		taken := 0
+		for _, other := range earlier {
+			if other.piece == i && other.first <= u.last && u.first <= other.last {
+				taken++
+			}
+		}
+		if taken >= max(e.Count, 1) {
+			continue
+		}
+		if u.piece < 0 || e.Size < owned[u.piece].Size || e.Size == owned[u.piece].Size && e.Name < owned[u.piece].Name {
+			u.piece = i
+		}
+	}
+}
+
+// tooSmall is the refusal of a run that fits no vessel, with the size that
+// would do and the number of batches that fit.
+func (r *reporter) tooSmall(u *use, owned []inventory.Equipment) Finding {
+	vessel := r.p.Recipe.Vessels[u.vessel]
+	f := Finding{Kind: "no-vessel-fits", Severity: Refusal, Step: u.step}
+	if u.limit <= 0 {
+		f.Kind, f.Severity = "no-fill-limit", Warning
+		f.Text = fmt.Sprintf("the policy has no fill limit for a %s, so that none was picked for %s", vessel.Ware, vessel.Name)
+		f.Would = fmt.Sprintf("add the policy row fill.%s", strings.ReplaceAll(vessel.Ware, " ", "-"))
+		return f
+	}
+	largest := 0.0
+	for _, e := range owned {
+		if e.Kind == vessel.Ware {
+			largest = math.Max(largest, float64(e.Size)*1e-9)
+		}
+	}
+	need := u.most / u.limit
+	f.Text = fmt.Sprintf("%s holds %.3g L in step %d and needs a %s of %.3g L at a fill limit of %.0f %%", vessel.Name, u.most*1e3, u.step, vessel.Ware, need*1e3, 100*u.limit)
+	switch {
+	case largest == 0:
+		f.Would = fmt.Sprintf("the lab owns no %s", vessel.Ware)
+	case largest >= need:
+		f.Would = fmt.Sprintf("all %ss that are large enough are in use at that step", vessel.Ware)
+	default:
+		n := r.walk.Batches * int(math.Ceil(need/largest))
+		f.Would = fmt.Sprintf("%d equal batches fit the %.3g L one; strips, filter papers, rinses and the time come with every batch", n, largest*1e3)
+	}
+	return f
+}
+
+func (r *reporter) describeWare(s *StepReport, vessel int, byVessel map[int]use, owned []inventory.Equipment) {
+	u, used := byVessel[vessel]
+	note := r.p.Recipe.Vessels[vessel]
+	s.Vessel = VesselReport{Name: note.Name, Kind: note.Ware, Limit: chem.Fraction(u.limit)}
+	if !used || u.piece < 0 {
+		return
+	}
+	e := owned[u.piece]
+	s.Vessel.Ware, s.Vessel.Size, s.Vessel.Fits = e.Name, chem.Volume(float64(e.Size)*1e-9), true
+	volume := 0.0
+	for _, k := range r.peaks {
+		if k.step == s.N && k.vessel == vessel {
+			volume = math.Max(volume, k.volume)
+		}
+	}
+	s.Vessel.Fill = chem.Fraction(volume) / chem.Fraction(s.Vessel.Size)
+}
+
+// coolingOf works out the shortest time of a dosed addition: the heat over what
+// the vessel's wall gives to the bath.
+func (r *reporter) coolingOf(s *StepReport, w *Workspace) {
+	if !slices.Contains(r.dosing, s.N) || s.Heat <= 0 {
+		return
+	}
+	if !(s.Vessel.Size > 0) || w.policy.heatU <= 0 || w.policy.heatGap <= 0 {
+		s.Says = append(s.Says, "shortest time of the addition: not assessed")
+		return
+	}
+	power, err := chem.CoolingPower(s.Vessel.Size, min(s.Vessel.Fill, 1), chem.Temperature(w.policy.heatGap), w.policy.heatU)
+	if err != nil {
+		s.Says = append(s.Says, "shortest time of the addition: not assessed: "+err.Error())
+		return
+	}
+	if s.Shortest, err = chem.ShortestDose(s.Heat, power); err != nil {
+		return
+	}
+	s.Says = append(s.Says, fmt.Sprintf("not faster than in %.0f min: %.3g kJ over %.3g W", math.Ceil(s.Shortest.Minutes()), s.Heat.Kilojoules(), float64(power)))
+	s.Derivations = append(s.Derivations, chem.Derivation{
+		Of: "shortest time of the addition", Formula: "t = q / (U · A · ΔT)",
+		Inserted: fmt.Sprintf("%.5g kJ / %.5g W = %.4g min", s.Heat.Kilojoules(), float64(power), s.Shortest.Minutes()),
+		Inputs: []chem.Input{
+			{Symbol: "q", Name: "heat given off", Value: s.Heat.Kilojoules(), Unit: "kJ", Source: "heat balance of the step"},
+			{Symbol: "U", Name: "heat transfer", Value: w.policy.heatU, Unit: "W/(m2 K)", Source: "policy heat.u"},
+			{Symbol: "ΔT", Name: "gap between contents and bath", Value: w.policy.heatGap, Unit: "K", Source: "policy heat.gap"},
+			{Symbol: "A", Name: "wetted wall of " + s.Vessel.Ware, Value: float64(power) / w.policy.heatU / w.policy.heatGap, Unit: "m2", Source: "sphere filled to this level"},
+		},
+		Value: s.Shortest.Minutes(), Unit: "min", Range: "valid while the reaction keeps up with the addition", Source: "METHODS h",
+	})
+	if s.Time > 0 && s.Time < s.Shortest {
+		s.Time = s.Shortest
+	}
+}
