@@ -85,8 +85,8 @@ type balance struct {
 	davies float64
 	// carbonDioxide is the concentration of dissolved CO2 where it is held by a
 	// gas above the solution; its ions then grow with pH.
-	carbonDioxide        float64
-	carbonPK1, carbonPK2 float64
+	carbonDioxide float64
+	carbonPK      [2]float64
 }
 
 // at returns the net charge at a pH; it falls with pH throughout.
@@ -99,11 +99,24 @@ func (b *balance) at(pH float64) float64 {
 		charge += float64(p.C) * meanCharge(p.PKa, p.Charge, pH, b.davies)
 	}
 	if b.carbonDioxide > 0 {
-		one := b.carbonDioxide * pow10(pH-b.carbonPK1+b.davies)
-		two := one * pow10(pH-b.carbonPK2+3*b.davies)
+		one, two := b.carbonIons(pH)
 		charge -= one + 2*two
 	}
 	return charge
+}
+
+// carbonIons returns the hydrogencarbonate and the carbonate, in mol/m³, beside
+// dissolved CO2 that a gas holds.
+func (b *balance) carbonIons(pH float64) (one, two float64) {
+	one = b.carbonDioxide * pow10(pH-b.carbonPK[0]+daviesShift(0, b.davies))
+	return one, one * pow10(pH-b.carbonPK[1]+daviesShift(-1, b.davies))
+}
+
+// daviesShift is what activities add to the logarithm of base over acid, for an
+// acid of charge z: its own z² less that of its base, each as a multiple of the
+// logarithm for one charge.
+func daviesShift(z int, davies float64) float64 {
+	return davies * float64((z-1)*(z-1)-z*z)
 }
 
 // meanCharge returns the mean charge of a protolyte's forms. davies is −log10 of
@@ -112,12 +125,7 @@ func (b *balance) at(pH float64) float64 {
 func meanCharge(pKa []float64, charge int, pH, davies float64) float64 {
 	weight, sum, lost := 1.0, 1.0, 0.0
 	for i, k := range pKa {
-		z := charge - i // of the acid of this step; its base has z − 1
-		exponent := pH - k
-		if davies != 0 {
-			exponent += davies * float64((z-1)*(z-1)-z*z)
-		}
-		weight *= pow10(exponent)
+		weight *= pow10(pH - k + daviesShift(charge-i, davies))
 		sum += weight
 		lost += weight * float64(i+1)
 		if sum > 1e100 { // keep long chains of steps from overflowing

@@ -138,6 +138,7 @@ func (x AcidExtraction) swallowed(lost Volume) error {
 type shareSolver struct {
 	ka, p, pair, dimer float64
 	n, aq, org, strong float64
+	guess              float64 // proton concentration after the last portion
 }
 
 // inWater returns the concentration of the acid in the water, all forms, at a
@@ -163,40 +164,40 @@ func (s *shareSolver) charge(h float64) float64 {
 	return h + s.strong - ionProduct/h - s.inWater(h)*s.ka/(h+s.ka)
 }
 
-// proton finds the proton concentration between pH 16 and −2 by Ridders' method
-// on its logarithm: the bracket never widens, so it always arrives.
+// slope returns the derivative of charge over h. With pairing it leaves out how
+// pairing changes, which only makes the steps towards the root shorter.
+func (s *shareSolver) slope(h float64) float64 {
+	free := s.aq*(h+s.ka) + s.org*(s.p*h+s.pair*s.ka)
+	return 1 + ionProduct/(h*h) + s.n*s.ka*(s.aq+s.org*s.p)/(free*free)
+}
+
+// proton finds the proton concentration between pH 16 and −2 by Newton steps
+// from the guess of the last portion, kept inside a bracket that shrinks with
+// every step and is halved in its logarithm where a step leaves it, so that it
+// always arrives.
 func (s *shareSolver) proton() float64 {
-	low, high := math.Log(1e-13), math.Log(1e5)
-	fLow, fHigh := s.charge(1e-13), s.charge(1e5)
-	if fLow >= 0 {
-		return 1e-13
+	low, high := 1e-13, 1e5
+	h := s.guess
+	if h == 0 {
+		h = 1e-1 // pH 4
 	}
-	if fHigh <= 0 {
-		return 1e5
-	}
-	x := math.Log(max(s.ka, 1e-6))
-	for range 100 {
-		middle := (low + high) / 2
-		f := s.charge(math.Exp(middle))
-		root := math.Sqrt(f*f - fLow*fHigh)
-		next := middle - (middle-low)*f/root
-		if math.Abs(next-x) < 1e-11 {
-			return math.Exp(next)
+	for range 200 {
+		f := s.charge(h)
+		if f > 0 {
+			high = h
+		} else {
+			low = h
 		}
-		x = next
-		g := s.charge(math.Exp(x))
-		switch {
-		case g == 0:
-			return math.Exp(x)
-		case g*f < 0 && middle < x:
-			low, fLow, high, fHigh = middle, f, x, g
-		case g*f < 0:
-			low, fLow, high, fHigh = x, g, middle, f
-		case g < 0:
-			low, fLow = x, g
-		default:
-			high, fHigh = x, g
+		next := h - f/s.slope(h)
+		if !(next > low && next < high) {
+			next = math.Sqrt(low * high)
 		}
+		if math.Abs(next-h) <= 1e-12*h {
+			h = next
+			break
+		}
+		h = next
 	}
-	return math.Exp(x)
+	s.guess = h
+	return h
 }

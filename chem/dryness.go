@@ -153,3 +153,20 @@ func singular(text string) string {
 	}
 	return strings.TrimSuffix(text, "s")
 }
+
+// HydrateCapacity returns the ceiling of what a salt binds on the way to a
+// hydrate, in gram water per gram salt,
+//
+//	n · M(water) / M(salt)
+//
+// The error wraps ErrImpossible where the hydrate isn't one of the salt.
+func HydrateCapacity(salt, hydrate Formula) (float64, error) {
+	taken := hydrate.Waters() - salt.Waters()
+	if taken <= 0 || salt.Anhydrous().Hill() != hydrate.Anhydrous().Hill() {
+		return 0, &DataError{
+			Of: fmt.Sprintf("capacity of %s as %s", salt, hydrate), Err: ErrImpossible,
+			Limit: "it is no higher hydrate of the same salt", Remedy: "give a hydrate such as Na2SO4·10H2O",
+		}
+	}
+	return taken * waterMolarMass / float64(salt.MolarMass()), nil
+}

@@ -17,7 +17,7 @@ type Formation struct {
 
 var formations = sync.OnceValue(func() []Formation {
 	var list []Formation
-	for _, row := range readTable("formation_enthalpy.csv") {
+	for _, row := range append(readTable("formation_enthalpy.csv"), readTable("formation_enthalpy_more.csv")...) {
 		h, ok := row.number("delta_f_H_kJ_mol")
 		if !ok || strings.Contains(row.text("formula"), "·nH2O") {
 			continue // entropy only, or a strength of acid that HeatOfDilution reads

@@ -69,18 +69,18 @@ func (f *Formula) read(text string, emit func(tokenKind, string)) error {
 	f.text = trimmed
 	switch {
 	case trimmed == "":
-		p.fail(0, "empty", "write one such as Na2Cr2O7·2H2O", ErrSyntax)
+		p.fail(whole, "empty", "write one such as Na2Cr2O7·2H2O", ErrSyntax)
 	case len(trimmed) > maxText:
 		f.text = trimmed[:maxText]
-		p.fail(0, "longer than 500 characters", "give one formula at a time", ErrSyntax)
+		p.fail(whole, "longer than 500 characters", "give one formula at a time", ErrSyntax)
 	case !utf8.ValidString(trimmed):
-		p.fail(0, "not valid UTF-8 text", "type it again", ErrSyntax)
+		p.fail(whole, "not valid UTF-8 text", "type it again", ErrSyntax)
 	case !p.electron():
 		p.chain(0)
 		p.tail()
 	}
 	if p.err == nil && !f.total() {
-		p.fail(0, "the numbers are too large", "use counts below two thousand million", ErrSyntax)
+		p.fail(whole, "the numbers are too large", "use counts below two thousand million", ErrSyntax)
 	}
 	if p.err != nil {
 		return p.err
@@ -305,19 +305,21 @@ func (p *formulaParser) say(kind tokenKind, text string) {
 	}
 }
 
-// fail keeps the first error; at is a place in bytes, told in characters.
+// whole stands for the whole text as the place of an error.
+const whole = -1
+
+// fail keeps the first error; at is a place in bytes, told in characters. The end
+// of the text counts as its last character.
 func (p *formulaParser) fail(at int, what, wanted string, cause error) {
 	if p.err != nil {
 		return
 	}
 	position := 0
-	if at < len(p.text) {
-		position = utf8.RuneCountInString(p.text[:at]) + 1
-	} else if at > 0 {
+	switch {
+	case at >= len(p.text):
 		position = utf8.RuneCountInString(p.text)
-	}
-	if p.text == "" || cause == ErrSyntax && len(p.text) > maxText {
-		position = 0
+	case at >= 0:
+		position = utf8.RuneCountInString(p.text[:at]) + 1
 	}
 	p.err = &FormulaError{p.formula.text, position, what, wanted, cause}
 }

@@ -55,6 +55,16 @@ func (s *SteamDistillation) warn(cas string) {
 	}
 }
 
+// SteamRatio returns the mass of a substance per mass of water in the distillate
+// from their partial pressures, p · M / (p(water) · M(water)).
+func SteamRatio(substance, water Pressure, m MolarMass) (float64, error) {
+	of := "ratio of a steam distillate"
+	if err := firstError(mustBePositive(of, "partial pressure", substance), mustBePositive(of, "partial pressure of water", water), mustBePositive(of, "molar mass", m)); err != nil {
+		return 0, err
+	}
+	return float64(substance/water) * float64(m) / waterMolarMass, nil
+}
+
 // SteamDistilling is the steam distillation of a substance with a molar mass and
 // this vapour-pressure equation.
 func (e VapourEquation) SteamDistilling(m MolarMass, p Pressure) (SteamDistillation, error) {

@@ -149,7 +149,8 @@ func TestBadDistributions(t *testing.T) {
 }
 
 func BenchmarkNormalDraw(b *testing.B) {
-	s, d := NewStream(1, "x"), must(NewNormal(1, 1))
+	s := NewStream(1, "x")
+	var d Dist = must(NewNormal(1, 1))
 	b.ReportAllocs()
 	i := 0
 	for b.Loop() {

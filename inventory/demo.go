@@ -121,7 +121,7 @@ func (d *demo) addRuns() {
 		d.lab.Runs = append(d.lab.Runs, Run{
 			ID: int64(i + 1), StoreID: demoMain, Recipe: r.recipe, TargetUG: r.grams * 1e6,
 			On: d.today.AddDays(r.days), State: r.state, Owner: r.owner,
-			Made: d.today.AddDays(r.days - 21).Time().Add(9 * time.Hour), Version: 1,
+			Made: StampOf(d.today.AddDays(r.days - 21).Time().Add(9 * time.Hour)), Version: 1,
 		})
 	}
 }
@@ -150,6 +150,7 @@ func (d *demo) addEarmarks() {
 			ID: int64(i + 1), StoreID: demoMain, BottleID: d.bottle(e.bottle), RunID: e.run,
 			Amount: e.amount, Owner: run.Owner, ForDate: run.On, Ends: d.today.AddDays(e.ends), Made: run.Made,
 		})
+		d.lab.Bottles[d.bottle(e.bottle)-1].Promised += e.amount
 	}
 }
 

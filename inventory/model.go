@@ -1,10 +1,6 @@
 package inventory
 
-import (
-	"time"
-
-	"stillroom/chem"
-)
+import "stillroom/chem"
 
 // The records below are gorm models and, at the same time, the plain values
 // the planner works on. Keys that people type are codes and names; the numeric
@@ -95,7 +91,7 @@ type BottleState string
 // The states of a bottle.
 const (
 	Sealed      BottleState = "sealed"
-	Open        BottleState = "open"
+	Opened      BottleState = "open"
 	Quarantined BottleState = "quarantined"
 	Missing     BottleState = "missing"
 	OnLoan      BottleState = "on loan"
@@ -120,6 +116,7 @@ type Bottle struct {
 	ID      int64  `gorm:"primaryKey"`
 	StoreID int64  // every hot table carries its store
 	Code    string // with its check character; unique
+	Mark    string // another number on its label, such as one from before; "" for none
 	FormID  int64
 	PlaceID int64
 	State   BottleState
@@ -130,6 +127,9 @@ type Bottle struct {
 	// measure (µg, µL, pieces). It is kept beside the ledger for speed and is
 	// changed only in the transaction that adds the ledger row.
 	Content int64
+	// Promised is the sum of the bottle's earmarks, lapsed ones included, and
+	// never more than Content.
+	Promised int64
 	// Size is what the bottle holds when full, in the same unit.
 	Size                     int64
 	TareUG                   int64 // mass of the empty bottle with its cap in µg; 0 for not known
@@ -139,7 +139,9 @@ type Bottle struct {
 	MeasuredBy               MeasuredBy
 	MeasuredOn               Date
 	Supplier, Note           string
-	Version                  int64 // counts changes, for edit clashes
+	// MergedInto is the ID of the bottle this record was merged into; 0 for none.
+	MergedInto int64
+	Version    int64 // counts changes, for edit clashes
 }
 
 // Earmark is an amount of a bottle promised to a run.
@@ -152,7 +154,7 @@ type Earmark struct {
 	Owner    string
 	ForDate  Date // the run's date
 	Ends     Date // lapses after this day unless reconfirmed
-	Made     time.Time
+	Made     Stamp
 }
 
 // Offer is a pack a supplier sells.
@@ -238,7 +240,7 @@ type Run struct {
 	On         Date   `gorm:"column:on_date"`
 	State      RunState
 	Owner      string
-	Made       time.Time
+	Made       Stamp
 	Version    int64
 }
 

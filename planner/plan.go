@@ -19,6 +19,14 @@ type Request struct {
 	Certainty chem.Fraction
 	// Off lists hidden needs switched off, by their key.
 	Off []string
+	// Store is the store whose bottles may be used; 0 means the run's, or the
+	// first. Leave lists further stores from which there is leave to take.
+	Store int64
+	Leave []int64
+	// Free lists earmarks, by ID, that are taken as freed.
+	Free []int64
+	// Batches splits the run into equal batches; 0 means as few as the ware allows.
+	Batches int
 }
 
 // Plan is the answer to a Request against a shelf: everything that is shown,
@@ -83,6 +91,14 @@ const (
 	Short
 )
 
+// String returns the state's word.
+func (s State) String() string {
+	if s < Covered || s > Short {
+		return "unknown"
+	}
+	return [...]string{"covered", "tight", "late", "unfit", "short"}[s]
+}
+
 // Need is what a run asks of one substance, summed over its charges.
 type Need struct {
 	Substance string
@@ -100,11 +116,15 @@ type Need struct {
 	Hidden bool
 	Key    string
 	Why    string // reason of a hidden need, in words with its arithmetic
+	// Parts are the hidden charges in it, also where others are listed.
+	Parts []HiddenPart
 
 	OnShelf     chem.Mass // pure, in fit bottles, before anybody's earmarks
 	Earmarked   chem.Mass // pure, promised to other runs
 	Short       chem.Mass // pure, covered by nothing
 	ShortPieces float64
+	// OnShelfPieces and EarmarkedPieces are for consumables.
+	OnShelfPieces, EarmarkedPieces float64
 	// ChanceShort is the chance that what was drawn doesn't suffice; negative means not assessed.
 	ChanceShort float64
 	ChanceError float64   // its standard error
@@ -114,7 +134,29 @@ type Need struct {
 	CoveredOn   inventory.Date // for Late: when cover arrives
 	Draws       []Draw
 	Barred      []Barred
-	Derivation  chem.Derivation
+	BarredMore  int // barred bottles beyond those listed
+	// Spares are bottles to have at hand, because without them the chance of
+	// running short would exceed the lab's limit. ChanceShort counts them.
+	Spares     []Spare
+	Derivation chem.Derivation
+
+	buys []int // into the plan's purchases
+}
+
+// HiddenPart is a charge the recipe's text doesn't list, within a need.
+type HiddenPart struct {
+	Key, Why string
+	Step     int
+	Mass     chem.Mass
+	Pieces   float64
+}
+
+// Spare is a bottle that isn't drawn on but should be at hand.
+type Spare struct {
+	Bottle inventory.Bottle
+	Form   inventory.StockForm
+	Place  inventory.Place
+	Why    string
 }
 
 // Draw is an amount to be taken out of one bottle.
@@ -149,6 +191,7 @@ type StepDraw struct {
 type Barred struct {
 	Bottle inventory.Bottle
 	Form   inventory.StockForm
+	Kind   string // "expired", "too weak", "hydrate", "promised", …
 	Why    string
 }
 
@@ -236,7 +279,9 @@ type Purchase struct {
 	Arrives   inventory.Date // at the 90 % lead time if ordered today
 	InTime    bool
 	Leftover  chem.Mass
-	Why       string
+	// LeftoverPieces is for consumables.
+	LeftoverPieces float64
+	Why            string
 }
 
 // WasteLot is what goes into one waste stream.

@@ -52,7 +52,7 @@ func measured(text string, units []unit) (float64, error) {
 	return 0, errUnit
 }
 
-func quantity[Q ~float64](units []unit, least float64) func(string) (Q, error) {
+func measuredIn[Q ~float64](units []unit, least float64) func(string) (Q, error) {
 	return func(text string) (Q, error) {
 		x, err := measured(text, units)
 		if err == nil && x < least {
@@ -63,13 +63,13 @@ func quantity[Q ~float64](units []unit, least float64) func(string) (Q, error) {
 }
 
 var (
-	readMass     = quantity[chem.Mass](massUnits, 0)
-	readVolume   = quantity[chem.Volume](volumeUnits, 0)
-	readAmount   = quantity[chem.Amount](amountUnits, 0)
-	readTime     = quantity[chem.Duration](timeUnits, 0)
-	readPressure = quantity[chem.Pressure](pressureUnits, 1)
-	readDensity  = quantity[chem.Density](densityUnits, 1e-3)
-	readMolar    = quantity[chem.MolarEnergy](energyUnits, math.Inf(-1))
+	readMass     = measuredIn[chem.Mass](massUnits, 0)
+	readVolume   = measuredIn[chem.Volume](volumeUnits, 0)
+	readAmount   = measuredIn[chem.Amount](amountUnits, 0)
+	readTime     = measuredIn[chem.Duration](timeUnits, 0)
+	readPressure = measuredIn[chem.Pressure](pressureUnits, 1)
+	readDensity  = measuredIn[chem.Density](densityUnits, 1e-3)
+	readMolar    = measuredIn[chem.MolarEnergy](energyUnits, math.Inf(-1))
 )
 
 // readTemperature reads "15 °C".

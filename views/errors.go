@@ -93,6 +93,9 @@ func (s *Server) describe(err error) *errorPage {
 	case errors.Is(err, errNoMethod):
 		return &errorPage{Status: http.StatusMethodNotAllowed, Heading: "Not in this way", Text: "This address can't be asked for in that way."}
 	}
+	if status := refusalStatus(err); status != http.StatusInternalServerError {
+		return &errorPage{Status: status, Heading: refusalHeading(status), Text: sentence(err.Error())}
+	}
 	reference := rand.Text()[:8]
 	return &errorPage{Status: http.StatusInternalServerError, Heading: "That didn't work", Reference: reference,
 		Text:  "The fault is on this side; nothing was changed.",
@@ -114,4 +117,16 @@ func (s *Server) recovered(c *gin.Context) {
 		}
 	}()
 	c.Next()
+}
+
+func refusalHeading(status int) string {
+	switch status {
+	case http.StatusNotFound:
+		return "That isn’t there"
+	case http.StatusConflict:
+		return "Somebody was first"
+	case http.StatusServiceUnavailable:
+		return "The stock records can’t be written now"
+	}
+	return "That can’t be done"
 }

@@ -5,6 +5,7 @@ import (
 	"html"
 	"html/template"
 	"math"
+	"slices"
 	"strings"
 
 	"stillroom/chem"
@@ -17,10 +18,10 @@ import (
 
 const (
 	flowWidth  = 920.0
-	flowLeft   = 330.0 // where the ribbons from the shelf begin
-	flowMiddle = 480.0
-	flowRight  = 650.0 // where the ribbons to waste and product end
-	flowSpine  = 170.0 // width of the widest step
+	flowLeft   = 400.0 // where the ribbons from the shelf begin
+	flowMiddle = 520.0
+	flowRight  = 660.0 // where the ribbons to waste and product end
+	flowSpine  = 110.0 // width of the widest step
 	flowLine   = 19.0  // height of a line of text
 )
 
@@ -127,6 +128,26 @@ func (g *flowGraph) outerOut(n flowNode) (outer []int) {
 	return outer
 }
 
+// innerIn lists the ribbons into a node that come from other steps.
+func (g *flowGraph) innerIn(n flowNode) (inner []int) {
+	for _, i := range n.in {
+		if g.nodes[g.ribbons[i].from].inside {
+			inner = append(inner, i)
+		}
+	}
+	return inner
+}
+
+// innerOut lists the ribbons out of a node that go to other steps.
+func (g *flowGraph) innerOut(n flowNode) (inner []int) {
+	for _, i := range n.out {
+		if g.nodes[g.ribbons[i].to].inside {
+			inner = append(inner, i)
+		}
+	}
+	return inner
+}
+
 // drawFlow draws the material flow of a run; nothing where there is none.
 func drawFlow(flows []planner.Flow) template.HTML {
 	g := newFlowGraph(flows)
@@ -170,11 +191,16 @@ func (d *flowDrawing) layOut() float64 {
 		if !n.inside {
 			continue
 		}
-		y += math.Max(d.room(d.outerIn(*n)), 14) + 8
+		entering, leaving := d.outerIn(*n), d.outerOut(*n)
+		y += math.Max(d.room(entering), 16) + 10
 		n.y = y
-		y += d.room(d.outerOut(*n)) + 20
-		d.spread(n.in, 1, n)
-		d.spread(n.out, 0, n)
+		y += math.Max(d.room(leaving), 6) + 18
+		// What comes from the left lies left on the bar, the lowest line first,
+		// and what leaves to the right lies right, so that no two cross.
+		slices.Reverse(entering)
+		slices.Reverse(leaving)
+		d.spread(append(entering, d.innerIn(*n)...), 1, n)
+		d.spread(append(d.innerOut(*n), leaving...), 0, n)
 	}
 	return y + 8
 }
@@ -205,26 +231,24 @@ func (d *flowDrawing) spread(ribbons []int, end int, n *flowNode) {
 	}
 }
 
+// ribbon draws what flows between two steps, into a step or out of one. It
+// leaves and enters a bar upright and a side line level.
 func (d *flowDrawing) ribbon(i int) {
 	r := d.ribbons[i]
 	from, to := d.nodes[r.from], d.nodes[r.to]
 	x0, x1 := d.place[[2]int{i, 0}], d.place[[2]int{i, 1}]
 	switch {
 	case from.inside && to.inside:
-		bow := 0.0
-		if skipped := to.y - from.y; skipped > 160 {
-			bow = math.Min(skipped/4, 120)
-		}
-		mid := (from.y + to.y) / 2
-		d.path("", d.width(i), "M%.1f %.1fC%.1f %.1f %.1f %.1f %.1f %.1f", x0, from.y, x0+bow, mid, x1+bow, mid, x1, to.y)
+		bend := (to.y - from.y) / 2
+		d.path("", d.width(i), "M%.1f %.1fC%.1f %.1f %.1f %.1f %.1f %.1f", x0, from.y, x0, from.y+bend, x1, to.y-bend, x1, to.y)
 	case to.inside:
 		y := d.lineBefore(i, to)
-		d.path("in", d.width(i), "M%.1f %.1fC%.1f %.1f %.1f %.1f %.1f %.1f", flowLeft, y, flowLeft+60, y, x1, y, x1, to.y)
-		d.text(flowLeft-8, y+4.5, "end", r.label(from.name))
+		d.path("in", d.width(i), "M%.1f %.1fC%.1f %.1f %.1f %.1f %.1f %.1f", flowLeft, y, (flowLeft+2*x1)/3, y, x1, y, x1, to.y)
+		d.text(flowLeft-8, y+4.5, "end", r.label(from.name, true))
 	case from.inside:
 		y := d.lineAfter(i, from)
-		d.path(endClass(to.name), d.width(i), "M%.1f %.1fC%.1f %.1f %.1f %.1f %.1f %.1f", x0, from.y, x0, y, flowRight-60, y, flowRight, y)
-		d.text(flowRight+8, y+4.5, "start", r.label(to.name))
+		d.path(endClass(to.name), d.width(i), "M%.1f %.1fC%.1f %.1f %.1f %.1f %.1f %.1f", x0, from.y, x0, y, (flowRight+2*x0)/3, y, flowRight, y)
+		d.text(flowRight+8, y+4.5, "start", r.label(to.name, false))
 	}
 }
 
@@ -255,14 +279,12 @@ func (d *flowDrawing) lineAfter(i int, n flowNode) float64 {
 	return y
 }
 
-// label names what flows, its mass, and where it comes from or goes if the
-// substance doesn't say so.
-func (r flowRibbon) label(end string) string {
-	what := r.substance
-	if r.others > 0 {
-		what = end
-	} else if end != r.substance && !strings.EqualFold(end, "shelf") {
-		what += " (" + end + ")"
+// label names what flows and its mass: the substance of what comes in, the place
+// of what goes out, because that is what people look for.
+func (r flowRibbon) label(end string, coming bool) string {
+	what := end
+	if r.others == 0 && (coming || end == "product") {
+		what = r.substance
 	}
 	return what + " " + massText(r.mass)
 }

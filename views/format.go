@@ -66,7 +66,7 @@ func scaled(x float64, units []scaledUnit, write func(float64, int) string) stri
 		}
 	}
 	if x == 0 {
-		return with("0", units[len(units)-2].name)
+		return with("0", units[1].name)
 	}
 	last := units[len(units)-1]
 	return with(write(x/last.size, 3), last.name)

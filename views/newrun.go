@@ -3,12 +3,9 @@ package views
 import (
 	"context"
 	"net/http"
-	"strconv"
-	"strings"
 
 	"github.com/gin-gonic/gin"
 
-	"stillroom/chem"
 	"stillroom/inventory"
 	"stillroom/planner"
 )
@@ -18,7 +15,7 @@ type newRunPage struct {
 	frame
 	Recipes []*planner.Recipe
 	Chosen  string
-	Owner   string
+	Who     string
 	Ask     askForm
 }
 
@@ -40,8 +37,9 @@ func (s *Server) newRunForm() *newRunPage {
 // that nothing comes on the slate that can't be planned at all.
 func (s *Server) addRun(c *gin.Context) error {
 	p := s.newRunForm()
-	p.Chosen, p.Owner = c.PostForm("recipe"), strings.TrimSpace(c.PostForm("owner"))
+	p.Chosen, p.Who = c.PostForm("recipe"), c.PostForm("who")
 	p.Ask, p.Faults = readAsk(c.PostForm("wanted"), c.PostForm("on"), "", s.Today())
+	act := actOf(c, "pencilled in", &p.Faults)
 	recipe, ok := s.recipeNamed(p.Chosen)
 	if !ok {
 		p.Faults = append(faults{{"recipe", "Choose one of the recipes."}}, p.Faults...)
@@ -58,15 +56,13 @@ func (s *Server) addRun(c *gin.Context) error {
 	if len(p.Faults) > 0 {
 		return s.render(c, http.StatusUnprocessableEntity, "newrun", p)
 	}
-	id, err := s.Lab.AddRun(c.Request.Context(), inventory.Run{
-		Recipe: recipe.Name, RecipeText: recipe.Text, TargetUG: int64(p.Ask.target/chem.Microgram + 0.5),
-		On: p.Ask.on, State: inventory.Pencilled, Owner: p.Owner,
-	})
+	run, err := s.Lab.AddRun(c.Request.Context(), inventory.Run{
+		Recipe: recipe.Name, RecipeText: recipe.Text, TargetUG: micrograms(p.Ask.target), On: p.Ask.on, Owner: act.By,
+	}, act)
 	if err != nil {
 		return err
 	}
-	c.Redirect(http.StatusSeeOther, "/runs/"+strconv.FormatInt(id, 10))
-	return nil
+	return s.goTo(c, runAddress(run.ID))
 }
 
 func (s *Server) recipeNamed(name string) (*planner.Recipe, bool) {
@@ -79,7 +75,7 @@ func (s *Server) recipeNamed(name string) (*planner.Recipe, bool) {
 }
 
 func (s *Server) tryPlan(ctx context.Context, recipe *planner.Recipe, ask askForm) error {
-	shelf, err := s.Lab.Shelf(ctx)
+	shelf, err := s.Lab.Load(ctx)
 	if err != nil {
 		return err
 	}

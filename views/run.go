@@ -150,7 +150,7 @@ func (p *runPage) refused(err error) error {
 
 // findRun reads the run and the recipe it was planned with.
 func (s *Server) findRun(c *gin.Context) (*inventory.Shelf, inventory.Run, *planner.Recipe, error) {
-	shelf, err := s.Lab.Shelf(c.Request.Context())
+	shelf, err := s.Lab.Load(c.Request.Context())
 	if err != nil {
 		return nil, inventory.Run{}, nil, err
 	}

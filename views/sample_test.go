@@ -3,29 +3,31 @@ package views
 import (
 	"context"
 	"testing"
+	"time"
 
 	"stillroom/chem"
 	"stillroom/inventory"
 	"stillroom/planner"
+	"stillroom/planner/reckoner"
 )
 
 // sampleToday is the day on which every test page is made.
 var sampleToday = inventory.NewDate(2026, 12, 1)
 
-// sampleLab is the demonstration lab without a database: what is added stays in
-// memory.
-type sampleLab struct{ lab inventory.Lab }
-
-func newSampleLab() *sampleLab { return &sampleLab{inventory.DemoLab(sampleToday)} }
-
-func (l *sampleLab) Shelf(context.Context) (*inventory.Shelf, error) {
-	return inventory.NewShelf(l.lab), nil
-}
-
-func (l *sampleLab) AddRun(_ context.Context, r inventory.Run) (int64, error) {
-	r.ID = int64(len(l.lab.Runs) + 1)
-	l.lab.Runs = append(l.lab.Runs, r)
-	return r.ID, nil
+// newSampleLab is the demonstration lab in memory.
+func newSampleLab(t testing.TB) *inventory.Store {
+	t.Helper()
+	ctx := context.Background()
+	noon := sampleToday.Time().Add(12 * time.Hour)
+	store, err := inventory.Open(ctx, inventory.Options{Memory: true, Now: func() time.Time { return noon }})
+	if err != nil {
+		t.Fatal(err)
+	}
+	t.Cleanup(func() { store.Close() })
+	if err := store.Fill(ctx, inventory.DemoLab(sampleToday), inventory.Act{By: "test"}); err != nil {
+		t.Fatal(err)
+	}
+	return store
 }
 
 // samplePlan is a plan with every need state, made up to look at; the amounts
@@ -94,9 +96,26 @@ func sampleRecipes() []*planner.Recipe {
 // plan.
 func newSampleServer(t testing.TB) *Server {
 	t.Helper()
-	s, err := New(Config{Lab: newSampleLab(), Plan: samplePlan, Recipes: sampleRecipes(), Today: func() inventory.Date { return sampleToday }})
+	s, err := New(Config{Lab: newSampleLab(t), Plan: samplePlan, Recipes: sampleRecipes(), Sums: sampleSums(), Today: func() inventory.Date { return sampleToday }})
 	if err != nil {
 		t.Fatal(err)
 	}
 	return s
+}
+
+// sampleSums is one sum that adds nothing to chemistry, for the form around it.
+func sampleSums() []reckoner.Sum {
+	return []reckoner.Sum{{
+		Name: "amount", Title: "Amount of substance", Group: "Amounts", About: "How many moles a mass is.",
+		Keys:    []reckoner.Key{{Name: "mass", Label: "mass", Hint: "50 g"}, {Name: "purity", Label: "purity", Hint: "98 %", Optional: true}},
+		Example: []string{"mass=50 g"}, Range: "any mass", Source: "made up",
+		Run: func(_ context.Context, a reckoner.Args) (reckoner.Answer, error) {
+			m, err := chem.ParseMass(a["mass"])
+			if err != nil {
+				return reckoner.Answer{}, err
+			}
+			return reckoner.Answer{Sum: "amount", Results: []reckoner.Result{{Name: "amount", Value: m.Grams() / 98.0785, Unit: "mol"}},
+				Derivation: chem.Derivation{Formula: "n = m / M", Inserted: "n = 50 g / 98.08 g/mol"}}, nil
+		},
+	}}
 }

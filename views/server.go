@@ -27,14 +27,6 @@ import (
 	"stillroom/static"
 )
 
-// Lab is what the pages ask of the stock records.
-type Lab interface {
-	// Shelf returns the present picture of the stock.
-	Shelf(ctx context.Context) (*inventory.Shelf, error)
-	// AddRun puts a run on the slate and returns its number.
-	AddRun(ctx context.Context, run inventory.Run) (int64, error)
-}
-
 // Config is what a Server needs. Lab, Plan and Today must be set.
 type Config struct {
 	Lab Lab
@@ -90,7 +82,23 @@ func (s *Server) routes() http.Handler {
 	e.GET("/runs/new", s.page(s.newRun))
 	e.POST("/runs/new", s.page(s.addRun))
 	e.GET("/runs/:id", s.page(s.showRun))
+	e.POST("/runs/:id", s.page(s.keepRun))
+	e.POST("/runs/:id/stand", s.page(s.moveRun))
+	e.GET("/runs/:id/promise", s.page(s.showPromise))
+	e.POST("/runs/:id/promise", s.page(s.promise))
+	e.POST("/runs/:id/release", s.page(s.release))
 	e.GET("/runs/:id/explain/:what", s.page(s.explain))
+
+	e.GET("/shelf", s.page(s.showShelf))
+	e.GET("/shelf/bottles/:code", s.page(s.showBottle))
+	e.POST("/shelf/bottles/:code/count", s.page(s.countBottle))
+	e.GET("/recipes", s.page(s.showRecipes))
+	e.GET("/recipes/:name", s.page(s.showRecipe))
+	e.GET("/shortfalls", s.page(s.showShortfalls))
+	e.GET("/buying", s.page(s.showBuying))
+	e.GET("/waste", s.page(s.showWaste))
+	e.GET("/reckoner", s.page(s.showReckoner))
+	e.GET("/reckoner/:sum", s.page(s.showSum))
 
 	e.GET(static.Root+"*file", gin.WrapH(static.Handler()))
 	e.GET("/healthz", s.page(s.health))
@@ -109,7 +117,7 @@ func redirectTo(address string) gin.HandlerFunc {
 func (s *Server) health(c *gin.Context) error {
 	ctx, cancel := context.WithTimeout(c.Request.Context(), 5*time.Second)
 	defer cancel()
-	if _, err := s.Lab.Shelf(ctx); err != nil {
+	if _, err := s.Lab.Load(ctx); err != nil {
 		s.Log.Error("health", "cause", err)
 		c.String(http.StatusServiceUnavailable, "the stock can't be read\n")
 		return nil

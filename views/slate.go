@@ -33,7 +33,7 @@ type slateRow struct {
 
 // showSlate answers /slate.
 func (s *Server) showSlate(c *gin.Context) error {
-	shelf, err := s.Lab.Shelf(c.Request.Context())
+	shelf, err := s.Lab.Load(c.Request.Context())
 	if err != nil {
 		return err
 	}

@@ -1,5 +1,9 @@
 // Package reckoner holds the bench sums: each is one function with named
 // inputs, shared by the command line and the pages.
+//
+// Sums lists them all, Reckon runs one. What a person types comes in as Args,
+// whose getters turn text into quantities and whose errors name the key. Each
+// group of sums has a file of its own.
 package reckoner
 
 import (
@@ -51,3 +55,30 @@ type Result struct {
 
 // Args are the inputs of a sum as typed, by key.
 type Args map[string]string
+
+// Sums returns all sums in the order in which they are listed.
+func Sums() []Sum {
+	var all []Sum
+	for _, group := range [][]Sum{formulaSums(), solutionSums(), phaseSums(), hazardSums(), stockSums()} {
+		all = append(all, group...)
+	}
+	return all
+}
+
+// SumByName returns the sum of a name.
+func SumByName(name string) (Sum, bool) {
+	for _, s := range Sums() {
+		if s.Name == name {
+			return s, true
+		}
+	}
+	return Sum{}, false
+}
+
+// Number returns a result that is a number.
+func Number(name string, value float64, unit string) Result {
+	return Result{Name: name, Value: value, Unit: unit}
+}
+
+// Text returns a result that is a text.
+func Text(name, text string) Result { return Result{Name: name, Text: text, IsText: true} }

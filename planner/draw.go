@@ -1,0 +1,374 @@
+package planner
+
+import (
+	"cmp"
+	"fmt"
+	"math"
+	"slices"
+
+	"stillroom/chem"
+	"stillroom/inventory"
+)
+
+// coverage is a demand with the bottles found for it.
+type coverage struct {
+	demand demand
+	found  *matches
+	alloc  allocation
+	need   Need
+	first  inventory.Date // when the first fit bottle reaches its end of life
+	coming coming
+	chance float64 // of running short with spares; negative for not assessed
+
+}
+
+// coverAll matches and allocates every demand. Demands of one substance share
+// its bottles: the strictest is served first, so that nested acceptances are
+// covered whenever that is possible at all.
+func (m *matcher) coverAll(asks []Ask, demands []demand, limiting string) []coverage {
+	covers := make([]coverage, len(demands))
+	order := make([]int, len(demands))
+	for i := range order {
+		order[i] = i
+	}
+	slices.SortStableFunc(order, func(i, j int) int { return cmp.Compare(laxity(&demands[i]), laxity(&demands[j])) })
+	prices := allocatePoints(m.policy)
+	for _, i := range order {
+		covers[i] = m.cover(asks, demands[i], prices, limiting)
+	}
+	return covers
+}
+
+// laxity is small for a strict acceptance. Substances don't compete with each
+// other, so that only the order within one matters.
+func laxity(d *demand) float64 {
+	a := d.accept
+	lax := 4 * float64(1-a.Least)
+	for _, allowed := range []bool{a.Hydrate, a.Solution, a.WithAdditive, len(a.Grades) == 0, a.Most == 0} {
+		lax += float64(b2i(allowed))
+	}
+	return lax + float64(len(a.Substitutes))
+}
+
+func (m *matcher) cover(asks []Ask, d demand, prices points, limiting string) coverage {
+	c := coverage{demand: d, found: m.match(&d), need: d.need(asks)}
+	lines := m.lines(&c, d.name == limiting || d.asksFor(asks, limiting))
+	c.first = firstLife(lines)
+	c.alloc = allocate(d.amount, lines, prices)
+	m.writeDraws(&c, asks)
+	m.writeAmounts(&c)
+	return c
+}
+
+// asksFor reports whether one of the demand's asks goes by that name.
+func (d *demand) asksFor(asks []Ask, name string) bool {
+	return slices.ContainsFunc(d.asks, func(i int) bool { return asks[i].Substance == name })
+}
+
+// lines puts fit bottles before the allocation. The limiting reagent keeps to
+// one lot, and peroxide formers of different age aren't mixed, if that is
+// possible (practice §4).
+func (m *matcher) lines(c *coverage, oneLot bool) []line {
+	lines := make([]line, len(c.found.fits))
+	for i := range c.found.fits {
+		x := &c.found.fits[i]
+		place, _ := m.shelf.Place(x.bottle.PlaceID)
+		lines[i] = line{
+			at: i, free: float64(x.free) * x.pure, all: float64(x.bottle.Content-m.dead(x)) * x.pure,
+			life: x.life, sealed: x.sealed, walk: place.Walk, code: x.bottle.Code,
+			heel: float64(m.uselessHeel(x)) * x.pure,
+		}
+		switch {
+		case oneLot:
+			lines[i].class = x.bottle.Lot
+		case x.form.PeroxideTestDays > 0 && x.sealed:
+			lines[i].class = "sealed"
+		}
+	}
+	return lines
+}
+
+// dead is what can't be poured or scraped out, in ledger units.
+func (m *matcher) dead(x *fit) int64 {
+	if x.form.Measure == inventory.ByCount {
+		return 0
+	}
+	return int64(m.unusable * float64(x.bottle.Size))
+}
+
+// uselessHeel is the remainder below which a bottle is of no use: a share of
+// its size, for liquids also a volume, which counts up to twice that share so
+// that a small bottle isn't useless from the start.
+func (m *matcher) uselessHeel(x *fit) int64 {
+	if x.form.Measure == inventory.ByCount {
+		return 0
+	}
+	heel := m.policy.value("heel.share") * float64(x.bottle.Size)
+	if x.form.Measure == inventory.ByVolume {
+		volume := m.policy.value("heel.volume") * float64(chem.Millilitre/chem.Microlitre)
+		heel = max(heel, min(volume, 2*heel))
+	}
+	return int64(heel)
+}
+
+// writeDraws turns the allocation into draws and shares them out to the steps.
+func (m *matcher) writeDraws(c *coverage, asks []Ask) {
+	c.need.Draws = make([]Draw, 0, len(c.alloc.taken))
+	parts := newSharer(c, asks)
+	for k, t := range c.alloc.taken {
+		x := &c.found.fits[t.line]
+		units := t.amount / x.pure
+		c.need.Draws = append(c.need.Draws, m.draw(c, x, t.amount, units))
+		d := &c.need.Draws[k]
+		d.Steps = parts.share(t.amount, x)
+		m.used[x.bottle.ID] += min(x.free, int64(math.Ceil(units*(1-enough))))
+	}
+}
+
+func (m *matcher) draw(c *coverage, x *fit, amount, units float64) Draw {
+	place, _ := m.shelf.Place(x.bottle.PlaceID)
+	d := Draw{Bottle: *x.bottle, Form: *x.form, Place: place, Opens: x.sealed}
+	left := max(0, float64(x.bottle.Content-m.used[x.bottle.ID])-units)
+	if c.demand.count {
+		d.Pieces, d.LeavesPieces = amount, left
+	} else {
+		d.Mass = chem.Mass(units * x.content)
+		d.Pure = chem.Mass(units * x.content * float64(x.share))
+		d.Leaves = chem.Mass(left * x.content)
+	}
+	if x.form.Measure == inventory.ByVolume {
+		d.HasVolume = true
+		d.Volume = chem.Volume(units) * chem.Microlitre
+		d.LeavesVolume = chem.Volume(left) * chem.Microlitre
+	}
+	d.Why = m.whyDraw(c, x, left)
+	d.Derivation = drawDerivation(c, x, amount, &d)
+	return d
+}
+
+// whyDraw says why this bottle and this much.
+func (m *matcher) whyDraw(c *coverage, x *fit, left float64) string {
+	var why string
+	switch {
+	case x.sealed && len(c.alloc.taken) == 1:
+		why = "the opened bottles aren't enough or there are none; this one has to be opened"
+		if len(c.found.fits) == 1 {
+			why = "the only fit bottle; it has to be opened"
+		}
+	case len(c.found.fits) == 1:
+		why = "the only fit bottle"
+	case x.sealed:
+		why = "the opened ones aren't enough"
+	case x.life.Set() && x.life == c.first:
+		why = "the first of the fit bottles to expire, " + x.life.Short()
+	default:
+		why = "least trouble of the fit bottles by expiry, opening, number and walk"
+	}
+	if left <= float64(m.dead(x))+1 {
+		why += "; finishes it"
+	}
+	if x.standsIn != "" {
+		why += "; stands in for " + c.demand.name
+	}
+	if x.dilute {
+		why += fmt.Sprintf("; stronger than asked (%.3g %%), so it is made up to %.3g %% first", x.top.Percent(), c.demand.accept.Most.Percent())
+	}
+	if x.aged {
+		why += fmt.Sprintf("; counted at %.3g %%, its strength on the day at room temperature: titrate it before use", x.strength.Percent())
+	}
+	if c.alloc.mixed && x.form.PeroxideTestDays > 0 {
+		why += "; don't pour old and fresh together"
+	}
+	return why
+}
+
+func drawDerivation(c *coverage, x *fit, amount float64, d *Draw) chem.Derivation {
+	if c.demand.count {
+		return chem.Derivation{Of: x.form.Name, Formula: "N", Value: amount, Inserted: fmt.Sprintf("%.4g", amount), Source: "share of the need taken from this bottle"}
+	}
+	out := chem.Derivation{
+		Of: x.form.Name + " out of " + x.bottle.Code, Formula: "m = mₚ / w", Unit: "g", Value: d.Mass.Grams(),
+		Source: "conversion of pure, anhydrous substance to stock by mass",
+	}
+	pure := amount
+	out.Inputs = append(out.Inputs, chem.Input{Symbol: "mₚ", Name: "pure, anhydrous " + c.demand.name + " from this bottle", Value: pure * 1e3, Unit: "g", Source: "the need, shared out between bottles"})
+	if f := x.content * float64(x.share) / x.pure; math.Abs(f-1) > 1e-9 {
+		out.Formula = "m = mₚ · f / w"
+		out.Inputs = append(out.Inputs, chem.Input{Symbol: "f", Name: "mass of " + x.standsIn + " that does the work of one of " + c.demand.name, Value: f, Source: "recipe"})
+		pure *= f
+	}
+	wSource := "low end of the label's range"
+	if x.bottle.LotAssay > 0 {
+		wSource = "assay of the lot"
+	}
+	if x.aged {
+		wSource += ", less what it loses with age until the run"
+	}
+	if a := float64(x.share / x.strength); x.form.HydrateWaters > 0 {
+		out.Formula += " / a"
+		out.Inputs = append(out.Inputs, chem.Input{Symbol: "a", Name: fmt.Sprintf("anhydrous share of the hydrate with %g H₂O", x.form.HydrateWaters), Value: a, Source: "molar masses"})
+	}
+	out.Inputs = append(out.Inputs, chem.Input{Symbol: "w", Name: "assay of " + x.form.Name, Value: float64(x.strength), Source: wSource})
+	out.Inserted = fmt.Sprintf("%.5g g / %.4g = %.5g g", pure*1e3, float64(x.share), d.Mass.Grams())
+	if d.HasVolume {
+		out.Notes = append(out.Notes, fmt.Sprintf("%.4g mL at %.4g g/mL (%s)", d.Volume.Millilitres(), x.form.DensityGML, firstOf(x.form.DensitySource, "source of the density: no data")))
+	}
+	return out
+}
+
+// writeAmounts fills in what the shelf holds, what is promised and what is
+// short.
+func (m *matcher) writeAmounts(c *coverage) {
+	n := &c.need
+	n.Barred, n.BarredMore = c.found.barred, c.found.more
+	if c.demand.count {
+		n.ShortPieces = c.alloc.short
+		n.OnShelfPieces = c.found.onShelf
+		n.EarmarkedPieces = c.found.promised
+		return
+	}
+	n.OnShelf = chem.Mass(c.found.onShelf)
+	n.Earmarked = chem.Mass(c.found.promised)
+	n.Short = chem.Mass(c.alloc.short)
+}
+
+// sharer hands draws to the charges in the order of the steps.
+type sharer struct {
+	steps []int
+	left  []float64
+	at    int
+}
+
+func newSharer(c *coverage, asks []Ask) *sharer {
+	s := &sharer{}
+	for _, i := range c.demand.asks {
+		s.steps = append(s.steps, asks[i].Step)
+		s.left = append(s.left, amountOf(asks[i]))
+	}
+	return s
+}
+
+// share gives an amount of a bottle to the next charges that still lack some.
+func (s *sharer) share(amount float64, x *fit) []StepDraw {
+	var out []StepDraw
+	for amount > 0 && s.at < len(s.steps) {
+		part := min(amount, s.left[s.at])
+		if part > 0 {
+			out = addStepDraw(out, s.steps[s.at], part, x)
+		}
+		amount -= part
+		s.left[s.at] -= part
+		if s.left[s.at] > 0 {
+			break
+		}
+		s.at++
+	}
+	return out
+}
+
+func addStepDraw(out []StepDraw, step int, part float64, x *fit) []StepDraw {
+	if len(out) == 0 || out[len(out)-1].Step != step {
+		out = append(out, StepDraw{Step: step})
+	}
+	d := &out[len(out)-1]
+	units := part / x.pure
+	if x.form.Measure == inventory.ByCount {
+		d.Pieces += part
+		return out
+	}
+	d.Mass += chem.Mass(units * x.content)
+	if x.form.Measure == inventory.ByVolume {
+		d.Volume += chem.Volume(units) * chem.Microlitre
+	}
+	return out
+}
+
+// stockSum adds up what is drawn under one name.
+type stockSum struct {
+	mass, pure, water, volume float64
+	form                      string
+	noVolume                  bool
+}
+
+// dilute adds a draw that is made up before it is used: the walk-through sees
+// the made-up solution, whose density isn't known.
+func (s *stockSum) dilute(c *coverage, x *fit, mass float64) {
+	pure := mass * float64(x.share)
+	made := pure / float64(c.demand.accept.Most)
+	s.mass += made
+	s.pure += pure
+	s.water += made - pure
+	s.noVolume = true
+}
+
+// stocksOf is the composition of what is drawn, by the recipe's name of each
+// substance, for the next pass of the walk-through.
+func stocksOf(covers []coverage, asks []Ask) map[string]Stock {
+	sums := map[string]*stockSum{}
+	for i := range covers {
+		c := &covers[i]
+		if c.demand.count {
+			continue
+		}
+		for _, d := range c.alloc.taken {
+			x := &c.found.fits[d.line]
+			if x.standsIn != "" {
+				continue
+			}
+			for _, name := range namesOf(c, asks) {
+				s := sums[name]
+				if s == nil {
+					s = &stockSum{form: x.form.Name}
+					sums[name] = s
+				}
+				mass := d.amount / x.pure * x.content
+				if x.dilute {
+					s.dilute(c, x, mass)
+					continue
+				}
+				s.mass += mass
+				s.pure += mass * float64(x.share)
+				s.water += mass * float64(x.water)
+				if x.form.DensityGML > 0 {
+					s.volume += mass / (x.form.DensityGML * 1e3)
+				} else {
+					s.noVolume = true
+				}
+			}
+		}
+	}
+	stocks := make(map[string]Stock, len(sums))
+	for name, s := range sums {
+		stock := Stock{Form: s.form, Pure: chem.Fraction(s.pure / s.mass), Water: chem.Fraction(s.water / s.mass)}
+		if !s.noVolume && s.volume > 0 {
+			stock.Density = chem.Density(s.mass / s.volume)
+		}
+		stocks[name] = stock
+	}
+	return stocks
+}
+
+// namesOf are the names the recipe uses for a demand's substance.
+func namesOf(c *coverage, asks []Ask) []string {
+	var names []string
+	for _, i := range c.demand.asks {
+		if !slices.Contains(names, asks[i].Substance) {
+			names = append(names, asks[i].Substance)
+		}
+	}
+	return names
+}
+
+// sameStocks reports whether two passes drew the same composition, to 1e-9.
+func sameStocks(a, b map[string]Stock) bool {
+	if len(a) != len(b) {
+		return false
+	}
+	for name, x := range a {
+		y, ok := b[name]
+		if !ok || x.Form != y.Form || math.Abs(float64(x.Pure-y.Pure)) > 1e-9 || math.Abs(float64(x.Water-y.Water)) > 1e-9 {
+			return false
+		}
+	}
+	return true
+}

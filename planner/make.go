@@ -1,0 +1,318 @@
+package planner
+
+import (
+	"errors"
+	"fmt"
+	"math"
+
+	"stillroom/chem"
+	"stillroom/inventory"
+)
+
+// walker is what a plan wants of a compiled recipe.
+type walker interface {
+	ScaleFor(target chem.Mass, certainty chem.Fraction, policy inventory.Policy) (Scale, error)
+	Walk(Conditions) (*Walk, error)
+}
+
+// planning holds what one plan is made from.
+type planning struct {
+	req     Request
+	shelf   *inventory.Shelf
+	program walker
+	policy  *policyTable
+	claims  map[int64]int64 // promised to earlier runs of a slate, by bottle
+
+	scale   Scale
+	batches int
+	walk    *Walk
+	asks    []Ask // the walk's, and the water of make-ups
+	stocks  map[string]Stock
+	matcher *matcher
+	covers  []coverage
+	made    []makeUp
+	found   []Finding
+}
+
+// mostPasses bounds how often the walk-through is repeated until the stocks it
+// assumed are the stocks that are drawn. Two passes do, unless the amounts of
+// the second tip the choice to another bottle.
+const mostPasses = 5
+
+// plan carries out the steps of planning in the order a chemist would.
+func (p *planning) plan() (*Plan, error) {
+	if err := p.req.check(); err != nil {
+		return nil, err
+	}
+	p.policy = newPolicyTable(p.shelf.Policy)
+	if err := p.chooseScale(); err != nil {
+		return nil, err
+	}
+	if err := p.chooseBatches(); err != nil {
+		return nil, err
+	}
+	if err := p.matchAndWalk(); err != nil {
+		return nil, err
+	}
+	return p.write()
+}
+
+func (p *planning) chooseScale() error {
+	certainty := p.req.Certainty
+	if certainty == 0 {
+		certainty = chem.Fraction(p.policy.value("risk.certainty"))
+	}
+	scale, err := p.program.ScaleFor(p.req.Target, certainty, p.shelf.Policy)
+	p.scale = scale
+	return err
+}
+
+// conditions are those of the next walk-through.
+func (p *planning) conditions() Conditions {
+	return Conditions{
+		Limiting: p.scale.Amount, Batches: p.batches, Stocks: p.stocks, Off: p.req.Off,
+		Equipment: p.shelf.Equipment, Policy: p.shelf.Policy,
+	}
+}
+
+// mostBatches is how far a run is split by itself; beyond it somebody has to
+// ask for more batches or a smaller target.
+const mostBatches = 4
+
+// noVesselFits is the kind of finding that says that a step needs ware the lab
+// doesn't own.
+const noVesselFits = "no-vessel-fits"
+
+// chooseBatches takes the number asked for, or the fewest that the ware can
+// hold.
+func (p *planning) chooseBatches() error {
+	p.batches = max(1, p.req.Batches)
+	walk, err := p.program.Walk(p.conditions())
+	if err != nil {
+		return err
+	}
+	p.walk = walk
+	tooBig, big := findingOf(walk, noVesselFits)
+	if !big || p.req.Batches > 0 {
+		if big {
+			return p.noVessel(tooBig)
+		}
+		return nil
+	}
+	for p.batches = 2; p.batches <= mostBatches; p.batches++ {
+		if walk, err = p.program.Walk(p.conditions()); err != nil {
+			return err
+		}
+		if _, big := findingOf(walk, noVesselFits); !big {
+			p.walk = walk
+			p.found = append(p.found, Finding{
+				Kind: "split", Severity: Warning, Step: tooBig.Step,
+				Text:  fmt.Sprintf("planned as %d equal batches, because in one %s", p.batches, tooBig.Text),
+				Would: firstOf(tooBig.Would, "a larger vessel would take it in one"),
+			})
+			return nil
+		}
+	}
+	return p.noVessel(tooBig)
+}
+
+func findingOf(walk *Walk, kind string) (Finding, bool) {
+	for _, f := range walk.Findings {
+		if f.Kind == kind {
+			return f, true
+		}
+	}
+	return Finding{}, false
+}
+
+// noVessel refuses a target that the lab's ware can't hold, and says what it
+// could.
+func (p *planning) noVessel(f Finding) error {
+	e := &RequestError{Field: "target", Got: massText(p.req.Target), What: "no vessel fits: " + f.Text, Would: f.Would, Err: ErrNoVessel}
+	if most := p.largestThatFits(); most > 0 {
+		e.Would = fmt.Sprintf("at most %s fits in %d batch(es)", massText(most), max(1, p.req.Batches))
+		if n := math.Ceil(float64(p.req.Target / most)); n <= 1000 {
+			e.Would += fmt.Sprintf("; or ask for %.0f batches", n*float64(max(1, p.req.Batches)))
+		}
+	}
+	return e
+}
+
+// largestThatFits halves the interval between nothing and the target.
+func (p *planning) largestThatFits() chem.Mass {
+	fits := func(share float64) bool {
+		in := p.conditions()
+		in.Limiting *= chem.Amount(share)
+		in.Batches = max(1, p.req.Batches)
+		walk, err := p.program.Walk(in)
+		if err != nil {
+			return false
+		}
+		_, big := findingOf(walk, noVesselFits)
+		return !big
+	}
+	low, high := 0.0, 1.0
+	for range int(p.policy.value("slate.steps")) {
+		if mid := (low + high) / 2; fits(mid) {
+			low = mid
+		} else {
+			high = mid
+		}
+	}
+	return p.req.Target * chem.Mass(low)
+}
+
+// matchAndWalk matches and allocates, and repeats the walk-through with the
+// stocks drawn until they no longer change.
+func (p *planning) matchAndWalk() error {
+	for range mostPasses {
+		if err := p.match(); err != nil {
+			return err
+		}
+		stocks := stocksOf(p.covers, p.asks)
+		if sameStocks(stocks, p.stocks) {
+			return nil
+		}
+		p.stocks = stocks
+		walk, err := p.program.Walk(p.conditions())
+		if err != nil {
+			return err
+		}
+		p.walk = walk
+	}
+	if err := p.match(); err != nil {
+		return err
+	}
+	p.found = append(p.found, Finding{
+		Kind: "stock-not-settled", Severity: Note,
+		Text: fmt.Sprintf("after %d passes the bottles chosen still changed with the water they bring; the amounts are those of the last pass", mostPasses),
+	})
+	return nil
+}
+
+func (p *planning) match() error {
+	matcher, err := newMatcher(p.req, p.shelf, p.policy)
+	if err != nil {
+		return err
+	}
+	matcher.claims = p.claims
+	p.matcher, p.asks = matcher, p.walk.Asks
+	demands, err := demandsOf(p.asks, p.shelf)
+	if err != nil {
+		return err
+	}
+	p.covers = matcher.coverAll(p.asks, demands, p.req.Recipe.Limiting)
+	p.made = makeUpsOf(p.covers)
+	if len(p.made) == 0 {
+		return nil
+	}
+	// The water of the make-ups is a need of its own, so that everything is
+	// matched once more with it.
+	p.asks = append(append([]Ask(nil), p.walk.Asks...), makeUpAsks(p.made)...)
+	if demands, err = demandsOf(p.asks, p.shelf); err != nil {
+		return err
+	}
+	clear(matcher.used)
+	p.covers = matcher.coverAll(p.asks, demands, p.req.Recipe.Limiting)
+	return nil
+}
+
+// write puts the plan together.
+func (p *planning) write() (*Plan, error) {
+	plan := &Plan{
+		Recipe: p.req.Recipe, On: p.req.On, Today: p.req.Today, Scale: p.scale,
+		Target: Target{p.walk.Product.Substance, p.walk.Product.CAS, p.walk.Product.Formula, p.req.Target},
+		Steps:  p.walk.Steps, Flow: p.walk.Flow, Findings: append(p.found, p.walk.Findings...),
+	}
+	plan.Scale.Batches = p.batches
+	p.shortfalls(plan)
+	p.risk(plan)
+	p.states(plan)
+	p.insertMakeUps(plan)
+	p.sheets(plan)
+	plan.Metrics = p.metrics(plan)
+	plan.Findings = append(plan.Findings, p.policy.findings()...)
+	plan.Sentence = sentence(plan, p.covers)
+	plan.Revision = revisionOf(plan)
+	return plan, nil
+}
+
+// shortfalls finds what is on its way and what is to be bought.
+func (p *planning) shortfalls(plan *Plan) {
+	for i := range p.covers {
+		if p.covers[i].alloc.short > 0 {
+			p.covers[i].coming = p.matcher.expected(&p.covers[i])
+		}
+	}
+	buys, found := p.matcher.buy(p.covers)
+	plan.Buy = buys
+	plan.Findings = append(plan.Findings, found...)
+}
+
+// risk draws the chance of running short, and sets the mass of product beside
+// the target.
+func (p *planning) risk(plan *Plan) {
+	do := make(map[int]string, len(p.walk.Steps))
+	for _, s := range p.walk.Steps {
+		do[s.N] = s.Do
+	}
+	plan.Risk = newAssessor(p.matcher).assess(p.covers, p.asks, func(step int) string { return do[step] })
+	plan.Risk.product(p.walk.Product, p.scale, p.req.Target)
+}
+
+func (p *planning) states(plan *Plan) {
+	limit := p.policy.value("risk.limit")
+	for i := range p.covers {
+		c := &p.covers[i]
+		p.matcher.decide(c, plan.Buy, limit)
+		if !c.alloc.proven {
+			plan.Findings = append(plan.Findings, Finding{Kind: "bottles-not-proven", Severity: Note,
+				Text: fmt.Sprintf("there were too many ways of choosing bottles of %s to try them all; a choice with less trouble may exist", c.demand.name)})
+		}
+		plan.Needs = append(plan.Needs, c.need)
+		plan.Verdict = max(plan.Verdict, c.need.State)
+	}
+}
+
+// sheets adds what the papers need: waste, hazards, pairs and carriers.
+func (p *planning) sheets(plan *Plan) {
+	plan.Waste = SortWaste(p.walk.Waste, p.shelf.Carboys, p.policy.value("fill.waste"))
+	plan.Hazards = NoteHazards(plan.Needs, plan.Steps, plan.Waste)
+	plan.Pairs = PairsOf(plan.Needs, plan.Steps)
+	carriers, err := CarriersFor(plan.Needs, CarrierLimits{
+		MostMass: chem.Mass(p.policy.value("carrier.mass")), MostCount: int(p.policy.value("carrier.count")),
+	})
+	plan.Carriers = carriers
+	if err != nil {
+		severity, kind := Warning, "no-carriers"
+		if errors.Is(err, ErrCarriersNotProven) {
+			severity, kind = Note, "carriers-not-proven"
+		}
+		plan.Findings = append(plan.Findings, Finding{Kind: kind, Severity: severity, Text: err.Error()})
+	}
+}
+
+// metrics counts everything that is drawn or short, water included, but not
+// what is counted in pieces.
+func (p *planning) metrics(plan *Plan) Metrics {
+	var inputs []chem.Mass
+	for i := range plan.Needs {
+		n := &plan.Needs[i]
+		if n.Count {
+			continue
+		}
+		for _, d := range n.Draws {
+			inputs = append(inputs, d.Mass)
+		}
+		inputs = append(inputs, n.Short)
+	}
+	m := Metrics{}
+	product := p.walk.Product.Mass
+	if pmi, err := chem.ProcessMassIntensity(inputs, product); err == nil {
+		m.ProcessMassIntensity = pmi
+	}
+	if e, err := chem.EFactor(inputs, product); err == nil {
+		m.EFactor = e
+	}
+	return m
+}

@@ -1,0 +1,4 @@
+package reckoner
+
+// hazardSums are the sums on hazards and carriers.
+func hazardSums() []Sum { return nil }

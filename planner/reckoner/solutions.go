@@ -1,0 +1,4 @@
+package reckoner
+
+// solutionSums are the sums on strengths, dilution, acids and bases.
+func solutionSums() []Sum { return nil }

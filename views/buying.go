@@ -1,0 +1,77 @@
+package views
+
+import (
+	"net/http"
+	"slices"
+
+	"github.com/gin-gonic/gin"
+
+	"stillroom/chem"
+	"stillroom/inventory"
+	"stillroom/planner"
+)
+
+// buyingPage is what to buy for the slate, and what is under way already.
+type buyingPage struct {
+	frame
+	Runs   []buyingRun
+	Totals []string // by currency
+	Orders []orderRow
+}
+
+// buyingRun is what one run needs bought.
+type buyingRun struct {
+	inventory.Run
+	Wanted, Product string
+	Buy             []planner.Purchase
+}
+
+// orderRow is an order that hasn't come yet.
+type orderRow struct {
+	inventory.Order
+	Offer inventory.Offer
+	Form  inventory.StockForm
+	Late  bool
+}
+
+// showBuying answers /buying.
+func (s *Server) showBuying(c *gin.Context) error {
+	shelf, err := s.Lab.Load(c.Request.Context())
+	if err != nil {
+		return err
+	}
+	p := &buyingPage{Orders: ordersUnderWay(shelf, s.Today())}
+	p.Title, p.Section = "Buying", "/buying"
+	totals := map[string]int64{}
+	for _, run := range runsToCome(shelf.Runs) {
+		plan, err := s.planKept(run, shelf)
+		if err != nil || len(plan.Buy) == 0 {
+			continue
+		}
+		p.Runs = append(p.Runs, buyingRun{run, massPlain(chem.Mass(run.TargetUG) * chem.Microgram), plan.Recipe.Product, plan.Buy})
+		for _, b := range plan.Buy {
+			totals[b.Currency] += b.Cost
+		}
+	}
+	for currency, minor := range totals {
+		p.Totals = append(p.Totals, moneyText(minor, currency))
+	}
+	slices.Sort(p.Totals)
+	return s.render(c, http.StatusOK, "buying", p)
+}
+
+func ordersUnderWay(shelf *inventory.Shelf, today inventory.Date) []orderRow {
+	offers := map[int64]inventory.Offer{}
+	for _, o := range shelf.Offers {
+		offers[o.ID] = o
+	}
+	var rows []orderRow
+	for _, o := range shelf.Orders {
+		if o.State != "under way" {
+			continue
+		}
+		form, _ := shelf.Form(o.FormID)
+		rows = append(rows, orderRow{o, offers[o.OfferID], form, o.Due.Set() && o.Due < today})
+	}
+	return rows
+}

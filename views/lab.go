@@ -1,0 +1,21 @@
+package views
+
+import (
+	"context"
+
+	"stillroom/inventory"
+)
+
+// Lab is what the pages ask of the stock records; *inventory.Store is one.
+type Lab interface {
+	Load(ctx context.Context) (*inventory.Shelf, error)
+	Ledger(ctx context.Context, code string, limit int) ([]inventory.Entry, error)
+
+	AddRun(ctx context.Context, r inventory.Run, act inventory.Act) (inventory.Run, error)
+	SetTarget(ctx context.Context, id, targetUG int64, on inventory.Date, version int64, act inventory.Act) (inventory.Run, error)
+	SetState(ctx context.Context, id int64, state inventory.RunState, version int64, act inventory.Act) (inventory.Run, error)
+
+	EarmarkRun(ctx context.Context, run int64, wants []inventory.Want, act inventory.Act) ([]inventory.Earmark, error)
+	Release(ctx context.Context, run int64, act inventory.Act) error
+	StockTake(ctx context.Context, c inventory.Count, act inventory.Act) (inventory.Entry, []inventory.Promise, error)
+}
