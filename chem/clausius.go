@@ -84,19 +84,34 @@ func (e VapourEquation) VaporisationHeat(t Temperature) (MolarEnergy, error) {
 	return MolarEnergy(GasConstant * float64(t) * float64(t) * slope), nil
 }
 
-// AntoineMillimetres turns the usual handbook triple, log10(p/mmHg) =
-// A − B/(t/°C + C), into an equation. From and to are its range in °C; pass
-// equal numbers where none is stated. 1 mmHg is 133.322387415 Pa (ISO 80000-4).
-func AntoineMillimetres(a, b, c, from, to float64) (VapourEquation, error) {
-	const of, mmHg = "Antoine equation", 133.322387415
-	if !Finite(a) || !Finite(b) || !Finite(c) || !Finite(from) || !Finite(to) || b <= 0 {
+// Millimetre of mercury, 133.322387415 Pa (ISO 80000-4), the unit of most handbook
+// coefficients.
+const MillimetreMercury Pressure = 133.322387415
+
+// Antoine turns coefficients of log10(p/unit) = A − B/(T + C) into an equation.
+// zero is the zero of the temperature scale that the coefficients were fitted in:
+// ZeroCelsius for °C, 0 for K. From and to are its range; pass equal temperatures
+// where none is stated. It refuses coefficients that are no numbers and a B that
+// isn't above zero.
+func Antoine(a, b, c float64, unit Pressure, zero, from, to Temperature) (VapourEquation, error) {
+	const of = "Antoine equation"
+	if err := mustBePositive(of, "unit of pressure", unit); err != nil {
+		return VapourEquation{}, err
+	}
+	if !Finite(a) || !Finite(c) || !Finite(from) || !Finite(to) || !(b > 0) || !Finite(b) {
 		return VapourEquation{}, &DataError{Of: of, Err: ErrOutOfRange, Limit: "A, B and C must be numbers, B above zero", Remedy: "give antoine=A;B;C for p in mmHg and t in °C"}
 	}
-	e := VapourEquation{Form: AntoineLog10, A: a + math.Log10(mmHg), B: b, C: c - float64(ZeroCelsius), Source: "coefficients given by the user"}
+	e := VapourEquation{Form: AntoineLog10, A: a + math.Log10(float64(unit)), B: b, C: c - float64(zero), Source: "coefficients given"}
 	if to > from {
-		e.From, e.To = Celsius(from), Celsius(to)
+		e.From, e.To = from, to
 	}
 	return e, nil
+}
+
+// AntoineMillimetres turns the usual handbook triple, log10(p/mmHg) =
+// A − B/(t/°C + C), into an equation without a stated range.
+func AntoineMillimetres(a, b, c float64) (VapourEquation, error) {
+	return Antoine(a, b, c, MillimetreMercury, ZeroCelsius, 0, 0)
 }
 
 // BoilingRise returns how much a solute raises the boiling point,

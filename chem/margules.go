@@ -61,9 +61,3 @@ func (c CoDistilling) towardsAzeotrope(d CoDistillation, a Azeotrope) (CoDistill
 	}
 	return d.unlessDry(c.dry(d, d.Water))
 }
-
-// tableMolarMass returns a molar mass from substances.csv.
-func tableMolarMass(cas string) (MolarMass, bool) {
-	m, ok := tableMolarMasses()[cas]
-	return m, ok
-}

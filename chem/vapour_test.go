@@ -209,9 +209,9 @@ func TestVapourRefuses(t *testing.T) {
 		{"no pressure", ErrOutOfRange, func() error { _, err := BoilingPoint(waterCAS, 0); return err }},
 		{"above critical", ErrOutOfRange, func() error { _, err := BoilingPoint(waterCAS, 1e9); return err }},
 		{"infinite", ErrOutOfRange, func() error { _, err := BoilingPoint(waterCAS, Pressure(math.Inf(1))); return err }},
-		{"negative slope", ErrOutOfRange, func() error { _, err := AntoineMillimetres(8, -5, 230, 0, 0); return err }},
+		{"negative slope", ErrOutOfRange, func() error { _, err := AntoineMillimetres(8, -5, 230); return err }},
 		{"pole of Antoine", ErrOutOfRange, func() error {
-			e, err := AntoineMillimetres(8.07131, 1730.63, 233.426, 0, 0)
+			e, err := AntoineMillimetres(8.07131, 1730.63, 233.426)
 			if err != nil {
 				return err
 			}

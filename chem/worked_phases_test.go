@@ -169,7 +169,7 @@ func examplePressure(t *testing.T, x phaseExample, key string) Pressure {
 }
 
 // pressureUnits are in Pa (ISO 80000-4).
-var pressureUnits = map[string]Pressure{"kPa": Kilopascal, "mbar": 100, "mmHg": 133.322387415, "torr": Atmosphere / 760, "atm": Atmosphere}
+var pressureUnits = map[string]Pressure{"kPa": Kilopascal, "mbar": 100, "mmHg": MillimetreMercury, "torr": Atmosphere / 760, "atm": Atmosphere}
 
 func exampleTemperature(t *testing.T, x phaseExample, key string) Temperature {
 	t.Helper()
@@ -195,7 +195,7 @@ func vapourAnswer(t *testing.T, x phaseExample) string {
 		if _, err := fmt.Sscanf(x.inputs["Antoine"], "%f,%f,%f", &c[0], &c[1], &c[2]); err != nil {
 			t.Fatal(err)
 		}
-		e, err := AntoineMillimetres(c[0], c[1], c[2], 0, 0)
+		e, err := AntoineMillimetres(c[0], c[1], c[2])
 		if err != nil {
 			t.Fatal(err)
 		}

@@ -1,0 +1,334 @@
+package reckoner
+
+import (
+	"context"
+	"fmt"
+	"math"
+	"slices"
+	"strings"
+
+	"stillroom/chem"
+)
+
+const vapourGroup = "Vapour"
+
+var (
+	rangeKey    = Key{"antoine_range", "Range of the Antoine coefficients", "1 °C; 100 °C", true}
+	altitudeKey = Key{"altitude", "Height of the lab above the sea in metres, in place of the pressure", "1600", true}
+	antoineForm = "Antoine coefficients A;B;C for log10(p/mmHg) and °C, in place of the table's; add the units for others: A;B;C;bar;K"
+)
+
+func vapourAntoineKey() Key { return Key{"antoine", antoineForm, "8.07131;1730.63;233.426", true} }
+
+func boilSum() Sum {
+	return Sum{
+		Name: "boil", Title: "Boiling point", Group: vapourGroup,
+		About: "Gives the boiling point of a pure liquid at a pressure or at a height above the sea.",
+		Keys: []Key{
+			{"substance", "Substance", "ethyl acetate", false}, {"pressure", "Pressure", "101.325 kPa", true}, altitudeKey,
+			vapourAntoineKey(), rangeKey,
+		},
+		Gives:   []string{"temperature"},
+		Example: []string{"substance=ethyl acetate", "pressure=20 kPa"},
+		Range:   "inside the range of the vapour-pressure equation, which the answer states",
+		Source:  "vapour-pressure equations in antoine.csv, each with its source; air pressure at a height: ISO 2533",
+		Run:     runBoil,
+	}
+}
+
+func runBoil(_ context.Context, args Args) (Answer, error) {
+	p, notes, err := boilingPressure(args)
+	if err != nil {
+		return Answer{}, err
+	}
+	l, err := liquidOf(args)
+	if err != nil {
+		return Answer{}, err
+	}
+	t, e, err := l.boiling(p)
+	if err != nil {
+		return Answer{}, err
+	}
+	notes = append(notes, l.otherBoiling(p, t, e)...)
+	s := boilSum()
+	return Answer{
+		Results: []Result{Number("temperature", t.Celsius(), "°C")},
+		Notes:   append(notes, e.Range()),
+		Derivation: chem.Derivation{
+			Of: "boiling point of " + l.name, Formula: "solve " + e.Form.String() + " for T",
+			Inserted: fmt.Sprintf("p(%.6g K) = %.6g kPa with %s; T = %.6g °C", float64(t), p.Kilopascals(), coefficients(e), t.Celsius()),
+			Inputs:   []chem.Input{{Symbol: "p", Name: "pressure", Value: p.Kilopascals(), Unit: "kPa", Source: given}},
+			Value:    t.Celsius(), Unit: "°C", Range: e.Range(), Source: e.Source + "; " + s.Source,
+		},
+	}, nil
+}
+
+// boilingPressure reads pressure or altitude.
+func boilingPressure(args Args) (chem.Pressure, []string, error) {
+	switch {
+	case args.Has("pressure") && args.Has("altitude"):
+		return 0, nil, &KeyError{Key: "altitude", Text: args["altitude"], What: "given together with pressure", Wanted: "give one of them", Cause: ErrUnknownKey}
+	case args.Has("pressure"):
+		p, err := positive(args, "pressure", args.Pressure)
+		return p, nil, err
+	case !args.Has("altitude"):
+		return 0, nil, missing("pressure", "101.325 kPa\" or altitude=\"1600")
+	}
+	metres, err := args.metres("altitude")
+	if err != nil {
+		return 0, nil, err
+	}
+	p, err := chem.PressureAtAltitude(metres)
+	return p, []string{fmt.Sprintf("air pressure of the standard atmosphere at %g m: %.4g kPa; the weather moves it by a few kPa", metres, p.Kilopascals())}, err
+}
+
+// metres reads a height with or without its unit.
+func (a Args) metres(key string) (float64, error) {
+	text := strings.TrimSpace(strings.TrimSuffix(strings.TrimSpace(a[key]), "m"))
+	x, err := chem.ParseNumber(text)
+	if err != nil {
+		return 0, &KeyError{Key: key, Text: a[key], Cause: err}
+	}
+	return x, nil
+}
+
+// A liquid is a substance with its vapour-pressure equations.
+type liquid struct {
+	name      string
+	cas       string
+	substance chem.Substance
+	equations []chem.VapourEquation
+}
+
+// liquidOf reads the substance and, where given, its own Antoine coefficients.
+func liquidOf(args Args) (liquid, error) {
+	s, err := args.Substance("substance")
+	if err != nil {
+		return liquid{}, err
+	}
+	l := liquid{name: s.Name, cas: s.CAS, substance: s, equations: chem.VapourEquations(s.CAS)}
+	if args.Has("antoine") {
+		e, err := antoineEquation(args)
+		if err != nil {
+			return liquid{}, err
+		}
+		l.equations = []chem.VapourEquation{e}
+	}
+	return l, nil
+}
+
+// antoineEquation reads antoine=A;B;C with optional units of pressure and
+// temperature, and antoine_range.
+func antoineEquation(args Args) (chem.VapourEquation, error) {
+	items, err := args.List("antoine")
+	if err != nil {
+		return chem.VapourEquation{}, err
+	}
+	wrong := func(what string) error {
+		return &KeyError{Key: "antoine", Text: args["antoine"], What: what, Wanted: "write A;B;C for log10(p/mmHg) and °C, or A;B;C;bar;K", Cause: chem.ErrSyntax}
+	}
+	if len(items) != 3 && len(items) != 5 {
+		return chem.VapourEquation{}, wrong("not three numbers, nor three with two units")
+	}
+	var c [3]float64
+	for i := range c {
+		if c[i], err = chem.ParseNumber(items[i]); err != nil {
+			return chem.VapourEquation{}, &KeyError{Key: "antoine", Text: items[i], Cause: err}
+		}
+	}
+	unit, zero := chem.MillimetreMercury, chem.ZeroCelsius
+	if len(items) == 5 {
+		if unit, err = chem.ParsePressure("1 " + items[3]); err != nil {
+			return chem.VapourEquation{}, &KeyError{Key: "antoine", Text: items[3], Cause: err}
+		}
+		switch items[4] {
+		case "K":
+			zero = 0
+		case "°C", "C", "Cel":
+		default:
+			return chem.VapourEquation{}, wrong("the unit of temperature must be K or °C")
+		}
+	}
+	from, to, err := antoineRange(args)
+	if err != nil {
+		return chem.VapourEquation{}, err
+	}
+	return chem.Antoine(c[0], c[1], c[2], unit, zero, from, to)
+}
+
+func antoineRange(args Args) (from, to chem.Temperature, err error) {
+	if !args.Has("antoine_range") {
+		return 0, 0, nil
+	}
+	ends, err := args.List("antoine_range")
+	if err != nil {
+		return 0, 0, err
+	}
+	if len(ends) != 2 {
+		return 0, 0, &KeyError{Key: "antoine_range", Text: args["antoine_range"], What: "not two temperatures", Wanted: "write 1 °C; 100 °C", Cause: chem.ErrSyntax}
+	}
+	if from, err = chem.ParseTemperature(ends[0]); err == nil {
+		to, err = chem.ParseTemperature(ends[1])
+	}
+	if err == nil && to <= from {
+		return 0, 0, &KeyError{Key: "antoine_range", Text: args["antoine_range"], What: "the second isn't above the first", Wanted: "write 1 °C; 100 °C", Cause: chem.ErrOutOfRange}
+	}
+	return from, to, err
+}
+
+// boiling returns the boiling point and the equation that gave it.
+func (l liquid) boiling(p chem.Pressure) (chem.Temperature, chem.VapourEquation, error) {
+	var err error
+	for _, e := range l.equations {
+		var t chem.Temperature
+		if t, err = e.Boiling(p); err == nil {
+			return t, e, nil
+		}
+	}
+	if err == nil || len(l.equations) > 1 {
+		_, err = chem.BoilingPoint(l.cas, p)
+	}
+	return 0, chem.VapourEquation{}, err
+}
+
+// otherBoiling notes where another published equation, or the tabulated normal
+// boiling point, says something else.
+func (l liquid) otherBoiling(p chem.Pressure, t chem.Temperature, used chem.VapourEquation) []string {
+	var notes []string
+	for _, e := range l.equations {
+		if other, err := e.Boiling(p); err == nil && e != used && math.Abs(float64(other-t)) > 0.5 {
+			notes = append(notes, fmt.Sprintf("another published equation gives %.1f °C (%s)", other.Celsius(), e.Source))
+		}
+	}
+	if b := l.substance.Boiling; b != nil && math.Abs(float64(p/chem.Atmosphere-1)) < 1e-3 && math.Abs(float64(*b-t)) > 0.5 {
+		notes = append(notes, fmt.Sprintf("the tabulated normal boiling point is %.1f °C", b.Celsius()))
+	}
+	return notes
+}
+
+func coefficients(e chem.VapourEquation) string {
+	text := fmt.Sprintf("A = %.6g, B = %.6g, C = %.6g", e.A, e.B, e.C)
+	if e.Form == chem.DIPPR101 {
+		text += fmt.Sprintf(", D = %.6g, E = %.6g", e.D, e.E)
+	}
+	return text
+}
+
+func vapourSum() Sum {
+	return Sum{
+		Name: "vapour", Title: "Vapour pressure", Group: vapourGroup,
+		About:   "Gives the vapour pressure of a pure liquid at a temperature.",
+		Keys:    []Key{{"substance", "Substance", "water", false}, {"temperature", "Temperature", "25 °C", false}, vapourAntoineKey(), rangeKey},
+		Gives:   []string{"pressure"},
+		Example: []string{"substance=water", "temperature=25 °C"},
+		Range:   "inside the range of the vapour-pressure equation, which the answer states",
+		Source:  "vapour-pressure equations in antoine.csv, each with its source",
+		Run:     runVapour,
+	}
+}
+
+func runVapour(_ context.Context, args Args) (Answer, error) {
+	t, err := args.Temperature("temperature")
+	if err != nil {
+		return Answer{}, err
+	}
+	l, err := liquidOf(args)
+	if err != nil {
+		return Answer{}, err
+	}
+	p, e, err := l.pressure(t)
+	if err != nil {
+		return Answer{}, err
+	}
+	return Answer{
+		Results: []Result{Number("pressure", p.Kilopascals(), "kPa")},
+		Notes:   []string{e.Range()},
+		Derivation: chem.Derivation{
+			Of: "vapour pressure of " + l.name, Formula: e.Form.String(),
+			Inserted: fmt.Sprintf("T = %.6g K with %s: p = %.6g kPa", float64(t), coefficients(e), p.Kilopascals()),
+			Inputs:   []chem.Input{{Symbol: "T", Name: "temperature", Value: t.Celsius(), Unit: "°C", Source: given}},
+			Value:    p.Kilopascals(), Unit: "kPa", Range: e.Range(), Source: e.Source,
+		},
+	}, nil
+}
+
+// pressure returns the vapour pressure and the equation that gave it.
+func (l liquid) pressure(t chem.Temperature) (chem.Pressure, chem.VapourEquation, error) {
+	var err error
+	for _, e := range l.equations {
+		var p chem.Pressure
+		if p, err = e.Pressure(t); err == nil {
+			return p, e, nil
+		}
+	}
+	if err == nil || len(l.equations) > 1 {
+		_, err = chem.VapourPressure(l.cas, t)
+	}
+	return 0, chem.VapourEquation{}, err
+}
+
+func steamSum() Sum {
+	return Sum{
+		Name: "steam", Title: "Steam distillation", Group: vapourGroup,
+		About: "Gives the temperature at which a liquid that doesn't mix with water boils together with it, and what comes over.",
+		Keys: []Key{
+			{"substance", "Substance", "1-hexanol", false}, {"pressure", "Pressure", "101.325 kPa", true}, altitudeKey,
+			vapourAntoineKey(), rangeKey, molarMassKey,
+		},
+		Gives:   []string{"temperature", "mass_ratio"},
+		Example: []string{"substance=1-hexanol", "pressure=101.325 kPa"},
+		Range:   "liquids that hardly mix with water; for others use the azeotrope or the relative volatility",
+		Source:  "p(substance) + p(water) = p; OpenStax Chemistry 2e, 10.3 and 11.4",
+		Run:     runSteam,
+	}
+}
+
+func runSteam(_ context.Context, args Args) (Answer, error) {
+	p, notes, err := boilingPressure(args)
+	if err != nil {
+		return Answer{}, err
+	}
+	l, err := liquidOf(args)
+	if err != nil {
+		return Answer{}, err
+	}
+	molar, err := NeedMolarMass(l.substance)
+	if err != nil {
+		return Answer{}, err
+	}
+	d, e, err := l.steam(molar, p)
+	if err != nil {
+		return Answer{}, err
+	}
+	if a, ok := chem.AzeotropeWithWater(l.cas); ok && (!a.Forms || !a.Heterogeneous) {
+		notes = append(notes, "mixes with water: these figures for two separate liquids don't hold; use the azeotrope or the relative volatility")
+	} else if ok {
+		notes = append(notes, fmt.Sprintf("tabulated azeotrope: %.1f °C, %.3g g per g water (%s)", a.Temperature.Celsius(), float64(a.PartnerCarried(1)), a.Source))
+	}
+	s := steamSum()
+	return Answer{
+		Results: []Result{Number("temperature", d.Temperature.Celsius(), "°C"), Number("mass_ratio", d.MassPerMassWater, "g per g water")},
+		Notes:   slices.Clip(append(notes, e.Range())),
+		Derivation: chem.Derivation{
+			Of: l.name + " carried by water", Formula: "m/m(water) = p(substance) · M / (p(water) · M(water))",
+			Inserted: fmt.Sprintf("%.6g kPa · %.6g g/mol / (%.6g kPa · 18.015 g/mol) = %.6g at %.5g °C", d.Substance.Kilopascals(), molar.GramsPerMole(), d.Water.Kilopascals(), d.MassPerMassWater, d.Temperature.Celsius()),
+			Inputs: []chem.Input{{Symbol: "p", Name: "total pressure", Value: p.Kilopascals(), Unit: "kPa", Source: given},
+				{Symbol: "M", Name: "molar mass of " + l.name, Value: molar.GramsPerMole(), Unit: "g/mol", Source: l.substance.Sources["molar_mass"]}},
+			Value: d.MassPerMassWater, Unit: "g per g water", Range: s.Range, Source: e.Source + "; " + s.Source,
+		},
+	}, nil
+}
+
+func (l liquid) steam(molar chem.MolarMass, p chem.Pressure) (chem.SteamDistillation, chem.VapourEquation, error) {
+	var err error
+	for _, e := range l.equations {
+		var d chem.SteamDistillation
+		if d, err = e.SteamDistilling(molar, p); err == nil {
+			return d, e, nil
+		}
+	}
+	if err == nil {
+		_, err = chem.SteamDistilling(l.cas, p)
+	}
+	return chem.SteamDistillation{}, chem.VapourEquation{}, err
+}
