@@ -1,15 +1,25 @@
 package chem
 
-import "sync"
+import (
+	"errors"
+	"strconv"
+	"strings"
+	"sync"
+)
 
-// dissociation is what is known of one acid: its steps in order and where they
-// come from.
-type dissociation struct {
-	name    string
-	pKa     []float64
-	grades  []string
-	sources []string
+// An Acid is an acid, or the acid that a base becomes, with its dissociation
+// constants in water at 25 °C.
+type Acid struct {
+	Name    string
+	CAS     string
+	Formula Formula   // of the neutral molecule
+	Charge  int       // of the form with most protons on: 0 for an acid, 1 for an amine
+	PKa     []float64 // by step
+	Sources []string  // by step
 }
+
+// errNoAcid is the cause where neither table knows an acid.
+var errNoAcid = errors.New("no dissociation constants")
 
 // gradeRank orders the grades of data/pka.csv, best first: a handbook value,
 // which is a critical choice among measurements; a value computed from Gibbs
@@ -21,61 +31,110 @@ var gradeRank = map[string]int{
 	"approximate, strong acid": 3,
 }
 
-var dissociations = sync.OnceValue(loadDissociations)
+// acidTable finds acids by CAS number and by the composition of the molecule.
+type acidTable struct {
+	byCAS         map[string]*Acid
+	byComposition map[string]*Acid // the first of a composition
+}
 
-// loadDissociations keeps the best row of every step. Rows of the same grade
-// keep the first. An acid whose first steps are missing gets none: a second
-// constant alone would make a diprotic acid look monoprotic.
-func loadDissociations() map[string]*dissociation {
-	type key struct {
-		cas  string
-		step int
-	}
-	best := make(map[key]row)
-	names := make(map[string]string)
-	var order []string
-	for _, r := range readTable("pka.csv") {
-		cas := r.text("cas")
-		step, _ := r.number("step")
-		k := key{cas, int(step)}
-		if names[cas] == "" {
-			names[cas] = r.text("acid")
-			order = append(order, cas)
+var acids = sync.OnceValue(loadAcids)
+
+// loadAcids joins data/acids.csv, which says what an acid is, with the constants
+// of data/pka.csv, which go first where they give every step.
+func loadAcids() *acidTable {
+	best := bestConstants()
+	table := &acidTable{make(map[string]*Acid), make(map[string]*Acid)}
+	for _, r := range readTable("acids.csv") {
+		formula, err := ParseFormula(r.text("formula"))
+		if err != nil {
+			panic("chem: acids.csv: " + err.Error())
 		}
+		charge, _ := r.number("charge")
+		a := &Acid{Name: r.text("acid"), CAS: r.text("cas"), Formula: formula, Charge: int(charge)}
+		a.PKa, a.Sources = steps(best, a.CAS)
+		if len(a.PKa) == 0 {
+			for _, item := range r.list("pKa") {
+				pKa, err := strconv.ParseFloat(item, 64)
+				if err != nil {
+					panic("chem: acids.csv: " + err.Error())
+				}
+				a.PKa, a.Sources = append(a.PKa, pKa), append(a.Sources, r.text("source"))
+			}
+		}
+		table.byCAS[a.CAS] = a
+		if key := formula.Hill(); table.byComposition[key] == nil {
+			table.byComposition[key] = a
+		}
+	}
+	// Carbon dioxide and sulfur dioxide in water are the acids.
+	table.byCAS["124-38-9"] = table.byCAS["463-79-6"]
+	table.byCAS["7446-09-5"] = table.byCAS["7782-99-2"]
+	return table
+}
+
+// acidStep is one dissociation step of one acid.
+type acidStep struct {
+	cas  string
+	step int
+}
+
+// bestConstants keeps the best row of every step; rows of the same grade keep the
+// first.
+func bestConstants() map[acidStep]row {
+	best := make(map[acidStep]row)
+	for _, r := range readTable("pka.csv") {
+		step, _ := r.number("step")
+		k := acidStep{r.text("cas"), int(step)}
 		kept, ok := best[k]
 		if !ok || gradeRank[r.text("grade")] < gradeRank[kept.text("grade")] {
 			best[k] = r
 		}
 	}
-	table := make(map[string]*dissociation)
-	for _, cas := range order {
-		d := &dissociation{name: names[cas]}
-		for step := 1; ; step++ {
-			r, ok := best[key{cas, step}]
-			if !ok {
-				break
-			}
-			pKa, _ := r.number("pKa")
-			d.pKa = append(d.pKa, pKa)
-			d.grades = append(d.grades, r.text("grade"))
-			d.sources = append(d.sources, r.text("source"))
-		}
-		if len(d.pKa) > 0 {
-			table[cas] = d
-		}
-	}
-	return table
+	return best
 }
 
-// PKaOf returns the acid dissociation constants of an acid in water at 25 °C
-// by step, as pKa, with the source of the first. Where the table has several
-// values of a step a handbook value goes before one computed from Gibbs
-// energies, and that before an approximate one. An acid that isn't in the
-// table is refused with a *NoDataError. The slice must not be changed.
+// steps returns the constants of an acid from its first step on, up to the first
+// that is missing: a second constant alone would make a diprotic acid look
+// monoprotic.
+func steps(best map[acidStep]row, cas string) (pKa []float64, sources []string) {
+	for step := 1; ; step++ {
+		r, ok := best[acidStep{cas, step}]
+		if !ok {
+			return pKa, sources
+		}
+		x, _ := r.number("pKa")
+		pKa, sources = append(pKa, x), append(sources, r.text("source"))
+	}
+}
+
+// AcidByCAS returns an acid, or the acid of a base, by CAS number.
+func AcidByCAS(cas string) (*Acid, bool) {
+	a, ok := acids().byCAS[cas]
+	return a, ok
+}
+
+// PKaOf returns the acid dissociation constants in water at 25 °C by step, as pKa,
+// with their source; for a base those of its acid. Where the table has several
+// values of a step a handbook value goes before one computed from Gibbs energies,
+// and that before an approximate one. What isn't in the tables is refused with a
+// *NoDataError. The slice must not be changed.
 func PKaOf(cas string) (pKa []float64, source string, err error) {
-	d := dissociations()[cas]
-	if d == nil {
+	a, ok := AcidByCAS(cas)
+	if !ok {
 		return nil, "", &NoDataError{"pKa", cas, "give pka="}
 	}
-	return d.pKa, d.sources[0], nil
+	return a.PKa, strings.Join(unique(a.Sources), "; "), nil
+}
+
+// unique drops repeated texts, in order.
+func unique(texts []string) []string {
+	var kept []string
+	seen := make(map[string]bool)
+	for _, s := range texts {
+		if !seen[s] {
+			seen[s] = true
+			kept = append(kept, s)
+		}
+	}
+	return kept
 }
