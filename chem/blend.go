@@ -96,6 +96,28 @@ func Contraction(cas string, t Temperature, portions ...Portion) (Volume, error)
 	return apart - rho.Volume(whole.Mass), nil
 }
 
+// BlendHeat returns the heat given off at 25 °C when two strengths of one solute are
+// put together, by their heats of dilution:
+//
+//	Q = n(strong)·L(strong) + n(weak)·L(weak) − n·L
+//
+// where L is the heat that one mole still gives off on endless dilution.
+func BlendHeat(cas string, molarMass MolarMass, strong, weak Portion) (Energy, error) {
+	if !(molarMass > 0) {
+		return 0, &NoDataError{"molar mass", cas, "give molar_mass="}
+	}
+	if strong.Strength < weak.Strength {
+		strong, weak = weak, strong
+	}
+	whole := Mixed(strong, weak)
+	out, err := DilutionHeat(cas, molarMass.Of(strong.Mass*Mass(strong.Strength)), strong.Strength, whole.Strength)
+	if err != nil || weak.Strength == 0 {
+		return out, err
+	}
+	back, err := DilutionHeat(cas, molarMass.Of(weak.Mass*Mass(weak.Strength)), whole.Strength, weak.Strength)
+	return out - back, err
+}
+
 // A WarmDilution is what happens when a stock is run into water without cooling.
 type WarmDilution struct {
 	Dilution

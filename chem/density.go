@@ -26,6 +26,7 @@ const sameTemperature = 0.5
 // densityTable is what is known of one solute's solutions in water.
 type densityTable struct {
 	name   string
+	source string         // of the rows
 	curves []densityCurve // by rising temperature; may be empty
 	model  *densityModel  // nil where there is none
 }
@@ -54,7 +55,9 @@ func loadDensities() map[string]*densityTable {
 	type series struct{ ws, rhos []float64 }
 	points := make(map[string]map[float64]*series)
 	for _, r := range readTable("solution_density.csv") {
-		table(r)
+		if d := table(r); r.text("w_w_percent") != "0" {
+			d.source = r.text("source")
+		}
 		w, _ := r.number("w_w_percent")
 		t, _ := r.number("temperature_C")
 		rho, _ := r.number("density_g_mL")
@@ -110,6 +113,23 @@ func SolutionDensity(cas string, w Fraction, t Temperature) (Density, error) {
 		return Density(rho), nil
 	}
 	return 0, table.refuse(w, t)
+}
+
+// SolutionDensitySource says where the densities of a solute's solutions come from;
+// "" where there are none.
+func SolutionDensitySource(cas string) string {
+	d := densityTables()[cas]
+	switch {
+	case cas == waterCAS:
+		return "Kell 1975"
+	case d == nil:
+		return ""
+	case d.model != nil && len(d.curves) > 0:
+		return d.source + ", moved in temperature by the model of Laliberté 2009"
+	case d.model != nil:
+		return "model of Laliberté 2009"
+	}
+	return d.source
 }
 
 // tabulated reads the table at one of its temperatures, or in proportion

@@ -128,7 +128,7 @@ func DilutionHeat(cas string, n Amount, from, to Fraction) (Energy, error) {
 	if !(n >= 0) || !Finite(n) {
 		return 0, fmt.Errorf("heat of diluting %s: amount %v mol must be 0 or more", d.name, float64(n))
 	}
-	if to > from {
+	if to > from*(1+1e-12) {
 		return 0, fmt.Errorf("heat of diluting %s: %.7g %% is stronger than %.7g %%; a dilution goes down", d.name, to.Percent(), from.Percent())
 	}
 	before, err := d.left(from)

@@ -23,3 +23,13 @@ func PKw(t Temperature) (float64, error) {
 		(13.957-1262.3/k+8.5641e5/(k*k))*math.Log10(kell(t.Celsius())/1e3)
 	return -log, nil
 }
+
+// WaterIons returns the concentrations of H⁺ and OH⁻ at a pH, activities taken as
+// concentrations. Outside the range of PKw both are what they would be at its end.
+func WaterIons(pH float64, t Temperature) (hydrogen, hydroxide Concentration) {
+	pKw, err := PKw(min(max(t, ZeroCelsius), ZeroCelsius+100))
+	if err != nil {
+		return 0, 0
+	}
+	return Concentration(pow10(-pH)) * MolePerLitre, Concentration(pow10(pH-pKw)) * MolePerLitre
+}

@@ -1,0 +1,232 @@
+package reckoner
+
+import (
+	"context"
+	"errors"
+	"fmt"
+	"strings"
+
+	"stillroom/chem"
+)
+
+func phSum() Sum {
+	return Sum{
+		Name: "ph", Title: "pH of a mixture", Group: solutionGroup,
+		About: "Gives the pH of any mixture of acids, bases and salts in water, and every species in it.",
+		Keys: []Key{
+			{"mix", "Substances with their concentrations", "acetic acid: 0.1 mol/L; sodium acetate: 0.05 mol/L", false},
+			{"temperature", "Temperature; 25 °C if none is given", "25 °C", true},
+			{"pka", "pKa of what the table lacks, steps parted by a slash, with the name where several are meant", "4.76, or malonic acid: 2.85/5.70", true},
+			{"charge", "Charge of what the table lacks when all its protons are on: 0 for an acid, 1 for an amine", "0", true},
+		},
+		Gives:   []string{"pH", "one row for each species"},
+		Example: []string{"mix=acetic acid: 0.1 mol/L; sodium acetate: 0.05 mol/L"},
+		Range:   "0 to 100 °C; activities as concentrations, so 0.1 to 0.2 off above 0.1 mol/L; pKa at 25 °C; pH_activity up to an ionic strength of 0.5 mol/L",
+		Source:  "charge balance (METHODS d; OpenStax Chemistry 2e, 14.4 to 14.6); Kw: Marshall and Franck 1981; activities: Davies 1962",
+		Run:     runPH,
+	}
+}
+
+// mixture is what a list of substances becomes in water.
+type mixture struct {
+	acids        []chem.Protolyte
+	strong, ions chem.Concentration
+	sources      []string
+}
+
+func runPH(_ context.Context, args Args) (Answer, error) {
+	mix, err := readMixture(args)
+	if err != nil {
+		return Answer{}, err
+	}
+	t, notes := chem.Celsius(25), []string{"no temperature given: 25 °C"}
+	if args.Has("temperature") {
+		if t, err = args.Temperature("temperature"); err != nil {
+			return Answer{}, err
+		}
+		notes = nil
+		if d := t.Celsius() - 25; d > 5 || d < -5 {
+			notes = append(notes, "the pKa are those at 25 °C; only the ion product of water follows the temperature")
+		}
+	}
+	pH, err := chem.PH(mix.acids, mix.strong, t)
+	if err != nil {
+		return Answer{}, err
+	}
+	answer := Answer{Notes: append(notes, mix.sources...), Derivation: chem.DerivePH(mix.acids, mix.strong, t, pH)}
+	answer.Results = append([]Result{Number("pH", pH, "")}, speciesRows(mix, pH, t)...)
+	switch active, err := chem.PHDavies(mix.acids, mix.strong, mix.ions, t); {
+	case err == nil:
+		answer.Results = append(answer.Results, Number("pH_activity", active.PH, ""),
+			Number("ionic_strength", active.IonicStrength.MolesPerLitre(), "mol/L"))
+	default:
+		answer.Notes = append(answer.Notes, err.Error())
+	}
+	return answer, nil
+}
+
+// speciesRows gives the concentration of every form at the pH.
+func speciesRows(mix mixture, pH float64, t chem.Temperature) []Result {
+	h, oh := chem.WaterIons(pH, t)
+	rows := []Result{Number("H^+", h.MolesPerLitre(), "mol/L"), Number("OH^-", oh.MolesPerLitre(), "mol/L")}
+	for _, p := range mix.acids {
+		for i, share := range chem.Ionised(p.PKa, pH) {
+			name := fmt.Sprintf("%s (%s)", p.Name, chargeText(p.Charge-i))
+			rows = append(rows, Number(name, float64(share)*p.C.MolesPerLitre(), "mol/L"))
+		}
+	}
+	return rows
+}
+
+// chargeText writes a charge as on an ion: "0", "1+", "2-".
+func chargeText(z int) string {
+	switch {
+	case z > 0:
+		return fmt.Sprintf("%d+", z)
+	case z < 0:
+		return fmt.Sprintf("%d-", -z)
+	}
+	return "0"
+}
+
+// readMixture reads the key mix; forms of one acid are put together.
+func readMixture(args Args) (mixture, error) {
+	pairs, err := args.Pairs("mix")
+	if err != nil {
+		return mixture{}, err
+	}
+	own, err := ownConstants(args, pairs)
+	if err != nil {
+		return mixture{}, err
+	}
+	var mix mixture
+	for _, pair := range pairs {
+		c, err := ReadPair("mix", pair, chem.ParseConcentration)
+		if err != nil {
+			return mixture{}, err
+		}
+		if p, ok := own[strings.ToLower(pair.Name)]; ok {
+			p.C = c
+			mix.add(p, "pKa of "+p.Name+": given")
+			continue
+		}
+		if err := mix.dissolve(pair.Name, c); err != nil {
+			return mixture{}, &KeyError{Key: "mix", Text: pair.Name, Cause: err}
+		}
+	}
+	return mix, nil
+}
+
+// add puts an acid to its other forms, if they are there already.
+func (m *mixture) add(p chem.Protolyte, source string) {
+	for i := range m.acids {
+		if m.acids[i].Name == p.Name {
+			m.acids[i].C += p.C
+			return
+		}
+	}
+	m.acids = append(m.acids, p)
+	m.sources = append(m.sources, source)
+}
+
+// dissolve adds a substance of the table, or a formula.
+func (m *mixture) dissolve(name string, c chem.Concentration) error {
+	s, ok := chem.LookupSubstance(name)
+	if !ok {
+		s = &chem.Substance{Name: name, Formula: name}
+	}
+	f, err := chem.ParseFormula(s.Formula)
+	if err != nil && !ok {
+		return &chem.NoDataError{What: "acid dissociation", Of: name, Advice: fmt.Sprintf("check the spelling, or give pka=%q", name+": 4.76")}
+	}
+	e, err := chem.ElectrolyteOf(s.Name, s.CAS, f)
+	if err != nil {
+		return err
+	}
+	m.strong += c * chem.Concentration(e.Strong)
+	m.ions += c * chem.Concentration(e.Ions)
+	for _, a := range e.Acids {
+		m.add(chem.Protolyte{Name: a.Acid.Name, PKa: a.Acid.PKa, Charge: a.Acid.Charge, C: c * chem.Concentration(a.Count)},
+			"pKa of "+a.Acid.Name+" "+joinNumbers(a.Acid.PKa)+": "+strings.Join(a.Acid.Sources, "; "))
+	}
+	return nil
+}
+
+func joinNumbers(xs []float64) string {
+	texts := make([]string, len(xs))
+	for i, x := range xs {
+		texts[i] = fmt.Sprint(x)
+	}
+	return strings.Join(texts, ", ")
+}
+
+// ownConstants reads the key pka: constants without a name belong to the one
+// substance of the mixture that the table lacks, or to the only one there is.
+func ownConstants(args Args, pairs []Pair) (map[string]chem.Protolyte, error) {
+	own := map[string]chem.Protolyte{}
+	if !args.Has("pka") {
+		return own, nil
+	}
+	charge := 0
+	if args.Has("charge") {
+		x, err := args.Number("charge")
+		if err != nil {
+			return nil, err
+		}
+		if charge = int(x); float64(charge) != x || charge < -10 || charge > 10 {
+			return nil, &KeyError{Key: "charge", Text: args["charge"], What: "not a whole number from -10 to 10", Wanted: "write 0 for an acid, 1 for an amine", Cause: chem.ErrOutOfRange}
+		}
+	}
+	if !strings.Contains(args["pka"], ":") {
+		name, err := lacking(pairs)
+		if err != nil {
+			return nil, err
+		}
+		pKa, err := readConstants(strings.ReplaceAll(args["pka"], ";", "/"))
+		own[strings.ToLower(name)] = chem.Protolyte{Name: name, PKa: pKa, Charge: charge}
+		return own, err
+	}
+	named, err := args.Pairs("pka")
+	if err != nil {
+		return nil, err
+	}
+	for _, n := range named {
+		pKa, err := readConstants(n.Value)
+		if err != nil {
+			return nil, err
+		}
+		own[strings.ToLower(n.Name)] = chem.Protolyte{Name: n.Name, PKa: pKa, Charge: charge}
+	}
+	return own, nil
+}
+
+// readConstants reads pKa parted by slashes, in the order of the steps.
+func readConstants(text string) ([]float64, error) {
+	var pKa []float64
+	for _, part := range strings.Split(text, "/") {
+		x, err := chem.ParseNumber(part)
+		if err != nil {
+			return nil, &KeyError{Key: "pka", Text: text, Cause: err}
+		}
+		pKa = append(pKa, x)
+	}
+	return pKa, nil
+}
+
+// lacking returns the one substance that the table can't take apart, or the only one.
+func lacking(pairs []Pair) (string, error) {
+	if len(pairs) == 1 {
+		return pairs[0].Name, nil
+	}
+	var names []string
+	for _, p := range pairs {
+		var trial mixture
+		if err := trial.dissolve(p.Name, 1); errors.Is(err, chem.ErrNoData) {
+			names = append(names, p.Name)
+		}
+	}
+	if len(names) == 1 {
+		return names[0], nil
+	}
+	return "", &KeyError{Key: "pka", What: "it isn't clear which substance it belongs to", Wanted: fmt.Sprintf("write pka=%q", pairs[0].Name+": 4.76"), Cause: chem.ErrAmbiguous}
+}
