@@ -4,6 +4,7 @@ import (
 	"errors"
 	"fmt"
 	"math"
+	"slices"
 
 	"stillroom/chem"
 	"stillroom/inventory"
@@ -22,6 +23,7 @@ type planning struct {
 	program walker
 	policy  *policyTable
 	claims  map[int64]int64 // promised to earlier runs of a slate, by bottle
+	relax   func(*Ask)      // loosens what the recipe accepts; nil for not at all
 
 	scale   Scale
 	batches int
@@ -32,6 +34,25 @@ type planning struct {
 	covers  []coverage
 	made    []makeUp
 	found   []Finding
+}
+
+// MakePlan plans a run against a shelf. The same request and shelf give the
+// same plan, byte for byte. The error is a *RequestError if the request can't be
+// planned, a *StepError if the recipe can't be carried out at this scale.
+func MakePlan(req Request, shelf *inventory.Shelf) (*Plan, error) {
+	return planAgainst(req, shelf, nil)
+}
+
+// newPlanning checks the request and compiles its recipe.
+func newPlanning(req Request, shelf *inventory.Shelf) (*planning, error) {
+	if err := req.check(); err != nil {
+		return nil, err
+	}
+	program, err := Compile(req.Recipe)
+	if err != nil {
+		return nil, err
+	}
+	return &planning{req: req, shelf: shelf, program: program}, nil
 }
 
 // mostPasses bounds how often the walk-through is repeated until the stocks it
@@ -196,7 +217,7 @@ func (p *planning) match() error {
 		return err
 	}
 	matcher.claims = p.claims
-	p.matcher, p.asks = matcher, p.walk.Asks
+	p.matcher, p.asks = matcher, p.relaxed(p.walk.Asks)
 	demands, err := demandsOf(p.asks, p.shelf)
 	if err != nil {
 		return err
@@ -208,13 +229,24 @@ func (p *planning) match() error {
 	}
 	// The water of the make-ups is a need of its own, so that everything is
 	// matched once more with it.
-	p.asks = append(append([]Ask(nil), p.walk.Asks...), makeUpAsks(p.made)...)
+	p.asks = append(slices.Clip(p.asks), makeUpAsks(p.made)...)
 	if demands, err = demandsOf(p.asks, p.shelf); err != nil {
 		return err
 	}
 	clear(matcher.used)
 	p.covers = matcher.coverAll(p.asks, demands, p.req.Recipe.Limiting)
 	return nil
+}
+
+func (p *planning) relaxed(asks []Ask) []Ask {
+	if p.relax == nil {
+		return asks
+	}
+	asks = slices.Clone(asks)
+	for i := range asks {
+		p.relax(&asks[i])
+	}
+	return asks
 }
 
 // write puts the plan together.
