@@ -50,7 +50,9 @@ func (m *matcher) decideCovered(c *coverage, limit float64) {
 	if len(n.Spares) > 0 {
 		n.Because += "; " + n.Spares[0].Why
 	}
-	if n.ChanceShort > limit {
+	// Two standard errors of the draws are allowed for, so that chance alone
+	// doesn't make a need tight that stands exactly at the limit.
+	if n.ChanceShort-2*n.ChanceError > limit {
 		n.State = Tight
 		n.Because = fmt.Sprintf("covered by %s, but the chance of running short is %.2g %%, above the limit of %.2g %%", drawCodes(n.Draws), n.ChanceShort*100, limit*100)
 	}

@@ -10,7 +10,7 @@ import (
 // product sets the product's range and the chance of the target beside the
 // rest, from the yield's distribution itself: the mass is proportional to it.
 func (r *Risk) product(p Product, scale Scale, target chem.Mass) {
-	yield, err := yieldDist(p.Yield)
+	yield, err := p.Yield.Dist()
 	if err != nil || p.Amount <= 0 || p.PerLimiting <= 0 {
 		r.TargetMet = -1
 		return
@@ -28,22 +28,6 @@ func (r *Risk) product(p Product, scale Scale, target chem.Mass) {
 		}
 	}
 	r.TargetMet = 1 - (low+high)/2
-}
-
-// yieldDist is the yield as a distribution.
-func yieldDist(y Yield) (chem.Dist, error) {
-	normal, err := chem.NewNormal(float64(y.Mean), float64(y.SD))
-	if err != nil {
-		return nil, err
-	}
-	most := y.Cap
-	if most == 0 {
-		most = 1
-	}
-	if y.SD == 0 {
-		return chem.Exactly(y.Mean), nil
-	}
-	return chem.NewClipped(normal, 0, float64(most))
 }
 
 // sentence is the verdict in words: how likely, the chief doubt, what one act
