@@ -129,7 +129,10 @@ func ParseDuration(text string) (Duration, error) {
 		return 0, err
 	}
 	m, err := parseQuantity(minutes, kind)
-	return h + m, err
+	if err != nil {
+		return 0, err
+	}
+	return h + m, nil
 }
 
 // ParseTemperature reads a temperature not below absolute zero: "25 °C", "298 K".
@@ -146,6 +149,10 @@ func ParseTemperature(text string) (Temperature, error) {
 	case "°F", "F", "degF":
 		// 32 °F is 0 °C exactly (NIST SP 811 app. B.8).
 		t = step - 32*Temperature(5.0/9) + ZeroCelsius
+	}
+	const rounding = 1e-9 // of -459.67 °F, which is nought exactly
+	if t < 0 && t > -rounding {
+		t = 0
 	}
 	if t < 0 {
 		return 0, &QuantityError{kind.name, text, "below absolute zero", "give one above -273.15 °C", ErrOutOfRange}
