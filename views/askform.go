@@ -1,12 +1,14 @@
 package views
 
 import (
+	"errors"
 	"net/url"
 	"strings"
 	"time"
 
 	"stillroom/chem"
 	"stillroom/inventory"
+	"stillroom/planner"
 )
 
 // An askForm is what somebody typed about a run: how much, on which day, how
@@ -127,5 +129,19 @@ func sentence(text string) string {
 // askFault says which field an error of the planner is about, in the planner's
 // own words. It reports false for an error that no field can mend.
 func askFault(err error) (fault, bool) {
+	var request *planner.RequestError
+	if errors.As(err, &request) {
+		f := fault{Field: askFields[request.Field], Text: sentence(request.What)}
+		if request.Would != "" {
+			f.Text += " " + sentence(request.Would)
+		}
+		return f, true
+	}
+	if step := planner.IsStep(err); step != nil {
+		return fault{Text: sentence(step.Error())}, true
+	}
 	return fault{}, false
 }
+
+// askFields leads from the planner's fields to those of the form.
+var askFields = map[string]string{"target": "wanted", "on": "on", "certainty": "certainty", "recipe": "recipe"}

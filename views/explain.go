@@ -87,7 +87,7 @@ func explainNeed(n planner.Need) *explainPage {
 		p.Words = append(p.Words, "For "+strings.Join(n.For, ", ")+".")
 	}
 	if n.Because != "" {
-		p.Words = append(p.Words, sentence(stateWord(n.State)+": "+n.Because))
+		p.Words = append(p.Words, sentence(n.State.String()+": "+n.Because))
 	}
 	for _, b := range n.Barred {
 		p.Words = append(p.Words, "Not bottle "+b.Bottle.Code+": "+b.Why+".")

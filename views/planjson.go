@@ -153,7 +153,7 @@ type metricsJSON struct {
 
 func planText(p *planner.Plan) planJSON {
 	out := planJSON{
-		Recipe: p.Recipe.Name, On: p.On, Verdict: stateWord(p.Verdict),
+		Recipe: p.Recipe.Name, On: p.On, Verdict: p.Verdict.String(),
 		Target: targetJSON{p.Target.Substance, p.Target.Mass.Grams()},
 		Scale: scaleJSON{p.Scale.Limiting, float64(p.Scale.Amount), float64(p.Scale.ExpectedYield),
 			p.Scale.ExpectedMass.Grams()},
@@ -170,7 +170,7 @@ func planText(p *planner.Plan) planJSON {
 }
 
 func needText(n planner.Need) needJSON {
-	out := needJSON{Substance: n.Substance, CAS: n.CAS, For: list(n.For), State: stateWord(n.State), Draws: each(n.Draws, drawText)}
+	out := needJSON{Substance: n.Substance, CAS: n.CAS, For: list(n.For), State: n.State.String(), Draws: each(n.Draws, drawText)}
 	if n.ChanceShort >= 0 {
 		out.Chance = &n.ChanceShort
 	}

@@ -2,9 +2,12 @@ package views
 
 import (
 	"net/http"
+	"strings"
 
 	"github.com/gin-gonic/gin"
 
+	"stillroom/chem"
+	"stillroom/inventory"
 	"stillroom/planner"
 )
 
@@ -14,10 +17,16 @@ type recipesPage struct {
 	Recipes []*planner.Recipe
 }
 
-// recipePage is one written procedure.
+// recipePage is one written procedure, walked through at its proven scale.
 type recipePage struct {
 	frame
 	Recipe *planner.Recipe
+	Lines  []string // of its text
+	Scale  chem.Amount
+	Proven bool // the scale is the largest proven one
+	Walk   *planner.Walk
+	Fault  string // why it can't be walked through
+	Steps  []stepRow
 }
 
 // showRecipes answers /recipes.
@@ -33,7 +42,34 @@ func (s *Server) showRecipe(c *gin.Context) error {
 	if !ok {
 		return &missing{"recipe", c.Param("name"), "All recipes are listed on their own page."}
 	}
-	p := &recipePage{Recipe: recipe}
+	shelf, err := s.Lab.Load(c.Request.Context())
+	if err != nil {
+		return err
+	}
+	p := &recipePage{Recipe: recipe, Lines: strings.Split(strings.TrimRight(recipe.Text, "\n"), "\n")}
 	p.Title, p.Section = recipe.Title, "/recipes"
+	p.walk(shelf)
 	return s.render(c, http.StatusOK, "recipe", p)
+}
+
+// walk takes the recipe through once, at its proven scale or else at one mole,
+// with the stock the recipe asks for and the ware of the lab. A recipe that
+// can't be walked through is still shown, with the reason.
+func (p *recipePage) walk(shelf *inventory.Shelf) {
+	p.Scale, p.Proven = 1*chem.Mole, false
+	if p.Recipe.ProvenScale > 0 {
+		p.Scale, p.Proven = p.Recipe.ProvenScale, true
+	}
+	program, err := planner.Compile(p.Recipe)
+	if err != nil {
+		p.Fault = sentence(err.Error())
+		return
+	}
+	walk, err := program.Walk(planner.Conditions{Limiting: p.Scale, Equipment: shelf.Equipment, Policy: shelf.Policy})
+	if err != nil {
+		p.Fault = sentence(err.Error())
+		return
+	}
+	p.Walk = walk
+	p.Steps = stepRows(walk.Steps, func(int) string { return "" })
 }

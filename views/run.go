@@ -55,7 +55,7 @@ func (p *runPage) PaperQuery() template.URL {
 }
 
 // Word is the verdict as a need state.
-func (p *runPage) Word() string { return stateWord(p.Plan.Verdict) }
+func (p *runPage) Word() string { return p.Plan.Verdict.String() }
 
 // Covered says that nothing is short, late or unfit.
 func (p *runPage) Covered() bool { return p.Plan != nil && p.Plan.Verdict <= planner.Tight }
@@ -128,7 +128,9 @@ func (s *Server) planRun(p *runPage, shelf *inventory.Shelf) error {
 	p.Plan = plan
 	p.Lead, p.Rest = firstSentence(plan.Sentence)
 	p.Needs = p.needRows()
-	p.Steps = stepRows(plan.Steps)
+	p.Steps = stepRows(plan.Steps, func(n int) string {
+		return runAddress(p.Run.ID) + "/explain/step-" + strconv.Itoa(n) + string(p.Query())
+	})
 	p.Contents = contentRows(plan.Steps)
 	p.Flow = drawFlow(plan.Flow)
 	p.Risk = riskWords(plan.Risk)
@@ -166,10 +168,12 @@ func (s *Server) findRun(c *gin.Context) (*inventory.Shelf, inventory.Run, *plan
 // recipeOf returns the recipe a run was planned with: the text kept with the
 // run, so that a later version of the recipe changes nothing in it.
 func (s *Server) recipeOf(run inventory.Run) (*planner.Recipe, error) {
-	for _, r := range s.Recipes {
-		if r.Name == run.Recipe && (run.RecipeText == "" || run.RecipeText == r.Text) {
-			return r, nil
-		}
+	r, ok := s.recipeNamed(run.Recipe)
+	if ok && (run.RecipeText == "" || run.RecipeText == r.Text) {
+		return r, nil
+	}
+	if run.RecipeText != "" {
+		return planner.ParseRecipe(run.Recipe, []byte(run.RecipeText))
 	}
 	return nil, &missing{"recipe", run.Recipe, "The recipe of this run is no longer among the recipes."}
 }

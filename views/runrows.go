@@ -10,16 +10,6 @@ import (
 	"stillroom/planner"
 )
 
-// stateWords are the words of the need states, in the order of the constants.
-var stateWords = [...]string{"covered", "tight", "late", "unfit", "short"}
-
-func stateWord(s planner.State) string {
-	if s < 0 || int(s) >= len(stateWords) {
-		return "not assessed"
-	}
-	return stateWords[s]
-}
-
 // needRow is a line of the needs table.
 type needRow struct {
 	planner.Need
@@ -46,7 +36,7 @@ func (p *runPage) needRows() []needRow {
 	rows := make([]needRow, len(p.Plan.Needs))
 	for i, n := range p.Plan.Needs {
 		rows[i] = needRow{
-			Need: n, N: i + 1, Word: stateWord(n.State), Amount: neededText(n), Lack: lackText(n),
+			Need: n, N: i + 1, Word: n.State.String(), Amount: neededText(n), Lack: lackText(n),
 			Chance: chanceOf(n), Note: noteOf(n), Explain: fmt.Sprintf("need-%d", i+1),
 		}
 		for j, d := range n.Draws {
@@ -121,13 +111,15 @@ type stepRow struct {
 	Explain string
 }
 
-func stepRows(steps []planner.StepReport) []stepRow {
+// stepRows makes the strip. Where says which address explains a step; it is ""
+// where nothing does.
+func stepRows(steps []planner.StepReport, where func(n int) string) []stepRow {
 	largest := largestVessel(steps)
 	rows := make([]stepRow, len(steps))
 	for i, s := range steps {
 		rows[i] = stepRow{StepReport: s, Picture: drawStep(s, largest), Ware: wareText(s.Vessel), Into: intoLines(s.Adds), Lines: stepLines(s)}
 		if len(s.Derivations) > 0 || len(s.Adds) > 0 {
-			rows[i].Explain = fmt.Sprintf("step-%d", s.N)
+			rows[i].Explain = where(s.N)
 		}
 	}
 	return rows

@@ -85,18 +85,11 @@ func samplePlan(req planner.Request, shelf *inventory.Shelf) (*planner.Plan, err
 	}, nil
 }
 
-func sampleRecipes() []*planner.Recipe {
-	return []*planner.Recipe{
-		{Name: "pentanoic-acid-dichromate", Title: "Pentanoic acid from 1-pentanol by acid dichromate", Product: "pentanoic acid", Text: "name: pentanoic-acid-dichromate\n"},
-		{Name: "hexanoic-acid-permanganate", Title: "Hexanoic acid from 1-hexanol by alkaline permanganate", Product: "hexanoic acid", Text: "name: hexanoic-acid-permanganate\n"},
-	}
-}
-
 // newSampleServer makes a server with the demonstration lab and the made-up
 // plan.
 func newSampleServer(t testing.TB) *Server {
 	t.Helper()
-	s, err := New(Config{Lab: newSampleLab(t), Plan: samplePlan, Recipes: sampleRecipes(), Sums: sampleSums(), Today: func() inventory.Date { return sampleToday }})
+	s, err := New(Config{Lab: newSampleLab(t), Plan: samplePlan, Recipes: planner.Recipes(), Sums: sampleSums(), Today: func() inventory.Date { return sampleToday }})
 	if err != nil {
 		t.Fatal(err)
 	}

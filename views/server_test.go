@@ -155,7 +155,7 @@ func TestRoutes(t *testing.T) {
 		{"/shelf?page=99&sort=expiry&down=1", 200, "The shelf"},
 		{"/shelf/bottles/NOSUCH", 404, "No bottle “NOSUCH”"},
 		{"/recipes", 200, "Recipes"},
-		{"/recipes/pentanoic-acid-dichromate", 200, "Pentanoic acid from 1-pentanol by acid dichromate"},
+		{"/recipes/pentanoic-acid-dichromate", 200, "Pentanoic acid from 1-pentanol with acid dichromate"},
 		{"/recipes/lead-into-gold", 404, "No recipe “lead-into-gold”"},
 		{"/shortfalls", 200, "Shortfalls"},
 		{"/buying", 200, "Buying"},

@@ -66,7 +66,7 @@ func shortNeeds(plan *planner.Plan) []shortNeed {
 		if n.State == planner.Covered {
 			continue
 		}
-		needs = append(needs, shortNeed{Need: n, Word: stateWord(n.State), Wanted: neededText(n), Lack: lackText(n), Answers: answers(plan, n)})
+		needs = append(needs, shortNeed{Need: n, Word: n.State.String(), Wanted: neededText(n), Lack: lackText(n), Answers: answers(plan, n)})
 	}
 	return needs
 }

@@ -68,7 +68,7 @@ func (s *Server) slateRow(run inventory.Run, shelf *inventory.Shelf) slateRow {
 		row.Word = sentence(err.Error())
 		return row
 	}
-	row.Planned, row.Word = true, stateWord(plan.Verdict)
+	row.Planned, row.Word = true, plan.Verdict.String()
 	row.Title, row.Product = plan.Recipe.Title, plan.Recipe.Product
 	row.Chance = chanceText(plan.Risk.RunEnough)
 	row.Lacks = lacks(plan.Needs)
@@ -96,7 +96,7 @@ func lacks(needs []planner.Need) []string {
 		if n.State <= planner.Tight {
 			break
 		}
-		words = append(words, n.Substance+" "+stateWord(n.State))
+		words = append(words, n.Substance+" "+n.State.String())
 	}
 	return words
 }
