@@ -4,7 +4,6 @@ import (
 	"bufio"
 	"context"
 	_ "embed"
-	"encoding/json"
 	"fmt"
 	"io"
 	"os"
@@ -66,52 +65,95 @@ func startDemo(t testing.TB) string {
 	return ""
 }
 
+// A tab is a browser tab. Its browser ends with the test.
+type tab struct {
+	testing.TB
+	ctx context.Context
+}
+
 // newTab opens a browser tab; scripts says whether JavaScript runs in it.
-func newTab(t testing.TB, scripts bool, width, height int64) context.Context {
+func newTab(t testing.TB, scripts bool) tab {
 	t.Helper()
-	options := append(chromedp.DefaultExecAllocatorOptions[:],
+	allocator, stop := chromedp.NewExecAllocator(context.Background(),
 		chromedp.ExecPath(needTool(t, "chromium")),
 		chromedp.NoSandbox,
 		chromedp.Flag("disable-quic", true),
 		chromedp.Flag("disable-component-update", true),
 		chromedp.WSURLReadTimeout(time.Minute))
-	allocator, stop := chromedp.NewExecAllocator(context.Background(), options...)
 	t.Cleanup(stop)
-	tab, closeTab := chromedp.NewContext(allocator)
+	ctx, closeTab := chromedp.NewContext(allocator)
 	t.Cleanup(closeTab)
-	tab, expire := context.WithTimeout(tab, 2*time.Minute)
-	t.Cleanup(expire)
-	do(t, tab,
-		emulation.SetScriptExecutionDisabled(!scripts),
-		chromedp.EmulateViewport(width, height))
-	return tab
+	b := tab{t, ctx}
+	b.do()
+	b.ctx, stop = context.WithTimeout(ctx, 3*time.Minute)
+	t.Cleanup(stop)
+	if !scripts {
+		b.call(func() error {
+			_, err := chromedp.Call(b.ctx, emulation.SetScriptExecutionDisabled, emulation.SetScriptExecutionDisabledParams{Value: true})
+			return err
+		})
+	}
+	b.do(chromedp.EmulateViewport(1280, 1000))
+	return b
+}
+
+func (b tab) call(f func() error) {
+	b.Helper()
+	if err := f(); err != nil {
+		b.Fatal(err)
+	}
 }
 
 // do carries out browser actions and fails the test if one fails.
-func do(t testing.TB, tab context.Context, actions ...chromedp.Action) {
-	t.Helper()
-	if err := chromedp.Run(tab, actions...); err != nil {
-		t.Fatal(err)
+func (b tab) do(actions ...chromedp.Action[chromedp.Void]) {
+	b.Helper()
+	b.call(func() error { return chromedp.Do(b.ctx, actions...) })
+}
+
+// dark chooses the colour scheme the pages are asked for.
+func (b tab) dark(dark bool) {
+	b.Helper()
+	scheme := "light"
+	if dark {
+		scheme = "dark"
 	}
+	b.call(func() error {
+		_, err := chromedp.Call(b.ctx, emulation.SetEmulatedMedia, emulation.SetEmulatedMediaParams{
+			Features: []*emulation.MediaFeature{{Name: "prefers-color-scheme", Value: scheme}}})
+		return err
+	})
+}
+
+// read evaluates an expression in the page.
+func read[T any](b tab, expression string, options ...chromedp.EvaluateOption) T {
+	b.Helper()
+	v, err := chromedp.Run(b.ctx, chromedp.Evaluate[T](expression, options...))
+	if err != nil {
+		b.Fatalf("%s: %v", expression, err)
+	}
+	return v
+}
+
+// text returns the text of the first element a selector finds. It works with
+// JavaScript off, too, because it asks the browser and not the page.
+func (b tab) text(selector string) string {
+	b.Helper()
+	v, err := chromedp.Run(b.ctx, chromedp.TextContent(chromedp.CSS(selector)))
+	if err != nil {
+		b.Fatalf("text of %s: %v", selector, err)
+	}
+	return v
 }
 
 // violations runs axe over the page that is open and returns what it objects to.
-func violations(t testing.TB, tab context.Context) []string {
-	t.Helper()
-	var found string
-	do(t, tab,
-		chromedp.Evaluate(axe, nil),
-		chromedp.Evaluate(`axe.run().then(r => JSON.stringify(r.violations.map(v =>
-			v.id + ": " + v.help + " at " + v.nodes.map(n => n.target.join(" ")).join(", "))))`,
-			&found, awaitPromise))
-	var list []string
-	if err := json.Unmarshal([]byte(found), &list); err != nil {
-		t.Fatalf("axe said %q: %v", found, err)
-	}
-	return list
+func (b tab) violations() []string {
+	b.Helper()
+	read[chromedp.Void](b, axe)
+	return read[[]string](b, `axe.run().then(r => r.violations.map(v =>
+		v.id + ": " + v.help + " at " + v.nodes.map(n => n.target.join(" ")).join(", ")))`, chromedp.EvalAwaitPromise)
 }
 
-// within is an expression that is true once the text of an element has a piece.
-func within(selector, text string) chromedp.Action {
-	return chromedp.Poll(fmt.Sprintf(`document.querySelector(%q)?.textContent.includes(%q)`, selector, text), nil)
+// until waits for the text of an element to hold a piece.
+func until(selector, piece string) chromedp.Action[chromedp.Void] {
+	return chromedp.Poll[chromedp.Void](fmt.Sprintf(`document.querySelector(%q)?.textContent.includes(%q)`, selector, piece))
 }

@@ -2,9 +2,16 @@ package main
 
 import (
 	"io"
+	"time"
 
 	"github.com/spf13/cobra"
+
+	"stillroom/inventory"
 )
+
+// today is the civil date of the machine's clock, the only clock the program
+// reads besides the one that stamps changes of the stock.
+func today() inventory.Date { return inventory.DateOf(time.Now()) }
 
 // newRoot joins the commands. Each has its own file.
 func newRoot(stdout, stderr io.Writer) *cobra.Command {
@@ -27,5 +34,7 @@ func newRoot(stdout, stderr io.Writer) *cobra.Command {
 		return usagef("%w\nusage: %s", err, cmd.UseLine())
 	})
 	root.CompletionOptions.DisableDefaultCmd = true
+	root.AddCommand(newDemo(today), newServe(today), newPlan(today), newReckon(),
+		newImport(), newExport(), newBackup(), newRestore(), newCheck())
 	return root
 }
