@@ -14,7 +14,7 @@ import (
 func WritePlanText(out io.Writer, p *planner.Plan) error {
 	w := tabwriter.NewWriter(out, 0, 0, 2, ' ', 0)
 	fmt.Fprintf(w, "%s %s by %s on %s\n", massPlain(p.Target.Mass), p.Target.Substance, p.Recipe.Name, p.On.Long())
-	fmt.Fprintf(w, "%s. %s\n", capital(stateWord(p.Verdict)), p.Sentence)
+	fmt.Fprintf(w, "%s. %s\n", capital(p.Verdict.String()), p.Sentence)
 	writeNeeds(w, p.Needs)
 	writeBuying(w, p.Buy)
 	writeSteps(w, p.Steps)
@@ -41,7 +41,7 @@ func writeNeeds(w io.Writer, needs []planner.Need) {
 		if lack := lackText(n); lack != "" {
 			from = append(from, lack)
 		}
-		fmt.Fprintf(w, "  %s\t%s\t%s\t%s\n", stateWord(n.State), n.Substance, neededText(n), strings.Join(from, ", "))
+		fmt.Fprintf(w, "  %s\t%s\t%s\t%s\n", n.State.String(), n.Substance, neededText(n), strings.Join(from, ", "))
 	}
 }
 
