@@ -22,7 +22,7 @@ type Azeotrope struct {
 
 var azeotropes = sync.OnceValue(func() map[string]Azeotrope {
 	table := make(map[string]Azeotrope)
-	for _, row := range readTable("azeotropes.csv") {
+	for _, row := range withMore("azeotropes") {
 		if _, kept := table[row.text("cas_2")]; kept {
 			continue // the first row of a pair is the better sourced one
 		}

@@ -25,7 +25,7 @@ type DryingAgent struct {
 
 var dryingAgents = sync.OnceValue(func() []DryingAgent {
 	var agents []DryingAgent
-	for _, row := range readTable("drying_agents.csv") {
+	for _, row := range withMore("drying_agents") {
 		agent := DryingAgent{
 			Name: row.text("agent"), CAS: row.text("cas"), Formula: row.text("formula"), Hydrate: row.text("hydrate_formed"),
 			Speed: row.text("speed"), Intensity: row.text("intensity"),

@@ -13,11 +13,12 @@ type Formation struct {
 	Enthalpy              MolarEnergy
 	Source                string
 	hill                  string // formula in Hill order, for comparison
+	charge                int
 }
 
 var formations = sync.OnceValue(func() []Formation {
 	var list []Formation
-	for _, row := range append(readTable("formation_enthalpy.csv"), readTable("formation_enthalpy_more.csv")...) {
+	for _, row := range withMore("formation_enthalpy") {
 		h, ok := row.number("delta_f_H_kJ_mol")
 		if !ok || strings.Contains(row.text("formula"), "·nH2O") {
 			continue // entropy only, or a strength of acid that HeatOfDilution reads
@@ -25,7 +26,7 @@ var formations = sync.OnceValue(func() []Formation {
 		list = append(list, Formation{
 			Species: row.text("species"), Formula: row.text("formula"), CAS: row.text("cas"), State: row.text("state"),
 			Enthalpy: MolarEnergy(h) * KilojoulePerMole, Source: row.text("source"),
-			hill: mustFormula(row.text("formula")).Hill(),
+			hill: mustFormula(row.text("formula")).Hill(), charge: mustFormula(row.text("formula")).Charge(),
 		})
 	}
 	return list
@@ -44,7 +45,8 @@ var elementStates = map[string]string{
 // FormationEnthalpy returns the standard enthalpy of formation at 25 °C of a
 // species by name, CAS number or formula ("SO4^2-"), in a state (s, l, g, aq).
 // With an empty state an ion is taken in water and anything else in the first of
-// s, l, g, aq that is tabulated, which is its normal state at 25 °C. Ions stand
+// s, l, g, aq that is tabulated, which is its normal state at 25 °C. A salt, a
+// hydroxide or a strong acid in water is the sum of its ions. Ions stand
 // on the scale on which H⁺(aq) is zero. Where isomers share a formula the error
 // names them; it wraps ErrNoData.
 func FormationEnthalpy(species, state string) (MolarEnergy, error) {
@@ -59,6 +61,11 @@ func FormationOf(species, state string) (Formation, error) {
 		of += " (" + state + ")"
 	}
 	found := formationsOf(species)
+	if state == "aq" && !slices.ContainsFunc(found, func(f Formation) bool { return f.State == "aq" }) {
+		if f, ok := dissolvedFormation(species); ok {
+			return f, nil
+		}
+	}
 	if len(found) == 0 {
 		return Formation{}, &DataError{Of: of, Err: ErrNoData, Remedy: "give its enthalpy of formation in kJ/mol"}
 	}
@@ -90,16 +97,17 @@ func formationsOf(species string) []Formation {
 		found = append(found, Formation{Species: key, Formula: key, State: reference, Source: "zero by definition: element in its reference state"})
 	}
 	for _, f := range formations() {
-		if f.named(species) || (hill != "" && f.hill == hill && !hasState(found, f)) {
+		if f.named(species) || (hill != "" && f.hill == hill && !isElement(found, f)) {
 			found = append(found, f)
 		}
 	}
 	return found
 }
 
-// hasState says whether an element's reference row is listed already.
-func hasState(found []Formation, f Formation) bool {
-	return len(found) > 0 && found[0].Formula == f.hill && found[0].State == f.State
+// isElement says whether an element's reference row of that state is listed
+// already.
+func isElement(found []Formation, f Formation) bool {
+	return len(found) > 0 && found[0].Species == f.hill && found[0].State == f.State
 }
 
 // named says whether a word is the name or number of this species.

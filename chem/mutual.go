@@ -35,7 +35,7 @@ type solubilityTable struct{ waterInSolvent, solventInWater []solubilityPoint }
 
 var mutualSolubilities = sync.OnceValue(func() map[string]*solubilityTable {
 	tables := make(map[string]*solubilityTable)
-	for _, row := range readTable("mutual_solubility.csv") {
+	for _, row := range withMore("mutual_solubility") {
 		table := tables[row.text("cas")]
 		if table == nil {
 			table = &solubilityTable{}

@@ -20,19 +20,22 @@ type HeatTerm struct {
 	Formation   Formation
 }
 
-// ReactionEnthalpy returns the enthalpy of a reaction per mole of it as written
-// with the smallest whole coefficients,
+// ReactionEnthalpy returns the enthalpy of a reaction per mole of it as written,
+// or, where it doesn't balance as written, with the smallest whole coefficients,
 //
 //	ΔH = Σ ν · ΔfH(products) − Σ ν · ΔfH(reactants)
 //
-// The equation is balanced first. A state in brackets behind a species counts;
+// A state in brackets behind a species counts;
 // without one FormationEnthalpy says which is taken. Given holds, by the formula
 // as written, an enthalpy the user gives or the name of the isomer that is
 // meant; it may be nil. Source: OpenStax Chemistry 2e, 5.3 (Hess's law).
 func ReactionEnthalpy(e Equation, given map[string]FormationGiven) (ReactionHeat, error) {
-	balanced, err := Balance(e)
-	if err != nil {
-		return ReactionHeat{}, err
+	balanced := e
+	if e.Balanced() != nil {
+		var err error
+		if balanced, err = Balance(e); err != nil {
+			return ReactionHeat{}, err
+		}
 	}
 	heat := ReactionHeat{Equation: balanced}
 	for i, side := range [2][]Term{balanced.Left, balanced.Right} {

@@ -48,7 +48,7 @@ func (f VapourForm) String() string {
 
 var vapourEquations = sync.OnceValue(func() map[string][]VapourEquation {
 	equations := make(map[string][]VapourEquation)
-	for _, row := range readTable("antoine.csv") {
+	for _, row := range withMore("antoine") {
 		form, ok := vapourForms[row.text("form")]
 		if !ok {
 			panic("chem: antoine.csv has an unknown form " + row.text("form"))

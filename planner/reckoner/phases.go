@@ -129,7 +129,7 @@ func portionsOf(args Args, d float64, aqueous, organic chem.Volume) (int, error)
 	case args.Has("portions"):
 		return args.Whole("portions")
 	case !args.Has("recovery"):
-		return 0, missing("portions", "3\" or recovery=\"98 %")
+		return 0, &KeyError{Key: "portions", What: "missing", Wanted: `give portions="3" or recovery="98 %"`, Cause: ErrMissingKey}
 	}
 	recovery, err := args.Fraction("recovery")
 	if err != nil {

@@ -72,7 +72,7 @@ func boilingPressure(args Args) (chem.Pressure, []string, error) {
 		p, err := positive(args, "pressure", args.Pressure)
 		return p, nil, err
 	case !args.Has("altitude"):
-		return 0, nil, missing("pressure", "101.325 kPa\" or altitude=\"1600")
+		return 0, nil, &KeyError{Key: "pressure", What: "missing", Wanted: `give pressure="101.325 kPa" or altitude="1600"`, Cause: ErrMissingKey}
 	}
 	metres, err := args.metres("altitude")
 	if err != nil {
