@@ -21,6 +21,8 @@ type Ask struct {
 	Hidden bool
 	Key    string // of a hidden need, for switching it off
 	Why    string // reason with its arithmetic, for a hidden need
+	// Index is the ask's place in the Asks of an Outcome.
+	Index int
 	// Exact marks charges that must be weighed exactly; the rest are "about".
 	Exact      bool
 	Derivation chem.Derivation

@@ -1,19 +1,13 @@
 package planner
 
-import (
-	"stillroom/chem"
-	"stillroom/inventory"
-)
+import "stillroom/chem"
 
 // figuresOf takes out of the policy what the walk needs on its way.
-func figuresOf(p inventory.Policy) policyFigures {
-	var f policyFigures
-	f.heatU, _ = p.Value("heat.u")
-	f.heatGap, _ = p.Value("heat.gap")
-	f.iceSpare, _ = p.Value("heat.ice-spare")
-	f.holdUp, _ = p.Value("prior.hold-up")
-	f.stillLeave, _ = p.Value("still.leave")
-	return f
+func figuresOf(p *policyTable) policyFigures {
+	return policyFigures{
+		heatU: p.value("heat.u"), heatGap: p.value("heat.gap"), iceSpare: p.value("heat.ice-spare"),
+		stillLeave: p.value("still.leave"), emulsionExtra: p.value("prior.emulsion.extra"), emulsionChance: p.value("prior.emulsion.chance"),
+	}
 }
 
 // dilutionSteps is the number of strengths at which heats of dilution are kept.

@@ -77,7 +77,7 @@ func (o *acidifyOp) run(w *Workspace) error {
 	w.settle(v)
 	w.fullest(v)
 	if o.stripAsk >= 0 {
-		w.countPieces(o.stripAsk, o.strips, fmt.Sprintf("%.0f for each batch, to read pH %.3g", o.strips, o.pH))
+		w.countPieces(o.stripAsk, o.strips, o.pH)
 	}
 	if w.report != nil {
 		o.tell(w, v, n)

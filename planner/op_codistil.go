@@ -44,7 +44,7 @@ func (o *coDistilOp) names(visit func(kind, name string, at place)) {
 
 func (o coDistilOp) compile(c *compiler) (runner, error) {
 	o.component, o.target = c.index[o.carry], c.place[o.to]
-	o.factor = c.share(fmt.Sprintf("step %d recovery of %s", c.step.N, o.carry), o.recovery)
+	o.factor = c.share("recovery of "+o.carry, o.recovery)
 	m := &c.p.matter[o.component]
 	azeotrope, ok := chem.AzeotropeWithWater(m.cas)
 	if !ok || !azeotrope.Forms || azeotrope.MaximumBoiling {

@@ -44,6 +44,9 @@ func (o dryOp) compile(c *compiler) (runner, error) {
 			return nil, c.refuse(ErrUnsuitable, fmt.Sprintf("%s is of the %s: %s", c.r.Product, class, reason), "take "+otherAgent(class))
 		}
 	}
+	if o.agent.hiddenKey == "" {
+		o.agent.hiddenKey = "drying-agent"
+	}
 	if o.dose, err = c.dose(o.agent); err != nil {
 		return nil, err
 	}
@@ -86,7 +89,7 @@ func (o *dryOp) run(w *Workspace) error {
 	water := w.total(v, w.p.water)
 	agent := &w.p.matter[o.dose.component]
 	planned := water * molar / o.typical()
-	if planned <= 0 {
+	if planned <= 0 || w.off[o.dose.ask] {
 		return nil
 	}
 	w.pour(&o.dose, v, planned/agent.molar)
@@ -95,6 +98,7 @@ func (o *dryOp) run(w *Workspace) error {
 		w.shift(v, phase, solid, o.dose.component, w.amounts[w.at(v, phase, o.dose.component)])
 		w.shift(v, phase, solid, w.p.water, w.amounts[w.at(v, phase, w.p.water)])
 	}
+	w.part(v)
 	w.fullest(v)
 	if w.report != nil {
 		o.tell(w, water*molar, planned)
@@ -104,7 +108,6 @@ func (o *dryOp) run(w *Workspace) error {
 
 func (o *dryOp) tell(w *Workspace, water, planned float64) {
 	a := &w.report.asks[o.dose.ask]
-	a.Hidden, a.Key = true, "drying-agent"
 	a.Why = fmt.Sprintf("%.3g g of water to bind at %.3g g/g (practice %.3g to %.3g): %.3g g, then more until it flows freely", water*1e3, o.typical(), o.data.Low, o.data.High, planned*1e3)
 	w.say("%.3g g of water to bind takes %.3g g of %s; it is enough when it flows freely", water*1e3, planned*1e3, o.data.Name)
 	a.Derivation = chem.Derivation{

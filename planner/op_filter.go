@@ -62,7 +62,7 @@ func (o *filterOp) run(w *Workspace) error {
 	w.movePhase(v, o.target, organic, share)
 	w.fullest(o.target)
 	if o.paperAsk >= 0 {
-		w.countPieces(o.paperAsk, o.papers, fmt.Sprintf("%.3g for each batch", o.papers))
+		w.countPieces(o.paperAsk, o.papers, 0)
 	}
 	if w.report != nil {
 		o.tell(w, cake, held, share, product)

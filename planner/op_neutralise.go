@@ -86,7 +86,7 @@ func (o *neutraliseOp) add(w *Workspace, v int, n float64) error {
 	w.fullest(v)
 	w.heat = before
 	if o.stripAsk >= 0 {
-		w.countPieces(o.stripAsk, o.strips, fmt.Sprintf("%.0f for each batch, to read pH %.3g", o.strips, o.pH))
+		w.countPieces(o.stripAsk, o.strips, o.pH)
 	}
 	if w.report != nil {
 		o.tell(w, v, n)

@@ -51,7 +51,7 @@ func (c *compiler) progress(list []progress) ([]progress, error) {
 		if !(c.p.reactions[i].numberOf(p.key) < 0) {
 			return nil, c.refuse(ErrUnbalanced, fmt.Sprintf("reaction %s doesn't consume %s", p.reaction, p.of), "name a substance it consumes")
 		}
-		p.factor = c.share(fmt.Sprintf("step %d conversion of %s", c.step.N, p.reaction), p.conversion)
+		p.factor = c.share("conversion of "+p.reaction, p.conversion)
 		out = append(out, p)
 	}
 	return out, nil

@@ -45,7 +45,7 @@ func (o *stripOp) names(visit func(kind, name string, at place)) {
 
 func (o stripOp) compile(c *compiler) (runner, error) {
 	o.component, o.target = c.index[o.solvent], c.place[o.to]
-	o.caught = c.recoveredFactor()
+	o.caught = c.caughtFactor()
 	t, err := c.p.matter[o.component].boilsAt(o.pressure)
 	if err != nil {
 		return nil, c.refuse(ErrNoData, fmt.Sprintf("boiling point of %s at %.4g kPa: %v", o.solvent, o.pressure.Kilopascals(), err), "state boiling: under substances:")
@@ -93,6 +93,8 @@ func (o *stripOp) run(w *Workspace) error {
 			w.move(v, phase, w.p.air(), gas, c, there*(1-caught))
 		}
 	}
+	w.part(v)
+	w.settle(o.target)
 	w.celsius[v] = o.boils
 	w.fullest(o.target)
 	if w.report != nil {

@@ -90,6 +90,7 @@ func (w *Workspace) spare(ask, component, chance int, portion float64) {
 	if w.u != nil && w.value(chance) == 0 {
 		return
 	}
+	portion *= w.policy.emulsionExtra
 	w.used[ask] += portion
 	if w.report == nil {
 		return
@@ -97,5 +98,5 @@ func (w *Workspace) spare(ask, component, chance int, portion float64) {
 	a := &w.report.asks[ask]
 	a.Pure += chem.Mass(portion)
 	a.Amount += chem.Amount(portion / w.p.matter[component].molar)
-	a.Why = fmt.Sprintf("one portion of %.3g g ready for an emulsion, which %.3g %% of work-ups have (policy prior.emulsion.chance); not part of the balance", portion*1e3, 100*w.value(chance))
+	a.Why = fmt.Sprintf("%.3g times a portion, %.3g g, ready for an emulsion, which %.3g %% of work-ups have (policy prior.emulsion); not part of the balance", w.policy.emulsionExtra, portion*1e3, 100*w.policy.emulsionChance)
 }

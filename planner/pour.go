@@ -177,14 +177,15 @@ func (w *Workspace) draw(ask, component, v int, n float64) float64 {
 	return stock
 }
 
-// countPieces books consumables.
-func (w *Workspace) countPieces(ask int, pieces float64, formula string) {
+// countPieces books consumables; pH is what strips are there to read, 0 for
+// anything else.
+func (w *Workspace) countPieces(ask int, pieces, pH float64) {
 	if w.off[ask] {
 		return
 	}
 	w.used[ask] += pieces
 	if w.report != nil {
-		w.report.counted(w, ask, pieces, formula)
+		w.report.counted(w, ask, pieces, pH)
 	}
 }
 

@@ -142,6 +142,7 @@ func (w *Workspace) react(x *reactionOf, v int, extent float64) float64 {
 	if extent == 0 {
 		return 0
 	}
+	w.dirty[v] = true
 	for _, t := range x.terms {
 		n := t.number * extent
 		if n < 0 {

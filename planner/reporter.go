@@ -112,11 +112,12 @@ func deriveCharge(w *Workspace, a *Ask, c, ask int, n, stock float64) chem.Deriv
 }
 
 // counted notes consumables.
-func (r *reporter) counted(w *Workspace, ask int, pieces float64, why string) {
+func (r *reporter) counted(w *Workspace, ask int, pieces, pH float64) {
 	a := &r.asks[ask]
 	a.Pieces += pieces
-	if why != "" {
-		a.Why = why
+	a.Why = fmt.Sprintf("%.3g for each batch", pieces)
+	if pH != 0 {
+		a.Why += fmt.Sprintf(", to read pH %.3g", pH)
 	}
 	r.step.Adds = append(r.step.Adds, Add{Substance: a.Substance, Pieces: pieces, Rule: a.Rule})
 }
@@ -138,17 +139,22 @@ func (w *Workspace) fullest(v int) {
 	r.step.Temperature = chem.Celsius(w.celsius[v])
 }
 
+// unseen is the share of a vessel's mass below which a component isn't listed:
+// no method of a bench lab would find it (a part in a thousand million).
+const unseen = 1e-9
+
 // contents lists what a place holds, phase by phase, the largest first.
 func (w *Workspace) contents(v int) []Content {
 	var list []Content
+	all := w.massIn(v)
 	for phase := range phaseCount {
 		first := len(list)
 		water := w.amounts[w.at(v, phase, w.p.water)] * w.p.matter[w.p.water].molar
 		for c, n := range w.in(v, phase) {
-			if n <= 0 {
+			m := &w.p.matter[c]
+			if n*m.molar <= unseen*all {
 				continue
 			}
-			m := &w.p.matter[c]
 			content := Content{Substance: m.name, Formula: m.formula.String(), Phase: phaseNames[phase], Amount: chem.Amount(n), Mass: chem.Mass(n * m.molar)}
 			if phase != gas {
 				content.Volume = chem.Volume(volumeBeside(m, n*m.molar, water, phase))

@@ -24,16 +24,6 @@ func (y Yield) Dist() (chem.Dist, error) {
 	return chem.NewClipped(normal, 0, most)
 }
 
-// addYield enters the isolated yield as an uncertain quantity.
-func (c *compiler) addYield() {
-	d, err := c.r.Yield.Dist()
-	if err != nil {
-		d = chem.Exactly(float64(c.r.Yield.Mean))
-	}
-	c.p.yieldFactor = c.factor("isolated yield", d)
-	c.p.factors[c.p.yieldFactor].mean = float64(c.r.Yield.Mean)
-}
-
 // ScaleFor works out the limiting reagent that gives target with a certainty:
 // the run is scaled on the yield that is reached with that chance, not on the
 // mean,

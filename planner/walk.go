@@ -14,7 +14,7 @@ package planner
 //
 //	ws := program.Workspace(conditions)        // one for each goroutine
 //	u := make([]float64, program.Uncertain())  // uniform on (0, 1), one for each uncertain quantity
-//	outcome := program.Sample(ws, u)           // outcome.Product, outcome.Asks[i] belongs to walk.Asks[i]
+//	outcome := program.Sample(ws, u)           // outcome.Product, outcome.Asks[ask.Index]
 
 import (
 	"stillroom/chem"
@@ -108,8 +108,8 @@ type Yield struct {
 // and are overwritten by the next draw.
 type Outcome struct {
 	Product chem.Mass
-	// Asks holds what each ask of the walk used up: the pure mass in kilograms,
-	// or the pieces.
+	// Asks holds by Ask.Index what was used up: the pure mass in kilograms, or
+	// the pieces.
 	Asks []float64
 	// Failed is set when a step could not be done with these values.
 	Failed bool

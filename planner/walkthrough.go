@@ -78,6 +78,10 @@ func (r *reporter) finish(w *Workspace) *Walk {
 		a.Pure *= chem.Mass(w.batches)
 		a.Amount *= chem.Amount(w.batches)
 		a.Pieces *= w.batches
+		a.Index = i
+		if a.Pure == 0 && a.Pieces == 0 {
+			continue
+		}
 		walk.Asks = append(walk.Asks, a)
 	}
 	for i := range walk.Waste {
@@ -139,43 +143,70 @@ func (r *reporter) flowList() []Flow {
 	return list
 }
 
-// checkStep compares what the step's places hold, element by element, with what
-// they held before and what came from the shelf since.
-func (w *Workspace) checkStep() error { return w.checkTotals() }
-
-// checkRun is checkStep over the whole run.
-func (w *Workspace) checkRun() error { return w.checkTotals() }
-
-// checkTotals sums mass, charge and every element over all places and compares
-// them with what came from the shelf. It allocates nothing.
-func (w *Workspace) checkTotals() error {
+// checkStep compares what all places hold, element by element, with what came
+// from the shelf. Only the places that the step has changed are summed again.
+func (w *Workspace) checkStep() error {
 	n := len(w.p.matter)
-	sums := w.before[:len(w.p.elements)+2]
-	sizes := w.before[len(sums) : 2*len(sums)]
-	clear(sums)
-	clear(sizes)
-	totals := w.totals()
-	for c := range n {
-		m := &w.p.matter[c]
-		off := totals[c] - w.came[c]
-		size := math.Abs(totals[c]) + math.Abs(w.came[c])
-		for _, e := range m.elements {
-			sums[e.index] += off * e.count
-			sizes[e.index] += size * e.count
-		}
-		sums[len(w.p.elements)] += off * m.molar
-		sizes[len(w.p.elements)] += size * m.molar
-		sums[len(w.p.elements)+1] += off * m.charge
-		sizes[len(w.p.elements)+1] += size * math.Abs(m.charge)
-	}
-	for k := range sums {
-		if sizes[k] == 0 {
+	for v, changed := range w.dirty {
+		if !changed {
 			continue
 		}
-		error := math.Abs(sums[k]) / sizes[k]
-		w.balance = math.Max(w.balance, error)
-		if !(error <= balanceTolerance) {
-			return w.refuse(ErrUnbalanced, fmt.Sprintf("%s doesn't balance: off by %.3g of what went in", w.elementName(k), error), "mend the reactions of the step")
+		w.dirty[v] = false
+		held := w.held[v*n : v*n+n]
+		for c := range held {
+			now := w.total(v, c)
+			w.sums[c] += now - held[c]
+			held[c] = now
+		}
+	}
+	return w.compare()
+}
+
+// checkRun sums every place once more, so that a change no step owned up to
+// shows too.
+func (w *Workspace) checkRun() error {
+	n := len(w.p.matter)
+	clear(w.sums)
+	for at := 0; at < len(w.amounts); at += n {
+		for c, x := range w.amounts[at : at+n] {
+			w.sums[c] += x
+		}
+	}
+	return w.compare()
+}
+
+// compare compares mass, charge and every element in w.sums with what came from
+// the shelf. It allocates nothing.
+func (w *Workspace) compare() error {
+	off := w.before[:len(w.p.elements)+2]
+	size := w.before[len(off) : 2*len(off)]
+	clear(off)
+	clear(size)
+	mass, charge := len(w.p.elements), len(w.p.elements)+1
+	for c := range w.p.matter {
+		m := &w.p.matter[c]
+		d := w.sums[c] - w.came[c]
+		s := math.Abs(w.sums[c]) + math.Abs(w.came[c])
+		if s == 0 {
+			continue
+		}
+		for _, e := range m.elements {
+			off[e.index] += d * e.count
+			size[e.index] += s * e.count
+		}
+		off[mass] += d * m.molar
+		size[mass] += s * m.molar
+		off[charge] += d * m.charge
+		size[charge] += s * math.Abs(m.charge)
+	}
+	for k := range off {
+		if size[k] == 0 {
+			continue
+		}
+		share := math.Abs(off[k]) / size[k]
+		w.balance = math.Max(w.balance, share)
+		if !(share <= balanceTolerance) {
+			return w.refuse(ErrUnbalanced, fmt.Sprintf("%s doesn't balance: off by %.3g of what went in", w.elementName(k), share), "mend the reactions of the step")
 		}
 	}
 	return nil
@@ -189,19 +220,6 @@ func (w *Workspace) elementName(k int) string {
 		return "mass"
 	}
 	return "charge"
-}
-
-// totals sums every component over all places and phases.
-func (w *Workspace) totals() []float64 {
-	n := len(w.p.matter)
-	totals := w.sums
-	clear(totals)
-	for at := 0; at < len(w.amounts); at += n {
-		for c, x := range w.amounts[at : at+n] {
-			totals[c] += x
-		}
-	}
-	return totals
 }
 
 // IsStep returns the *StepError in err, or nil.

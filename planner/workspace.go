@@ -22,10 +22,12 @@ type Workspace struct {
 	used    []float64 // by ask: kg of pure substance, or pieces
 	off     []bool    // by ask: switched off
 	stocks  []stockOf // by ask
+	factors []factorValue
 	u       []float64 // nil: every factor at its mean
 	dirty   []bool    // by place: changed since the last balance
-	before  []float64 // elements and mass of the vessels before the step
-	sums    []float64 // by component: scratch
+	before  []float64 // elements, mass and charge: scratch of the balance
+	held    []float64 // by place and component: at the last balance
+	sums    []float64 // by component: over all places
 	mix     []chem.Protolyte
 	policy  policyFigures
 
@@ -49,10 +51,10 @@ type stockOf struct {
 	drawn   bool // from a real bottle, not as the recipe asks
 }
 
-// policyFigures are the rows of the policy the walk itself needs; has is false
-// where the policy has no such row.
+// policyFigures are the rows of the policy that the walk reads on its way.
 type policyFigures struct {
-	heatU, heatGap, iceSpare, holdUp, stillLeave float64
+	heatU, heatGap, iceSpare, stillLeave float64
+	emulsionExtra, emulsionChance        float64
 }
 
 // Workspace makes a workspace for walking p under conditions.
@@ -70,6 +72,7 @@ func (p *Program) Workspace(in Conditions) *Workspace {
 		dirty:   make([]bool, len(p.places)),
 		before:  make([]float64, 2*(len(p.elements)+2)),
 		sums:    make([]float64, n),
+		held:    make([]float64, len(p.places)*n),
 		mix:     make([]chem.Protolyte, len(p.acids)),
 	}
 	w.limiting = float64(in.Limiting) / w.batches
@@ -80,7 +83,9 @@ func (p *Program) Workspace(in Conditions) *Workspace {
 		w.stocks[i] = p.stockFor(&p.asks[i], in.Stocks)
 		w.off[i] = p.asks[i].Hidden && slices.Contains(in.Off, p.asks[i].Key)
 	}
-	w.policy = figuresOf(in.Policy)
+	table := newPolicyTable(in.Policy)
+	w.factors = p.valuesOf(table)
+	w.policy = figuresOf(table)
 	return w
 }
 
@@ -90,6 +95,8 @@ func (w *Workspace) reset() {
 	clear(w.came)
 	clear(w.used)
 	clear(w.dirty)
+	clear(w.held)
+	clear(w.sums)
 	clear(w.before)
 	for i := range w.celsius {
 		w.celsius[i] = roomCelsius
@@ -147,6 +154,7 @@ func (w *Workspace) move(from, fromPhase, to, toPhase, c int, n float64) {
 	}
 	w.amounts[w.at(from, fromPhase, c)] -= n
 	w.amounts[w.at(to, toPhase, c)] += n
+	w.dirty[from], w.dirty[to] = true, true
 	if w.report != nil && from != to {
 		w.report.flow(from, to, c, n*w.batches)
 	}
@@ -217,42 +225,11 @@ func (w *Workspace) filled(v int) float64 {
 
 // value returns an uncertain quantity: its mean, or what the draw says.
 func (w *Workspace) value(i int) float64 {
-	f := &w.p.factors[i]
+	f := &w.factors[i]
 	if w.u == nil {
 		return f.mean
 	}
 	return f.dist.Quantile(w.u[i])
-}
-
-// factor is an uncertain quantity of a program.
-type factor struct {
-	name string
-	dist chem.Dist
-	mean float64
-}
-
-// factor enters a quantity and returns its index.
-func (c *compiler) factor(name string, d chem.Dist) int {
-	c.p.factors = append(c.p.factors, factor{name, d, d.Mean()})
-	return len(c.p.factors) - 1
-}
-
-// share enters a fraction with its spread, cut at 0 and 1.
-func (c *compiler) share(name string, s Spread) int {
-	if s.SD == 0 {
-		return c.factor(name, chem.Exactly(s.Mean))
-	}
-	normal, err := chem.NewNormal(s.Mean, s.SD)
-	if err != nil {
-		return c.factor(name, chem.Exactly(s.Mean))
-	}
-	cut, err := chem.NewClipped(normal, 0, 1)
-	if err != nil {
-		return c.factor(name, chem.Exactly(s.Mean))
-	}
-	i := c.factor(name, cut)
-	c.p.factors[i].mean = s.Mean
-	return i
 }
 
 // Uncertain returns the number of uncertain quantities: the length of the
