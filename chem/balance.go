@@ -22,7 +22,7 @@ type BalanceError struct {
 	What     string
 	Wanted   string
 	// Ways are independent balanced reactions that together span all others;
-	// only with ErrSeveralBalances. A species may have changed sides.
+	// only with ErrSeveralBalances. Species keep their sides where that can be.
 	Ways  []Equation
 	Cause error
 }
@@ -126,7 +126,7 @@ func (e Equation) noBalance(kinds []string) error {
 
 func (e Equation) severalBalances(basis [][]int64) error {
 	ways := make([]Equation, len(basis))
-	for i, v := range basis {
+	for i, v := range plainWays(basis) {
 		ways[i] = e.way(v)
 	}
 	return &BalanceError{Equation: e, What: fmt.Sprintf("%d independent reactions are mixed in it:", len(basis)),

@@ -81,6 +81,9 @@ func TestBalanceRefuses(t *testing.T) {
 		{"H2O + O2 -> H2", ErrWrongSide, "O2 would have to change sides"},
 		{"H2 + O2 -> H2O + C", ErrWrongSide, "C takes no part"},
 		{"KMnO4 + H2O2 + H2SO4 -> MnSO4 + K2SO4 + O2 + H2O", ErrSeveralBalances, "2 independent"},
+		{"KMnO4 + H2O2 + H2SO4 -> MnSO4 + K2SO4 + O2 + H2O", ErrSeveralBalances, "2 H2O2 -> O2 + 2 H2O"},
+		{"C + O2 -> CO + CO2", ErrSeveralBalances, "2 C + O2 -> 2 CO"},
+		{"C + O2 + H2 -> CO + CO2 + H2O", ErrSeveralBalances, "3 independent"},
 		{"C + O2 -> CO + CO2", ErrSeveralBalances, "2 independent"},
 	} {
 		_, err := Balance(sure(ParseEquation(test.text))(t))

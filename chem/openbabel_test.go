@@ -37,6 +37,7 @@ func TestOpenBabel(t *testing.T) {
 		compared++
 		compareOpenBabel(t, want[fields[0]], fields[1], fields[2])
 	}
+	t.Logf("%d of %d structures compared", compared, len(want))
 	if compared < len(want)*9/10 {
 		t.Errorf("Open Babel read %d of %d structures", compared, len(want))
 	}
