@@ -1,9 +1,12 @@
 package inventory
 
 import (
+	"math"
 	"reflect"
 	"testing"
 	"time"
+
+	"stillroom/chem"
 )
 
 var demoDay = NewDate(2026, time.December, 1)
@@ -95,5 +98,41 @@ func TestDemoLabHasItsFaults(t *testing.T) {
 	}
 	if len(states) != 5 {
 		t.Errorf("runs in %d states, want all 5", len(states))
+	}
+}
+
+// The embedded table knows every substance that has a number, under the same
+// name or synonym, and the formulas agree.
+func TestDemoLabAgreesWithTheTable(t *testing.T) {
+	lab := DemoLab(demoDay)
+	for _, s := range lab.Substances {
+		if s.CAS == "" {
+			continue
+		}
+		known, ok := chem.SubstanceByCAS(s.CAS)
+		if !ok || !ValidCAS(s.CAS) {
+			t.Errorf("%s: CAS %s isn't in the table", s.Name, s.CAS)
+			continue
+		}
+		if byName, ok := chem.LookupSubstance(s.Name); !ok || byName.CAS != s.CAS {
+			t.Errorf("%s: the table doesn't know the name", s.Name)
+		}
+		if s.Formula != "" && formulaFits(s.Formula, known) != nil {
+			t.Errorf("%s: formula %s, the table has %s", s.Name, s.Formula, known.Formula)
+		}
+	}
+	shelf := NewShelf(lab)
+	for _, f := range lab.Forms {
+		s, _ := shelf.SubstanceByID(f.SubstanceID)
+		if hydrate, ok := chem.SubstanceByCAS(f.CAS); f.CAS != "" && (!ok || hydrate.Hydrate() != f.HydrateWaters) {
+			t.Errorf("%s: CAS %s, %v waters", f.Name, f.CAS, f.HydrateWaters)
+		}
+		if f.DensityGML == 0 || f.Diluent == "" || f.Additive != "" {
+			continue
+		}
+		d, err := chem.SolutionDensity(s.CAS, f.Assay(), chem.Celsius(20))
+		if got := f.DensityGML; err != nil || math.Abs(d.GramsPerMillilitre()-got) > .01 {
+			t.Errorf("%s: density %v, the solution table has %v, %v", f.Name, got, d.GramsPerMillilitre(), err)
+		}
 	}
 }

@@ -134,7 +134,7 @@ func (s *Store) fillRest(tx *gorm.DB, lab Lab, _ Act) error {
 
 // identityTables are those whose numbers PostgreSQL hands out.
 var identityTables = []string{"stores", "substances", "stock_forms", "places", "bottles", "runs", "earmarks", "ledger",
-	"bottle_states", "offers", "orders", "carboys", "equipment", "recipe_texts", "audit"}
+	"bottle_states", "offers", "orders", "carboys", "equipment", "recipe_texts", "audit", "imports"}
 
 // setSequences lets PostgreSQL go on counting after rows that came with their
 // numbers.
@@ -143,6 +143,11 @@ func (s *Store) setSequences(tx *gorm.DB) error {
 		return nil
 	}
 	for _, table := range identityTables {
+		if there, err := s.hasTable(tx, table); err != nil {
+			return err
+		} else if !there { // of a later schema
+			continue
+		}
 		query := fmt.Sprintf("SELECT setval(pg_get_serial_sequence('%s', 'id'), coalesce((SELECT max(id) FROM %s), 0) + 1, false)", table, table)
 		if err := tx.Exec(query).Error; err != nil {
 			return err

@@ -49,7 +49,7 @@ func (Entry) TableName() string { return "ledger" }
 
 // chain is the head of a store's ledger.
 type chain struct {
-	StoreID int64
+	StoreID int64 `gorm:"primaryKey;autoIncrement:false"`
 	Seq     int64
 	Hash    []byte
 }

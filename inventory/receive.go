@@ -79,3 +79,17 @@ func (s *Store) nextID(tx *gorm.DB, table string) (id int64, err error) {
 	}
 	return id, tx.Raw(query).Row().Scan(&id)
 }
+
+// nextIDs takes n identities of a table at once.
+func (s *Store) nextIDs(tx *gorm.DB, table string, n int) ([]int64, error) {
+	ids := make([]int64, n)
+	if s.engine == onPostgres {
+		err := tx.Raw("SELECT nextval(pg_get_serial_sequence('"+table+"', 'id')) FROM generate_series(1, ?)", n).Scan(&ids).Error
+		return ids, err
+	}
+	first, err := s.nextID(tx, table)
+	for i := range ids {
+		ids[i] = first + int64(i)
+	}
+	return ids, err
+}
