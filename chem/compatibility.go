@@ -41,8 +41,17 @@ func listedGroups(name string) ([]int, bool) {
 	if strings.HasPrefix(key, "nitricacid") {
 		key = "nitricacidle70"
 	}
-	groups, ok := substanceGroups()[key]
-	return groups, ok
+	if groups, ok := substanceGroups()[key]; ok {
+		return groups, ok
+	}
+	// A hydrate reacts as the substance it is a hydrate of.
+	if name, hydrate := strings.CutSuffix(name, "hydrate"); hydrate {
+		if i := strings.LastIndex(name, " "); i > 0 {
+			groups, ok := substanceGroups()[substanceKey(name[:i])]
+			return groups, ok
+		}
+	}
+	return nil, false
 }
 
 var substanceGroups = sync.OnceValue(func() map[string][]int {

@@ -134,9 +134,7 @@ func formedNotes(steps []StepReport, stored map[string]bool) []HazardNote {
 			return
 		}
 		seen[key] = true
-		note := substanceNote(step, name, "")
-		note.Formed = true
-		notes = append(notes, note)
+		notes = append(notes, formedNote(step, name))
 	}
 	for _, s := range steps {
 		for _, a := range s.Adds {
@@ -151,6 +149,28 @@ func formedNotes(steps []StepReport, stored map[string]bool) []HazardNote {
 		add(s.Name, s.GasOf)
 	}
 	return notes
+}
+
+// formedNote is the note of a substance that forms. A gas forms at the pressure
+// of the room, so what is said of cylinders is left out.
+func formedNote(step, name string) HazardNote {
+	note := substanceNote(step, name, "")
+	note.Formed = true
+	pressed := func(class string) bool { return strings.HasPrefix(class, "Press. Gas") }
+	if !slices.ContainsFunc(note.Classes, pressed) {
+		return note
+	}
+	var classes []chem.HazardClass
+	for _, text := range slices.DeleteFunc(note.Classes, pressed) {
+		if c, ok := chem.ParseHazardClass(text); ok {
+			classes = append(classes, c)
+		}
+	}
+	label := chem.LabelOf(classes)
+	note.Classes = note.Classes[:len(classes)]
+	note.Signal, note.Pictograms, note.Statements, note.P = label.Signal, label.Pictograms, label.Statements, label.P
+	note.Notes = append(note.Notes, "not under pressure here; a gas displaces air and can suffocate in a small room")
+	return note
 }
 
 // vesselNotes classify each liquid or solid phase of a step's contents. Layers

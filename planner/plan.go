@@ -56,6 +56,9 @@ type Plan struct {
 	// Flow is the material flow of the run: what went where.
 	Flow     []Flow
 	Findings []Finding
+	// Tools are the lab's balances and cylinders, to whose divisions papers round
+	// the amounts.
+	Tools []inventory.Equipment
 }
 
 // Target is what was asked for.
@@ -111,6 +114,8 @@ type Need struct {
 	Amount chem.Amount
 	Pieces float64
 	For    []string // step names
+	// Exact says that a charge of it must be weighed exactly.
+	Exact bool
 	// Hidden says that the recipe's text doesn't list it: it follows from the
 	// walk-through. Key names it for switching it off.
 	Hidden bool

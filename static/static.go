@@ -22,7 +22,7 @@ import (
 // Root is the path under which Handler serves the files.
 const Root = "/static/"
 
-//go:embed app.css app.js icon.svg htmx/htmx.min.js font/*.woff2
+//go:embed app.css app.js icon.svg htmx/htmx.min.js font/*.woff2 font/*.ttf
 var files embed.FS
 
 // A file is what is sent for one address.

@@ -1,0 +1,411 @@
+package views
+
+import (
+	"fmt"
+	"slices"
+	"strings"
+
+	"stillroom/chem"
+	"stillroom/planner"
+)
+
+// HazardSheet prints the risk assessment of a run as far as the plan knows it:
+// what to do in an emergency, the scale, then in the order recognise, assess,
+// minimise, prepare the substances used and formed, the pairs that must not
+// meet, every step with what can go wrong, the waste and the signatures. What is
+// not known is printed as "no data" or "not assessed", never left blank.
+func HazardSheet(p *planner.Plan, o PaperOptions) ([]byte, error) {
+	s, err := newSheet(p, o, "Hazard sheet")
+	if err != nil {
+		return nil, err
+	}
+	h := &hazardSheet{s}
+	h.caution()
+	h.emergency()
+	h.scale()
+	h.recognise()
+	h.assess()
+	h.minimise()
+	h.prepare()
+	return s.finish()
+}
+
+type hazardSheet struct{ *sheet }
+
+// caution says what the sheet is and isn't.
+func (h *hazardSheet) caution() {
+	h.paragraph("", marginLeft, h.right-marginLeft, "A calculated draft. It does not replace a heat measurement, the suppliers' safety data sheets or a competent person's assessment, and it yields to local rules and law. Cross out what does not apply, so that it is seen to have been considered. Where it says no data or not assessed, find out before you start.")
+	h.y += 2
+}
+
+// emergency is the strip that is read first.
+func (h *hazardSheet) emergency() {
+	h.rule(1.2)
+	h.y += 3
+	h.put(family, "B", 16, marginLeft, h.y, "In an emergency")
+	h.y += 8
+	for i, line := range h.stopOrder() {
+		h.numbered(i+1, line)
+	}
+	h.y += 1
+	for _, row := range [][2]string{{"Spill", h.spill()}, {"Fire", h.fire()}, {"First aid", firstAid}} {
+		h.labelled(row[0], row[1])
+	}
+	h.y += 2
+	x := h.blank(marginLeft, h.y, 45, "emergency number")
+	h.blank(x, h.y, h.right-x-h.measure(family, "", textSize, "safety officer")-1.5, "safety officer")
+	h.y += 8
+	x = h.blank(marginLeft, h.y, 45, "first aider")
+	h.blank(x, h.y, h.right-x-h.measure(family, "", textSize, "assembly point")-1.5, "assembly point")
+	h.y += 8
+	h.rule(1.2)
+	h.y += 3
+}
+
+func (h *hazardSheet) numbered(n int, text string) {
+	lines := h.split(family, "B", 12, text, h.right-textLeft)
+	h.room(float64(len(lines)) * 5.5)
+	h.putRight(family, "B", 12, textLeft-4, h.y, fmt.Sprint(n))
+	for _, line := range lines {
+		h.put(family, "B", 12, textLeft, h.y, line)
+		h.y += 5.5
+	}
+}
+
+// labelled writes a label in the margin and text beside it.
+func (s *sheet) labelled(label, text string) {
+	const column = 26.0
+	lines := s.split(family, "", textSize, text, s.right-marginLeft-column)
+	s.room(float64(min(len(lines), 3)) * lineHeight)
+	s.put(family, "B", textSize, marginLeft, s.y, label)
+	for _, line := range lines {
+		s.room(lineHeight)
+		s.put(family, "", textSize, marginLeft+column, s.y, line)
+		s.y += lineHeight
+	}
+}
+
+// stopOrder is the order in which a run is stopped (common practice), by the
+// kinds of its steps.
+func (h *hazardSheet) stopOrder() []string {
+	var order []string
+	if h.anyStep("add", "make-up", "neutralise", "acidify", "quench") {
+		order = append(order, "Stop the addition.")
+	}
+	if h.anyStep("heat", "co-distil", "boil-down", "strip", "distil", "react") {
+		order = append(order, "Heating off, heat source away; leave condenser water on.")
+	}
+	order = append(order, "Leave stirring and cooling on.", "Sash down, everybody out of the room.", "Call the number below; wait for help at the door, with this sheet.")
+	return order
+}
+
+func (h *hazardSheet) anyStep(kinds ...string) bool {
+	return slices.ContainsFunc(h.plan.Steps, func(s planner.StepReport) bool { return slices.Contains(kinds, s.Do) })
+}
+
+// hasPictogram reports a pictogram on anything stored or in a vessel.
+func (h *hazardSheet) hasPictogram(code string) bool {
+	return slices.ContainsFunc(h.plan.Hazards, func(n planner.HazardNote) bool { return slices.Contains(n.Pictograms, code) })
+}
+
+// spill names absorbents by what is there, and the carbonate that all the
+// strong acid takes.
+func (h *hazardSheet) spill() string {
+	var words []string
+	if m := carbonateForAcid(h.plan); m > 0 {
+		words = append(words, "strong acid: sodium hydrogencarbonate, at least "+massText(m)+" for all of it, sprinkled from the edge (it foams)")
+	}
+	if h.hasPictogram("GHS03") {
+		words = append(words, "oxidiser: inert absorbent only, no paper and no sawdust; keep it wet")
+	}
+	if h.hasPictogram("GHS02") {
+		words = append(words, "flammable liquid: flames and switches first, then inert absorbent")
+	}
+	words = append(words, "anything else: inert absorbent, into a closed labelled container")
+	return strings.Join(words, "; ") + "."
+}
+
+// carbonateForAcid is the sodium hydrogencarbonate that neutralises every strong
+// mineral acid of the run: one mole for each acid hydrogen of the formula
+// (row WA-149 of the table of waste rules for sulfuric acid, 1.713 g per g).
+func carbonateForAcid(p *planner.Plan) chem.Mass {
+	carbonate, ok := chem.LookupSubstance("sodium hydrogencarbonate")
+	if !ok {
+		return 0
+	}
+	total := chem.Mass(0)
+	for _, n := range p.Needs {
+		s, ok := chem.LookupSubstance(n.Substance)
+		if !ok || s.MolarMass <= 0 || !slices.ContainsFunc(s.ReactiveGroups, func(g int) bool { return g == 1 || g == 2 }) {
+			continue
+		}
+		f, err := chem.ParseFormula(s.Formula)
+		if err != nil {
+			continue
+		}
+		hydrogens := f.Count("H")
+		total += carbonate.MolarMass.Mass(chem.Amount(hydrogens) * s.MolarMass.Of(n.Mass))
+	}
+	return total
+}
+
+func (h *hazardSheet) fire() string {
+	switch flammable, oxidiser := h.hasPictogram("GHS02"), h.hasPictogram("GHS03"); {
+	case flammable && oxidiser:
+		return "carbon dioxide or dry powder on burning liquid; much water on the oxidiser, because smothering does not stop it. Only a small fire, only with the way out behind you."
+	case oxidiser:
+		return "much water: smothering does not stop an oxidiser. Only a small fire, only with the way out behind you."
+	}
+	return "carbon dioxide or dry powder. Only a small fire, only with the way out behind you."
+}
+
+const firstAid = "skin or eyes: water for at least 15 minutes, clothes off under the shower; breathed in: fresh air; swallowed: rinse the mouth, no vomiting. Then a doctor in every case, with this sheet."
+
+// scale is the box of sizes.
+func (h *hazardSheet) scale() {
+	p := h.plan
+	h.heading("Scale", 20)
+	factor := "no proven scale on record: treat as a first run"
+	if p.Scale.Factor > 0 {
+		factor = figures(p.Scale.Factor, 2) + " times the largest proven scale"
+	}
+	h.labelled("This run", fmt.Sprintf("%s of %s from %s of %s; %s", massPlain(p.Target.Mass), p.Target.Substance, amountText(p.Scale.Amount), p.Scale.Limiting, factor))
+	h.labelled("Heat", h.worstHeat())
+	h.labelled("Gas", h.worstGas())
+	h.labelled("Fullest", h.fullest())
+	for _, f := range p.Findings {
+		if f.Severity >= planner.Warning {
+			text := f.Text
+			if f.Would != "" {
+				text += " " + f.Would
+			}
+			h.labelled("Warning", text)
+		}
+	}
+}
+
+func (h *hazardSheet) worstHeat() string {
+	worst := planner.StepReport{}
+	for _, s := range h.plan.Steps {
+		if s.Heat > worst.Heat {
+			worst = s
+		}
+	}
+	if worst.Heat <= 0 {
+		return "not assessed, or none given off"
+	}
+	text := fmt.Sprintf("at most %s, in step %d (%s)", heatText(worst.Heat), worst.N, worst.Name)
+	if worst.IfCoolingLost > 0 {
+		text += "; " + celsiusText(worst.IfCoolingLost) + " if cooling is lost"
+	} else {
+		text += "; temperature without cooling not assessed"
+	}
+	return text + ". Onset of decomposition: not assessed, it must be measured."
+}
+
+func (h *hazardSheet) worstGas() string {
+	worst := planner.StepReport{}
+	for _, s := range h.plan.Steps {
+		if s.Gas > worst.Gas {
+			worst = s
+		}
+	}
+	if worst.Gas <= 0 {
+		return "none computed; gases of side reactions not assessed"
+	}
+	return fmt.Sprintf("at most %s of %s at 20 °C, in step %d (%s)", volumeText(worst.Gas), worst.GasOf, worst.N, worst.Name)
+}
+
+func (h *hazardSheet) fullest() string {
+	worst := planner.StepReport{}
+	for _, s := range h.plan.Steps {
+		if s.Vessel.Fill > worst.Vessel.Fill {
+			worst = s
+		}
+	}
+	if worst.Vessel.Fill <= 0 {
+		return "not assessed"
+	}
+	return fmt.Sprintf("%s of %s in step %d (%s)", percentText(worst.Vessel.Fill), wareName(worst.Vessel), worst.N, worst.Name)
+}
+
+func wareName(v planner.VesselReport) string {
+	if v.Ware != "" {
+		return v.Ware
+	}
+	if v.Size > 0 {
+		return v.Kind + " " + volumePlain(v.Size)
+	}
+	return v.Kind
+}
+
+// recognise lists the substances and the pairs.
+func (h *hazardSheet) recognise() {
+	h.heading("Recognise: substances used", 30)
+	h.notes(func(n planner.HazardNote) bool { return n.At == planner.AsStored && !n.Formed })
+	formed := func(n planner.HazardNote) bool { return n.Formed }
+	if slices.ContainsFunc(h.plan.Hazards, formed) {
+		h.heading("Recognise: substances formed on the way", 30)
+		h.notes(formed)
+	}
+	h.heading("Recognise: pairs that must not meet", 15)
+	if len(h.plan.Pairs) == 0 {
+		h.paragraph("", textLeft, h.right-textLeft, "None listed by the chart. A pair that is not listed is not shown to be harmless.")
+		return
+	}
+	for _, p := range h.plan.Pairs {
+		if grave(p) {
+			h.pair(p)
+		}
+	}
+	h.mildPairs()
+	h.y++
+	h.paragraph("", textLeft, h.right-textLeft, "By the chart of EPA-600/2-80-076 and supplementary rows. Pairs that the recipe brings together on purpose are among them: only as the step says. A pair that is not listed is not shown to be harmless.")
+}
+
+func (h *hazardSheet) pair(p chem.Incompatibility) {
+	text := p.Consequences
+	if p.Note != "" {
+		text += ": " + p.Note
+	}
+	title := p.A + " and " + p.B
+	titles := h.split(family, "B", textSize, title, h.right-textLeft)
+	lines := h.split(family, "", textSize, text, h.right-textLeft)
+	h.room(float64(len(titles)+len(lines)) * lineHeight)
+	h.put(family, "B", textSize, marginLeft, h.y, strings.Join(p.Codes, " "))
+	for _, line := range titles {
+		h.put(family, "B", textSize, textLeft, h.y, line)
+		h.y += lineHeight
+	}
+	for _, line := range lines {
+		h.put(family, "", textSize, textLeft, h.y, line)
+		h.y += lineHeight
+	}
+	h.y++
+}
+
+// grave tells the pairs that get lines of their own from those that only warm
+// up, fizz or dissolve.
+func grave(p chem.Incompatibility) bool {
+	return slices.ContainsFunc(p.Codes, func(code string) bool { return code != "H" && code != "G" && code != "S" })
+}
+
+// mildPairs gathers the others by what they do.
+func (h *hazardSheet) mildPairs() {
+	var kinds []string
+	pairs := map[string][]string{}
+	for _, p := range h.plan.Pairs {
+		if grave(p) {
+			continue
+		}
+		if _, ok := pairs[p.Consequences]; !ok {
+			kinds = append(kinds, p.Consequences)
+		}
+		pairs[p.Consequences] = append(pairs[p.Consequences], p.A+" and "+p.B)
+	}
+	for _, kind := range kinds {
+		h.room(3 * lineHeight)
+		h.put(family, "B", textSize, textLeft, h.y, sentence(kind))
+		h.y += lineHeight
+		h.paragraph("", textLeft, h.right-textLeft, sentence(strings.Join(pairs[kind], "; ")))
+		h.y++
+	}
+}
+
+func (h *hazardSheet) notes(want func(planner.HazardNote) bool) {
+	for _, n := range h.plan.Hazards {
+		if want(n) {
+			h.note(n)
+		}
+	}
+}
+
+const pictogramSide = 14.0
+
+// note writes one substance: pictograms at the right, words beside and below.
+func (h *hazardSheet) note(n planner.HazardNote) {
+	obstacle := float64(len(n.Pictograms)) * (pictogramSide + 1)
+	name := n.What
+	if n.Formed && n.At != "" {
+		name += ", formed in " + n.At
+	}
+	texts := []styledText{{"B", name}}
+	if n.Signal != "" {
+		texts = append(texts, styledText{"B", n.Signal})
+	}
+	texts = append(texts, styledText{"", statementsText(n)}, styledText{"", "Exposure limits: " + limitsText(n)}, styledText{"", "Classification: " + basisText(n)})
+	for _, note := range n.Notes {
+		texts = append(texts, styledText{"", sentence(note)})
+	}
+	lines := h.flow(texts, obstacle, pictogramSide+1)
+	height := max(float64(len(lines))*lineHeight, pictogramSide) + 2
+	if h.room(min(height, h.bottom-60)) {
+		lines = h.flow(texts, obstacle, pictogramSide+1)
+	}
+	for i, code := range n.Pictograms {
+		h.drawPictogram(code, h.right-float64(len(n.Pictograms)-i)*(pictogramSide+1), h.y, pictogramSide)
+	}
+	h.writeLines(lines, pictogramSide)
+	h.y += 1
+	h.rule(hairline)
+	h.y += 2.5
+}
+
+type styledText struct{ style, text string }
+
+// flow breaks texts into lines beside an obstacle at the right that is width
+// wide and reaches height down.
+func (s *sheet) flow(texts []styledText, width, height float64) []styledText {
+	var lines []styledText
+	for _, t := range texts {
+		rest := t.text
+		for rest != "" {
+			limit := s.right - textLeft
+			if float64(len(lines))*lineHeight < height {
+				limit -= width + 2
+			}
+			first := s.split(family, t.style, textSize, rest, limit)[0]
+			lines = append(lines, styledText{t.style, first})
+			rest = strings.TrimPrefix(strings.TrimPrefix(rest, first), " ")
+		}
+	}
+	return lines
+}
+
+// writeLines writes lines from textLeft on and moves on by least at least.
+func (s *sheet) writeLines(lines []styledText, least float64) {
+	from := s.y
+	for _, line := range lines {
+		if s.room(lineHeight) {
+			from = s.y
+			least = 0
+		}
+		s.put(family, line.style, textSize, textLeft, s.y, line.text)
+		s.y += lineHeight
+	}
+	s.y = max(s.y, from+least)
+}
+
+func statementsText(n planner.HazardNote) string {
+	if len(n.Statements) > 0 {
+		return strings.Join(n.Statements, ". ") + "."
+	}
+	if strings.HasPrefix(n.Basis, "no data") {
+		return "NO DATA: not assessed. Treat it as hazardous until the supplier's sheet says otherwise."
+	}
+	return "No hazard statement on record. That is not evidence of safety."
+}
+
+func limitsText(n planner.HazardNote) string {
+	if len(n.Limits) == 0 {
+		return "no data"
+	}
+	return strings.ReplaceAll(strings.Join(n.Limits, "; "), "mg/m3", "mg/m³")
+}
+
+func basisText(n planner.HazardNote) string {
+	if n.Basis == "" {
+		return "no data"
+	}
+	return n.Basis
+}

@@ -1,0 +1,537 @@
+package views
+
+import (
+	"fmt"
+	"slices"
+	"strings"
+
+	"stillroom/chem"
+	"stillroom/inventory"
+	"stillroom/planner"
+)
+
+// PickList prints what to fetch for a run: the bottles in walking order by
+// carrier, each with its code, place, amount to the tool's division and room to
+// write, then consumables, glassware, waste containers and the ticks before the
+// start. What the shelf doesn't cover comes first.
+func PickList(p *planner.Plan, o PaperOptions) ([]byte, error) {
+	s, err := newSheet(p, o, "Pick list")
+	if err != nil {
+		return nil, err
+	}
+	l := &pickList{sheet: s, tools: toolsOf(p, o)}
+	l.missing()
+	if err := l.bottles(); err != nil {
+		return nil, err
+	}
+	l.consumables()
+	l.glassware()
+	l.wasteContainers()
+	l.beforeStart()
+	return s.finish()
+}
+
+func toolsOf(p *planner.Plan, o PaperOptions) []inventory.Equipment {
+	if len(o.Tools) > 0 {
+		return o.Tools
+	}
+	return p.Tools
+}
+
+type pickList struct {
+	*sheet
+	tools []inventory.Equipment
+	used  []string // tools that amounts were rounded to, in order
+}
+
+// Columns of the list, from the right edge.
+const (
+	codeWidth    = 52.0
+	amountColumn = 58.0 // right edge of amounts, from the right edge of the page
+	nameSize     = 13.0
+)
+
+// missing lists what no fit bottle covers, so that nobody starts without it.
+func (l *pickList) missing() {
+	var short []planner.Need
+	for _, n := range l.plan.Needs {
+		if n.State > planner.Tight {
+			short = append(short, n)
+		}
+	}
+	if len(short) == 0 {
+		return
+	}
+	l.heading("Not ready: do not start", 12)
+	for _, n := range short {
+		lines := l.split(family, "", textSize, shortText(n), l.right-textLeft)
+		l.room(float64(len(lines)+1) * lineHeight)
+		l.put(family, "B", textSize, textLeft, l.y, n.Substance+": "+n.State.String())
+		l.y += lineHeight
+		for _, line := range lines {
+			l.put(family, "", textSize, textLeft, l.y, line)
+			l.y += lineHeight
+		}
+		l.y++
+	}
+}
+
+func shortText(n planner.Need) string {
+	var words []string
+	switch {
+	case n.Count && n.ShortPieces > 0:
+		words = append(words, piecesText(n.ShortPieces)+" missing")
+	case n.Short > 0:
+		words = append(words, massText(n.Short)+" missing of "+massText(n.Mass)+" (pure substance)")
+	}
+	if n.Because != "" {
+		words = append(words, n.Because)
+	}
+	if n.CoveredOn.Set() {
+		words = append(words, "covered from "+n.CoveredOn.Short())
+	}
+	if len(words) == 0 {
+		return "see the run page"
+	}
+	return strings.Join(words, "; ")
+}
+
+// fetch is one bottle to fetch, with the need it is for.
+type fetch struct {
+	need planner.Need
+	draw planner.Draw
+}
+
+func (l *pickList) bottles() error {
+	fetches := fetchesByCode(l.plan)
+	carriers := l.plan.Carriers
+	if rest := notCarried(l.plan); len(rest) > 0 {
+		carriers = append(slices.Clone(carriers), planner.Carrier{Bottles: rest, Note: "not grouped: carry these one by one"})
+	}
+	for i, c := range carriers {
+		title := fmt.Sprintf("Carrier %d of %d", i+1, len(carriers))
+		if c.N == 0 {
+			title = "One by one"
+		}
+		l.heading(title, 58)
+		l.carrierNote(c)
+		for _, code := range c.Bottles {
+			for _, f := range fetches[code] {
+				if err := l.bottle(f); err != nil {
+					return err
+				}
+			}
+		}
+	}
+	return nil
+}
+
+func (l *pickList) carrierNote(c planner.Carrier) {
+	words := []string{fmt.Sprintf("%d bottles", len(c.Bottles))}
+	if len(c.Bottles) == 1 {
+		words[0] = "1 bottle"
+	}
+	if c.Mass > 0 {
+		words = append(words, massText(c.Mass)+" with the glass")
+	}
+	if c.Note != "" {
+		words = append(words, c.Note)
+	}
+	l.put(family, "", textSize, textLeft, l.y, strings.Join(words, "; "))
+	l.y += lineHeight + 2
+}
+
+func fetchesByCode(p *planner.Plan) map[string][]fetch {
+	byCode := map[string][]fetch{}
+	for _, n := range p.Needs {
+		if n.Count {
+			continue
+		}
+		for _, d := range n.Draws {
+			byCode[d.Bottle.Code] = append(byCode[d.Bottle.Code], fetch{n, d})
+		}
+	}
+	return byCode
+}
+
+// notCarried lists bottles drawn from that no carrier holds, in walking order.
+func notCarried(p *planner.Plan) []string {
+	carried := map[string]bool{}
+	for _, c := range p.Carriers {
+		for _, code := range c.Bottles {
+			carried[code] = true
+		}
+	}
+	var draws []planner.Draw
+	for _, n := range p.Needs {
+		for _, d := range n.Draws {
+			if !n.Count && !carried[d.Bottle.Code] {
+				carried[d.Bottle.Code] = true
+				draws = append(draws, d)
+			}
+		}
+	}
+	slices.SortStableFunc(draws, func(a, b planner.Draw) int {
+		if a.Place.Walk != b.Place.Walk {
+			return a.Place.Walk - b.Place.Walk
+		}
+		return strings.Compare(a.Bottle.Code, b.Bottle.Code)
+	})
+	var codes []string
+	for _, d := range draws {
+		codes = append(codes, d.Bottle.Code)
+	}
+	return codes
+}
+
+// bottle writes one bottle and keeps it on one page.
+func (l *pickList) bottle(f fetch) error {
+	bars, err := code128Bars(f.draw.Bottle.Code)
+	if err != nil {
+		return err
+	}
+	exact := l.exact(f)
+	amounts := l.amounts(f.draw.Mass, f.draw.Volume, f.draw.HasVolume, exact, true)
+	edge := l.right - amountColumn // right edge of the amounts
+	const amountWidth, nameHeight, amountHeight = 34.0, 6.0, 6.5
+	names := l.split(family, "B", nameSize, f.draw.Form.Name, edge-amountWidth-textLeft)
+	beside := float64(len(amounts))*amountHeight + 0.5 // so far down the amounts reach
+	below := float64(len(names)) * nameHeight
+	var lines []string
+	for _, d := range l.details(f) {
+		for d != "" {
+			limit := edge - textLeft
+			if below+float64(len(lines))*lineHeight < beside {
+				limit -= amountWidth
+			}
+			parts := l.split(family, "", textSize, d, limit)
+			lines = append(lines, parts[0])
+			d = strings.TrimPrefix(strings.TrimPrefix(d, parts[0]), " ")
+		}
+	}
+	height := max(below+float64(len(lines))*lineHeight, 20) + 9
+	l.room(height + 2)
+
+	l.tick(marginLeft, l.y)
+	for i, line := range names {
+		l.put(family, "B", nameSize, textLeft, l.y+float64(i)*nameHeight, line)
+	}
+	for i, a := range amounts {
+		l.putRight(family, "B", amountSize, edge, l.y-0.8+float64(i)*amountHeight, a)
+	}
+	if !exact {
+		l.putRight(family, "", textSize, edge-l.measure(family, "B", amountSize, amounts[0])-1.5, l.y+0.3, "about")
+	}
+	x := l.right - codeWidth
+	l.drawBars(bars, x, l.y, codeWidth, 11)
+	l.put(family, "B", amountSize, x+4, l.y+12, f.draw.Bottle.Code)
+	for i, line := range lines {
+		style := ""
+		if i == 0 && exact {
+			style = "B"
+		}
+		l.put(family, style, textSize, textLeft, l.y+below+float64(i)*lineHeight, line)
+	}
+	l.blanks(f, l.y+height-7.5)
+	l.y += height
+	l.rule(hairline)
+	l.y += 3
+	return nil
+}
+
+// blanks are for what was really done.
+func (l *pickList) blanks(f fetch, y float64) {
+	x := l.blank(textLeft, y, 30, "actual")
+	x = l.blank(x, y, 26, "lot")
+	if f.draw.Opens {
+		x = l.blank(x, y, 22, "opened on")
+	}
+	l.blank(x, y, l.right-x-l.measure(family, "", textSize, "initials")-1.5, "initials")
+}
+
+// amounts writes mass and volume, rounded to the tool.
+func (l *pickList) amounts(m chem.Mass, v chem.Volume, hasVolume, exact, note bool) []string {
+	mass := measuredMass(m, exact, l.tools)
+	lines := []string{mass.text}
+	tools := []string{mass.tool}
+	if hasVolume && v > 0 {
+		volume := measuredVolume(v, l.tools)
+		lines = append(lines, volume.text)
+		tools = append(tools, volume.tool)
+	}
+	if note {
+		for _, t := range tools {
+			l.use(t)
+		}
+	}
+	return lines
+}
+
+func (l *pickList) use(tool string) {
+	if tool != "" && !slices.Contains(l.used, tool) {
+		l.used = append(l.used, tool)
+	}
+}
+
+// exact reports whether a charge must be weighed exactly; the rest are "about".
+func (l *pickList) exact(f fetch) bool {
+	return f.need.Substance == l.plan.Scale.Limiting || f.need.Exact
+}
+
+// details are the lines under the name of a bottle.
+func (l *pickList) details(f fetch) []string {
+	d := f.draw
+	var lines []string
+	switch {
+	case f.need.Substance == l.plan.Scale.Limiting:
+		lines = append(lines, "EXACT: limiting reagent")
+	case f.need.Exact:
+		lines = append(lines, "EXACT")
+	}
+	lines = append(lines, d.Place.String())
+	if len(d.Steps) > 0 {
+		lines = append(lines, l.forSteps(f))
+	}
+	heel := "leaves " + massText(d.Leaves)
+	if d.HasVolume && d.LeavesVolume > 0 {
+		heel += " (" + volumeText(d.LeavesVolume) + ")"
+	}
+	if d.Leaves <= 0 {
+		heel = "empties the bottle"
+	}
+	lines = append(lines, heel+"; "+expiryText(d.Bottle)+"; "+contentText(d.Bottle))
+	if d.Opens {
+		lines = append(lines, "sealed: open it and write the date on the bottle")
+	}
+	return append(lines, l.hazardWords(f))
+}
+
+func expiryText(b inventory.Bottle) string {
+	if !b.Expiry.Set() {
+		return "no expiry date on record"
+	}
+	return "use by " + dateText(b.Expiry)
+}
+
+// contentText says how the content of a bottle was found out.
+func contentText(b inventory.Bottle) string {
+	how, ok := map[inventory.MeasuredBy]string{inventory.ByUnopened: "unopened", inventory.ByWeighing: "weighed", inventory.ByLedger: "content by the ledger",
+		inventory.ByLevel: "level read", inventory.ByGuess: "content guessed"}[b.MeasuredBy]
+	if !ok {
+		return "content not measured"
+	}
+	if b.MeasuredOn.Set() {
+		how += " on " + dateText(b.MeasuredOn)
+	}
+	return how
+}
+
+// dateText is a date that isn't broken over two lines.
+func dateText(d inventory.Date) string { return strings.ReplaceAll(d.Short(), " ", "\u00a0") }
+
+// forSteps says what part goes into which step.
+func (l *pickList) forSteps(f fetch) string {
+	var words []string
+	for _, part := range f.draw.Steps {
+		amount := strings.Join(l.amounts(part.Mass, part.Volume, f.draw.HasVolume, l.exact(f), false), " or ")
+		words = append(words, fmt.Sprintf("for step\u00a0%d: %s", part.Step, amount))
+	}
+	return strings.Join(words, "; ")
+}
+
+// hazardWords names the pictograms in words, for a copy on which they would be
+// unreadable.
+func (l *pickList) hazardWords(f fetch) string {
+	for _, h := range l.plan.Hazards {
+		if h.At != planner.AsStored || h.What != f.draw.Form.Name && h.What != f.need.Substance {
+			continue
+		}
+		var words []string
+		for _, code := range h.Pictograms {
+			words = append(words, pictogramName(code))
+		}
+		switch {
+		case strings.HasPrefix(h.Basis, "no data"):
+			return "hazards: no data"
+		case h.Signal == "" && len(words) == 0:
+			return "hazards: no pictogram; see the hazard sheet"
+		}
+		return strings.TrimPrefix(h.Signal+": "+strings.Join(words, ", "), ": ")
+	}
+	return "hazards: no data"
+}
+
+func (l *pickList) consumables() {
+	var rows []planner.Need
+	for _, n := range l.plan.Needs {
+		if n.Count {
+			rows = append(rows, n)
+		}
+	}
+	if len(rows) == 0 {
+		return
+	}
+	l.heading("Consumables", 10)
+	for _, n := range rows {
+		place := "not on the shelf"
+		if len(n.Draws) > 0 {
+			place = n.Draws[0].Bottle.Code + ", " + n.Draws[0].Place.String()
+		}
+		l.tickLine(n.Substance, place, piecesText(n.Pieces))
+	}
+}
+
+// tickLine is a box to tick with a name, a remark and an amount at the right.
+func (l *sheet) tickLine(name, remark, amount string) {
+	const gap = 3.0
+	amountWidth := l.measure(family, "B", amountSize, amount)
+	lines := l.split(family, "", textSize, remark, l.right-textLeft-amountWidth-gap)
+	if remark == "" {
+		lines = nil
+	}
+	nameLines := l.split(family, "B", textSize, name, l.right-textLeft-amountWidth-gap)
+	height := max(float64(len(nameLines)+len(lines))*lineHeight, tickSide) + 1.5
+	l.room(height)
+	l.tick(marginLeft, l.y)
+	l.putRight(family, "B", amountSize, l.right, l.y-0.8, amount)
+	y := l.y
+	for _, line := range nameLines {
+		l.put(family, "B", textSize, textLeft, y, line)
+		y += lineHeight
+	}
+	for _, line := range lines {
+		l.put(family, "", textSize, textLeft, y, line)
+		y += lineHeight
+	}
+	l.y += height
+}
+
+// glassware lists each vessel once, with the step that fills it most.
+func (l *pickList) glassware() {
+	type ware struct {
+		name  string
+		steps []string
+		size  chem.Volume
+		none  bool // the lab owns none that fits
+	}
+	var wares []ware
+	index := map[string]int{}
+	for _, st := range l.plan.Steps {
+		v := st.Vessel
+		name := v.Ware
+		if name == "" {
+			name = v.Kind
+		}
+		if name == "" {
+			continue
+		}
+		key := name + "\x00" + v.Name
+		i, ok := index[key]
+		if !ok {
+			i = len(wares)
+			index[key] = i
+			wares = append(wares, ware{name: name, size: v.Size})
+		}
+		wares[i].steps = append(wares[i].steps, fmt.Sprint(st.N))
+		wares[i].size = max(wares[i].size, v.Size)
+		wares[i].none = wares[i].none || v.Ware == "" && !v.Fits
+	}
+	if len(wares) == 0 && len(l.used) == 0 {
+		return
+	}
+	l.heading("Glassware and tools", 10)
+	for _, w := range wares {
+		size := ""
+		if w.size > 0 {
+			size = volumePlain(w.size)
+		}
+		remark := "for " + stepsWord(w.steps)
+		if w.none {
+			remark += "; NONE OF THE LAB'S FITS: see the run page"
+		}
+		l.tickLine(w.name, remark, size)
+	}
+	for _, t := range l.used {
+		l.tickPlain(t + ", to whose division amounts are rounded")
+	}
+}
+
+func stepsWord(steps []string) string {
+	if len(steps) == 1 {
+		return "step " + steps[0]
+	}
+	return "steps " + strings.Join(steps, ", ")
+}
+
+func (l *pickList) wasteContainers() {
+	if len(l.plan.Waste) == 0 {
+		return
+	}
+	l.heading("Waste containers to bring", 10)
+	for _, w := range l.plan.Waste {
+		remark := w.Stream
+		if w.Note != "" {
+			remark += "; " + w.Note
+		}
+		name := w.Carboy
+		switch {
+		case name == "":
+			name = "NO CARBOY: set one up first"
+		case !w.Fits:
+			name += ": NOT ENOUGH ROOM or not compatible"
+		}
+		l.tickLine(name, remark, volumeText(w.Volume))
+	}
+}
+
+// beforeStart is the gate before a run: unticked means not started (common
+// practice).
+func (l *pickList) beforeStart() {
+	checks := []string{
+		"This sheet is current: the code shows revision " + l.plan.Revision,
+		"The hazard sheet is read, filled in and signed",
+		"Hood: flow shown, sash moves, no alarm, nothing else runs in it",
+		"Eyewash and shower are free; someone nearby knows about the run",
+		"Spill absorbent that suits these substances is at hand",
+		"Cooling is ready" + iceWord(l.plan),
+		"What destroys the left-over reagent is made up before the reagent",
+		"Glassware is free of stars and cracks and of the sizes listed",
+		"Waste containers are labelled and have room",
+		"Every bottle's name, strength and code agree with this list",
+	}
+	l.heading("Before the start", float64(len(checks))*(tickSide+1.5)+24)
+	l.put(family, "", textSize, textLeft, l.y, "An empty box means that the run does not start.")
+	l.y += lineHeight + 1.5
+	for _, c := range checks {
+		l.tickPlain(c)
+	}
+	l.room(12)
+	l.y += 4
+	x := l.blank(textLeft, l.y, 55, "checked by")
+	x = l.blank(x, l.y, 25, "date")
+	l.blank(x, l.y, 20, "time")
+	l.y += 8
+}
+
+// tickPlain is a box to tick with a sentence.
+func (l *sheet) tickPlain(text string) {
+	lines := l.split(family, "", textSize, text, l.right-textLeft)
+	height := max(float64(len(lines))*lineHeight, tickSide) + 1.5
+	l.room(height)
+	l.tick(marginLeft, l.y)
+	for i, line := range lines {
+		l.put(family, "", textSize, textLeft, l.y+1+float64(i)*lineHeight, line)
+	}
+	l.y += height
+}
+
+func iceWord(p *planner.Plan) string {
+	most := chem.Mass(0)
+	for _, s := range p.Steps {
+		most = max(most, s.Ice)
+	}
+	if most <= 0 {
+		return ""
+	}
+	return ", with " + massText(most) + " of ice"
+}
