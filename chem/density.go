@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"math"
 	"sort"
+	"strings"
 	"sync"
 )
 
@@ -26,14 +27,15 @@ const sameTemperature = 0.5
 // densityTable is what is known of one solute's solutions in water.
 type densityTable struct {
 	name   string
-	source string         // of the rows
 	curves []densityCurve // by rising temperature; may be empty
 	model  *densityModel  // nil where there is none
 }
 
 // densityCurve is density in kg/m³ over mass fraction at one temperature.
 type densityCurve struct {
-	at Temperature
+	at      Temperature
+	ws      []float64 // of the rows
+	sources []string
 	*curve
 }
 
@@ -52,12 +54,13 @@ func loadDensities() map[string]*densityTable {
 	for _, r := range readTable("solution_model.csv") {
 		table(r).model = newDensityModel(r)
 	}
-	type series struct{ ws, rhos []float64 }
+	type series struct {
+		ws, rhos []float64
+		sources  []string
+	}
 	points := make(map[string]map[float64]*series)
 	for _, r := range readTable("solution_density.csv") {
-		if d := table(r); r.text("w_w_percent") != "0" {
-			d.source = r.text("source")
-		}
+		table(r)
 		w, _ := r.number("w_w_percent")
 		t, _ := r.number("temperature_C")
 		rho, _ := r.number("density_g_mL")
@@ -71,6 +74,7 @@ func loadDensities() map[string]*densityTable {
 			points[cas][t] = s
 		}
 		s.ws, s.rhos = append(s.ws, w/100), append(s.rhos, rho*1e3)
+		s.sources = append(s.sources, r.text("source"))
 	}
 	for cas, byTemperature := range points {
 		for t, s := range byTemperature {
@@ -78,7 +82,7 @@ func loadDensities() map[string]*densityTable {
 				s.rhos = pooled(s.rhos)
 			}
 			tables[cas].curves = append(tables[cas].curves,
-				densityCurve{Celsius(t), newCurve(s.ws, s.rhos)})
+				densityCurve{Celsius(t), s.ws, s.sources, newCurve(s.ws, s.rhos)})
 		}
 		curves := tables[cas].curves
 		sort.Slice(curves, func(i, j int) bool { return curves[i].at < curves[j].at })
@@ -101,7 +105,7 @@ func SolutionDensity(cas string, w Fraction, t Temperature) (Density, error) {
 	}
 	table := densityTables()[cas]
 	if table == nil {
-		return 0, &NoDataError{"density", "solutions of " + cas, "give density="}
+		return 0, &NoDataError{"density", strings.TrimSpace("solutions of the solute " + cas), "give density="}
 	}
 	if !Finite(t) {
 		return 0, fmt.Errorf("density of %s: temperature is no number", table.name)
@@ -115,21 +119,40 @@ func SolutionDensity(cas string, w Fraction, t Temperature) (Density, error) {
 	return 0, table.refuse(w, t)
 }
 
-// SolutionDensitySource says where the densities of a solute's solutions come from;
-// "" where there are none.
-func SolutionDensitySource(cas string) string {
+// SolutionDensitySource says where the density that SolutionDensity gives comes from:
+// the row nearest in strength of the table that is read, the model, or both; "" where
+// there is none.
+func SolutionDensitySource(cas string, w Fraction, t Temperature) string {
+	const model = "model of Laliberté 2009"
 	d := densityTables()[cas]
 	switch {
-	case cas == waterCAS:
+	case w == 0 || cas == waterCAS:
 		return "Kell 1975"
 	case d == nil:
 		return ""
-	case d.model != nil && len(d.curves) > 0:
-		return d.source + ", moved in temperature by the model of Laliberté 2009"
-	case d.model != nil:
-		return "model of Laliberté 2009"
 	}
-	return d.source
+	c := d.nearest(float64(w), t)
+	if c == nil {
+		return model
+	}
+	if _, ok := d.tabulated(float64(w), t); ok {
+		return c.sourceAt(float64(w))
+	}
+	if d.model.covers(float64(w), c.at) {
+		return c.sourceAt(float64(w)) + "; carried to this temperature by the " + model
+	}
+	return model
+}
+
+// sourceAt is the source of the row nearest to w.
+func (c *densityCurve) sourceAt(w float64) string {
+	best, source := math.Inf(1), ""
+	for i, at := range c.ws {
+		if off := math.Abs(at - w); off < best {
+			best, source = off, c.sources[i]
+		}
+	}
+	return source
 }
 
 // tabulated reads the table at one of its temperatures, or in proportion

@@ -18,11 +18,14 @@ type dilutionTable struct {
 	molarMass float64 // kg/mol
 	low, high float64 // r
 	curve     *curve  // J/mol over ln(1 + r)
-	source    string
+	rows      []dilutionPoint
 }
 
 // dilutionPoint is one row: r, and the heat in J/mol.
-type dilutionPoint struct{ r, heat float64 }
+type dilutionPoint struct {
+	r, heat float64
+	source  string
+}
 
 var dilutionTables = sync.OnceValue(loadDilutionHeats)
 
@@ -50,17 +53,15 @@ var dilutedMolarMasses = map[string]float64{
 // loadDilutionHeats reads both tables.
 func loadDilutionHeats() map[string]*dilutionTable {
 	points := map[string][]dilutionPoint{sulfuricCAS: sulfuricSeries()}
-	tables := map[string]*dilutionTable{sulfuricCAS: {name: "sulfuric acid",
-		source: "heats of solution from memory (textbook table of the age of NBS Circular 500), see formation_enthalpy.csv"}}
+	tables := map[string]*dilutionTable{sulfuricCAS: {name: "sulfuric acid"}}
 	for _, r := range readTable("dilution_heat.csv") {
 		cas := r.text("cas")
 		ratio, _ := r.number("mol_water_per_mol")
 		heat, _ := r.number("heat_to_infinite_dilution_kJ_mol")
-		points[cas] = append(points[cas], dilutionPoint{ratio, heat * 1e3})
+		points[cas] = append(points[cas], dilutionPoint{ratio, heat * 1e3, r.text("source")})
 		if tables[cas] == nil {
 			tables[cas] = &dilutionTable{name: r.text("solute")}
 		}
-		tables[cas].source = r.text("source")
 	}
 	for cas, ps := range points {
 		tables[cas].fit(ps, dilutedMolarMasses[cas])
@@ -71,14 +72,15 @@ func loadDilutionHeats() map[string]*dilutionTable {
 // sulfuricSeries turns the formation enthalpies of sulfuric acid in n mol water
 // into heats that are left, counted to the most dilute row.
 func sulfuricSeries() []dilutionPoint {
-	points := []dilutionPoint{{0, sulfuricPure * 1e3}}
+	const source = "heats of solution from memory (textbook table of the age of NBS Circular 500), see formation_enthalpy.csv"
+	points := []dilutionPoint{{0, sulfuricPure * 1e3, source}}
 	for _, r := range readTable("formation_enthalpy.csv") {
 		var ratio float64
 		if _, err := fmt.Sscanf(r.text("species"), "sulfuric acid in %g mol water", &ratio); err != nil {
 			continue
 		}
 		formation, _ := r.number("delta_f_H_kJ_mol")
-		points = append(points, dilutionPoint{ratio, formation * 1e3})
+		points = append(points, dilutionPoint{ratio, formation * 1e3, source})
 	}
 	last := points[len(points)-1].heat
 	for i := range points {
@@ -95,18 +97,24 @@ func (d *dilutionTable) fit(ps []dilutionPoint, molarMass float64) {
 		xs, ys = append(xs, math.Log1p(p.r)), append(ys, p.heat)
 	}
 	d.curve, d.molarMass = newCurve(xs, ys), molarMass
+	d.rows = ps
 	d.low, d.high = ps[0].r, ps[len(ps)-1].r
+}
+
+// waters is the amount of water per amount of solute at mass fraction w.
+func (d *dilutionTable) waters(w Fraction) float64 {
+	return (1/float64(w) - 1) * d.molarMass / waterMolarMass
 }
 
 // left returns the heat in J/mol that is still to come at mass fraction w.
 func (d *dilutionTable) left(w Fraction) (float64, error) {
-	r := (1/float64(w) - 1) * d.molarMass / waterMolarMass
+	r := d.waters(w)
 	if w > 0 && r >= d.low*(1-1e-9) && r <= d.high {
 		return d.curve.at(math.Log1p(max(r, d.low))), nil
 	}
 	strength := func(r float64) float64 { return 100 / (1 + r*waterMolarMass/d.molarMass) }
 	return 0, &RangeError{"heat of diluting " + d.name, "strength", w.Percent(),
-		strength(d.high), strength(d.low), "% w/w", "measure it, or give heat="}
+		strength(d.high), strength(d.low), "% w/w", "measure it"}
 }
 
 // DilutionHeat returns the heat given off at 25 °C when a solution holding n of
@@ -120,7 +128,7 @@ func (d *dilutionTable) left(w Fraction) (float64, error) {
 func DilutionHeat(cas string, n Amount, from, to Fraction) (Energy, error) {
 	d := dilutionTables()[cas]
 	if d == nil {
-		return 0, &NoDataError{"heat of dilution", cas, "give heat=, or measure it"}
+		return 0, &NoDataError{"heat of dilution", cas, "measure it"}
 	}
 	if err := errors.Join(checkFraction("strength before", from), checkFraction("strength after", to)); err != nil {
 		return 0, err
@@ -142,12 +150,18 @@ func DilutionHeat(cas string, n Amount, from, to Fraction) (Energy, error) {
 	return Energy(float64(n) * (before - after)), nil
 }
 
-// DilutionHeatSource says where the heats of a solute's dilution come from; ok
-// is false for one without any.
-func DilutionHeatSource(cas string) (source string, ok bool) {
+// DilutionHeatSource says where the heat at a strength comes from: the source of the
+// row nearest to it; ok is false for a solute without any.
+func DilutionHeatSource(cas string, w Fraction) (source string, ok bool) {
 	d := dilutionTables()[cas]
 	if d == nil {
 		return "", false
 	}
-	return d.source, true
+	nearest := math.Inf(1)
+	for _, p := range d.rows {
+		if off := math.Abs(math.Log1p(p.r) - math.Log1p(d.waters(w))); off < nearest {
+			nearest, source = off, p.source
+		}
+	}
+	return source, true
 }

@@ -34,7 +34,8 @@ var strongCations = map[string]float64{
 // acid table knows decides; otherwise the formula does: metal ions of groups 1 and
 // 2 are taken off as strong ions, ammonia for each NH4, protons put on until the
 // rest is a neutral molecule, and that is looked up, whole or as several of one
-// acid; isomers of an organic anion are taken for the one in the table. So Na2CO3 is two Na⁺ and carbonic acid, NaOH one Na⁺ and water, CaCl2 one
+// acid, an anhydride as dichromate or metabisulfite with the water that it takes up;
+// isomers of an organic anion are taken for the one in the table. So Na2CO3 is two Na⁺ and carbonic acid, NaOH one Na⁺ and water, CaCl2 one
 // Ca²⁺ and two hydrochloric acids, and an ion written by itself is what it brings.
 // A *NoDataError says what couldn't be found; metals that take part in acid–base
 // equilibria themselves, such as iron, are refused so too.
@@ -74,6 +75,10 @@ func ElectrolyteOf(name, cas string, f Formula) (Electrolyte, error) {
 		return parts, nil
 	}
 	acid, n := acidIn(counts)
+	for waters := 1; acid == nil && waters <= 3; waters++ { // an anhydride takes up water
+		counts["H"], counts["O"] = counts["H"]+2, counts["O"]+1
+		acid, n = acidIn(counts)
+	}
 	isSalt := parts.Strong > 0 || len(parts.Acids) > 0 || f.Charge() != 0
 	if acid == nil || (!isSalt && acid.isOrganic()) {
 		return Electrolyte{}, noAcid(name, "it is no acid or base of the table")
@@ -84,7 +89,7 @@ func ElectrolyteOf(name, cas string, f Formula) (Electrolyte, error) {
 
 // noAcid refuses a substance for want of constants.
 func noAcid(name, why string) error {
-	return fmt.Errorf("%w: %w", &NoDataError{"acid dissociation", name, why + "; give pka=, or leave out what neither gives nor takes protons"}, errNoAcid)
+	return &NoDataError{"acid dissociation", name, why + "; give pka=, or leave out what neither gives nor takes protons"}
 }
 
 // isOrganic reports whether other molecules than this acid may have its

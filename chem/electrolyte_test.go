@@ -26,6 +26,9 @@ func TestElectrolyteOf(t *testing.T) {
 		{"KH2PO4", "phosphoric acid", 1, 1},
 		{"Na2HPO4", "phosphoric acid", 1, 2},
 		{"H2SO4", "sulfuric acid", 1, 0},
+		{"K2Cr2O7", "chromic acid", 2, 2},
+		{"CrO3", "chromic acid", 1, 0},
+		{"Na2S2O5", "sulfurous acid", 2, 2},
 		{"Cl^-", "hydrogen chloride", 1, 0},
 		{"Na^+", "", 0, 1},
 	}
@@ -43,7 +46,7 @@ func TestElectrolyteOf(t *testing.T) {
 			t.Errorf("%s: %v of %s, want %v of %s", c.formula, got.Acids[0].Count, got.Acids[0].Acid.Name, c.count, c.acid)
 		}
 	}
-	for _, text := range []string{"FeCl3", "C2H6O", "C2H4O2", "K2Cr2O7"} {
+	for _, text := range []string{"FeCl3", "C2H6O", "C2H4O2", "C4H6O3"} {
 		f, _ := ParseFormula(text)
 		if got, err := ElectrolyteOf(text, "", f); !errors.Is(err, ErrNoData) {
 			t.Errorf("%s: %+v, %v; want a refusal", text, got, err)

@@ -1,7 +1,6 @@
 package chem
 
 import (
-	"errors"
 	"strconv"
 	"strings"
 	"sync"
@@ -17,9 +16,6 @@ type Acid struct {
 	PKa     []float64 // by step
 	Sources []string  // by step
 }
-
-// errNoAcid is the cause where neither table knows an acid.
-var errNoAcid = errors.New("no dissociation constants")
 
 // gradeRank orders the grades of data/pka.csv, best first: a handbook value,
 // which is a critical choice among measurements; a value computed from Gibbs

@@ -147,7 +147,7 @@ func gasVolume(args Args, n chem.Amount) (chem.Volume, []string, error) {
 	t, p := chem.Celsius(20), chem.Atmosphere
 	var notes []string
 	var err error
-	if !args.Has("temperature") || !args.Has("pressure") {
+	if n > 0 && (!args.Has("temperature") || !args.Has("pressure")) {
 		notes = append(notes, "gas volume at 20 °C and 101.325 kPa, as far as nothing else was given")
 	}
 	if args.Has("temperature") {

@@ -52,7 +52,7 @@ const peroxideCAS = "7722-84-1"
 // soluteOf says what is known of a substance in solution.
 func soluteOf(s chem.Substance, t chem.Temperature) chem.Solute {
 	solute := chem.Solute{Name: s.Name, CAS: s.CAS, MolarMass: s.MolarMass, Temperature: t}
-	if s.State == "liquid" && s.Sources["density"] != given {
+	if _, err := chem.SolutionDensity(s.CAS, 1, t); err != nil && s.State == "liquid" && s.Sources["density"] != given {
 		solute.PureDensity = s.Density
 	}
 	if s.CAS == peroxideCAS {
@@ -99,7 +99,7 @@ func densityAt(args Args, key string, solute chem.Solute, w chem.Fraction) (chem
 		return d, given, err
 	}
 	d, err := chem.SolutionDensity(solute.CAS, w, solute.Temperature)
-	return d, chem.SolutionDensitySource(solute.CAS), err
+	return d, chem.SolutionDensitySource(solute.CAS, w, solute.Temperature), err
 }
 
 // massToMake reads the key make, a mass, or a volume of the solution in question.
@@ -114,8 +114,7 @@ func massToMake(args Args, density func() (chem.Density, string, error)) (chem.M
 	}
 	rho, _, err := density()
 	if err != nil {
-		return 0, &KeyError{Key: "make", Text: args["make"], Cause: err,
-			Wanted: "or give the mass to make"}
+		return 0, &KeyError{Key: "make", Text: args["make"], Cause: err, Wanted: "or give the mass to make"}
 	}
 	return rho.Mass(v), nil
 }
