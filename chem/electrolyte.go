@@ -52,11 +52,9 @@ func ElectrolyteOf(name, cas string, f Formula) (Electrolyte, error) {
 	}
 	var parts Electrolyte
 	protons := -float64(f.Charge())
-	for symbol, charge := range strongCations {
-		n := counts[symbol]
-		parts.Strong += n * charge
-		parts.Ions += n * charge * charge / 2
-		protons += n * charge
+	parts.Strong, parts.Ions = StrongIonsOf(f)
+	protons += parts.Strong
+	for symbol := range strongCations {
 		delete(counts, symbol)
 	}
 	if ammonium := ammoniumIn(f.String()); ammonium > 0 && counts["N"] >= ammonium {
@@ -85,6 +83,17 @@ func ElectrolyteOf(name, cas string, f Formula) (Electrolyte, error) {
 	}
 	parts.Acids = append(parts.Acids, AcidCount{acid, n})
 	return parts, nil
+}
+
+// StrongIonsOf returns the charge of the metal ions of groups 1 and 2 in one formula,
+// and half the sum of the squares of their charges.
+func StrongIonsOf(f Formula) (charge, ions float64) {
+	for symbol, z := range strongCations {
+		n := f.Count(symbol)
+		charge += n * z
+		ions += n * z * z / 2
+	}
+	return charge, ions
 }
 
 // noAcid refuses a substance for want of constants.

@@ -90,3 +90,25 @@ func TestPKaOf(t *testing.T) {
 		t.Errorf("PKaOf(nothing): %v", err)
 	}
 }
+
+// TestPKaAt checks constants away from 25 °C: ammonium 8.80 at 40 °C and 9.73 at 10 °C,
+// acetic acid unmoved, carbonic acid 6.30 at 40 °C (handbooks, from memory).
+func TestPKaAt(t *testing.T) {
+	for _, c := range []struct {
+		cas     string
+		step    int
+		celsius float64
+		want    float64
+	}{{"7664-41-7", 0, 40, 8.80}, {"7664-41-7", 0, 10, 9.73}, {"64-19-7", 0, 50, 4.79}, {"463-79-6", 0, 40, 6.30}, {"77-86-1", 0, 37, 7.74}} {
+		a, _ := AcidByCAS(c.cas)
+		pKa, moved := a.PKaAt(Celsius(c.celsius))
+		if !moved || math.Abs(pKa[c.step]-c.want) > 0.05 {
+			t.Errorf("%s at %v °C: %v, %v; want %v", a.Name, c.celsius, pKa, moved, c.want)
+		}
+	}
+	for _, a := range acids().byCAS {
+		if a.Enthalpy != nil && len(a.Enthalpy) != len(a.PKa) {
+			t.Errorf("%s has %d constants and %d enthalpies", a.Name, len(a.PKa), len(a.Enthalpy))
+		}
+	}
+}

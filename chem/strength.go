@@ -28,6 +28,16 @@ type Strength struct {
 	Value float64 // in the unit of Kind
 }
 
+// PerVolume reports whether the strength counts per volume of solution, so that it
+// falls in proportion when the volume grows.
+func (s Strength) PerVolume() bool {
+	switch s.Kind {
+	case ByMassConcentration, ByMolarity, ByVolumeFraction, ByNormality, ByAvailableChlorineVolume, ByPeroxideVolume:
+		return true
+	}
+	return false
+}
+
 // chlorineMolarMass is that of Cl2 in kg/mol (abridged atomic weights, IUPAC 2021).
 const chlorineMolarMass = 70.90e-3
 

@@ -4,6 +4,8 @@ import (
 	"context"
 	"errors"
 	"fmt"
+	"math"
+	"slices"
 	"strings"
 
 	"stillroom/chem"
@@ -21,7 +23,7 @@ func phSum() Sum {
 		},
 		Gives:   []string{"pH", "one row for each species"},
 		Example: []string{"mix=acetic acid: 0.1 mol/L; sodium acetate: 0.05 mol/L"},
-		Range:   "0 to 100 °C; activities as concentrations, so 0.1 to 0.2 off above 0.1 mol/L; pKa at 25 °C; pH_activity up to an ionic strength of 0.5 mol/L",
+		Range:   "0 to 100 °C; activities as concentrations, so 0.1 to 0.2 off above 0.1 mol/L; pKa moved from 25 °C where their enthalpies are known; pH_activity up to an ionic strength of 0.5 mol/L",
 		Source:  "charge balance (METHODS d; OpenStax Chemistry 2e, 14.4 to 14.6); Kw: Marshall and Franck 1981; activities: Davies 1962",
 		Run:     runPH,
 	}
@@ -35,19 +37,17 @@ type mixture struct {
 }
 
 func runPH(_ context.Context, args Args) (Answer, error) {
-	mix, err := readMixture(args)
-	if err != nil {
-		return Answer{}, err
-	}
 	t, notes := chem.Celsius(25), []string{"no temperature given: 25 °C"}
 	if args.Has("temperature") {
-		if t, err = args.Temperature("temperature"); err != nil {
+		given, err := args.Temperature("temperature")
+		if err != nil {
 			return Answer{}, err
 		}
-		notes = nil
-		if d := t.Celsius() - 25; d > 5 || d < -5 {
-			notes = append(notes, "the pKa are those at 25 °C; only the ion product of water follows the temperature")
-		}
+		t, notes = given, nil
+	}
+	mix, err := readMixture(args, t)
+	if err != nil {
+		return Answer{}, err
 	}
 	pH, err := chem.PH(mix.acids, mix.strong, t)
 	if err != nil {
@@ -90,7 +90,7 @@ func chargeText(z int) string {
 }
 
 // readMixture reads the key mix; forms of one acid are put together.
-func readMixture(args Args) (mixture, error) {
+func readMixture(args Args, t chem.Temperature) (mixture, error) {
 	pairs, err := args.Pairs("mix")
 	if err != nil {
 		return mixture{}, err
@@ -106,11 +106,10 @@ func readMixture(args Args) (mixture, error) {
 			return mixture{}, err
 		}
 		if p, ok := own[strings.ToLower(pair.Name)]; ok {
-			p.C = c
-			mix.add(p, "pKa of "+p.Name+": given")
+			mix.addOwn(p, c)
 			continue
 		}
-		if err := mix.dissolve(pair.Name, c); err != nil {
+		if err := mix.dissolve(pair.Name, c, t); err != nil {
 			return mixture{}, &KeyError{Key: "mix", Text: pair.Name, Cause: err}
 		}
 	}
@@ -129,8 +128,26 @@ func (m *mixture) add(p chem.Protolyte, source string) {
 	m.sources = append(m.sources, source)
 }
 
+// addOwn adds an acid, or its salt, with constants that were given. A salt's metal ions
+// count as many acids as it takes to hold them.
+func (m *mixture) addOwn(p chem.Protolyte, c chem.Concentration) {
+	formula := p.Name
+	if s, ok := chem.LookupSubstance(p.Name); ok {
+		formula = s.Formula
+	}
+	count := 1.0
+	if f, err := chem.ParseFormula(formula); err == nil {
+		charge, ions := chem.StrongIonsOf(f)
+		m.strong += c * chem.Concentration(charge)
+		m.ions += c * chem.Concentration(ions)
+		count = max(1, math.Ceil(charge/float64(len(p.PKa))))
+	}
+	p.C = c * chem.Concentration(count)
+	m.add(p, "pKa of "+p.Name+": given")
+}
+
 // dissolve adds a substance of the table, or a formula.
-func (m *mixture) dissolve(name string, c chem.Concentration) error {
+func (m *mixture) dissolve(name string, c chem.Concentration, t chem.Temperature) error {
 	s, ok := chem.LookupSubstance(name)
 	if !ok {
 		s = &chem.Substance{Name: name, Formula: name}
@@ -146,8 +163,12 @@ func (m *mixture) dissolve(name string, c chem.Concentration) error {
 	m.strong += c * chem.Concentration(e.Strong)
 	m.ions += c * chem.Concentration(e.Ions)
 	for _, a := range e.Acids {
-		m.add(chem.Protolyte{Name: a.Acid.Name, PKa: a.Acid.PKa, Charge: a.Acid.Charge, C: c * chem.Concentration(a.Count)},
-			"pKa of "+a.Acid.Name+" "+joinNumbers(a.Acid.PKa)+": "+strings.Join(a.Acid.Sources, "; "))
+		pKa, moved := a.Acid.PKaAt(t)
+		note := "pKa of " + a.Acid.Name + " " + joinNumbers(pKa) + ": " + strings.Join(slices.Compact(slices.Clone(a.Acid.Sources)), "; ")
+		if d := t.Celsius() - 25; !moved && (d > 5 || d < -5) {
+			note += "; at 25 °C, as its enthalpy of dissociation isn't known"
+		}
+		m.add(chem.Protolyte{Name: a.Acid.Name, PKa: pKa, Charge: a.Acid.Charge, C: c * chem.Concentration(a.Count)}, note)
 	}
 	return nil
 }
@@ -155,7 +176,7 @@ func (m *mixture) dissolve(name string, c chem.Concentration) error {
 func joinNumbers(xs []float64) string {
 	texts := make([]string, len(xs))
 	for i, x := range xs {
-		texts[i] = fmt.Sprint(x)
+		texts[i] = fmt.Sprintf("%.4g", x)
 	}
 	return strings.Join(texts, ", ")
 }
@@ -221,7 +242,7 @@ func lacking(pairs []Pair) (string, error) {
 	var names []string
 	for _, p := range pairs {
 		var trial mixture
-		if err := trial.dissolve(p.Name, 1); errors.Is(err, chem.ErrNoData) {
+		if err := trial.dissolve(p.Name, 1, chem.Celsius(25)); errors.Is(err, chem.ErrNoData) {
 			names = append(names, p.Name)
 		}
 	}

@@ -2,6 +2,7 @@ package reckoner
 
 import (
 	"context"
+	"errors"
 	"fmt"
 
 	"stillroom/chem"
@@ -128,6 +129,11 @@ func runDilute(_ context.Context, args Args) (Answer, error) {
 		return Answer{}, err
 	}
 	solute := soluteOf(s, t)
+	if byVolume, ok := dilutedByVolume(args); ok && !args.Has("density") {
+		if _, err := strengthAt(args, "from", "density", solute); errors.Is(err, chem.ErrNoData) {
+			return byVolume, nil
+		}
+	}
 	from, err := strengthAt(args, "from", "density", solute)
 	if err != nil {
 		return Answer{}, err
@@ -150,6 +156,29 @@ func runDilute(_ context.Context, args Args) (Answer, error) {
 	answer.Results = append(answer.Results, Number("water_mass", d.Water.Grams(), "g"))
 	answer.addDilutionHeat(solute, from, to, make)
 	return answer, nil
+}
+
+// dilutedByVolume dilutes by volume alone, for solutions without any density: both
+// strengths per volume in the same measure, and a volume to make.
+func dilutedByVolume(args Args) (Answer, bool) {
+	from, err1 := get(args, "from", chem.ParseStrength)
+	to, err2 := get(args, "to", chem.ParseStrength)
+	make, err3 := args.Volume("make")
+	if errors.Join(err1, err2, err3) != nil || from.Kind != to.Kind || !from.PerVolume() || !(from.Value > 0) || to.Value > from.Value {
+		return Answer{}, false
+	}
+	stock := make * chem.Volume(to.Value/from.Value)
+	return Answer{
+		Results: []Result{Number("stock_volume", stock.Millilitres(), "mL")},
+		Notes: []string{acidIntoWater, "no density: masses, water and heat aren't known; fill up to the volume",
+			"heat not known doesn't mean that there is none"},
+		Derivation: chem.Derivation{
+			Of: args["substance"] + ", stock to dilute", Formula: "V(stock) = V · c / c(stock)",
+			Inserted: fmt.Sprintf("V(stock) = %s mL · %s / %s = %s mL", figures(make.Millilitres()), args["to"], args["from"], figures(stock.Millilitres())),
+			Inputs:   []chem.Input{{Symbol: "V", Name: "volume to make", Value: make.Millilitres(), Unit: "mL", Source: given}},
+			Value:    stock.Millilitres(), Unit: "mL", Range: "fill up to the mark; volumes don't add up", Source: "OpenStax Chemistry 2e, 3.3",
+		},
+	}, true
 }
 
 // addVolume adds a volume where the density is known, and says so where it isn't.
