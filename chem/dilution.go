@@ -6,6 +6,7 @@ import (
 	"fmt"
 	"math"
 	"slices"
+	"strings"
 	"sync"
 )
 
@@ -150,9 +151,22 @@ func DilutionHeat(cas string, n Amount, from, to Fraction) (Energy, error) {
 	return Energy(float64(n) * (before - after)), nil
 }
 
-// DilutionHeatSource says where the heat at a strength comes from: the source of the
-// row nearest to it; ok is false for a solute without any.
-func DilutionHeatSource(cas string, w Fraction) (source string, ok bool) {
+// DilutionHeatSource says where a solute's heats of dilution come from, every source
+// once; ok is false for a solute without any.
+func DilutionHeatSource(cas string) (source string, ok bool) {
+	d := dilutionTables()[cas]
+	if d == nil {
+		return "", false
+	}
+	sources := make([]string, len(d.rows))
+	for i, p := range d.rows {
+		sources[i] = p.source
+	}
+	return strings.Join(unique(sources), "; "), true
+}
+
+// DilutionHeatSourceAt is DilutionHeatSource of the row nearest to a strength.
+func DilutionHeatSourceAt(cas string, w Fraction) (source string, ok bool) {
 	d := dilutionTables()[cas]
 	if d == nil {
 		return "", false

@@ -199,7 +199,7 @@ func (a *Answer) addDilutionHeat(solute chem.Solute, from, to chem.Fraction, mak
 		a.Notes = append(a.Notes, "heat not known, which doesn't mean that there is none: "+err.Error())
 		return
 	}
-	source, _ := chem.DilutionHeatSource(solute.CAS, from)
+	source, _ := chem.DilutionHeatSourceAt(solute.CAS, from)
 	a.Results = append(a.Results,
 		Number("heat", warm.Heat.Kilojoules(), "kJ"),
 		Number("adiabatic_temperature", warm.Temperature.Celsius(), "°C"))
