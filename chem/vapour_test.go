@@ -182,6 +182,10 @@ func TestSteamAgainstAzeotropes(t *testing.T) {
 	}{
 		{"142-82-5", 0.5},
 		{"75-09-2", 1.1}, // quoted at 38.8 and at 38.1 °C
+		{"108-88-3", 1},  // toluene, also quoted at 84.1 °C
+		{"71-43-2", 0.5},
+		{"110-82-7", 0.7},
+		{"110-54-3", 0.5},
 	} {
 		a, ok := AzeotropeWithWater(c.cas)
 		if !ok {
