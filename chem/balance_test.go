@@ -176,6 +176,7 @@ func TestOxidationNumbers(t *testing.T) {
 		{"NaH", "H", -1}, {"LiAlH4", "H", -1}, {"OF2", "O", 2}, {"KO2", "O", -0.5}, {"K3[Fe(CN)6]", "Fe", 3}, {"Ni(CO)4", "Ni", 0},
 		{"CuSCN", "Cu", 1}, {"Cu(NO3)2", "Cu", 2}, {"Fe2(SO4)3", "Fe", 3}, {"FeTiO3", "Fe", 2}, {"CrO2Cl2", "Cr", 6}, {"K2S2O8", "S", 6},
 		{"C2H6O", "C", -2}, {"CH4", "C", -4}, {"CCl4", "C", 4}, {"ICl", "I", 1}, {"NaClO", "Cl", 1}, {"Na2S2O3", "S", 2}, {"O2", "O", 0},
+		{"Mn(CH3COO)3", "Mn", 3}, {"Cu2CO3(OH)2", "Cu", 2}, {"(NH4)3Fe(C2O4)3", "Fe", 3}, {"C3H9ClSi", "Si", 4},
 	} {
 		numbers, err := sure(ParseFormula(test.text))(t).OxidationNumbers()
 		if err != nil {

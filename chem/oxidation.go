@@ -181,7 +181,7 @@ func (w *oxidation) ammonium() {
 		return
 	}
 	count := math.Floor(h.count / 4)
-	if count < 1 || count > n.count || w.entry(6) != nil {
+	if count < 1 || count > n.count || w.entry(6) != nil && h.count != 4*count {
 		return
 	}
 	w.left -= count
@@ -191,13 +191,13 @@ func (w *oxidation) ammonium() {
 	w.entries = slices.DeleteFunc(w.entries, func(e oxidationEntry) bool { return e.count == 0 })
 }
 
-// ligands settles cyanide, thiocyanate and carbonyl.
+// ligands settles cyanide, thiocyanate, carbonyl, carbonate and, by its mean, acetate.
 func (w *oxidation) ligands() {
 	c := w.entry(6)
 	if c == nil {
 		return
 	}
-	n, s, o := w.entry(7), w.entry(16), w.entry(8)
+	n, s, o, h := w.entry(7), w.entry(16), w.entry(8), w.entry(1)
 	cyanide := n != nil && n.count == c.count && strings.Contains(w.f.text, "CN")
 	switch {
 	case cyanide && s != nil && s.count == c.count:
@@ -214,6 +214,10 @@ func (w *oxidation) ligands() {
 	case o != nil && o.count == c.count && strings.Contains(w.f.text, "(CO)"):
 		w.set(6, 2)
 		w.set(8, -2)
+	case strings.Contains(w.f.text, "CO3"):
+		w.set(6, 4)
+	case h != nil && 2*h.count == 3*c.count && strings.Contains(w.f.text, "CH3COO"):
+		w.set(6, 0)
 	}
 }
 
@@ -267,9 +271,15 @@ func (w *oxidation) oxoAnion() {
 	}
 }
 
-// heteroatoms settles nitrogen, sulfur, phosphorus and selenium of an organic
-// compound, and of a binary compound without oxygen, at their lowest number.
+// heteroatoms settles boron and silicon of an organic compound at their highest number
+// and nitrogen, sulfur, selenium and phosphorus, there and in a compound without oxygen,
+// at their lowest.
 func (w *oxidation) heteroatoms() {
+	hydrogen := slices.ContainsFunc(w.entries, func(e oxidationEntry) bool { return e.z == 1 })
+	if w.entry(6) != nil && hydrogen {
+		w.set(5, 3)
+		w.set(14, 4)
+	}
 	for _, e := range []struct {
 		z      uint8
 		number float64

@@ -124,7 +124,7 @@ func LookupSubstance(key string) (*Substance, bool) {
 	if s := index.formula[key]; s != nil {
 		return s, true
 	}
-	f, err := ParseFormula(key)
+	f, err := ParseFormula(cutAnhydrous(key))
 	if err != nil {
 		return nil, false
 	}

@@ -27,6 +27,9 @@ func TestLookupSubstance(t *testing.T) {
 		"sodium hypochlorite":            "7681-52-9",
 		"NaOCl":                          "7681-52-9",
 		"valeric acid":                   "109-52-4",
+		"EtOAc":                          "141-78-6",
+		"MgSO4 anhydrous":                "7487-88-9",
+		"Anhydrous MgSO4":                "7487-88-9",
 	} {
 		s, ok := LookupSubstance(key)
 		if !ok || s.CAS != cas {

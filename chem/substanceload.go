@@ -25,6 +25,11 @@ func loadSubstances() []*Substance {
 	for _, r := range readTable("substance_hazards.csv") {
 		refineHazard(byCAS[r.text("cas")], r)
 	}
+	for _, r := range readTable("synonyms.csv") {
+		if s := byCAS[r.text("cas")]; s != nil {
+			s.addSynonyms(r.text("name"))
+		}
+	}
 	slices.SortFunc(all, func(a, b *Substance) int { return cmp.Or(cmp.Compare(a.Name, b.Name), cmp.Compare(a.CAS, b.CAS)) })
 	return all
 }

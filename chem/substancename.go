@@ -108,3 +108,16 @@ func mayRespell(name []byte) bool {
 	}
 	return false
 }
+
+// cutAnhydrous takes the word off a formula: "MgSO4, anhydrous".
+func cutAnhydrous(key string) string {
+	const word = "anhydrous"
+	key = strings.TrimSpace(key)
+	if len(key) > len(word) && strings.EqualFold(key[len(key)-len(word):], word) {
+		return strings.TrimRight(key[:len(key)-len(word)], " ,")
+	}
+	if len(key) > len(word) && strings.EqualFold(key[:len(word)], word) {
+		return strings.TrimLeft(key[len(word):], " ")
+	}
+	return key
+}
