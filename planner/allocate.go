@@ -111,15 +111,15 @@ func classes(lines []line) int {
 // allocateOneClass solves each class by itself and keeps the cheapest. It
 // reports false if there is only one class, or none that is enough.
 func allocateOneClass(need float64, lines []line, p points) (allocation, bool) {
+	if !slices.ContainsFunc(lines, func(l line) bool { return l.class != lines[0].class }) {
+		return allocation{}, false
+	}
 	byClass := map[string][]int{}
 	sum := map[string]float64{}
 	for i := range lines {
 		c := lines[i].class
 		byClass[c] = append(byClass[c], i)
 		sum[c] += lines[i].free
-	}
-	if len(byClass) < 2 {
-		return allocation{}, false
 	}
 	names := make([]string, 0, len(byClass))
 	for c := range byClass {
@@ -155,12 +155,11 @@ type allocator struct {
 	firstLife inventory.Date
 	firstWalk int
 
-	items     []item    // candidates in order of points for their amount
-	ratios    []float64 // of the items: the least a unit of amount costs out of them
+	items     []item // candidates in order of points for their amount
+	byLater   []int  // items by points for keeping longer
 	minFixed  []int64
 	maxFree   []float64
 	chosen    []int // items
-	byLater   []int
 	best      allocation
 	bestItems []int
 	nodes     int
@@ -250,10 +249,11 @@ func (a *allocator) prepare() {
 		return cmp.Or(cmp.Compare(a.ratio(x), a.ratio(y)), cmp.Compare(x.rank, y.rank))
 	})
 	n := len(a.items)
-	a.ratios = make([]float64, n)
-	for i := range a.items {
-		a.ratios[i] = a.ratio(a.items[i])
+	a.byLater = make([]int, n)
+	for i := range a.byLater {
+		a.byLater[i] = i
 	}
+	slices.SortStableFunc(a.byLater, func(i, j int) int { return cmp.Compare(a.items[i].later, a.items[j].later) })
 	a.minFixed, a.maxFree = make([]int64, n+1), make([]float64, n+1)
 	a.minFixed[n] = math.MaxInt64 / 4
 	for i := n - 1; i >= 0; i-- {
@@ -265,35 +265,94 @@ func (a *allocator) prepare() {
 // ratio is the least a unit of amount costs out of an item.
 func (a *allocator) ratio(it item) float64 { return float64(it.fixed)/it.free + it.later*tie/a.need }
 
-// worthwhile leaves out lines that can't be in a best answer: if one bottle
-// alone covers the need for u points, a line in company costs at least its own
-// fixed points and those of the cheapest other.
+// worthwhile leaves out lines that can't be in a best answer. With any price λ
+// for a unit of amount, an answer that draws on the lines S costs at least
+//
+//	λ · need + Σ over S of rᵢ,   rᵢ = least points of line i less λ times its amount
+//
+// (Lagrangian relaxation), so a line is left out if λ · need, the negative rᵢ
+// and its own come to more than an answer that is known. λ is the points for
+// the last unit if bottles could be bought by the unit.
 func (a *allocator) worthwhile() []int {
-	u, cheapest := math.Inf(1), math.Inf(1)
+	keep := make([]int, 0, 64)
+	known, price := a.known()
+	floor := price * a.need
 	for i := range a.lines {
-		l := &a.lines[i]
-		if l.free <= 0 {
-			continue
-		}
-		fixed := a.fixed(l) - a.p.finished
-		cheapest = min(cheapest, fixed)
-		if l.free >= a.need*(1-enough) {
-			u = min(u, a.fixed(l)+a.later(l)+a.heel(l, a.need))
+		if a.lines[i].free > 0 {
+			floor += min(0, a.reduced(&a.lines[i], price))
 		}
 	}
-	var keep []int
+	// Half a thousandth of a point for the rounding of each draw, of 32 at the most.
+	limit := known + 16
 	for i := range a.lines {
 		l := &a.lines[i]
-		if l.free <= 0 {
-			continue
-		}
-		fixed := a.fixed(l) - a.p.finished
-		alone := l.free >= a.need*(1-enough) && a.fixed(l)+a.later(l)+a.heel(l, a.need) <= u+1
-		if alone || fixed+cheapest <= u+1 {
+		if l.free > 0 && floor+max(0, a.reduced(l, price)) <= limit {
 			keep = append(keep, i)
 		}
 	}
 	return keep
+}
+
+// reduced is rᵢ: the least of the line used up and of the line used in part.
+func (a *allocator) reduced(l *line, price float64) float64 {
+	fixed, later := a.fixed(l), a.later(l)/a.need
+	part := fixed - max(0, price-later)*min(l.free, a.need)
+	if l.free > a.need {
+		return part
+	}
+	return min(part, fixed+later*l.free+a.heel(l, l.free)-price*l.free)
+}
+
+// known returns the points of an answer, and a price for a unit of amount: the
+// least any line asks for one if some line is enough alone, else that of the
+// last unit if bottles could be bought by the unit.
+func (a *allocator) known() (points, price float64) {
+	points, price = math.Inf(1), math.Inf(1)
+	for i := range a.lines {
+		l := &a.lines[i]
+		if l.free <= 0 {
+			continue
+		}
+		price = min(price, a.perUnit(l))
+		if l.free >= a.need*(1-enough) {
+			points = min(points, a.fixed(l)+a.later(l)+a.heel(l, a.need))
+		}
+	}
+	if !math.IsInf(points, 1) {
+		return points, price
+	}
+	return a.knownOfSeveral()
+}
+
+// perUnit is the least a unit out of a line costs.
+func (a *allocator) perUnit(l *line) float64 {
+	use := min(l.free, a.need)
+	return (a.fixed(l) + a.later(l)*use/a.need + min(0, a.heel(l, use))) / use
+}
+
+func (a *allocator) knownOfSeveral() (points, price float64) {
+	type offer struct {
+		line  int
+		ratio float64
+	}
+	offers := make([]offer, 0, len(a.lines))
+	for i := range a.lines {
+		if a.lines[i].free > 0 {
+			offers = append(offers, offer{i, a.perUnit(&a.lines[i])})
+		}
+	}
+	slices.SortFunc(offers, func(x, y offer) int { return cmp.Or(cmp.Compare(x.ratio, y.ratio), cmp.Compare(x.line, y.line)) })
+	left := a.need
+	for _, o := range offers {
+		l := &a.lines[o.line]
+		points += a.fixed(l) + a.later(l)*min(l.free, left)/a.need + a.p.useless
+		left -= l.free
+		price = o.ratio
+		if left <= a.need*enough {
+			break
+		}
+	}
+	return points, price
 }
 
 // number gives the kept lines their places in the orders of drawing and code.
@@ -464,8 +523,9 @@ func (a *allocator) skipTwin(k int) bool {
 
 // bound is what any choice with at least one more item from k on costs at the
 // least: as many further bottles as the largest could do with, and the whole
-// need at the best points for its amount, from those chosen and those to come.
-// Half a thousandth for each draw allows for rounding.
+// need at the least points for keeping longer. All chosen bottles but the one
+// that keeps longest are used up then. Half a thousandth for each draw allows
+// for rounding.
 func (a *allocator) bound(k int, rest float64, cost int64) int64 {
 	more := int64(1)
 	if rest > 0 {
@@ -475,35 +535,34 @@ func (a *allocator) bound(k int, rest float64, cost int64) int64 {
 	if whole >= a.best.cost {
 		return whole
 	}
-	slack := float64(len(a.chosen)+int(more)+1) * tie / 2
-	return max(whole, cost+int64(a.fill(k)-slack))
+	last := -1
+	for _, c := range a.chosen {
+		if last < 0 || a.items[c].place > a.items[last].place {
+			last = c
+		}
+	}
+	left, linear := a.need, 0.0
+	for _, c := range a.chosen {
+		if c != last {
+			left -= a.items[c].free
+			linear += a.items[c].later * a.items[c].free / a.need
+		}
+	}
+	linear += a.cheapestLater(left)
+	return whole + int64((linear-0.5*float64(int64(len(a.chosen))+more+1))*tie)
 }
 
-// fill is the least that the whole need can cost beyond the fixed points of
-// the items chosen, if bottles to come could be bought by the gram.
-func (a *allocator) fill(k int) float64 {
-	left, points := a.need, 0.0
-	use := func(free, ratio float64) {
-		amount := min(left, free)
-		points += amount * ratio
-		left -= amount
-	}
-	a.byLater = append(a.byLater[:0], a.chosen...)
-	slices.SortFunc(a.byLater, func(x, y int) int { return cmp.Compare(a.items[x].later, a.items[y].later) })
-	for c := 0; left > a.need*enough; {
-		switch {
-		case c < len(a.byLater) && (k == len(a.items) || a.pure(a.byLater[c]) <= a.ratios[k]):
-			use(a.items[a.byLater[c]].free, a.pure(a.byLater[c]))
-			c++
-		case k < len(a.items):
-			use(a.items[k].free, a.ratios[k])
-			k++
-		default:
-			return math.MaxInt64 / 4
+// cheapestLater is the least that an amount can cost by keeping longer, out of
+// all items together.
+func (a *allocator) cheapestLater(amount float64) float64 {
+	points := 0.0
+	for _, k := range a.byLater {
+		if amount <= 0 {
+			break
 		}
+		use := min(amount, a.items[k].free)
+		points += a.items[k].later * use / a.need
+		amount -= use
 	}
 	return points
 }
-
-// pure is what a unit of amount costs out of an item that is chosen already.
-func (a *allocator) pure(k int) float64 { return a.items[k].later * tie / a.need }

@@ -5,6 +5,7 @@ import (
 	"math"
 	"math/rand/v2"
 	"slices"
+	"strings"
 	"testing"
 
 	"stillroom/inventory"
@@ -157,6 +158,7 @@ func TestAllocateKeepsClassesApart(t *testing.T) {
 func BenchmarkAllocate(b *testing.B) {
 	r := rand.New(rand.NewPCG(3, 5))
 	lines := randomLines(r, 1600)
+	slices.SortFunc(lines, func(x, y line) int { return strings.Compare(x.code, y.code) })
 	p := deliveredPoints()
 	for _, need := range []float64{40, 400, 1400} {
 		b.Run(fmt.Sprint(need), func(b *testing.B) {

@@ -70,9 +70,12 @@ func (d *demand) asksFor(asks []Ask, name string) bool {
 // possible (practice §4).
 func (m *matcher) lines(c *coverage, oneLot bool) []line {
 	lines := make([]line, len(c.found.fits))
+	var place inventory.Place
 	for i := range c.found.fits {
 		x := &c.found.fits[i]
-		place, _ := m.shelf.Place(x.bottle.PlaceID)
+		if place.ID != x.bottle.PlaceID {
+			place, _ = m.shelf.Place(x.bottle.PlaceID)
+		}
 		lines[i] = line{
 			at: i, free: float64(x.free) * x.pure, all: float64(x.bottle.Content-m.dead(x)) * x.pure,
 			life: x.life, sealed: x.sealed, walk: place.Walk, code: x.bottle.Code,
@@ -103,10 +106,9 @@ func (m *matcher) uselessHeel(x *fit) int64 {
 	if x.form.Measure == inventory.ByCount {
 		return 0
 	}
-	heel := m.policy.value("heel.share") * float64(x.bottle.Size)
+	heel := m.heelShare * float64(x.bottle.Size)
 	if x.form.Measure == inventory.ByVolume {
-		volume := m.policy.value("heel.volume") * float64(chem.Millilitre/chem.Microlitre)
-		heel = max(heel, min(volume, 2*heel))
+		heel = max(heel, min(m.heelUL, 2*heel))
 	}
 	return int64(heel)
 }

@@ -186,6 +186,12 @@ func (p *planning) largestThatFits() chem.Mass {
 // matchAndWalk matches and allocates, and repeats the walk-through with the
 // stocks drawn until they no longer change.
 func (p *planning) matchAndWalk() error {
+	matcher, err := newMatcher(p.req, p.shelf, p.policy)
+	if err != nil {
+		return err
+	}
+	matcher.claims = p.claims
+	p.matcher = matcher
 	for range mostPasses {
 		if err := p.match(); err != nil {
 			return err
@@ -212,12 +218,9 @@ func (p *planning) matchAndWalk() error {
 }
 
 func (p *planning) match() error {
-	matcher, err := newMatcher(p.req, p.shelf, p.policy)
-	if err != nil {
-		return err
-	}
-	matcher.claims = p.claims
-	p.matcher, p.asks = matcher, p.relaxed(p.walk.Asks)
+	matcher := p.matcher
+	clear(matcher.used)
+	p.asks = p.relaxed(p.walk.Asks)
 	demands, err := demandsOf(p.asks, p.shelf)
 	if err != nil {
 		return err

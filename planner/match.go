@@ -56,14 +56,23 @@ const (
 
 // matcher looks at bottles for one plan.
 type matcher struct {
-	shelf                          *inventory.Shelf
-	req                            Request
-	policy                         *policyTable
-	store                          int64
-	claims                         map[int64]int64 // ledger units promised to earlier runs of a slate, by bottle
-	used                           map[int64]int64 // ledger units taken by needs of this plan, by bottle
-	water                          chem.MolarMass
-	unusable, peroxideLimit, roomC float64
+	shelf  *inventory.Shelf
+	req    Request
+	policy *policyTable
+	store  int64
+	claims map[int64]int64 // ledger units promised to earlier runs of a slate, by bottle
+	used   map[int64]int64 // ledger units taken by needs of this plan, by bottle
+	// promised lists the earmarks of other runs, by bottle.
+	promised map[int64][]inventory.Earmark
+	// seen keeps the matches of demands that share their substance with no
+	// other, for the next pass.
+	seen  map[string]*matches
+	water chem.MolarMass
+
+	// From the policy: the share of a bottle that can't be got out, the
+	// peroxide limit in ppm, the room's temperature in °C, and the useless heel
+	// as a share and in µL.
+	unusable, peroxideLimit, roomC, heelShare, heelUL float64
 }
 
 func newMatcher(req Request, shelf *inventory.Shelf, policy *policyTable) (*matcher, error) {
@@ -71,12 +80,20 @@ func newMatcher(req Request, shelf *inventory.Shelf, policy *policyTable) (*matc
 	if err != nil {
 		return nil, err
 	}
-	return &matcher{
+	m := &matcher{
 		shelf: shelf, req: req, policy: policy, store: homeStore(req, shelf),
-		used: map[int64]int64{}, water: water.MolarMass(),
-		unusable: policy.value("heel.unusable"), peroxideLimit: policy.value("peroxide.limit"),
-		roomC: policy.value("room.temperature"),
-	}, nil
+		used: map[int64]int64{}, promised: map[int64][]inventory.Earmark{}, seen: map[string]*matches{},
+		water: water.MolarMass(), unusable: policy.value("heel.unusable"),
+		peroxideLimit: policy.value("peroxide.limit"), roomC: policy.value("room.temperature"),
+		heelShare: policy.value("heel.share"), heelUL: policy.value("heel.volume") * 1e3,
+	}
+	for _, e := range shelf.Earmarks {
+		if e.RunID == req.Run && e.RunID != 0 || slices.Contains(req.Free, e.ID) {
+			continue
+		}
+		m.promised[e.BottleID] = append(m.promised[e.BottleID], e)
+	}
+	return m, nil
 }
 
 // homeStore is the store the run belongs to: the one asked for, the run's, else
@@ -110,7 +127,19 @@ type matches struct {
 	barredBy map[barKind]float64 // what the barred bottles would give, as far as that can be said
 }
 
+// match looks at every bottle of the demand's substance and its substitutes.
 func (m *matcher) match(d *demand) *matches {
+	if found, ok := m.seen[d.key]; ok {
+		return found
+	}
+	found := m.look(d)
+	if d.alone {
+		m.seen[d.key] = found
+	}
+	return found
+}
+
+func (m *matcher) look(d *demand) *matches {
 	found := &matches{barredBy: map[barKind]float64{}}
 	if d.known {
 		m.matchForms(d, d.substance, Substitute{Factor: 1}, found)
@@ -129,6 +158,9 @@ func (m *matcher) matchForms(d *demand, s inventory.Substance, sub Substitute, f
 		f := formMatch{matcher: m, demand: d, form: &forms[i], sub: sub}
 		f.look()
 		bottles := m.shelf.BottlesOf(forms[i].ID)
+		if f.kind == "" {
+			found.fits = slices.Grow(found.fits, len(bottles))
+		}
 		for k := range bottles {
 			f.bottle(&bottles[k], found)
 		}
@@ -412,15 +444,9 @@ func (f *formMatch) unfitStrength(x *fit) (barKind, string) {
 // promises takes off what other runs were promised and what can't be got out.
 func (f *formMatch) promises(x *fit) (barKind, string) {
 	b := x.bottle
-	var first inventory.Earmark
-	for _, e := range f.shelf.EarmarksOn(b.ID) {
-		if e.RunID == f.req.Run && e.RunID != 0 || slices.Contains(f.req.Free, e.ID) {
-			continue
-		}
-		if x.promised == 0 {
-			first = e
-		}
-		x.promised += e.Amount
+	earmarks := f.promised[b.ID]
+	for i := range earmarks {
+		x.promised += earmarks[i].Amount
 	}
 	x.promised += f.claims[b.ID]
 	x.promised = min(x.promised, b.Content)
@@ -435,13 +461,15 @@ func (f *formMatch) promises(x *fit) (barKind, string) {
 	if x.promised == 0 {
 		return barState, "nothing left that can be got out"
 	}
-	return barPromised, f.promisedTo(first)
+	return barPromised, f.promisedTo(earmarks)
 }
 
-func (f *formMatch) promisedTo(e inventory.Earmark) string {
-	if e.ID == 0 {
+// promisedTo names the first run a bottle is promised to.
+func (f *formMatch) promisedTo(earmarks []inventory.Earmark) string {
+	if len(earmarks) == 0 {
 		return "promised to an earlier run of the slate"
 	}
+	e := earmarks[0]
 	why := fmt.Sprintf("promised to run %d", e.RunID)
 	if e.Owner != "" {
 		why += " (" + e.Owner + ")"

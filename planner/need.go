@@ -21,6 +21,8 @@ type demand struct {
 	// amount is in kilograms of pure, anhydrous substance or in pieces.
 	amount float64
 	asks   []int // into the asks of the walk
+	key    string
+	alone  bool // no other demand shares its substance, and it has no substitutes
 }
 
 // unknownMolar is for what has no formula, such as filter aid.
@@ -43,12 +45,31 @@ func demandsOf(asks []Ask, shelf *inventory.Shelf) ([]demand, error) {
 			at = len(demands)
 			index[key] = at
 			demands = append(demands, newDemand(ask, substance, known))
+			demands[at].key = key
 		}
 		d := &demands[at]
 		d.asks = append(d.asks, i)
 		d.amount += amountOf(ask)
 	}
+	markAlone(demands)
 	return demands, nil
+}
+
+// markAlone finds the demands whose bottles no other demand can want.
+func markAlone(demands []demand) {
+	wanted := map[int64]int{}
+	for i := range demands {
+		wanted[demands[i].substance.ID]++
+	}
+	for i := range demands {
+		d := &demands[i]
+		d.alone = d.known && wanted[d.substance.ID] == 1 && len(d.accept.Substitutes) == 0
+		for k := range demands {
+			if len(demands[k].accept.Substitutes) > 0 && k != i {
+				d.alone = false // it may be a substitute for the other
+			}
+		}
+	}
 }
 
 func amountOf(ask Ask) float64 {

@@ -47,12 +47,12 @@ func (q *quantity) at(i int) float64 {
 	return min(max(q.mean+float64(q.sd*standardNormal(q.stream.Uniform(i))), q.least), q.most)
 }
 
-// extreme returns a value that is passed, downwards or upwards, less than once
-// in a hundred thousand times.
+// extreme returns a value that isn't passed, downwards or upwards: for other
+// than normal and uniform distributions less than once in 10¹² draws.
 func (q *quantity) extreme(up bool) float64 {
-	p, z := 1e-5, -4.265
+	p, z := 1e-12, standardNormal(0)
 	if up {
-		p, z = 1-1e-5, 4.265
+		p, z = 1-1e-12, -z
 	}
 	switch {
 	case q.dist != nil:
@@ -113,8 +113,9 @@ type needRisk struct {
 	charges []float64
 	losses  []quantity
 	bottles []bottleRisk
-	certain bool      // it suffices whatever happens, if the bottles drawn on are found
-	asked   []float64 // draws of the need
+	certain bool    // it suffices whatever happens, if the bottles drawn on are found
+	most    float64 // more than the need comes to in any draw
+	safe    float64 // of a single bottle: if its content's random number is above this, it suffices
 	short   []bool
 	chance  float64
 }
@@ -315,10 +316,7 @@ func (a *assessor) assessNeed(r *needRisk, share float64) {
 		return
 	}
 	r.short = make([]bool, a.n)
-	r.certain = a.sureIfFound(r)
-	if !r.certain {
-		r.drawNeed(a.n)
-	}
+	r.bound()
 	r.draw(r.bottles)
 	a.nameSpares(r, share)
 	for i, s := range r.short {
@@ -331,27 +329,45 @@ func (a *assessor) assessNeed(r *needRisk, share float64) {
 	}
 }
 
-// sureIfFound reports whether the bottles drawn on suffice whatever the draw,
-// as long as each is found.
-func (a *assessor) sureIfFound(r *needRisk) bool {
-	need, have := 0.0, 0.0
+// bound finds the most the need can be, whether the bottles drawn on suffice
+// whatever the draw, as long as each is found, and for a single bottle the
+// random number above which its content is enough, so that most draws are
+// decided by two comparisons.
+func (r *needRisk) bound() {
+	r.most, r.safe = 0, 1
 	for k := range r.charges {
-		need += r.charges[k] * r.losses[k].extreme(true)
+		r.most += r.charges[k] * r.losses[k].extreme(true)
 	}
+	least := 0.0
 	for k := range r.bottles {
-		have += r.bottles[k].least()
+		least += r.bottles[k].least()
 	}
-	return have > need
+	r.certain = least > r.most
+	if len(r.bottles) == 1 && !r.certain {
+		r.safe = r.bottles[0].enoughAbove(r.most)
+	}
 }
 
-func (r *needRisk) drawNeed(n int) {
-	r.asked = make([]float64, n)
-	for k := range r.charges {
-		q := &r.losses[k]
-		for i := range r.asked {
-			r.asked[i] += float64(r.charges[k] * q.at(i))
+// enoughAbove is the random number above which the content, at the weakest the
+// bottle may be, is more than an amount; 1 if there is none.
+func (b *bottleRisk) enoughAbove(amount float64) float64 {
+	units := amount/(b.strength.extreme(false)*b.fit.pure) + b.off
+	q := &b.content
+	switch {
+	case q.dist != nil || q.sd == 0 || q.flat || units >= q.most:
+		return 1
+	case units < q.least:
+		return 0
+	}
+	low, high := 0.0, 1.0
+	for range 30 {
+		if mid := (low + high) / 2; q.mean+float64(q.sd*standardNormal(mid)) > units {
+			high = mid
+		} else {
+			low = mid
 		}
 	}
+	return high
 }
 
 // draw finds the draws in which the bottles don't suffice.
@@ -365,16 +381,27 @@ func (r *needRisk) draw(bottles []bottleRisk) {
 }
 
 func (r *needRisk) shortAt(bottles []bottleRisk, i int) bool {
+	if r.safe < 1 && len(bottles) == 1 {
+		b := &bottles[0]
+		if b.content.stream.Uniform(i) > r.safe {
+			return b.found.Uniform(i) < b.missing
+		}
+	}
 	if r.certain && allFound(bottles, i) {
 		return false
 	}
-	need := r.needAt(i)
+	return r.shortOf(bottles, i)
+}
+
+// shortOf compares need and content, whatever is known beforehand.
+func (r *needRisk) shortOf(bottles []bottleRisk, i int) bool {
+	have := 0.0
 	for k := range bottles {
-		if need -= bottles[k].have(i); need <= 0 {
+		if have += bottles[k].have(i); have > r.most {
 			return false
 		}
 	}
-	return true
+	return have < r.needAt(i)
 }
 
 func allFound(bottles []bottleRisk, i int) bool {
@@ -388,9 +415,6 @@ func allFound(bottles []bottleRisk, i int) bool {
 
 // needAt is draw i of the need.
 func (r *needRisk) needAt(i int) float64 {
-	if r.asked != nil {
-		return r.asked[i]
-	}
 	sum := 0.0
 	for k := range r.charges {
 		sum += float64(r.charges[k] * r.losses[k].at(i))
@@ -426,10 +450,8 @@ func (a *assessor) nameSpares(r *needRisk, share float64) {
 			break
 		}
 		spare := a.bottleRisk(x)
-		wasCertain, was := r.certain, r.chance
-		r.certain = false // a spare may be opened without the others being short of anything
+		was := r.chance
 		bottles := append(slices.Clone(r.bottles), spare)
-		r.certain = wasCertain
 		r.drawSpare(bottles)
 		if r.chance >= was {
 			break
@@ -445,12 +467,12 @@ func (a *assessor) nameSpares(r *needRisk, share float64) {
 }
 
 // drawSpare looks again at the draws that are short: a further bottle can only
-// help.
+// help. What is certain of the bottles drawn on doesn't hold for the spares.
 func (r *needRisk) drawSpare(bottles []bottleRisk) {
 	bad := 0
 	for i := range r.short {
 		if r.short[i] {
-			r.short[i] = r.shortAt(bottles, i)
+			r.short[i] = r.shortOf(bottles, i)
 			bad += b2i(r.short[i])
 		}
 	}
@@ -498,7 +520,7 @@ func (a *assessor) weighFirst(risk *Risk) {
 	best := risk.WeighBefore
 	for k := range a.needs {
 		r := &a.needs[k]
-		if r.certain || r.short == nil || r.chance == 0 {
+		if r.short == nil || r.chance == 0 || r.certain {
 			continue
 		}
 		for b := range r.bottles {
@@ -521,7 +543,7 @@ func (a *assessor) afterWeighing(r *needRisk, b int) float64 {
 	bad := 0
 	for i := range r.short {
 		others := int(a.run[i]) - b2i(r.short[i])
-		if others > 0 || r.shortAt(bottles, i) {
+		if others > 0 || r.shortOf(bottles, i) {
 			bad++
 		}
 	}

@@ -29,7 +29,7 @@ func etherNeed(a *assessor, missing float64) *needRisk {
 }
 
 func riskOf(a *assessor, r *needRisk) float64 {
-	r.drawNeed(a.n)
+	r.bound()
 	r.draw(r.bottles)
 	return r.chance
 }
