@@ -19,8 +19,9 @@
   document.addEventListener("htmx:afterSwap", function (event) {
     var target = document.getElementById(event.detail.target.id) || event.detail.target;
     var cause = event.detail.requestConfig && event.detail.requestConfig.triggeringEvent;
-    // While somebody goes from field to field the focus stays where it is.
-    if (cause && cause.type === "change") return;
+    // The focus moves only when somebody asked for the change: not while they go
+    // from field to field, nor when something arrives by itself.
+    if (!cause || (cause.type !== "submit" && cause.type !== "click")) return;
     focusOn(target.querySelector("[data-faults]") || target.querySelector("[data-focus]"));
   });
 

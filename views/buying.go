@@ -6,7 +6,6 @@ import (
 
 	"github.com/gin-gonic/gin"
 
-	"stillroom/chem"
 	"stillroom/inventory"
 	"stillroom/planner"
 )
@@ -36,20 +35,19 @@ type orderRow struct {
 
 // showBuying answers /buying.
 func (s *Server) showBuying(c *gin.Context) error {
-	shelf, err := s.Lab.Load(c.Request.Context())
+	shelf, lines, err := s.slate(c)
 	if err != nil {
 		return err
 	}
 	p := &buyingPage{Orders: ordersUnderWay(shelf, s.Today())}
 	p.Title, p.Section = "Buying", "/buying"
 	totals := map[string]int64{}
-	for _, run := range runsToCome(shelf.Runs) {
-		plan, err := s.planKept(run, shelf)
-		if err != nil || len(plan.Buy) == 0 {
-			continue
+	for _, l := range lines {
+		if l.Err != nil || len(l.Plan.Buy) == 0 {
+			continue // the slate says why
 		}
-		p.Runs = append(p.Runs, buyingRun{run, massPlain(chem.Mass(run.TargetUG) * chem.Microgram), plan.Recipe.Product, plan.Buy})
-		for _, b := range plan.Buy {
+		p.Runs = append(p.Runs, buyingRun{l.Run, wantedText(l.Run), l.Plan.Recipe.Product, l.Plan.Buy})
+		for _, b := range l.Plan.Buy {
 			totals[b.Currency] += b.Cost
 		}
 	}

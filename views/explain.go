@@ -24,18 +24,9 @@ type explainPage struct {
 
 // explain answers /runs/:id/explain/:what.
 func (s *Server) explain(c *gin.Context) error {
-	shelf, run, recipe, err := s.findRun(c)
+	p, err := s.askedRun(c)
 	if err != nil {
 		return err
-	}
-	p := s.runPageFor(run, recipe)
-	if typed := c.Request.URL.Query(); typed.Has("wanted") {
-		p.tryAsk(typed.Get("wanted"), typed.Get("on"), typed.Get("certainty"), s.Today())
-	}
-	if len(p.Faults) == 0 {
-		if err := s.planRun(p, shelf); err != nil {
-			return err
-		}
 	}
 	if len(p.Faults) > 0 {
 		return s.render(c, http.StatusUnprocessableEntity, "run", p)
@@ -46,7 +37,7 @@ func (s *Server) explain(c *gin.Context) error {
 	}
 	why.Title = "How " + why.Heading + " came about"
 	why.Section = "/slate"
-	why.Back = "/runs/" + strconv.FormatInt(run.ID, 10) + string(p.Query())
+	why.Back = runAddress(p.Run.ID) + string(p.Query())
 	return s.render(c, http.StatusOK, "explain", why)
 }
 

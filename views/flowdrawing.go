@@ -38,13 +38,12 @@ type flowNode struct {
 type flowRibbon struct {
 	from, to  int
 	mass      chem.Mass
-	substance string // of the largest share
-	others    int
-	largest   chem.Mass
+	substance string // the first
+	mixed     bool   // there are others
 }
 
-// flowGraph sums the flows between the same two places; ends keep their
-// substances apart, because those are what people look for.
+// flowGraph sums the flows between the same two places. What comes from outside
+// keeps its substances apart, because those are what people look for.
 type flowGraph struct {
 	nodes   []flowNode
 	ribbons []flowRibbon
@@ -62,17 +61,22 @@ func newFlowGraph(flows []planner.Flow) *flowGraph {
 		}
 		return i
 	}
-	between := map[[2]int]int{}
+	type way struct{ from, to, substance string }
+	between := map[way]int{}
+	entered := enteredPlaces(flows)
 	for _, f := range flows {
 		if !(f.Mass > 0) {
 			continue
 		}
-		key := [2]int{node(f.From), node(f.To)}
-		i, ok := between[key]
+		w := way{f.From, f.To, ""}
+		if !entered[f.From] {
+			w.substance = f.Substance
+		}
+		i, ok := between[w]
 		if !ok {
 			i = len(g.ribbons)
-			between[key] = i
-			g.ribbons = append(g.ribbons, flowRibbon{from: key[0], to: key[1]})
+			between[w] = i
+			g.ribbons = append(g.ribbons, flowRibbon{from: node(f.From), to: node(f.To)})
 		}
 		g.ribbons[i].take(f)
 	}
@@ -88,15 +92,26 @@ func newFlowGraph(flows []planner.Flow) *flowGraph {
 	return g
 }
 
+// enteredPlaces are those that something flows into.
+func enteredPlaces(flows []planner.Flow) map[string]bool {
+	entered := map[string]bool{}
+	for _, f := range flows {
+		if f.Mass > 0 {
+			entered[f.To] = true
+		}
+	}
+	return entered
+}
+
+// take adds a flow. The same substance in several portions is still one.
 func (r *flowRibbon) take(f planner.Flow) {
 	r.mass += f.Mass
-	if f.Mass > r.largest {
-		if r.substance != "" {
-			r.others++
-		}
-		r.substance, r.largest = f.Substance, f.Mass
-	} else {
-		r.others++
+	switch r.substance {
+	case "":
+		r.substance = f.Substance
+	case f.Substance:
+	default:
+		r.mixed = true
 	}
 }
 
@@ -282,15 +297,15 @@ func (d *flowDrawing) lineAfter(i int, n flowNode) float64 {
 // label names what flows and its mass: the substance of what comes in, the place
 // of what goes out, because that is what people look for.
 func (r flowRibbon) label(end string, coming bool) string {
-	what := end
-	if r.others == 0 && (coming || end == "product") {
+	what := strings.TrimPrefix(end, "waste: ")
+	if !r.mixed && (coming || end == "product") {
 		what = r.substance
 	}
 	return what + " " + massText(r.mass)
 }
 
 func endClass(name string) string {
-	if strings.Contains(name, "product") {
+	if name == "product" {
 		return "product"
 	}
 	return "waste"

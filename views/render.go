@@ -93,14 +93,16 @@ func (s *Server) render(c *gin.Context, status int, name string, p pageValue) er
 }
 
 // wantedBlock names the block a request wants: the whole layout, or, when htmx
-// exchanges a part, the block that has the name of the part's identity. A
-// request that restores the history gets the whole page.
+// exchanges a part, the block that has the name of the part's identity without
+// the number at its end. A request that restores the history gets the whole
+// page.
 func wantedBlock(r *http.Request, set *template.Template) string {
 	h := r.Header
 	if h.Get("HX-Request") != "true" || h.Get("HX-Boosted") == "true" || h.Get("HX-History-Restore-Request") == "true" {
 		return "layout"
 	}
-	if target := h.Get("HX-Target"); target != "" && target != "layout" && set.Lookup(target) != nil {
+	target := strings.TrimRight(h.Get("HX-Target"), "-0123456789")
+	if target != "" && target != "layout" && set.Lookup(target) != nil {
 		return target
 	}
 	return "main"

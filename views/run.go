@@ -32,9 +32,12 @@ type runPage struct {
 	Contents []contentRow
 	Flow     template.HTML
 	Risk     []string
-	Hazards  []planner.HazardNote
+	Hazards  []hazardRow // as stored, and what is formed
+	Noted    int         // hazards noted altogether
 	Waste    []wasteRow
 	Paper    *paperCheck // set when the address came from a printed sheet
+
+	carboys []inventory.Carboy
 }
 
 // Query carries what is asked to the addresses of papers and explanations. It
@@ -63,30 +66,38 @@ func (p *runPage) Covered() bool { return p.Plan != nil && p.Plan.Verdict <= pla
 // showRun answers /runs/:id. With a query it shows the run as if that were
 // wanted and changes nothing.
 func (s *Server) showRun(c *gin.Context) error {
-	shelf, run, recipe, err := s.findRun(c)
+	p, err := s.askedRun(c)
 	if err != nil {
 		return err
+	}
+	p.dress(c.Query("printed"))
+	return s.render(c, p.status(), "run", p)
+}
+
+// askedRun plans the run an address names, as it is kept or as the query asks.
+// The page has faults where that can't be read or planned.
+func (s *Server) askedRun(c *gin.Context) (*runPage, error) {
+	shelf, run, recipe, err := s.findRun(c)
+	if err != nil {
+		return nil, err
 	}
 	p := s.runPageFor(run, recipe)
 	if typed := c.Request.URL.Query(); typed.Has("wanted") || typed.Has("on") {
 		p.tryAsk(typed.Get("wanted"), typed.Get("on"), typed.Get("certainty"), s.Today())
 	}
-	return s.answerRun(c, p, shelf)
+	return p, s.planRun(p, shelf)
 }
 
-// answerRun plans what the page asks and renders it; a page with faults is
-// shown with what was typed.
-func (s *Server) answerRun(c *gin.Context, p *runPage, shelf *inventory.Shelf) error {
-	if len(p.Faults) == 0 {
-		if err := s.planRun(p, shelf); err != nil {
-			return err
-		}
-	}
+// answerFaults shows a page with what was typed and what is wrong with it.
+func (s *Server) answerFaults(c *gin.Context, p *runPage) error {
+	return s.render(c, http.StatusUnprocessableEntity, "run", p)
+}
+
+func (p *runPage) status() int {
 	if len(p.Faults) > 0 {
-		return s.render(c, http.StatusUnprocessableEntity, "run", p)
+		return http.StatusUnprocessableEntity
 	}
-	p.Paper = checkPaper(c.Query("printed"), p.Plan)
-	return s.render(c, http.StatusOK, "run", p)
+	return http.StatusOK
 }
 
 // runPageFor makes the page of a run as it is kept.
@@ -115,17 +126,30 @@ func (p *runPage) tryAsk(wanted, on, certainty string, today inventory.Date) {
 	}
 }
 
-// planRun makes the plan and everything the page shows of it. What the planner
-// refuses becomes a fault of the field it is about.
+// planRun makes the plan of what the page asks, unless that has faults. What the
+// planner refuses becomes a fault of the field it is about.
 func (s *Server) planRun(p *runPage, shelf *inventory.Shelf) error {
+	if len(p.Faults) > 0 {
+		return nil
+	}
 	plan, err := s.Plan(planner.Request{
 		Recipe: p.Recipe, Target: p.Ask.target, On: p.Ask.on, Today: s.Today(),
-		Run: p.Run.ID, Certainty: p.Ask.certainty,
+		Run: p.Run.ID, Store: p.Run.StoreID, Certainty: p.Ask.certainty,
 	}, shelf)
 	if err != nil {
 		return p.refused(err)
 	}
-	p.Plan = plan
+	p.Plan, p.carboys = plan, shelf.Carboys
+	return nil
+}
+
+// dress works out what the page shows of the plan. Printed is the revision of a
+// sheet that somebody wants to know of whether it still holds.
+func (p *runPage) dress(printed string) {
+	plan := p.Plan
+	if plan == nil {
+		return
+	}
 	p.Lead, p.Rest = firstSentence(plan.Sentence)
 	p.Needs = p.needRows()
 	p.Steps = stepRows(plan.Steps, func(n int) string {
@@ -134,9 +158,9 @@ func (s *Server) planRun(p *runPage, shelf *inventory.Shelf) error {
 	p.Contents = contentRows(plan.Steps)
 	p.Flow = drawFlow(plan.Flow)
 	p.Risk = riskWords(plan.Risk)
-	p.Hazards = plan.Hazards
-	p.Waste = wasteRows(plan.Waste, shelf.Carboys)
-	return nil
+	p.Hazards, p.Noted = hazardRows(plan.Hazards), len(plan.Hazards)
+	p.Waste = wasteRows(plan.Waste, p.carboys)
+	p.Paper = checkPaper(printed, plan)
 }
 
 // refused makes a fault out of what the planner says can't be planned, or hands

@@ -40,13 +40,11 @@ func (s *Server) keepRun(c *gin.Context) error {
 	p := s.runPageFor(run, recipe)
 	p.tryAsk(c.PostForm("wanted"), c.PostForm("on"), "", s.Today())
 	act := actOf(c, "another target or day", &p.Faults)
-	if len(p.Faults) == 0 {
-		if err := s.planRun(p, shelf); err != nil {
-			return err
-		}
+	if err := s.planRun(p, shelf); err != nil {
+		return err
 	}
 	if len(p.Faults) > 0 {
-		return s.answerRun(c, p, shelf)
+		return s.answerFaults(c, p)
 	}
 	version, _ := strconv.ParseInt(c.PostForm("version"), 10, 64)
 	if _, err := s.Lab.SetTarget(c.Request.Context(), run.ID, micrograms(p.Ask.target), p.Ask.on, version, act); err != nil {
@@ -58,7 +56,7 @@ func (s *Server) keepRun(c *gin.Context) error {
 // moveRun answers the form that moves a run along: cleared, picked, closed,
 // dropped or pencilled again.
 func (s *Server) moveRun(c *gin.Context) error {
-	shelf, run, recipe, err := s.findRun(c)
+	_, run, recipe, err := s.findRun(c)
 	if err != nil {
 		return err
 	}
@@ -66,7 +64,7 @@ func (s *Server) moveRun(c *gin.Context) error {
 	act := actOf(c, "", &p.Faults)
 	to := inventory.RunState(c.PostForm("to"))
 	if len(p.Faults) > 0 {
-		return s.answerRun(c, p, shelf)
+		return s.answerFaults(c, p)
 	}
 	version, _ := strconv.ParseInt(c.PostForm("version"), 10, 64)
 	if _, err := s.Lab.SetState(c.Request.Context(), run.ID, to, version, act); err != nil {

@@ -1,6 +1,7 @@
 package views
 
 import (
+	"cmp"
 	"fmt"
 	"html/template"
 	"strings"
@@ -107,7 +108,8 @@ type stepRow struct {
 	Picture template.HTML
 	Ware    string
 	Into    []string
-	Lines   []string
+	Lines   []string // what everybody has to know
+	More    []string // the rest
 	Explain string
 }
 
@@ -117,7 +119,9 @@ func stepRows(steps []planner.StepReport, where func(n int) string) []stepRow {
 	largest := largestVessel(steps)
 	rows := make([]stepRow, len(steps))
 	for i, s := range steps {
-		rows[i] = stepRow{StepReport: s, Picture: drawStep(s, largest), Ware: wareText(s.Vessel), Into: intoLines(s.Adds), Lines: stepLines(s)}
+		rows[i] = stepRow{StepReport: s, Picture: drawStep(s, largest), Ware: wareText(s.Vessel), Into: intoLines(s.Adds)}
+		told, more := tellingSays(s)
+		rows[i].Lines, rows[i].More = append(told, stepLines(s)...), more
 		if len(s.Derivations) > 0 || len(s.Adds) > 0 {
 			rows[i].Explain = where(s.N)
 		}
@@ -163,9 +167,35 @@ func intoLines(adds []planner.Add) []string {
 	return lines
 }
 
-// stepLines are the numbers of a step in words, the telling ones first.
+// mostSays is how many of a step's own remarks stand under its vessel at once.
+const mostSays = 2
+
+// tellingSays parts what a step says into what stands under its vessel and what
+// is opened on demand. What the lines below say anyway is left out; what is not
+// assessed is never hidden.
+func tellingSays(s planner.StepReport) (told, more []string) {
+	for _, say := range s.Says {
+		switch {
+		case repeats(say, s):
+		case strings.Contains(say, "not assessed") || strings.Contains(say, "no data") || len(told) < mostSays:
+			told = append(told, say)
+		default:
+			more = append(more, say)
+		}
+	}
+	return told, more
+}
+
+// repeats reports whether a remark gives a number that stepLines gives too.
+func repeats(say string, s planner.StepReport) bool {
+	return s.Heat != 0 && strings.HasPrefix(say, "gives off ") ||
+		s.Shortest > 0 && strings.HasPrefix(say, "not faster than ") ||
+		s.Gas > 0 && strings.HasPrefix(say, trimmed(s.Gas.Litres(), 3)+" L of "+s.GasOf)
+}
+
+// stepLines are the numbers of a step in words.
 func stepLines(s planner.StepReport) []string {
-	lines := append([]string(nil), s.Says...)
+	var lines []string
 	if s.Shortest > 0 {
 		lines = append(lines, "no faster than "+timeText(s.Shortest))
 	}
@@ -181,7 +211,7 @@ func stepLines(s planner.StepReport) []string {
 		lines = append(lines, massText(s.Ice)+" of ice")
 	}
 	if s.Gas > chem.Millilitre {
-		lines = append(lines, strings.TrimSpace(volumeText(s.Gas)+" of gas "+s.GasOf))
+		lines = append(lines, volumeText(s.Gas)+" of "+cmp.Or(s.GasOf, "gas")+" given off")
 	}
 	if s.IfCoolingLost > 0 {
 		lines = append(lines, "if cooling stops: "+celsiusText(s.IfCoolingLost))

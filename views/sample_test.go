@@ -112,3 +112,24 @@ func sampleSums() []reckoner.Sum {
 		},
 	}}
 }
+
+// newDemoServer is the demonstration lab as the program serves it.
+func newDemoServer(t testing.TB) *Server {
+	t.Helper()
+	s, err := New(Config{Lab: newSampleLab(t), Plan: planner.MakePlan, Recipes: planner.Recipes(), Sums: reckoner.Sums(), Today: func() inventory.Date { return sampleToday }})
+	if err != nil {
+		t.Fatal(err)
+	}
+	return s
+}
+
+// The answer a person waits for most often: a run page on the demonstration
+// lab, database, plan and rendering included.
+func BenchmarkRunPage(b *testing.B) {
+	s := newDemoServer(b)
+	for b.Loop() {
+		if w := get(b, s, "/runs/1"); w.Code != 200 {
+			b.Fatal(w.Code)
+		}
+	}
+}

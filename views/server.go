@@ -27,15 +27,21 @@ import (
 	"stillroom/static"
 )
 
-// Config is what a Server needs. Lab, Plan and Today must be set.
+// Config is what a Server needs. Lab and Today must be set.
 type Config struct {
 	Lab Lab
-	// Plan makes a plan for a request; planner.MakePlan in the program.
+	// Plan makes a plan for a request; nil means planner.MakePlan.
 	Plan    func(planner.Request, *inventory.Shelf) (*planner.Plan, error)
 	Recipes []*planner.Recipe
 	Sums    []reckoner.Sum
 	// Today gives the present day of the lab.
 	Today func() inventory.Date
+	// Now is the clock that papers are stamped by; nil means the system's.
+	Now func() time.Time
+	// Address is where people reach the program, such as
+	// "https://stillroom.lab.example", for the codes on papers; "" takes what the
+	// browser used.
+	Address string
 	// Log takes what went wrong; nil means the default logger.
 	Log *slog.Logger
 }
@@ -50,8 +56,14 @@ type Server struct {
 
 // New checks the configuration, reads the templates and joins the routes.
 func New(c Config) (*Server, error) {
-	if c.Lab == nil || c.Plan == nil || c.Today == nil {
-		return nil, errors.New("views: Lab, Plan and Today have to be set")
+	if c.Lab == nil || c.Today == nil {
+		return nil, errors.New("views: Lab and Today have to be set")
+	}
+	if c.Plan == nil {
+		c.Plan = planner.MakePlan
+	}
+	if c.Now == nil {
+		c.Now = time.Now
 	}
 	if c.Log == nil {
 		c.Log = slog.Default()
@@ -84,6 +96,11 @@ func (s *Server) routes() http.Handler {
 	e.GET("/runs/:id", s.page(s.showRun))
 	e.POST("/runs/:id", s.page(s.keepRun))
 	e.POST("/runs/:id/stand", s.page(s.moveRun))
+	for _, file := range []string{"pick-list.pdf", "hazard-sheet.pdf", "requisition.pdf"} {
+		e.GET("/runs/:id/"+file, s.page(s.showPaper(file)))
+	}
+	e.GET("/runs/:id/answers", s.page(s.showAnswers))
+	e.GET("/runs/:id/hazards", s.page(s.showHazards))
 	e.GET("/runs/:id/promise", s.page(s.showPromise))
 	e.POST("/runs/:id/promise", s.page(s.promise))
 	e.POST("/runs/:id/release", s.page(s.release))

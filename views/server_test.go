@@ -101,7 +101,7 @@ func attribute(n *html.Node, name string) (string, bool) {
 	return "", false
 }
 
-// text returns the words of an element with single spaces.
+// text returns the words of an element with ordinary single spaces.
 func text(n *html.Node) string {
 	var b strings.Builder
 	for d := range n.Descendants() {
@@ -147,6 +147,13 @@ func TestRoutes(t *testing.T) {
 		{"/runs/1/explain/scale", 200, "How the scale came about"},
 		{"/runs/1/explain/need-99", 404, "No explanation “need-99”"},
 		{"/runs/1/explain/draw-1-x", 404, ""},
+		{"/runs/1/hazards", 200, "Hazards, step by step"},
+		{"/runs/1/answers", 200, "What would do"},
+		{"/runs/1/pick-list.pdf", 200, ""},
+		{"/runs/1/hazard-sheet.pdf?paper=letter", 200, ""},
+		{"/runs/1/requisition.pdf", 200, ""},
+		{"/runs/1/pick-list.pdf?wanted=1,234+g", 422, "1,234 g pentanoic acid"},
+		{"/runs/1/laundry-list.pdf", 404, "No such page"},
 		{"/runs/77", 404, "No run “77”"},
 		{"/runs/x", 404, "No run “x”"},
 		{"/shelf", 200, "The shelf"},
@@ -178,7 +185,7 @@ func TestRoutes(t *testing.T) {
 			continue
 		}
 		doc := parse(t, w)
-		if got := strings.ReplaceAll(text(one(t, doc, "h1")), narrow, " "); got != tt.h1 {
+		if got := text(one(t, doc, "h1")); got != tt.h1 {
 			t.Errorf("GET %s: h1 %q, want %q", tt.address, got, tt.h1)
 		}
 		title := text(one(t, doc, "title"))
@@ -218,7 +225,7 @@ func (s *Server) firstBottle(t testing.TB) string {
 // people fill in has one.
 func TestPagesAreWellFormed(t *testing.T) {
 	s := newSampleServer(t)
-	for _, address := range []string{"/slate", "/runs/new", "/runs/1", "/runs/1?wanted=x", "/runs/1/promise", "/runs/1/explain/need-2",
+	for _, address := range []string{"/slate", "/runs/new", "/runs/1", "/runs/1?wanted=x", "/runs/1/promise", "/runs/1/hazards", "/runs/1/answers", "/runs/1/explain/need-2",
 		"/shelf", "/shelf?find=zzzz", "/shelf/bottles/" + s.firstBottle(t), "/recipes", "/recipes/pentanoic-acid-dichromate",
 		"/shortfalls", "/buying", "/waste", "/reckoner", "/reckoner/amount?mass=50+g", "/reckoner/amount?mass=x", "/nowhere"} {
 		doc := parse(t, get(t, s, address))
@@ -373,5 +380,82 @@ func TestUserTextIsEscaped(t *testing.T) {
 	}
 	if body := get(t, s, w.Header().Get("Location")).Body.String(); strings.Contains(body, "<script>alert") {
 		t.Error("an owner's markup came through")
+	}
+}
+
+// The papers carry what the address asks and say what they are.
+func TestPapers(t *testing.T) {
+	s := newDemoServer(t)
+	for _, file := range []string{"pick-list.pdf", "hazard-sheet.pdf", "requisition.pdf"} {
+		w := get(t, s, "/runs/1/"+file)
+		if kind := w.Header().Get("Content-Type"); w.Code != 200 || kind != "application/pdf" || !strings.HasPrefix(w.Body.String(), "%PDF-") {
+			t.Errorf("%s = %d, %s", file, w.Code, kind)
+		}
+		if name := w.Header().Get("Content-Disposition"); !strings.Contains(name, `"run 1 `+file+`"`) {
+			t.Errorf("%s is called %q", file, name)
+		}
+	}
+}
+
+// A sheet that was printed asks whether it still holds.
+func TestPrintedSheet(t *testing.T) {
+	s := newSampleServer(t)
+	current := parse(t, get(t, s, "/runs/1?printed=7f3a12bc"))
+	if got := text(one(t, current, "p[role=status]")); !strings.HasSuffix(got, "is current.") {
+		t.Errorf("the page says %q", got)
+	}
+	old := parse(t, get(t, s, "/runs/1?printed=00000000"))
+	if got := text(one(t, old, "p[role=status]")); !strings.Contains(got, "no longer current") {
+		t.Errorf("the page says %q", got)
+	}
+}
+
+func TestChangingARun(t *testing.T) {
+	s := newSampleServer(t)
+	tests := []struct {
+		name, address string
+		fields        []string
+		status        int
+		says          string
+	}{
+		{"nobody named", "/runs/1", []string{"wanted", "60 g", "on", "14 Jan 2027"}, 422, "Say who does this."},
+		{"kept", "/runs/1", []string{"wanted", "60 g", "on", "14 Jan 2027", "who", "Ines", "version", "1", "key", "a"}, 303, ""},
+		{"from an old page", "/runs/1", []string{"wanted", "70 g", "on", "14 Jan 2027", "who", "Ines", "version", "1", "key", "b"}, 409, "changed by somebody else"},
+		{"cleared", "/runs/1/stand", []string{"to", "cleared", "who", "Ines", "key", "c"}, 303, ""},
+		{"not a step", "/runs/1/stand", []string{"to", "closed", "who", "Ines", "key", "d"}, 422, "step by step"},
+		{"promised", "/runs/1/promise", []string{"who", "Ines", "key", "e"}, 303, ""},
+		{"freed", "/runs/1/release", []string{"who", "Ines", "key", "f"}, 303, ""},
+		{"no recipe", "/runs/new", []string{"recipe", "alchemy", "wanted", "1 g", "on", "14 Jan 2027", "who", "Ines"}, 422, "Choose one of the recipes."},
+		{"no such run", "/runs/99", []string{"wanted", "60 g"}, 404, "no run"},
+	}
+	for _, tt := range tests {
+		w := post(t, s, tt.address, tt.fields...)
+		if w.Code != tt.status || !strings.Contains(w.Body.String(), tt.says) {
+			t.Errorf("%s: %d, want %d saying %q", tt.name, w.Code, tt.status, tt.says)
+		}
+	}
+	if got := text(one(t, parse(t, get(t, s, "/runs/1")), "h1")); got != "60 g pentanoic acid" {
+		t.Errorf("the run is %q", got)
+	}
+}
+
+func TestCountingABottle(t *testing.T) {
+	s := newSampleServer(t)
+	at := "/shelf/bottles/" + s.firstBottle(t)
+	holds := func() string { return text(one(t, parse(t, get(t, s, at)), "dd b")) }
+	before := holds()
+	for _, amount := range []string{"", "a handful", "-3 mL", "900 L"} {
+		if w := post(t, s, at+"/count", "amount", amount, "by", "weighed", "who", "Ines", "key", "k"+amount); w.Code != 422 {
+			t.Errorf("counting %q = %d, want 422", amount, w.Code)
+		}
+	}
+	if after := holds(); after != before {
+		t.Errorf("a refused count changed %s to %s", before, after)
+	}
+	if w := post(t, s, at+"/count", "amount", "300 mL", "by", "level", "who", "Ines", "key", "k"); w.Code != 303 {
+		t.Fatalf("counting = %d", w.Code)
+	}
+	if after := holds(); after != "300 mL" {
+		t.Errorf("it holds %s, want 300 mL", after)
 	}
 }

@@ -5,7 +5,6 @@ import (
 
 	"github.com/gin-gonic/gin"
 
-	"stillroom/chem"
 	"stillroom/inventory"
 	"stillroom/planner"
 )
@@ -36,20 +35,19 @@ type shortNeed struct {
 
 // showShortfalls answers /shortfalls.
 func (s *Server) showShortfalls(c *gin.Context) error {
-	shelf, err := s.Lab.Load(c.Request.Context())
+	_, lines, err := s.slate(c)
 	if err != nil {
 		return err
 	}
 	p := &shortfallsPage{}
 	p.Title, p.Section = "Shortfalls", "/shortfalls"
-	for _, run := range runsToCome(shelf.Runs) {
-		short := shortRun{Run: run, Wanted: massPlain(chem.Mass(run.TargetUG) * chem.Microgram), Product: run.Recipe}
-		plan, err := s.planKept(run, shelf)
-		if err != nil {
-			short.Fault = sentence(err.Error())
+	for _, l := range lines {
+		short := shortRun{Run: l.Run, Wanted: wantedText(l.Run), Product: l.Run.Recipe}
+		if l.Err != nil {
+			short.Fault = sentence(l.Err.Error())
 		} else {
-			short.Product = plan.Recipe.Product
-			short.Needs = shortNeeds(plan)
+			short.Product = l.Plan.Recipe.Product
+			short.Needs = shortNeeds(l.Plan)
 		}
 		if short.Fault == "" && len(short.Needs) == 0 {
 			p.Fine++
@@ -71,21 +69,19 @@ func shortNeeds(plan *planner.Plan) []shortNeed {
 	return needs
 }
 
-// answers lists what would do about a need, the cheapest first: what is known
-// better, what is freed, what is bought, what is waited for.
+// answers lists what is known about a need that stops a run: who else was
+// promised it, why bottles can't be used, what can be bought. What would really
+// do, worked through, is on the page of answers.
 func answers(plan *planner.Plan, n planner.Need) []string {
 	var words []string
-	for _, d := range n.Draws {
-		if d.Bottle.Code == plan.Risk.WeighFirst {
-			words = append(words, "Weigh bottle "+d.Bottle.Code+": the chance of running short goes from "+
-				chanceText(plan.Risk.WeighBefore)+" to "+chanceText(plan.Risk.WeighAfter)+".")
-		}
-	}
 	if n.Earmarked > 0 {
-		words = append(words, "Other runs were promised "+massText(n.Earmarked)+" of it; ask whether they still need it.")
+		words = append(words, "Other runs were promised "+massText(n.Earmarked)+" of it.")
 	}
 	for _, b := range n.Barred {
 		words = append(words, "Bottle "+b.Bottle.Code+" can’t be used: "+b.Why+".")
+	}
+	if n.BarredMore > 0 {
+		words = append(words, trimmed(float64(n.BarredMore), 6)+" more bottles can’t be used.")
 	}
 	for _, buy := range plan.Buy {
 		if buy.Substance == n.Substance {
@@ -93,7 +89,7 @@ func answers(plan *planner.Plan, n planner.Need) []string {
 		}
 	}
 	if n.CoveredOn.Set() {
-		words = append(words, "Wait until "+n.CoveredOn.Long()+": cover arrives then.")
+		words = append(words, "Cover arrives on "+n.CoveredOn.Long()+".")
 	}
 	return words
 }

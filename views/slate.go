@@ -33,47 +33,61 @@ type slateRow struct {
 
 // showSlate answers /slate.
 func (s *Server) showSlate(c *gin.Context) error {
-	shelf, err := s.Lab.Load(c.Request.Context())
+	_, lines, err := s.slate(c)
 	if err != nil {
 		return err
 	}
 	p := &slatePage{Today: s.Today()}
 	p.Title, p.Section = "Slate", "/slate"
-	for _, run := range runsToCome(shelf.Runs) {
-		p.Rows = append(p.Rows, s.slateRow(run, shelf))
+	for _, l := range lines {
+		p.Rows = append(p.Rows, newSlateRow(l))
 	}
 	return s.render(c, http.StatusOK, "slate", p)
 }
 
-// runsToCome leaves out what is closed or dropped and sorts by date, then by
-// identity.
-func runsToCome(runs []inventory.Run) []inventory.Run {
-	var open []inventory.Run
-	for _, r := range runs {
-		if r.State != inventory.Closed && r.State != inventory.Dropped {
-			open = append(open, r)
+// slate plans the runs to come in the order of their dates, each against what
+// the earlier ones leave it. A run whose recipe can't be read is among them with
+// the reason.
+func (s *Server) slate(c *gin.Context) (*inventory.Shelf, []planner.SlateLine, error) {
+	shelf, err := s.Lab.Load(c.Request.Context())
+	if err != nil {
+		return nil, nil, err
+	}
+	var runs []planner.SlateRun
+	unread := map[int64]error{}
+	for _, run := range shelf.Runs {
+		recipe, err := s.recipeOf(run)
+		if err != nil {
+			unread[run.ID] = err
+		}
+		runs = append(runs, planner.SlateRun{Run: run, Recipe: recipe})
+	}
+	lines := planner.SlateOf(runs, shelf, s.Today()).Lines
+	for i := range lines {
+		if err := unread[lines[i].Run.ID]; err != nil {
+			lines[i].Err = err
 		}
 	}
-	slices.SortFunc(open, func(a, b inventory.Run) int {
-		return cmp.Or(cmp.Compare(a.On, b.On), cmp.Compare(a.ID, b.ID))
-	})
-	return open
+	return shelf, lines, nil
 }
 
-// slateRow plans a run. What can't be planned stays on the slate and says why.
-func (s *Server) slateRow(run inventory.Run, shelf *inventory.Shelf) slateRow {
-	row := slateRow{Run: run, Wanted: massPlain(chem.Mass(run.TargetUG) * chem.Microgram), Title: run.Recipe}
-	plan, err := s.planKept(run, shelf)
-	if err != nil {
-		row.Word = sentence(err.Error())
+// newSlateRow says what a plan found. What can't be planned stays on the slate
+// and says why.
+func newSlateRow(l planner.SlateLine) slateRow {
+	row := slateRow{Run: l.Run, Wanted: wantedText(l.Run), Title: l.Run.Recipe}
+	if l.Err != nil {
+		row.Word = sentence(l.Err.Error())
 		return row
 	}
-	row.Planned, row.Word = true, plan.Verdict.String()
-	row.Title, row.Product = plan.Recipe.Title, plan.Recipe.Product
-	row.Chance = chanceText(plan.Risk.RunEnough)
-	row.Lacks = lacks(plan.Needs)
+	row.Planned, row.Word = true, l.Plan.Verdict.String()
+	row.Title, row.Product = l.Plan.Recipe.Title, l.Plan.Recipe.Product
+	row.Chance = chanceText(l.Plan.Risk.RunEnough)
+	row.Lacks = lacks(l.Plan.Needs)
 	return row
 }
+
+// wantedText is the target of a run as it stands on the slate.
+func wantedText(r inventory.Run) string { return massPlain(chem.Mass(r.TargetUG) * chem.Microgram) }
 
 // planKept plans a run as it stands on the slate.
 func (s *Server) planKept(run inventory.Run, shelf *inventory.Shelf) (*planner.Plan, error) {
@@ -83,7 +97,7 @@ func (s *Server) planKept(run inventory.Run, shelf *inventory.Shelf) (*planner.P
 	}
 	return s.Plan(planner.Request{
 		Recipe: recipe, Target: chem.Mass(run.TargetUG) * chem.Microgram,
-		On: run.On, Today: s.Today(), Run: run.ID,
+		On: run.On, Today: s.Today(), Run: run.ID, Store: run.StoreID,
 	}, shelf)
 }
 

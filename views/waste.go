@@ -38,7 +38,7 @@ type unfitWaste struct {
 
 // showWaste answers /waste.
 func (s *Server) showWaste(c *gin.Context) error {
-	shelf, err := s.Lab.Load(c.Request.Context())
+	shelf, lines, err := s.slate(c)
 	if err != nil {
 		return err
 	}
@@ -49,12 +49,12 @@ func (s *Server) showWaste(c *gin.Context) error {
 		at[carboy.Code] = i
 		p.Carboys = append(p.Carboys, newCarboyRow(carboy, shelf))
 	}
-	for _, run := range runsToCome(shelf.Runs) {
-		plan, err := s.planKept(run, shelf)
-		if err != nil {
+	for _, l := range lines {
+		if l.Err != nil {
 			continue // the slate says why
 		}
-		for _, lot := range plan.Waste {
+		run := l.Run
+		for _, lot := range l.Plan.Waste {
 			words := volumeText(lot.Volume)
 			if i, ok := at[lot.Carboy]; ok && lot.Fits {
 				p.Carboys[i].Coming = append(p.Carboys[i].Coming, words+" from run "+trimmed(float64(run.ID), 9)+" on "+run.On.Short())
