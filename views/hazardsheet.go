@@ -364,9 +364,9 @@ func (s *sheet) flow(texts []styledText, width, height float64) []styledText {
 			if float64(len(lines))*lineHeight < height {
 				limit -= width + 2
 			}
-			first := s.split(family, t.style, textSize, rest, limit)[0]
+			var first string
+			first, rest = s.firstLine(family, t.style, textSize, rest, limit)
 			lines = append(lines, styledText{t.style, first})
-			rest = strings.TrimPrefix(strings.TrimPrefix(rest, first), " ")
 		}
 	}
 	return lines

@@ -59,15 +59,12 @@ type sheet struct {
 	y             float64
 	continued     string // heading repeated on the next page
 	qr            codeMatrix
-	widths        map[glyphKey]float64
+	widths        map[typeface]map[rune]float64
 }
 
-// glyphKey names a character of a typeface; its width is kept at size 1, because
-// text is measured far more often than it is written.
-type glyphKey struct {
-	family, style string
-	char          rune
-}
+// typeface is a family with its style. The widths of its characters are kept at
+// size 1, because text is measured far more often than it is written.
+type typeface struct{ family, style string }
 
 // newSheet opens a paper with its first page.
 func newSheet(p *planner.Plan, o PaperOptions, kind string) (*sheet, error) {
@@ -79,7 +76,7 @@ func newSheet(p *planner.Plan, o PaperOptions, kind string) (*sheet, error) {
 		size = "Letter"
 	}
 	pdf := gofpdf.New("P", "mm", size, "")
-	s := &sheet{pdf: pdf, plan: p, options: o, kind: kind, widths: map[glyphKey]float64{}}
+	s := &sheet{pdf: pdf, plan: p, options: o, kind: kind, widths: map[typeface]map[rune]float64{}}
 	s.width, s.height = pdf.GetPageSize()
 	s.right, s.bottom = s.width-marginLeft, s.height-18
 	qr, err := qrCode(s.backAddress())
@@ -229,15 +226,20 @@ func (s *sheet) putRight(family, style string, size, x, y float64, text string) 
 // measure returns the width of a line. The typeface is set without kerning, so
 // it is the sum of its characters.
 func (s *sheet) measure(family, style string, size float64, text string) float64 {
+	face := typeface{family, style}
+	widths := s.widths[face]
+	if widths == nil {
+		widths = map[rune]float64{}
+		s.widths[face] = widths
+	}
 	sum := 0.0
 	for _, r := range text {
-		key := glyphKey{family, style, r}
-		w, ok := s.widths[key]
+		w, ok := widths[r]
 		if !ok {
 			const large = 1000
 			s.pdf.SetFont(family, style, large)
 			w = s.pdf.GetStringWidth(string(r)) / large
-			s.widths[key] = w
+			widths[r] = w
 		}
 		sum += w
 	}
@@ -249,26 +251,48 @@ func (s *sheet) measure(family, style string, size float64, text string) float64
 // line is broken at its end, never cut off.
 func (s *sheet) split(family, style string, size float64, text string, limit float64) []string {
 	var lines []string
-	line := ""
-	for word := range strings.SplitSeq(text, " ") {
-		candidate := strings.TrimPrefix(line+" "+word, " ")
-		if line != "" && s.measure(family, style, size, candidate) > limit {
-			lines = append(lines, line)
-			candidate = word
+	for {
+		line, rest := s.firstLine(family, style, size, text, limit)
+		lines = append(lines, line)
+		if rest == "" {
+			return lines
 		}
-		for s.measure(family, style, size, candidate) > limit && len([]rune(candidate)) > 1 {
-			head, rest := s.breakWord(family, style, size, candidate, limit)
-			lines = append(lines, head)
-			candidate = rest
-		}
-		line = candidate
+		text = rest
 	}
-	return append(lines, line)
+}
+
+// firstLine takes as many words as fit and returns them and what is left.
+func (s *sheet) firstLine(family, style string, size float64, text string, limit float64) (line, rest string) {
+	blank := s.measure(family, style, size, " ")
+	width, end := 0.0, 0 // of the words taken
+	for start := 0; start < len(text); {
+		next := strings.IndexByte(text[start:], ' ')
+		if next < 0 {
+			next = len(text) - start
+		}
+		word := s.measure(family, style, size, text[start:start+next])
+		switch {
+		case start == 0 && word > limit:
+			head, tail := s.breakWord(family, style, size, text[:next], limit)
+			return head, tail + text[next:]
+		case start > 0 && width+blank+word > limit:
+			return text[:end], text[start:]
+		case start > 0:
+			width += blank
+		}
+		width += word
+		end = start + next
+		start = end + 1
+	}
+	return text[:end], ""
 }
 
 func (s *sheet) breakWord(family, style string, size float64, word string, limit float64) (head, rest string) {
 	runes := []rune(word)
 	n := len(runes) - 1
+	if n < 1 {
+		return word, ""
+	}
 	for n > 1 && s.measure(family, style, size, string(runes[:n])) > limit {
 		n--
 	}

@@ -204,9 +204,9 @@ func (l *pickList) bottle(f fetch) error {
 			if below+float64(len(lines))*lineHeight < beside {
 				limit -= amountWidth
 			}
-			parts := l.split(family, "", textSize, d, limit)
-			lines = append(lines, parts[0])
-			d = strings.TrimPrefix(strings.TrimPrefix(d, parts[0]), " ")
+			var first string
+			first, d = l.firstLine(family, "", textSize, d, limit)
+			lines = append(lines, first)
 		}
 	}
 	height := max(below+float64(len(lines))*lineHeight, 20) + 9
