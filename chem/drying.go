@@ -44,15 +44,14 @@ var dryingAgents = sync.OnceValue(func() []DryingAgent {
 // DryingAgents returns all agents of the table in its order.
 func DryingAgents() []DryingAgent { return slices.Clone(dryingAgents()) }
 
-// DryingAgentOf finds an agent by name or CAS number. The name of a salt may
-// carry "anhydrous". The error wraps ErrNoData and lists the agents there are.
+// DryingAgentOf finds an agent by name, synonym, formula or CAS number. The name
+// of a salt may carry "anhydrous". The error wraps ErrNoData and lists the agents
+// there are.
 func DryingAgentOf(nameOrCAS string) (DryingAgent, error) {
-	want := strings.ToLower(strings.TrimSpace(nameOrCAS))
-	want = strings.TrimSpace(strings.TrimSuffix(strings.TrimPrefix(want, "anhydrous "), ", anhydrous"))
+	want, cas := agentWords(nameOrCAS), casOf(nameOrCAS)
 	var names []string
 	for _, agent := range dryingAgents() {
-		name := strings.ToLower(agent.Name)
-		if want == name || want == agent.CAS || (agent.Formula != "" && nameOrCAS == agent.Formula) {
+		if want == agentWords(agent.Name) || cas == agent.CAS || (agent.Formula != "" && nameOrCAS == agent.Formula) {
 			return agent, nil
 		}
 		names = append(names, agent.Name)
@@ -61,4 +60,14 @@ func DryingAgentOf(nameOrCAS string) (DryingAgent, error) {
 		Of: fmt.Sprintf("drying agent %q", nameOrCAS), Err: ErrNoData,
 		Limit: "there are " + strings.Join(names, ", "), Remedy: "name one of them or give its capacity in g water per g",
 	}
+}
+
+// agentWords brings spellings of an agent's name together: "Molecular sieves 3 Å"
+// is "molecular sieve 3a", "MgSO4, anhydrous" loses its last word.
+func agentWords(name string) string {
+	name = strings.NewReplacer("sieves", "sieve", "å", "a", ",", "").Replace(strings.ToLower(name))
+	words := strings.Fields(name)
+	words = slices.DeleteFunc(words, func(word string) bool { return word == "anhydrous" })
+	slices.Sort(words)
+	return strings.ReplaceAll(strings.Join(words, " "), "3 a", "3a")
 }

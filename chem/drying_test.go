@@ -45,6 +45,11 @@ func TestDryingAgentNeed(t *testing.T) {
 	if _, err := lye.For(Gram); !errors.Is(err, ErrNoData) {
 		t.Errorf("no practical capacity: %v", err)
 	}
+	for _, name := range []string{"MgSO4", "Magnesium sulfate, anhydrous", "7487-88-9"} {
+		if got, err := DryingAgentOf(name); err != nil || got.CAS != a.CAS {
+			t.Errorf("DryingAgentOf(%q) = %v, %v", name, got.Name, err)
+		}
+	}
 	if _, err := DryingAgentOf("sugar"); !errors.Is(err, ErrNoData) {
 		t.Errorf("no such agent: %v", err)
 	}
@@ -71,6 +76,9 @@ func TestUnsuitable(t *testing.T) {
 		{"sodium sulfate", "carboxylic acid", false},
 		{"phosphorus pentoxide", "alcohol", true},
 		{"molecular sieve 4A", "carboxylic acid", false},
+		{"molecular sieve 4A", "strong acid", true},
+		{"calcium chloride", "fatty acid", true},
+		{"molecular sieves 3 Å", "ketone", false},
 	} {
 		a, err := DryingAgentOf(c.agent)
 		if err != nil {
@@ -119,5 +127,24 @@ func TestAddedEquations(t *testing.T) {
 	}
 	if compared < 15 {
 		t.Errorf("compared %d", compared)
+	}
+}
+
+// TestRowsHaveSources checks that every row of the tables behind phases, vapour
+// and heat names its source.
+func TestRowsHaveSources(t *testing.T) {
+	for _, name := range []string{
+		"partition", "mutual_solubility", "mutual_solubility_more", "drying_agents", "drying_agents_more", "antoine", "antoine_more",
+		"azeotropes", "azeotropes_more", "formation_enthalpy", "formation_enthalpy_more", "relative_volatility", "redox_agents",
+	} {
+		rows := readTable(name + ".csv")
+		if len(rows) == 0 {
+			t.Errorf("%s is empty", name)
+		}
+		for i, r := range rows {
+			if r.text("source") == "" {
+				t.Errorf("%s, row %d has no source", name, i+2)
+			}
+		}
 	}
 }

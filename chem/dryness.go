@@ -125,19 +125,21 @@ func (a DryingAgent) why() string {
 	return "the table lists them as incompatible"
 }
 
-// meetsClass compares a class with one entry of the table. An entry that names
-// a whole family ("acids") meets every member ("carboxylic acid"); one that
-// narrows it ("strong acids") doesn't.
+// meetsClass compares a class with one entry of the table by their last word, so
+// that "acids" meets "carboxylic acid" and "carboxylic acids" meets "fatty acid";
+// doubt goes to the warning. Only an entry on strong ones leaves others be.
 func meetsClass(entry string, want []string) bool {
-	name := strings.Join(want, " ")
+	family, kind := want[len(want)-1], want[:len(want)-1]
 	for part := range strings.FieldsFuncSeq(entry, func(r rune) bool { return strings.ContainsRune("(),", r) }) {
-		for _, piece := range strings.Split(part, " and ") {
-			piece = singular(strings.TrimSpace(piece))
-			piece = strings.TrimPrefix(strings.TrimPrefix(piece, "some "), "other ")
-			family := want[len(want)-1]
-			if piece == name || (piece == family && !strings.HasPrefix(name, "non-")) {
-				return true
+		for piece := range strings.SplitSeq(part, " and ") {
+			words := strings.Fields(singular(strings.TrimSpace(piece)))
+			if len(words) == 0 || words[len(words)-1] != family {
+				continue
 			}
+			if words[0] == "strong" && len(kind) > 0 && kind[0] != "strong" {
+				continue
+			}
+			return true
 		}
 	}
 	return false

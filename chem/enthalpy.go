@@ -61,6 +61,9 @@ func FormationOf(species, state string) (Formation, error) {
 		of += " (" + state + ")"
 	}
 	found := formationsOf(species)
+	if len(found) == 0 {
+		found = formationsOf(casOf(species)) // a synonym
+	}
 	if state == "aq" && !slices.ContainsFunc(found, func(f Formation) bool { return f.State == "aq" }) {
 		if f, ok := dissolvedFormation(species); ok {
 			return f, nil

@@ -1,5 +1,7 @@
 package chem
 
+import "strings"
+
 // nameOfCAS returns the name of a substance for a message, or the number itself.
 func nameOfCAS(cas string) string {
 	if s, ok := SubstanceByCAS(cas); ok {
@@ -15,4 +17,13 @@ func tableMolarMass(cas string) (MolarMass, bool) {
 		return 0, false
 	}
 	return s.MolarMass, true
+}
+
+// casOf returns the CAS number that a name, synonym, formula or number stands
+// for, or the text itself where the substance table can't tell.
+func casOf(text string) string {
+	if s, ok := LookupSubstance(strings.TrimSpace(text)); ok && s.CAS != "" {
+		return s.CAS
+	}
+	return strings.TrimSpace(text)
 }

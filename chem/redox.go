@@ -81,10 +81,14 @@ func ReductantOf(key string) (RedoxAgent, error) {
 func findAgent(role, key string, agents []RedoxAgent) (RedoxAgent, error) {
 	want := strings.TrimSpace(key)
 	var names []string
-	for _, agent := range agents {
-		if agent.called(want) {
-			return agent, nil
+	for _, word := range []string{want, casOf(want)} {
+		for _, agent := range agents {
+			if agent.called(word) {
+				return agent, nil
+			}
 		}
+	}
+	for _, agent := range agents {
 		names = append(names, agent.Name)
 	}
 	return RedoxAgent{}, &DataError{Of: fmt.Sprintf("%s %q", role, key), Err: ErrNoData, Limit: "there are " + strings.Join(names, ", "), Remedy: "name one of them"}
