@@ -43,6 +43,7 @@ func TestPhaseSums(t *testing.T) {
 		{"dry|water=6 g|agent=a new one|capacity=0.3", "agent_mass_typical", 20, 1e-9},
 		// CRC Handbook normal boiling points
 		{"boil|substance=ethyl acetate|pressure=101.325 kPa", "temperature", 77.1, 0.3},
+		{"boil|substance=butyl butanoate|pressure=101.325 kPa", "temperature", 164.95, 0.1},
 		{"boil|substance=water|pressure=1 atm", "temperature", 99.97, 0.1},
 		// common handbook coefficients of ethanol, boiling point 78.32 °C at 760 mmHg
 		{"boil|substance=something|pressure=760 mmHg|antoine=8.20417;1642.89;230.300", "temperature", 78.32, 0.02},

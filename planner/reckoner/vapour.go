@@ -4,7 +4,6 @@ import (
 	"context"
 	"fmt"
 	"math"
-	"slices"
 	"strings"
 
 	"stillroom/chem"
@@ -46,6 +45,9 @@ func runBoil(_ context.Context, args Args) (Answer, error) {
 		return Answer{}, err
 	}
 	t, e, err := l.boiling(p)
+	if err != nil && len(l.equations) == 0 && l.substance.Boiling != nil {
+		return l.normalBoiling(p, notes, err)
+	}
 	if err != nil {
 		return Answer{}, err
 	}
@@ -206,6 +208,44 @@ func (l liquid) otherBoiling(p chem.Pressure, t chem.Temperature, used chem.Vapo
 	return notes
 }
 
+// Without a vapour-pressure equation the normal boiling point serves near
+// atmospheric pressure, and with the heat of vaporisation an estimate reaches
+// down to leastEstimate: below that the heat changes too much.
+const (
+	nearAtmospheric               = 0.01 // of the pressure
+	leastEstimate   chem.Pressure = 10 * chem.Kilopascal
+)
+
+// normalBoiling answers from the tabulated normal boiling point, or refuses with
+// err and says what is known.
+func (l liquid) normalBoiling(p chem.Pressure, notes []string, err error) (Answer, error) {
+	t, d := *l.substance.Boiling, chem.Derivation{
+		Of: "boiling point of " + l.name, Formula: "tabulated normal boiling point", Unit: "°C",
+		Inserted: fmt.Sprintf("%.6g °C at 101.325 kPa", l.substance.Boiling.Celsius()),
+		Range:    "at 101.325 kPa", Source: l.substance.Sources["boiling"],
+	}
+	switch heat := l.substance.HeatOfVaporisation; {
+	case math.Abs(float64(p/chem.Atmosphere)-1) <= nearAtmospheric:
+		notes = append(notes, "no vapour-pressure equation: the tabulated normal boiling point")
+	case heat != nil && p >= leastEstimate && p < chem.Atmosphere:
+		estimate, refused := chem.EstimateBoiling(t, *heat, p)
+		if refused != nil {
+			return Answer{}, refused
+		}
+		d.Formula = "1/T = 1/Tb − R · ln(p/101.325 kPa)/ΔH"
+		d.Inserted = fmt.Sprintf("Tb = %.6g K, ΔH = %.6g kJ/mol, p = %.6g kPa: T = %.6g °C", float64(t), float64(*heat)/1e3, p.Kilopascals(), estimate.Celsius())
+		d.Range, t = "10 to 101.325 kPa, a few kelvins", estimate
+		notes = append(notes, "an estimate from the normal boiling point and the heat of vaporisation there, a few kelvins off, low rather than high")
+	default:
+		return Answer{}, fmt.Errorf("%w (the table has the normal boiling point only, %.1f °C)", err, t.Celsius())
+	}
+	d.Value, d.Notes = t.Celsius(), notes
+	if d.Source == "" {
+		d.Source = "substance table"
+	}
+	return Answer{Results: []Result{Number("temperature", t.Celsius(), "°C")}, Notes: notes, Derivation: d}, nil
+}
+
 func coefficients(e chem.VapourEquation) string {
 	text := fmt.Sprintf("A = %.6g, B = %.6g, C = %.6g", e.A, e.B, e.C)
 	if e.Form == chem.DIPPR101 {
@@ -265,70 +305,4 @@ func (l liquid) pressure(t chem.Temperature) (chem.Pressure, chem.VapourEquation
 		_, err = chem.VapourPressure(l.cas, t)
 	}
 	return 0, chem.VapourEquation{}, err
-}
-
-func steamSum() Sum {
-	return Sum{
-		Name: "steam", Title: "Steam distillation", Group: vapourGroup,
-		About: "Gives the temperature at which a liquid that doesn't mix with water boils together with it, and what comes over.",
-		Keys: []Key{
-			{"substance", "Substance", "1-hexanol", false}, {"pressure", "Pressure", "101.325 kPa", true}, altitudeKey,
-			vapourAntoineKey(), rangeKey, molarMassKey,
-		},
-		Gives:   []string{"temperature", "mass_ratio"},
-		Example: []string{"substance=1-hexanol", "pressure=101.325 kPa"},
-		Range:   "liquids that hardly mix with water; for others use the azeotrope or the relative volatility",
-		Source:  "p(substance) + p(water) = p; OpenStax Chemistry 2e, 10.3 and 11.4",
-		Run:     runSteam,
-	}
-}
-
-func runSteam(_ context.Context, args Args) (Answer, error) {
-	p, notes, err := boilingPressure(args)
-	if err != nil {
-		return Answer{}, err
-	}
-	l, err := liquidOf(args)
-	if err != nil {
-		return Answer{}, err
-	}
-	molar, err := NeedMolarMass(l.substance)
-	if err != nil {
-		return Answer{}, err
-	}
-	d, e, err := l.steam(molar, p)
-	if err != nil {
-		return Answer{}, err
-	}
-	if a, ok := chem.AzeotropeWithWater(l.cas); ok && (!a.Forms || !a.Heterogeneous) {
-		notes = append(notes, "mixes with water: these figures for two separate liquids don't hold; use the azeotrope or the relative volatility")
-	} else if ok {
-		notes = append(notes, fmt.Sprintf("tabulated azeotrope: %.1f °C, %.3g g per g water (%s)", a.Temperature.Celsius(), float64(a.PartnerCarried(1)), a.Source))
-	}
-	s := steamSum()
-	return Answer{
-		Results: []Result{Number("temperature", d.Temperature.Celsius(), "°C"), Number("mass_ratio", d.MassPerMassWater, "g per g water")},
-		Notes:   slices.Clip(append(notes, e.Range())),
-		Derivation: chem.Derivation{
-			Of: l.name + " carried by water", Formula: "m/m(water) = p(substance) · M / (p(water) · M(water))",
-			Inserted: fmt.Sprintf("%.6g kPa · %.6g g/mol / (%.6g kPa · 18.015 g/mol) = %.6g at %.5g °C", d.Substance.Kilopascals(), molar.GramsPerMole(), d.Water.Kilopascals(), d.MassPerMassWater, d.Temperature.Celsius()),
-			Inputs: []chem.Input{{Symbol: "p", Name: "total pressure", Value: p.Kilopascals(), Unit: "kPa", Source: given},
-				{Symbol: "M", Name: "molar mass of " + l.name, Value: molar.GramsPerMole(), Unit: "g/mol", Source: l.substance.Sources["molar_mass"]}},
-			Value: d.MassPerMassWater, Unit: "g per g water", Range: s.Range, Source: e.Source + "; " + s.Source,
-		},
-	}, nil
-}
-
-func (l liquid) steam(molar chem.MolarMass, p chem.Pressure) (chem.SteamDistillation, chem.VapourEquation, error) {
-	var err error
-	for _, e := range l.equations {
-		var d chem.SteamDistillation
-		if d, err = e.SteamDistilling(molar, p); err == nil {
-			return d, e, nil
-		}
-	}
-	if err == nil {
-		_, err = chem.SteamDistilling(l.cas, p)
-	}
-	return chem.SteamDistillation{}, chem.VapourEquation{}, err
 }
