@@ -21,6 +21,10 @@ type acidOf struct {
 type exchange struct {
 	reactionOf
 	strong, weak float64 // pKa of the giver and of the taker
+	// protonHeat is given off for each mole of protons, in J/mol; 0 where it is
+	// not known or small.
+	protonHeat       float64
+	protonHeatSource string
 }
 
 // waterPKa puts hydroxides below every acid: pKa of water, 14 at 25 °C, is for
@@ -57,6 +61,8 @@ func (c *compiler) addExchanges() {
 	c.enterAcids()
 	c.pairUp(cations)
 	c.precipitates(cations)
+	c.hydrogenSalts()
+	c.exchangeHeats()
 	slices.SortStableFunc(c.p.exchanges, func(a, b exchange) int {
 		return cmp.Or(cmp.Compare(a.strong, b.strong), -cmp.Compare(a.weak, b.weak))
 	})
@@ -299,10 +305,75 @@ func (c *compiler) precipitate(salt, hydroxide int, s constitution, cation strin
 	}
 }
 
+// hydrogenSalts enters salts that still hold a proton, such as
+// hydrogencarbonate, giving it up to a hydroxide.
+func (c *compiler) hydrogenSalts() {
+	takers := c.takers()
+	for i := 0; i < len(c.p.matter); i++ {
+		s := c.p.matter[i].protons
+		if !c.p.matter[i].electro || s.acid == "" || s.cationCharge == 0 || s.cationCharge != s.acids {
+			continue
+		}
+		full, ok := saltOf(s.acid, s.cation, 2)
+		pKa, known := c.pKaFor(s.acid, 2)
+		if !ok || !known || c.find(full.cas) < 0 {
+			continue
+		}
+		for _, t := range takers {
+			if t.cation == s.cation && t.pKa == waterPKa && pKa < t.pKa {
+				c.addGiver(i, c.find(full.cas), t.component, s.acids, pKa)
+			}
+		}
+	}
+}
+
+// addGiver enters salt/k + hydroxide → full salt + water, with as much water as
+// balances the hydrogen.
+func (c *compiler) addGiver(salt, full, hydroxide int, acids, pKa float64) {
+	x := exchange{strong: pKa, weak: waterPKa}
+	x.add(salt, -1/acids)
+	x.add(hydroxide, -1)
+	x.add(full, 1)
+	hydrogen := 0.0
+	for _, t := range x.terms {
+		hydrogen -= t.number * c.p.matter[t.component].formula.Count("H")
+	}
+	x.add(c.p.water, hydrogen/2)
+	x.name, x.key = "exchange", hydroxide
+	if c.checkBalance(&x.reactionOf) == nil {
+		c.p.exchanges = append(c.p.exchanges, x)
+	}
+}
+
+// exchangeHeats enters the enthalpies of exchanges whose heat is that of water
+// forming from its ions, or of hydrogencarbonate giving off carbon dioxide; that
+// of the acid giving its proton is small beside it (a few kJ/mol for carboxylic
+// acids, from memory) and left out, as are heats of dissolving and precipitating.
+func (c *compiler) exchangeHeats() {
+	neutral, source, err := ionicEnthalpy([]Term{{Substance: "H+", Number: 1}, {Substance: "OH-", Number: 1}}, []Term{{Substance: "water(l)", Number: 1}})
+	if err != nil {
+		return
+	}
+	bubbles, more, err := ionicEnthalpy([]Term{{Substance: "H+", Number: 1}, {Substance: "HCO3-", Number: 1}}, []Term{{Substance: "carbon dioxide(g)", Number: 1}, {Substance: "water(l)", Number: 1}})
+	if err != nil {
+		return
+	}
+	for i := range c.p.exchanges {
+		x := &c.p.exchanges[i]
+		switch {
+		case x.weak == waterPKa:
+			x.protonHeat, x.protonHeatSource = -neutral, source
+		case x.gives(c.find("124-38-9")):
+			x.protonHeat, x.protonHeatSource = -bubbles, more
+		}
+	}
+}
+
+func (x *exchange) gives(component int) bool { return component >= 0 && x.numberOf(component) > 0 }
+
 // exchangeAll lets acids and bases in place v react as far as they can, and
-// returns the protons that changed hands, in mol.
-func (w *Workspace) exchangeAll(v int) float64 {
-	moved := 0.0
+// adds the heat to the step's.
+func (w *Workspace) exchangeAll(v int) {
 	for i := range w.p.exchanges {
 		x := &w.p.exchanges[i]
 		extent, _ := w.mostExtent(&x.reactionOf, v)
@@ -310,9 +381,8 @@ func (w *Workspace) exchangeAll(v int) float64 {
 			continue
 		}
 		w.react(&x.reactionOf, v, extent)
-		moved += extent
+		w.heat += extent * x.protonHeat
 	}
-	return moved
 }
 
 // anionCharge returns the mean number of protons an acid has given up at a pH.

@@ -49,6 +49,7 @@ const (
 	inVolume
 	inAmount
 	inVolumes // parts by volume of a phase
+	inPieces
 )
 
 // readCharge reads one charge. withAmount is false where the step itself
@@ -145,9 +146,13 @@ func readSize(f *fields, key string, c *charge) {
 		c.size, c.dimension = float64(v), inVolume
 		return
 	}
+	if n, err := readPieces(text); err == nil {
+		c.size, c.dimension = n, inPieces
+		return
+	}
 	a, err := readAmount(text)
 	if err != nil {
-		f.faultAt(n, fmt.Sprintf("%s %q: %v", key, text, err), "a mass, a volume or an amount, such as 20 g, 150 mL, 0.5 mol")
+		f.faultAt(n, fmt.Sprintf("%s %q: %v", key, text, err), "a mass, a volume, an amount or pieces, such as 20 g, 150 mL, 0.5 mol, 3 pieces")
 		return
 	}
 	c.size, c.dimension = float64(a), inAmount
@@ -162,6 +167,8 @@ func readCharges(f *fields, needed bool) []charge {
 
 func nameCharges(list []charge, visit func(kind, name string, at place)) {
 	for _, c := range list {
-		visit("substance", c.substance, c.pos)
+		if c.dimension != inPieces {
+			visit("substance", c.substance, c.pos)
+		}
 	}
 }

@@ -113,6 +113,15 @@ func (w *Workspace) heatCapacity(v int) float64 {
 	return sum
 }
 
+// mixTemperature sets the temperature of place v to that of its contents mixed
+// with those of another place.
+func (w *Workspace) mixTemperature(from, v int) {
+	a, b := w.heatCapacity(from), w.heatCapacity(v)
+	if a+b > 0 {
+		w.celsius[v] = (a*w.celsius[from] + b*w.celsius[v]) / (a + b)
+	}
+}
+
 // sayHeat says the heat of the step and how far it would warm the contents.
 func (w *Workspace) sayHeat() {
 	if w.report == nil || w.heat == 0 {
@@ -127,5 +136,8 @@ func (w *Workspace) sayHeat() {
 	w.report.step.IfCoolingLost = chem.Celsius(w.celsius[w.step.vessel] + rise)
 	if rise > 10 {
 		w.say("uncooled it would warm by %.3g K", rise)
+	}
+	if w.report.step.IfCoolingLost > chem.Celsius(100) && w.volume(w.step.vessel, aqueous) > 0 {
+		w.caution("if cooling is lost it boils before it gets that warm: a condenser must take the vapour")
 	}
 }

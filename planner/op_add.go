@@ -60,10 +60,15 @@ func (o *addOp) run(w *Workspace) error {
 			return err
 		}
 		heat += w.dilutionHeat(o.source)
+		w.mixTemperature(o.source, v)
 		w.moveAll(o.source, v)
 	}
 	for i := range o.doses {
 		d := &o.doses[i]
+		if d.component == noComponent {
+			w.countPieces(d.ask, w.piecesOf(d), 0)
+			continue
+		}
 		n := w.amountOf(d, v)
 		heat += w.stockDilution(d.component, d.ask, n)
 		if d.component == w.p.water {
@@ -101,7 +106,7 @@ func (o *addOp) tell(w *Workspace) {
 		w.say("keep below %.3g °C", o.below.Celsius())
 	}
 	for i := range o.doses {
-		if d := &o.doses[i]; w.p.matter[d.component].cas == "7664-93-9" {
+		if d := &o.doses[i]; d.component >= 0 && w.p.matter[d.component].cas == "7664-93-9" {
 			w.caution("acid into water, never water into acid")
 		}
 	}

@@ -55,6 +55,7 @@ func (o *boilDownOp) run(w *Workspace) error {
 	w.settle(o.target)
 	w.fullest(o.target)
 	if w.report != nil {
+		w.report.step.Temperature = chem.Celsius(100)
 		m := &w.p.matter[w.p.water]
 		w.say("%.3g g of water boil off, %.3g mL stay", water*float64(o.off)*m.molar*1e3, w.filled(v)*1e6)
 		if m.latent > 0 {

@@ -46,12 +46,6 @@ func (o coDistilOp) compile(c *compiler) (runner, error) {
 	o.component, o.target = c.index[o.carry], c.place[o.to]
 	o.factor = c.share("recovery of "+o.carry, o.recovery)
 	m := &c.p.matter[o.component]
-	azeotrope, ok := chem.AzeotropeWithWater(m.cas)
-	if !ok || !azeotrope.Forms || azeotrope.MaximumBoiling {
-		return nil, c.refuse(ErrNoData, "no azeotrope of "+o.carry+" with water is known", "take another way of isolating it")
-	}
-	o.perWater = overRest(azeotrope.PartnerFraction)
-	o.start, o.source = azeotrope.Temperature.Celsius(), azeotrope.Source
 	if err := o.volatility(c, m); err != nil {
 		return nil, err
 	}
@@ -59,10 +53,25 @@ func (o coDistilOp) compile(c *compiler) (runner, error) {
 	return &o, nil
 }
 
-// volatility takes the relative volatility of the dissolved substance from the
-// same place that co-distillation is computed in.
+// volatility takes what is known of the substance over water: from the recipe
+// where it says so, else from the table of azeotropes.
 func (o *coDistilOp) volatility(c *compiler, m *matter) error {
-	trial, err := chem.CoDistillate(chem.CoDistilling{CAS: m.cas, Partner: 0.1, Water: 100, Recovery: 0.5, Level: true})
+	pair := chem.CoDistilling{CAS: m.cas, Partner: 0.1, Water: 100, Recovery: 0.5, Level: true}
+	note, noted := noteOn(c.r, o.carry)
+	azeotrope, ok := chem.AzeotropeWithWater(m.cas)
+	switch {
+	case noted && note.Azeotrope > 0:
+		pair.VapourFraction = note.Azeotrope
+		o.perWater, o.start, o.source = overRest(note.Azeotrope), note.AzeotropeBoils.Celsius(), note.Source
+		if m.soluble > 0 && !math.IsInf(m.soluble, 1) {
+			pair.Solubility = chem.Fraction(m.soluble / (1 + m.soluble))
+		}
+	case ok && azeotrope.Forms && !azeotrope.MaximumBoiling:
+		o.perWater, o.start, o.source = overRest(azeotrope.PartnerFraction), azeotrope.Temperature.Celsius(), azeotrope.Source
+	default:
+		return c.refuse(ErrNoData, "no azeotrope of "+o.carry+" with water is known", "state azeotrope: and azeotrope-boils: with their source under substances:, or take another way of isolating it")
+	}
+	trial, err := chem.CoDistillate(pair)
 	if err != nil {
 		return c.refuse(ErrNoData, err.Error(), "")
 	}

@@ -94,9 +94,11 @@ func (o *dryOp) run(w *Workspace) error {
 	}
 	w.pour(&o.dose, v, planned/agent.molar)
 	w.used[o.dose.ask] += (w.value(o.factor) - 1) * planned
-	for phase := range solid {
-		w.shift(v, phase, solid, o.dose.component, w.amounts[w.at(v, phase, o.dose.component)])
-		w.shift(v, phase, solid, w.p.water, w.amounts[w.at(v, phase, w.p.water)])
+	w.shift(v, organic, solid, w.p.water, w.amounts[w.at(v, organic, w.p.water)])
+	for c := range w.p.matter {
+		if !w.p.matter[c].distributes() { // the agent, the water and the salts of its droplets
+			w.shift(v, aqueous, solid, c, w.amounts[w.at(v, aqueous, c)])
+		}
 	}
 	w.part(v)
 	w.fullest(v)

@@ -59,6 +59,9 @@ func (o extractOp) compile(c *compiler) (runner, error) {
 	if c.p.matter[o.dose.component].home != organic {
 		return nil, c.refuse(ErrOnePhase, o.solvent.substance+" mixes with water: there is nothing to part", "take a solvent that doesn't, such as ethyl acetate")
 	}
+	if !(c.p.matter[o.dose.component].density > 0) {
+		return nil, c.refuse(ErrNoData, "no density of "+o.solvent.substance, "state density: under substances:")
+	}
 	o.solute = c.p.product
 	if o.what != "" {
 		o.solute = c.index[o.what]
@@ -117,7 +120,7 @@ func (o *extractOp) shake(w *Workspace, v int, portion, there float64) (int, err
 		}
 		lost := w.value(o.loss) * w.amounts[w.at(v, organic, o.dose.component)]
 		w.move(v, organic, w.p.air(), gas, o.dose.component, math.Min(lost, w.amounts[w.at(v, organic, o.dose.component)]))
-		w.movePhase(v, o.target, organic, 1)
+		w.parted(v, o.target, organic)
 	}
 	return reached, o.outOfReach(w, v, portion, there)
 }
@@ -180,6 +183,6 @@ func (o *extractOp) derive(w *Workspace, v, done int, there, portion, left, p fl
 			{Symbol: "V(aq)", Name: "aqueous volume at the end", Value: w.volume(v, aqueous) * 1e6, Unit: "mL", Source: "contents of the vessel"},
 			{Symbol: "V(org)", Name: "one portion", Value: portion * solvent.molar / solvent.density * 1e6, Unit: "mL", Source: "recipe, " + ruleWords[o.dose.rule]},
 		},
-		Value: left, Range: "dilute; dimerisation of acids and salting out would leave less", Source: "METHODS e",
+		Value: left, Range: "dilute; salting out by Setschenow's law; dimers of the acid would leave less", Source: "METHODS e",
 	}
 }

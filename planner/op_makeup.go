@@ -43,6 +43,10 @@ func (o *makeUpOp) run(w *Workspace) error {
 	solutes, stocks := 0.0, 0.0
 	for i := range o.doses {
 		d := &o.doses[i]
+		if d.component == noComponent {
+			w.countPieces(d.ask, w.piecesOf(d), 0)
+			continue
+		}
 		n := w.amountOf(d, v)
 		stock := w.pour(d, v, n)
 		solutes += n * w.p.matter[d.component].molar

@@ -81,10 +81,8 @@ func (o *neutraliseOp) add(w *Workspace, v int, n float64) error {
 	w.pour(&o.dose, v, n)
 	w.used[o.dose.ask] += (taken - n) * w.p.matter[o.dose.component].molar
 	w.fullest(v)
-	before := w.heat
 	w.settle(v)
 	w.fullest(v)
-	w.heat = before
 	if o.stripAsk >= 0 {
 		w.countPieces(o.stripAsk, o.strips, o.pH)
 	}
@@ -97,7 +95,8 @@ func (o *neutraliseOp) add(w *Workspace, v int, n float64) error {
 func (o *neutraliseOp) tell(w *Workspace, v int, n float64) {
 	m := &w.p.matter[o.dose.component]
 	w.say("%.4g g of %s to pH %.3g", n*m.molar*1e3, m.name, o.pH)
-	w.say("heat of neutralisation: not assessed")
+	w.sayHeat()
+	w.say("heats of dissolving and of precipitating are not counted")
 	w.derive(func() chem.Derivation {
 		cations, anions, _ := w.charges(v, o.pH)
 		return chem.Derivation{

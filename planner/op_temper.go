@@ -35,7 +35,7 @@ func (o temperOp) compile(c *compiler) (runner, error) {
 // ice enters the hidden need of ice.
 func (c *compiler) ice(key string) int {
 	c.p.asks = append(c.p.asks, Ask{
-		Substance: "ice", CAS: waterNumber, Formula: "H2O", Step: c.step.N, StepName: c.step.Name,
+		Substance: "ice", Formula: "H2O", Step: c.step.N, StepName: c.step.Name,
 		Rule: ruleWords[byLoad], Hidden: true, Key: key,
 	})
 	return len(c.p.asks) - 1

@@ -45,7 +45,7 @@ func (o washOp) compile(c *compiler) (runner, error) {
 	o.leave = 1 - slices.Index(layerNames, o.layer)
 	o.emulsion = -1
 	for i, d := range o.doses {
-		if c.p.matter[d.component].home == organic {
+		if d.component >= 0 && c.p.matter[d.component].home == organic {
 			o.emulsion, o.solvent = c.ask(d.component, d.accept, byLoad, "emulsion", false), i
 			o.chance = c.emulsion()
 		}
@@ -66,7 +66,7 @@ func (o *washOp) run(w *Workspace) error {
 		if err := w.needLayers(v); err != nil {
 			return err
 		}
-		w.movePhase(v, o.target, o.leave, 1)
+		w.parted(v, o.target, o.leave)
 	}
 	w.settle(o.target)
 	w.fullest(o.target)
@@ -76,7 +76,7 @@ func (o *washOp) run(w *Workspace) error {
 		w.spare(o.emulsion, d.component, o.chance, w.used[d.ask]/float64(o.times))
 	}
 	if w.report != nil && product > 0 {
-		w.say("%d washes take %.3g %% of the %s out of the layer", o.times, 100*(1-w.total(v, w.p.product)/product), w.p.matter[w.p.product].name)
+		w.say("%s take %.3g %% of the %s out of the layer", counted(o.times, "wash", "washes"), 100*(1-w.total(v, w.p.product)/product), w.p.matter[w.p.product].name)
 	}
 	return nil
 }

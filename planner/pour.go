@@ -18,6 +18,9 @@ type dose struct {
 
 // dose enters a charge and its asks.
 func (c *compiler) dose(ch charge) (dose, error) {
+	if ch.dimension == inPieces {
+		return dose{charge: ch, component: noComponent, ask: c.pieces(ch.substance, ch.hiddenKey, ch.hiddenWhy), waterAsk: -1}, nil
+	}
 	i, err := c.component(ch.substance)
 	if err != nil {
 		return dose{}, err
@@ -31,6 +34,17 @@ func (c *compiler) dose(ch charge) (dose, error) {
 		d.waterAsk = c.ask(c.p.water, Accept{}, ch.rule, ch.hiddenKey, false)
 	}
 	return d, nil
+}
+
+// noComponent stands for a consumable that is counted and isn't part of the balance.
+const noComponent = -1
+
+// piecesOf returns how many pieces of a consumable go into a batch.
+func (w *Workspace) piecesOf(d *dose) float64 {
+	if d.rule == fixedRule {
+		return d.size / w.batches
+	}
+	return d.size
 }
 
 // doses enters several charges.
@@ -59,7 +73,7 @@ func (c *compiler) ask(component int, accept Accept, rule scaleRule, key string,
 // pieces enters a consumable that is counted.
 func (c *compiler) pieces(name, key, why string) int {
 	c.p.asks = append(c.p.asks, Ask{
-		Substance: name, Step: c.step.N, StepName: c.step.Name, Rule: ruleWords[perBatch], Hidden: true, Key: key, Why: why,
+		Substance: name, Step: c.step.N, StepName: c.step.Name, Rule: ruleWords[perBatch], Hidden: key != "", Key: key, Why: why,
 	})
 	return len(c.p.asks) - 1
 }
@@ -209,7 +223,11 @@ func (w *Workspace) waterCharge(d *dose, v int, n float64) (takenOff float64) {
 // stocks bring can be taken off it. It returns the mass of what went in.
 func (w *Workspace) pourAll(doses []dose, v int) {
 	for i := range doses {
-		if d := &doses[i]; d.component != w.p.water {
+		switch d := &doses[i]; d.component {
+		case w.p.water:
+		case noComponent:
+			w.countPieces(d.ask, w.piecesOf(d), 0)
+		default:
 			w.pour(d, v, w.amountOf(d, v))
 		}
 	}
@@ -239,4 +257,12 @@ func (w *Workspace) derive(make func() chem.Derivation) {
 	if w.report != nil {
 		w.report.step.Derivations = append(w.report.step.Derivations, make())
 	}
+}
+
+// counted says a number of things, "1 wash" or "3 washes".
+func counted(n int, one, many string) string {
+	if n == 1 {
+		return "1 " + one
+	}
+	return fmt.Sprintf("%d %s", n, many)
 }

@@ -34,6 +34,7 @@ type Program struct {
 	partition                [][]float64 // [solute][solvent]: c_org/c_aq of the neutral form; NaN for none
 	carbonic                 int
 	yieldFactor              int
+	salting                  []float64  // by component: salting-out constant in L/mol
 	mutual                   []mutualOf // by solvent
 	dilutions                []dilutionOf
 	notes                    []Finding // what had to be estimated
@@ -243,18 +244,26 @@ func (p *Program) yieldAlong(i int, seen map[int]bool) float64 {
 	}
 	seen[i] = true
 	best := 0.0
-	for _, x := range p.reactions {
-		from := x.numberOf(i)
-		if from >= 0 {
-			continue
-		}
-		for _, t := range x.terms {
-			if t.number > 0 && !seen[t.component] && t.component != p.water {
-				best = math.Max(best, p.yieldAlong(t.component, seen)*t.number/-from)
-			}
-		}
+	for k := range p.reactions {
+		best = math.Max(best, p.yieldBy(&p.reactions[k], i, seen))
+	}
+	for k := range p.exchanges {
+		best = math.Max(best, p.yieldBy(&p.exchanges[k].reactionOf, i, seen))
 	}
 	delete(seen, i)
+	return best
+}
+
+func (p *Program) yieldBy(x *reactionOf, i int, seen map[int]bool) float64 {
+	from, best := x.numberOf(i), 0.0
+	if from >= 0 {
+		return 0
+	}
+	for _, t := range x.terms {
+		if t.number > 0 && !seen[t.component] && t.component != p.water {
+			best = math.Max(best, p.yieldAlong(t.component, seen)*t.number/-from)
+		}
+	}
 	return best
 }
 

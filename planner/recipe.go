@@ -41,6 +41,10 @@ type SubstanceNote struct {
 	Phase   string
 	Density chem.Density
 	Boiling chem.Temperature
+	// Azeotrope is the mass fraction in the vapour over two layers with water, at
+	// AzeotropeBoils; 0 means as the table has it.
+	Azeotrope      chem.Fraction
+	AzeotropeBoils chem.Temperature
 	// Source says where the formula and figures come from.
 	Source string
 	at     place

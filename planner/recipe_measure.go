@@ -137,6 +137,15 @@ func readCount(text string) (int, error) {
 	return n, nil
 }
 
+// readPieces reads "3 pieces".
+func readPieces(text string) (float64, error) {
+	number, ok := strings.CutSuffix(strings.TrimSpace(text), "pieces")
+	if !ok {
+		return 0, errUnit
+	}
+	return readNumber(strings.TrimSpace(number))
+}
+
 // window is a range of fractions such as "95 % to 98 %".
 type window struct{ least, most chem.Fraction }
 

@@ -117,6 +117,8 @@ func readSubstance(name string, f *fields) SubstanceNote {
 	}
 	s.Density, _ = take(f, "density", false, readDensity, "a density such as 0.81 g/mL")
 	s.Boiling, _ = take(f, "boiling", false, readTemperature, "a temperature such as 186 °C")
+	s.Azeotrope, _ = take(f, "azeotrope", false, readShare, "the mass fraction in the vapour over water, such as 38 %")
+	s.AzeotropeBoils, _ = take(f, "azeotrope-boils", false, readTemperature, "a temperature such as 95 °C")
 	if s.Phase != "" && !slices.Contains(phaseNames, s.Phase) {
 		f.faultAt(f.values["phase"], fmt.Sprintf("phase %q", s.Phase), "one of "+strings.Join(phaseNames, ", "))
 	}
