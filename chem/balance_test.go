@@ -9,18 +9,20 @@ import (
 
 func TestParseEquation(t *testing.T) {
 	for text, want := range map[string]string{
-		"H2+O2->H2O":                       "H2 + O2 -> H2O",
-		"2H2 + O2 → 2H2O":                  "2 H2 + O2 -> 2 H2O",
-		"H2 + 1/2 O2 = H2O":                "2 H2 + O2 -> 2 H2O",
-		"H2 + 0.5 O2 <=> H2O":              "2 H2 + O2 -> 2 H2O",
-		"H2 + ½O2 ⇌ H2O":                   "2 H2 + O2 -> 2 H2O",
-		"H^++OH^-->H2O":                    "H^+ + OH^- -> H2O",
-		"Na++Cl-->NaCl":                    "Na+ + Cl- -> NaCl",
-		"Fe3+ + 3OH- -> Fe(OH)3":           "Fe3+ + 3 OH- -> Fe(OH)3",
-		"Fe 3+ + e^- -> Fe 2+":             "Fe 3+ + e^- -> Fe 2+",
-		"[Fe(CN)6]4- + Fe3+ --> [Fe(CN)6]": "[Fe(CN)6]4- + Fe3+ -> [Fe(CN)6]",
-		"2 H2O(l) -> 2 H2(g) + O2(g)":      "2 H2O(l) -> 2 H2(g) + O2(g)",
-		"CuSO4·5H2O -> CuSO4 + 5 H2O":      "CuSO4·5H2O -> CuSO4 + 5 H2O",
+		"H2+O2->H2O":                             "H2 + O2 -> H2O",
+		"2H2 + O2 → 2H2O":                        "2 H2 + O2 -> 2 H2O",
+		"H2 + 1/2 O2 = H2O":                      "2 H2 + O2 -> 2 H2O",
+		"H2 + 0.5 O2 <=> H2O":                    "2 H2 + O2 -> 2 H2O",
+		"H2 + ½O2 ⇌ H2O":                         "2 H2 + O2 -> 2 H2O",
+		"H^++OH^-->H2O":                          "H^+ + OH^- -> H2O",
+		"Na++Cl-->NaCl":                          "Na+ + Cl- -> NaCl",
+		"Fe3+ + 3OH- -> Fe(OH)3":                 "Fe3+ + 3 OH- -> Fe(OH)3",
+		"Fe 3+ + e^- -> Fe 2+":                   "Fe 3+ + e^- -> Fe 2+",
+		"[Fe(CN)6]4- + Fe3+ --> [Fe(CN)6]":       "[Fe(CN)6]4- + Fe3+ -> [Fe(CN)6]",
+		"2 H2O(l) -> 2 H2(g) + O2(g)":            "2 H2O(l) -> 2 H2(g) + O2(g)",
+		"Fe2+(aq) + Ag+(aq) -> Fe3+(aq) + Ag(s)": "Fe2+(aq) + Ag+(aq) -> Fe3+(aq) + Ag(s)",
+		"Na2CO3 + 2 HCl -> 2 NaCl + H2O + CO2↑":  "Na2CO3 + 2 HCl -> 2 NaCl + H2O + CO2",
+		"CuSO4·5H2O -> CuSO4 + 5 H2O":            "CuSO4·5H2O -> CuSO4 + 5 H2O",
 	} {
 		got, err := ParseEquation(text)
 		if err != nil || got.String() != want {

@@ -100,7 +100,7 @@ func parseSide(text, side string) ([]Term, []ratio, error) {
 	var terms []Term
 	var factors []ratio
 	for _, piece := range splitTerms(side) {
-		piece = strings.TrimSpace(piece)
+		piece = strings.TrimRight(strings.TrimSpace(piece), "↑↓ ") // gas given off, solid thrown down
 		if piece == "" {
 			return nil, nil, &EquationError{text, "", "a species is missing", "write one on either side of each plus and arrow", ErrSyntax}
 		}
@@ -187,7 +187,7 @@ func partsSpecies(side string, begin, i int) bool {
 	}
 	rest := side[i+1:]
 	after := strings.TrimLeft(rest, " ")
-	if after == "" || after[0] == '+' {
+	if after == "" || after[0] == '+' || beginsWithState(after) {
 		return false // the last sign of a charge, or the species ends here
 	}
 	if after == rest && isDigit(after[0]) {
@@ -195,6 +195,16 @@ func partsSpecies(side string, begin, i int) bool {
 	}
 	r, _ := utf8.DecodeRuneInString(after)
 	return strings.ContainsRune("([{^e", r) || r >= 'A' && r <= 'Z' || r >= '0' && r <= '9' || r >= utf8.RuneSelf
+}
+
+// beginsWithState reports whether a text begins with (s), (l), (g) or (aq).
+func beginsWithState(text string) bool {
+	for _, state := range []string{"(s)", "(l)", "(g)", "(aq)"} {
+		if strings.HasPrefix(text, state) {
+			return true
+		}
+	}
+	return false
 }
 
 // String returns the equation with coefficients of 1 left out.
