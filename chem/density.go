@@ -9,7 +9,8 @@ import (
 )
 
 // Density of aqueous solutions, from two kinds of knowledge: tables of density
-// over strength at one temperature (data/solution_density.csv), and a
+// over strength at one temperature (data/solution_density.csv and, of further
+// sources, data/solution_density_more.csv), and a
 // published model over strength and temperature (data/solution_model.csv).
 // At a tabulated temperature the table is right. Elsewhere the model moves the
 // table by its own change with temperature, so that both agree where they
@@ -59,7 +60,7 @@ func loadDensities() map[string]*densityTable {
 		sources  []string
 	}
 	points := make(map[string]map[float64]*series)
-	for _, r := range readTable("solution_density.csv") {
+	for _, r := range append(readTable("solution_density.csv"), readTable("solution_density_more.csv")...) {
 		table(r)
 		w, _ := r.number("w_w_percent")
 		t, _ := r.number("temperature_C")

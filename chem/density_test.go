@@ -48,11 +48,14 @@ func TestDensityPublished(t *testing.T) {
 		within  float64
 		source  string
 	}{
-		{"1310-73-2", 10, 20, 1.1089, 0.001, "sodium hydroxide, Perry, from memory"},
-		{"1310-73-2", 40, 20, 1.4300, 0.004, "sodium hydroxide, Perry, from memory"},
-		{"1310-73-2", 50, 20, 1.5253, 0.010, "sodium hydroxide at the edge of the model, Perry, from memory"},
-		{"7697-37-2", 30, 20, 1.1800, 0.001, "nitric acid, Perry, from memory"},
-		{"7697-37-2", 68, 20, 1.4048, 0.003, "nitric acid, Perry, from memory"},
+		{"1310-73-2", 10.71, 25, 1.11402, 0.001, "3 mol/kg sodium hydroxide, published table of estimates at 25 °C (read)"},
+		{"1310-73-2", 19.36, 40, 1.20013, 0.0025, "6 mol/kg sodium hydroxide, the same at 40 °C (read)"},
+		{"1310-73-2", 19.36, 70, 1.18192, 0.003, "6 mol/kg sodium hydroxide, the same at 70 °C (read)"},
+		{"1310-73-2", 50, 40, 1.5109, 0.004, "sodium hydroxide, Perry at 40 °C, from memory"},
+		{"7697-37-2", 15.90, 25, 1.08718, 0.001, "3 mol/kg nitric acid, the same at 25 °C (read)"},
+		{"7697-37-2", 27.44, 55, 1.13654, 0.002, "6 mol/kg nitric acid, the same at 55 °C (read)"},
+		{"7697-37-2", 14, 50, 1.0624, 0.001, "nitric acid, Perry at 50 °C (read)"},
+		{"7697-37-2", 14, 5, 1.0845, 0.0015, "nitric acid, Perry at 5 °C (read)"},
 		{"64-19-7", 50, 20, 1.0575, 0.001, "acetic acid, Perry, from memory"},
 		{"64-19-7", 100, 20, 1.0498, 0.001, "acetic acid, Perry, from memory"},
 		{"7664-41-7", 24, 20, 0.9101, 0.002, "ammonia, Perry, from memory"},
@@ -187,6 +190,25 @@ func TestHeatCapacityPublished(t *testing.T) {
 		got, err := SolutionHeatCapacity(c.cas, Fraction(c.w))
 		if err != nil || math.Abs(float64(got)/1e3-c.want) > c.d {
 			t.Errorf("%s at %v: %v J/(g K), %v; want %v", c.cas, c.w, float64(got)/1e3, err, c.want)
+		}
+	}
+}
+
+// TestExpansion checks that every model has a thermal expansion that water and its
+// solutions can have between 20 and 30 °C: 0.01 to
+// 0.16 % a kelvin, the most of it in strong ammonia.
+func TestExpansion(t *testing.T) {
+	for cas, d := range densityTables() {
+		m := d.model
+		if m == nil || !m.covers(0, Celsius(20)) || !m.covers(0, Celsius(30)) {
+			continue
+		}
+		for _, share := range []float64{0.25, 0.5, 0.75, 1} {
+			w := m.most * share
+			per := (m.at(w, Celsius(20)) - m.at(w, Celsius(30))) / m.at(w, Celsius(25)) / 10
+			if per < 0.0001 || per > 0.0016 {
+				t.Errorf("%s %s at %.3g: %.5f a kelvin", cas, d.name, w, per)
+			}
 		}
 	}
 }
