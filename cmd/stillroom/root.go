@@ -34,7 +34,7 @@ func newRoot(stdout, stderr io.Writer) *cobra.Command {
 		return usagef("%w\nusage: %s", err, cmd.UseLine())
 	})
 	root.CompletionOptions.DisableDefaultCmd = true
-	root.AddCommand(newDemo(today), newServe(today), newReckon(),
-		newBackup(), newRestore(), newCheck())
+	root.AddCommand(newDemo(today), newServe(today), newPlan(today), newReckon(),
+		newImport(), newExport(), newBackup(), newRestore(), newCheck())
 	return root
 }

@@ -71,7 +71,7 @@ func onlyLoopback(listen string) error {
 func serve(ctx context.Context, store *inventory.Store, listen string, today func() inventory.Date, out io.Writer) error {
 	handler, err := views.New(views.Config{
 		Lab:     store,
-		Plan:    func(planner.Request, *inventory.Shelf) (*planner.Plan, error) { return nil, nil },
+		Plan:    planner.MakePlan,
 		Recipes: planner.Recipes(),
 		Sums:    reckoner.Sums(),
 		Today:   today,
