@@ -3,6 +3,7 @@ package reckoner
 import (
 	"context"
 	"fmt"
+	"math"
 	"strings"
 
 	"stillroom/chem"
@@ -15,18 +16,25 @@ func phaseSums() []Sum {
 
 const phaseGroup = "Two phases"
 
+// A solute and a solvent may stand in place of the partition and the pKa.
+var (
+	soluteKey  = Key{"solute", "Substance extracted, to look up its partition and pKa", "pentanoic acid", true}
+	solventKey = Key{"solvent", "Solvent, to look up the partition", "ethyl acetate", true}
+)
+
 func extractSum() Sum {
 	return Sum{
 		Name: "extract", Title: "Extraction", Group: phaseGroup,
 		About: "Gives the share that a number of portions of solvent takes out of water, or the portions that a recovery needs.",
 		Keys: []Key{
-			{"partition", "Distribution ratio, solvent over water; with pKa and pH the partition of the neutral form", "4.07", false},
+			{"partition", "Distribution ratio, solvent over water; with pKa and pH the partition of the neutral form", "4.07", true},
 			{"aqueous", "Volume of the water layer", "150 mL", false},
 			{"organic", "Volume of each portion of solvent", "50 mL", false},
 			{"portions", "Number of portions", "3", true},
 			{"recovery", "Recovery wanted, in place of the portions", "98 %", true},
 			{"pka", "pKa of an acid to be extracted", "4.83", true},
 			{"ph", "pH of the water after the acid has moved", "2", true},
+			soluteKey, solventKey,
 		},
 		Gives:   []string{"recovered", "left", "portions"},
 		Example: []string{"partition=4.07", "aqueous=150 mL", "organic=50 mL", "portions=3"},
@@ -37,7 +45,7 @@ func extractSum() Sum {
 }
 
 func runExtract(_ context.Context, args Args) (Answer, error) {
-	d, d0, err := distributionOf(args)
+	d, inputs, notes, err := distributionOf(args)
 	if err != nil {
 		return Answer{}, err
 	}
@@ -57,15 +65,14 @@ func runExtract(_ context.Context, args Args) (Answer, error) {
 	total := organic * chem.Volume(portions)
 	answer := Answer{
 		Results: []Result{Number("recovered", float64(1-left), ""), Number("left", float64(left), ""), Number("portions", float64(portions), "")},
-		Notes: []string{
+		Notes: append(notes,
 			fmt.Sprintf("the same %.4g mL in endlessly many portions would recover %.4g %%", total.Millilitres(), 100*(1-float64(chem.ExtractFloor(d, aqueous, total)))),
-			"salt in the water raises the ratio; a carboxylic acid pairs up in a non-polar solvent, so the ratio then rises with its concentration",
-		},
+			"salt in the water raises the ratio; a carboxylic acid pairs up in a non-polar solvent, so the ratio then rises with its concentration"),
 	}
 	answer.Derivation = chem.Derivation{
 		Of: "share left in the water", Formula: "left = (V(aq) / (V(aq) + D · V(org)))^n",
 		Inserted: fmt.Sprintf("(%.6g / (%.6g + %.6g · %.6g))^%d = %.6g", aqueous.Millilitres(), aqueous.Millilitres(), d, organic.Millilitres(), portions, float64(left)),
-		Inputs: append(d0, chem.Input{Symbol: "V(aq)", Name: "water layer", Value: aqueous.Millilitres(), Unit: "mL", Source: given},
+		Inputs: append(inputs, chem.Input{Symbol: "V(aq)", Name: "water layer", Value: aqueous.Millilitres(), Unit: "mL", Source: given},
 			chem.Input{Symbol: "V(org)", Name: "each portion", Value: organic.Millilitres(), Unit: "mL", Source: given},
 			chem.Input{Symbol: "n", Name: "portions", Value: float64(portions), Source: portionSource(args)}),
 		Value: float64(left), Range: extractSum().Range, Source: extractSum().Source,
@@ -84,31 +91,60 @@ func positive[Q ~float64](args Args, key string, read func(string) (Q, error)) (
 
 // distributionOf reads the distribution ratio, from a partition and pH where
 // these are given.
-func distributionOf(args Args) (float64, []chem.Input, error) {
-	p, err := args.Positive("partition")
+func distributionOf(args Args) (float64, []chem.Input, []string, error) {
+	p, notes, err := partitionOf(args)
 	if err != nil {
-		return 0, nil, err
+		return 0, nil, nil, err
 	}
 	if !args.Has("pka") && !args.Has("ph") {
-		return p, []chem.Input{{Symbol: "D", Name: "distribution ratio", Value: p, Source: given}}, nil
+		return p.Value, []chem.Input{{Symbol: "D", Name: "distribution ratio", Value: p.Value, Source: p.Source}}, notes, nil
 	}
 	pKa, pH, err := acidity(args)
 	if err != nil {
-		return 0, nil, err
+		return 0, nil, nil, err
 	}
-	d := p * float64(chem.NeutralFraction(pH, pKa...))
+	d := p.Value * float64(chem.NeutralFraction(pH, pKa...))
 	if d <= 0 {
-		return 0, nil, &KeyError{Key: "ph", Text: args["ph"], What: "the acid is wholly ionised", Wanted: "give a pH below the pKa", Cause: chem.ErrOutOfRange}
+		return 0, nil, nil, &KeyError{Key: "ph", Text: args["ph"], What: "the acid is wholly ionised", Wanted: "give a pH below the pKa", Cause: chem.ErrOutOfRange}
 	}
-	return d, []chem.Input{
-		{Symbol: "P", Name: "partition of the neutral form", Value: p, Source: given},
-		{Symbol: "D", Name: "distribution ratio at the pH", Value: d, Source: "P · neutral fraction"},
-	}, nil
+	return d, []chem.Input{p, {Symbol: "D", Name: "distribution ratio at the pH", Value: d, Source: "P · neutral fraction"}}, notes, nil
 }
 
-// acidity reads pka, one or several parted by ";", and ph.
+// partitionOf reads the partition, or looks up that of a solute and a solvent
+// and notes where it comes from.
+func partitionOf(args Args) (chem.Input, []string, error) {
+	input := chem.Input{Symbol: "P", Name: "partition of the neutral form", Source: given}
+	if args.Has("partition") || !args.Has("solute") {
+		var err error
+		if !args.Has("partition") {
+			return input, nil, &KeyError{Key: "partition", What: "missing", Wanted: `give partition="4.07", or solute= and solvent=`, Cause: ErrMissingKey}
+		}
+		input.Value, err = args.Positive("partition")
+		return input, nil, err
+	}
+	solute, err := args.Substance("solute")
+	if err != nil {
+		return input, nil, err
+	}
+	solvent, err := args.Substance("solvent")
+	if err != nil {
+		return input, nil, err
+	}
+	p, err := chem.PartitionOf(solute.CAS, solvent.CAS)
+	if err != nil {
+		return input, nil, err
+	}
+	input.Value, input.Source = p.P, p.Source
+	note := fmt.Sprintf("partition %.4g, measured at %.0f °C, %s", p.P, p.At.Celsius(), p.Species)
+	if !p.Measured {
+		note = fmt.Sprintf("partition %.4g is an estimate, good to a factor of %.2g either way: %s", p.P, math.Pow(10, p.Spread), p.Source)
+	}
+	return input, []string{note}, nil
+}
+
+// acidity reads pka, one or several parted by ";", or that of the solute, and ph.
 func acidity(args Args) ([]float64, float64, error) {
-	pKa, err := args.Numbers("pka")
+	pKa, err := pKaOf(args)
 	if err != nil {
 		return nil, 0, err
 	}
@@ -120,6 +156,21 @@ func acidity(args Args) ([]float64, float64, error) {
 		return nil, 0, &KeyError{Key: "ph", Text: args["ph"], What: "no pH of water", Wanted: "give -3 to 18", Cause: chem.ErrOutOfRange}
 	}
 	return pKa, pH, nil
+}
+
+func pKaOf(args Args) ([]float64, error) {
+	if args.Has("pka") || !args.Has("solute") {
+		return args.Numbers("pka")
+	}
+	solute, err := args.Substance("solute")
+	if err != nil {
+		return nil, err
+	}
+	if acid, ok := chem.AcidByCAS(solute.CAS); ok && acid.Charge != 0 {
+		return nil, &KeyError{Key: "solute", Text: solute.Name, What: "its neutral form is a base", Wanted: "give pka= of the protonated form, with kind=base in the sum distribution", Cause: chem.ErrNoData}
+	}
+	pKa, _, err := chem.PKaOf(solute.CAS)
+	return pKa, err
 }
 
 func portionsOf(args Args, d float64, aqueous, organic chem.Volume) (int, error) {
@@ -150,11 +201,12 @@ func distributionSum() Sum {
 		Name: "distribution", Title: "Distribution with pH", Group: phaseGroup,
 		About: "Gives the distribution ratio of an acid or base at a pH, and the share of it that is neutral.",
 		Keys: []Key{
-			{"partition", "Partition of the neutral form, solvent over water", "3.00", false},
-			{"pka", "pKa of the acid (several steps parted by ;), or of the protonated base", "5.00", false},
+			{"partition", "Partition of the neutral form, solvent over water", "3.00", true},
+			{"pka", "pKa of the acid (several steps parted by ;), or of the protonated base", "5.00", true},
 			{"ph", "pH of the water", "7.00", false},
 			{"kind", "acid or base; acid if left out", "acid", true},
 			{"ion_pair", "Partition of the ion with its partner, if it goes over", "0.01", true},
+			soluteKey, solventKey,
 		},
 		Gives:   []string{"distribution_ratio", "neutral_fraction"},
 		Example: []string{"partition=3.00", "pka=5.00", "ph=7.00"},
@@ -165,7 +217,7 @@ func distributionSum() Sum {
 }
 
 func runDistribution(_ context.Context, args Args) (Answer, error) {
-	p, err := args.Positive("partition")
+	input, notes, err := partitionOf(args)
 	if err != nil {
 		return Answer{}, err
 	}
@@ -173,7 +225,7 @@ func runDistribution(_ context.Context, args Args) (Answer, error) {
 	if err != nil {
 		return Answer{}, err
 	}
-	ion := 0.0
+	p, ion := input.Value, 0.0
 	if args.Has("ion_pair") {
 		if ion, err = args.Positive("ion_pair"); err != nil {
 			return Answer{}, err
@@ -197,11 +249,11 @@ func runDistribution(_ context.Context, args Args) (Answer, error) {
 	s := distributionSum()
 	return Answer{
 		Results: []Result{Number("distribution_ratio", d, ""), Number("neutral_fraction", float64(neutral), "")},
-		Notes:   []string{"take the pH of the water after the substance has moved"},
+		Notes:   append(notes, "take the pH of the water after the substance has moved"),
 		Derivation: chem.Derivation{
 			Of: "distribution ratio", Formula: formula,
 			Inserted: fmt.Sprintf("f = %.6g; D = %.6g · %.6g + %.6g · %.6g = %.6g", float64(neutral), p, float64(neutral), ion, float64(1-neutral), d),
-			Inputs: []chem.Input{{Symbol: "P", Name: "partition of the neutral form", Value: p, Source: given},
+			Inputs: []chem.Input{input,
 				{Symbol: "pKa", Name: "pKa", Value: pKa[0], Source: given}, {Symbol: "pH", Name: "pH of the water", Value: pH, Source: given}},
 			Value: d, Range: s.Range, Source: s.Source,
 		},

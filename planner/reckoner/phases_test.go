@@ -36,6 +36,9 @@ func TestPhaseSums(t *testing.T) {
 		// D = 4, ten millilitres from fifty: six portions for 95 %
 		{"extract|partition=4|aqueous=50 mL|organic=10 mL|recovery=95 %", "portions", 6, 0},
 		{"distribution|partition=3.00|pka=5.00|ph=5.00", "distribution_ratio", 1.5, 1e-12},
+		// log P of pentanoic acid in ether 1.36 (Collander, partition.csv), wholly neutral at pH 0
+		{"distribution|solute=pentanoic acid|solvent=diethyl ether|ph=0", "distribution_ratio", math.Pow(10, 1.36), 0.01},
+		{"extract|solute=pentanoic acid|solvent=diethyl ether|aqueous=100 mL|organic=100 mL|portions=1", "left", 1 / (1 + math.Pow(10, 1.36)), 1e-9},
 		{"distribution|partition=3.00|pka=5.00|ph=5.00|kind=base", "neutral_fraction", 0.5, 1e-12},
 		// capacity 0.5 to 0.75 g/g, common practice
 		{"dry|water=6 g|agent=sodium sulfate", "agent_mass_low", 8, 1e-9},
@@ -97,6 +100,8 @@ func TestPhaseSumsRefuse(t *testing.T) {
 		{"extract|partition=0.000001|aqueous=50 mL|organic=10 mL|recovery=99 %", chem.ErrImpossible, "1000 portions"},
 		{"extract|partition=4|aqueous=50 mL|organic=10 mL|portions=2.5", chem.ErrOutOfRange, "whole"},
 		{"extract|partition=4|aqueous=1,234 mL|organic=10 mL|portions=2", chem.ErrAmbiguous, "1234"},
+		{"extract|aqueous=50 mL|organic=10 mL|portions=2", ErrMissingKey, "solute="},
+		{"extract|solute=D-glucose|solvent=heptane|aqueous=50 mL|organic=10 mL|portions=2", chem.ErrNoData, "partition="},
 		{"distribution|partition=4|pka=five|ph=7", chem.ErrNoNumber, "pka"},
 		{"dry|water=5 g|agent=sugar", chem.ErrNoData, "sodium sulfate"},
 		{"dry|water=5 g|agent=sodium hydroxide", chem.ErrNoData, "capacity="},
