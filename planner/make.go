@@ -326,28 +326,3 @@ func (p *planning) sheets(plan *Plan) {
 		plan.Findings = append(plan.Findings, Finding{Kind: kind, Severity: severity, Text: err.Error()})
 	}
 }
-
-// metrics counts everything that is drawn or short, water included, but not
-// what is counted in pieces.
-func (p *planning) metrics(plan *Plan) Metrics {
-	var inputs []chem.Mass
-	for i := range plan.Needs {
-		n := &plan.Needs[i]
-		if n.Count {
-			continue
-		}
-		for _, d := range n.Draws {
-			inputs = append(inputs, d.Mass)
-		}
-		inputs = append(inputs, n.Short)
-	}
-	m := Metrics{}
-	product := p.walk.Product.Mass
-	if pmi, err := chem.ProcessMassIntensity(inputs, product); err == nil {
-		m.ProcessMassIntensity = pmi
-	}
-	if e, err := chem.EFactor(inputs, product); err == nil {
-		m.EFactor = e
-	}
-	return m
-}
