@@ -80,6 +80,11 @@ func CheapestPacks(needs []PackNeed) (PackOrder, error) {
 	if err := checkPackNeeds(needs); err != nil {
 		return PackOrder{}, err
 	}
+	if len(needs) == 1 {
+		if order, ok := packTable(needs[0]); ok {
+			return order, nil
+		}
+	}
 	s := packSearch{needs: needs, best: packCost{math.MaxInt64, math.Inf(1), math.MaxInt64}}
 	cut := false
 	for i := range needs {
@@ -109,7 +114,7 @@ func checkPackNeeds(needs []PackNeed) error {
 				return fmt.Errorf("offer %q: a pack needs a size above 0 and prices of 0 or more", o.Name)
 			}
 			if n.Amount/o.Size > 1e6 {
-				return fmt.Errorf("offer %q: a million packs of it and more: give a larger pack", o.Name)
+				return fmt.Errorf("offer %q: it would take more than a million packs: give a larger pack", o.Name)
 			}
 		}
 	}
