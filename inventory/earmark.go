@@ -24,7 +24,7 @@ type Want struct {
 // error is a *PromiseError that names the runs in the way.
 func (s *Store) Earmark(ctx context.Context, run int64, want Want, act Act) (Earmark, error) {
 	marks, err := s.earmarks(ctx, run, []Want{want}, false, act)
-	if err != nil {
+	if err != nil || len(marks) == 0 {
 		return Earmark{}, err
 	}
 	return marks[0], nil
@@ -55,6 +55,10 @@ func (s *Store) earmarks(ctx context.Context, run int64, wants []Want, replace b
 		if r.State == Closed || r.State == Dropped {
 			return invalid(doing, fmt.Sprintf("run %d", run), "it is "+string(r.State), "plan a new run")
 		}
+		print := fingerprint(run, wants, replace)
+		if ref, err := done(tx, r.StoreID, act, doing, print); err != nil || ref != 0 {
+			return orElse(err, func() error { return tx.Where("run_id = ?", run).Order("bottle_id").Find(&marks).Error })
+		}
 		wants, err := inLockOrder(tx, doing, wants)
 		if err != nil {
 			return err
@@ -71,9 +75,17 @@ func (s *Store) earmarks(ctx context.Context, run int64, wants []Want, replace b
 			}
 			marks = append(marks, mark)
 		}
-		return nil
+		return remember(tx, r.StoreID, act, doing, print, run, s.stamp())
 	})
 	return marks, err
+}
+
+// orElse returns err, or what f returns if there is none.
+func orElse(err error, f func() error) error {
+	if err != nil {
+		return err
+	}
+	return f()
 }
 
 // inLockOrder sorts the wants by the bottles' IDs.

@@ -6,6 +6,7 @@ import (
 	"errors"
 	"path/filepath"
 	"strings"
+	"sync/atomic"
 	"time"
 
 	"gorm.io/gorm"
@@ -42,6 +43,7 @@ type Store struct {
 	reader  *gorm.DB
 	pools   []*sql.DB
 	path    string // of the SQLite file; "" otherwise
+	names   atomic.Pointer[catalogue]
 }
 
 type engine int

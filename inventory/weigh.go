@@ -100,6 +100,10 @@ func (s *Store) weighIn(tx *gorm.DB, code string, ug int64, act Act) (e Entry, e
 	if err != nil {
 		return e, err
 	}
+	print := fingerprint(b.ID, ug)
+	if ref, err := done(tx, b.StoreID, act, doing, print); err != nil || ref != 0 {
+		return orEntry(tx, doing, ref, err)
+	}
 	var w Weighing
 	found := tx.Where("bottle_id = ?", b.ID).Limit(1).Find(&w)
 	if found.Error != nil {
@@ -115,10 +119,13 @@ func (s *Store) weighIn(tx *gorm.DB, code string, ug int64, act Act) (e Entry, e
 	if !ok {
 		return e, invalid(doing, "bottle "+b.Code, "its volume can't be told from its mass without a density", "give the form's density")
 	}
-	if e, err = s.draw(tx, Taking{b.Code, min(units, b.Content), w.RunID}, act); err != nil {
+	if e, err = s.draw(tx, Taking{b.Code, min(units, b.Content), w.RunID}, Act{By: act.By, Why: act.Why}); err != nil {
 		return e, err
 	}
-	return e, tx.Exec("DELETE FROM weighings WHERE bottle_id = ?", b.ID).Error
+	if err := tx.Exec("DELETE FROM weighings WHERE bottle_id = ?", b.ID).Error; err != nil {
+		return e, err
+	}
+	return e, remember(tx, b.StoreID, act, doing, print, e.ID, e.At)
 }
 
 // CancelWeighOut forgets a weigh-out after which nothing was taken.
