@@ -62,6 +62,7 @@ const (
 	streamDryingAgent     = "spent drying agent"
 	streamSolidOxidiser   = "solid oxidiser waste"
 	chromiumVITrace       = 1e-6 // mass share from which chromium(VI) decides: 1 mg/kg, this program's choice
+	unknownTrace          = 0.01 // mass share below which what nobody assessed doesn't decide, this program's choice
 	organicShareOfAqueous = 0.5  // from here on a liquid counts as organic, this program's choice
 )
 
@@ -81,12 +82,12 @@ func sortWaste(shares []WasteShare) (name, why string) {
 	switch {
 	case w.total <= 0:
 		return "", "nothing to sort"
-	case w.unknown != "":
-		return "", w.unknown + " was not assessed: ask the safety officer"
 	case w.share(w.chromiumVI) > chromiumVITrace:
 		return streamChromiumVI, fmt.Sprintf("chromium(VI) compounds, %.3g %%", 100*w.share(w.chromiumVI))
 	case w.share(w.halogenated) > 0.001: // 0.1 %, common practice
 		return streamHalogenated, fmt.Sprintf("halogenated solvent, %.3g %%", 100*w.share(w.halogenated))
+	case w.share(w.unknownMass) >= unknownTrace:
+		return "", fmt.Sprintf("%s was not assessed (%.3g %%): ask the safety officer", w.unknown, 100*w.share(w.unknownMass))
 	case w.oxidiser > 0 && w.share(w.solid) > 0.5:
 		return streamSolidOxidiser, "a solid with an oxidiser"
 	case w.chromiumIII > 0 && w.share(w.solid) > 0.1:
@@ -107,8 +108,8 @@ func sortWaste(shares []WasteShare) (name, why string) {
 
 // wasteMasses are the masses that decide, in kilograms.
 type wasteMasses struct {
-	total, chromiumVI, chromiumIII, halogenated, oxidiser, solid, acid, organic float64
-	unknown                                                                     string
+	total, chromiumVI, chromiumIII, halogenated, oxidiser, solid, acid, organic, unknownMass float64
+	unknown                                                                                  string // the last one
 }
 
 func (w wasteMasses) share(m float64) float64 { return m / w.total }
@@ -137,6 +138,7 @@ func weighWaste(shares []WasteShare) wasteMasses {
 			w.organic += m
 		case !r.Assessed:
 			w.unknown = r.Name
+			w.unknownMass += m
 		}
 		if s.Solid {
 			w.solid += m

@@ -226,7 +226,7 @@ func mixtureNote(at, what string, contents []Content) (HazardNote, bool) {
 		return unknownNote(at, what), true
 	}
 	note := noteOf(at, what+": "+shares(contents, total), got)
-	if note.Signal == "" && got.Unknown > 0 {
+	if note.Signal == "" && got.Unknown.Percent() >= 1 { // below, it is in the notes; the standard counts from 1 % on
 		note.Basis = basisNoData + fmt.Sprintf(" (%.3g %% of it)", got.Unknown.Percent())
 	}
 	return note, true

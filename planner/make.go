@@ -311,6 +311,7 @@ func (p *planning) states(plan *Plan) {
 
 // sheets adds what the papers need: waste, hazards, pairs and carriers.
 func (p *planning) sheets(plan *Plan) {
+	plan.Tools = measuringTools(p.shelf.Equipment)
 	plan.Waste = SortWaste(p.walk.Waste, p.shelf.Carboys, p.policy.value("fill.waste"))
 	plan.Hazards = NoteHazards(plan.Needs, plan.Steps, plan.Waste)
 	plan.Pairs = PairsOf(plan.Needs, plan.Steps)
@@ -325,4 +326,15 @@ func (p *planning) sheets(plan *Plan) {
 		}
 		plan.Findings = append(plan.Findings, Finding{Kind: kind, Severity: severity, Text: err.Error()})
 	}
+}
+
+// measuringTools are the balances and cylinders among the lab's ware.
+func measuringTools(ware []inventory.Equipment) []inventory.Equipment {
+	var tools []inventory.Equipment
+	for _, e := range ware {
+		if e.Kind == "balance" || e.Kind == "cylinder" {
+			tools = append(tools, e)
+		}
+	}
+	return tools
 }

@@ -157,6 +157,7 @@ func (d *demand) need(asks []Ask) Need {
 		if !slices.Contains(n.For, ask.StepName) {
 			n.For = append(n.For, ask.StepName)
 		}
+		n.Exact = n.Exact || ask.Exact
 		if !ask.Hidden {
 			n.Hidden = false
 			continue

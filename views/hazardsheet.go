@@ -388,7 +388,11 @@ func (s *sheet) writeLines(lines []styledText, least float64) {
 
 func statementsText(n planner.HazardNote) string {
 	if len(n.Statements) > 0 {
-		return strings.Join(n.Statements, ". ") + "."
+		var words []string
+		for _, s := range n.Statements {
+			words = append(words, sentence(s))
+		}
+		return strings.Join(words, " ")
 	}
 	if strings.HasPrefix(n.Basis, "no data") {
 		return "NO DATA: not assessed. Treat it as hazardous until the supplier's sheet says otherwise."

@@ -12,12 +12,15 @@ import (
 // assess goes through the run step by step.
 func (h *hazardSheet) assess() {
 	h.heading("Assess: step by step", 50)
+	h.paragraph("", textLeft, h.right-textLeft, "Codes are those of the mixture in the vessel at its fullest moment, each layer by itself. Physical hazards of mixtures need a test that nobody made: they are taken from the worst ingredient.")
+	h.y += 2
+	said := map[string]int{}
 	for i, s := range h.plan.Steps {
 		if i > 0 {
 			h.rule(hairline)
 			h.y += 2.5
 		}
-		h.step(s)
+		h.step(s, said)
 	}
 	if len(h.plan.Steps) == 0 {
 		h.paragraph("", textLeft, h.right-textLeft, "No steps: not assessed.")
@@ -26,14 +29,19 @@ func (h *hazardSheet) assess() {
 
 // step writes one step: its numbers, what is in the vessel at the worst moment,
 // cautions, and what if.
-func (h *hazardSheet) step(s planner.StepReport) {
+// said remembers in which step something was said, so that it isn't said again.
+func (h *hazardSheet) step(s planner.StepReport, said map[string]int) {
 	pictograms := h.stepPictograms(s)
 	obstacle := float64(len(pictograms)) * (pictogramSide + 1)
 	texts := []styledText{{"B", s.Name}, {"", stepNumbers(s)}}
+	var vessel []string
 	for _, n := range h.plan.Hazards {
 		if n.At == s.Name && !n.Formed {
-			texts = append(texts, styledText{"", vesselText(n)})
+			vessel = append(vessel, vesselText(n))
 		}
+	}
+	for _, text := range once(said, s.N, "contents", vessel) {
+		texts = append(texts, styledText{"", text})
 	}
 	lines := h.flow(texts, obstacle, pictogramSide+1)
 	h.room(min(float64(len(lines))*lineHeight+20, h.bottom-60))
@@ -43,9 +51,13 @@ func (h *hazardSheet) step(s planner.StepReport) {
 	h.putRight(family, "B", 13, textLeft-4, h.y-0.5, fmt.Sprint(s.N))
 	h.writeLines(lines, pictogramSide)
 	for _, c := range s.Cautions {
-		h.labelledIn("caution", c, "B")
+		h.labelledIn("caution", sentence(c), "B")
 	}
-	for _, w := range whatIf(s) {
+	failures := once(said, s.N, "", whatIf(s))
+	if len(failures) == 0 {
+		failures = []string{"Not assessed beyond the stop order on page 1."}
+	}
+	for _, w := range failures {
 		h.labelledIn("what if", w, "")
 	}
 	if s.HoldPoint {
@@ -55,6 +67,19 @@ func (h *hazardSheet) step(s planner.StepReport) {
 	h.y++
 	h.blank(textLeft, h.y, h.right-textLeft-h.measure(family, "", textSize, "control, gloves and their change")-1.5, "control, gloves and their change")
 	h.y += 8
+}
+
+// once returns texts, or a reference to the step that had the same ones.
+func once(said map[string]int, step int, what string, texts []string) []string {
+	if len(texts) == 0 {
+		return nil
+	}
+	key := strings.Join(texts, "\x00")
+	if before, ok := said[key]; ok {
+		return []string{sentence(strings.TrimSpace(fmt.Sprintf("%s as in step %d", what, before)))}
+	}
+	said[key] = step
+	return texts
 }
 
 func orNotAssessed(s string) string {
@@ -152,7 +177,10 @@ func vesselText(n planner.HazardNote) string {
 		text += "No hazard statement computed"
 	}
 	for _, note := range n.Notes {
-		if strings.Contains(note, "no hazard data") || strings.Contains(note, "physical hazards not determined") {
+		if _, worst, ok := strings.Cut(note, "treat as the worst ingredient: "); ok {
+			text += "; untested, as the worst ingredient: " + worst
+		}
+		if strings.Contains(note, "no hazard data") {
 			text += "; " + note
 		}
 	}
@@ -190,9 +218,6 @@ func whatIf(s planner.StepReport) []string {
 	if s.Gas > 0 && s.Do != "neutralise" && s.Do != "acidify" {
 		list = append(list, "Outlet blocked: pressure. Never close the vessel while gas is given off.")
 	}
-	if len(list) == 0 {
-		list = append(list, "Power cut: not assessed beyond the stop order on page 1.")
-	}
 	return list
 }
 
@@ -223,7 +248,10 @@ func (h *hazardSheet) minimise() {
 	if len(lines) == 0 {
 		lines = []string{"No precautionary statements on record: no data"}
 	}
-	h.paragraph("", textLeft, h.right-textLeft, strings.Join(lines, ". ")+".")
+	for i := range lines {
+		lines[i] = sentence(lines[i])
+	}
+	h.paragraph("", textLeft, h.right-textLeft, strings.Join(lines, " "))
 }
 
 // prepare has waste, people and signatures.
