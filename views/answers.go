@@ -19,6 +19,7 @@ type answersPage struct {
 	Wanted   string
 	Product  string
 	Rungs    []rungRow
+	Covered  bool // on its day
 	Earliest string
 	Buying   string
 	Largest  string
@@ -49,6 +50,7 @@ func (s *Server) showAnswers(c *gin.Context) error {
 	}
 	p := &answersPage{Run: run, Wanted: wantedText(run), Product: recipe.Product, Rungs: each(rungs, newRungRow),
 		Earliest: outlook.Earliest.Long(), Buying: outlook.EarliestBuying.Long(), Limits: outlook.Limits}
+	p.Covered = outlook.Earliest.Set() && outlook.Earliest <= run.On
 	if outlook.Largest > 0 {
 		p.Largest = massText(outlook.Largest)
 	}

@@ -109,7 +109,7 @@ func (s *Server) bottlePage(shelf *inventory.Shelf, b inventory.Bottle) *bottleP
 	p.Size = "not known"
 	if b.Size > 0 {
 		p.Size = storedPlain(b.Size, p.Form.Measure)
-		p.Fill = percentText(chem.Fraction(fillOf(b)))
+		p.Fill = fillText(chem.Fraction(fillOf(b)))
 	}
 	p.Free = stored(max(b.Content-promised(shelf, b.ID, today), 0), p.Form.Measure)
 	if p.Form.Measure == inventory.ByVolume && p.Form.DensityGML > 0 {

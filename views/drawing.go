@@ -105,7 +105,7 @@ func stepPicture(s planner.StepReport) string {
 	}
 	text := "step " + fmt.Sprint(s.N) + ": " + kind
 	if s.Vessel.Size > 0 {
-		text += " of " + volumePlain(s.Vessel.Size) + ", " + percentText(s.Vessel.Fill) + " full"
+		text += " of " + volumePlain(s.Vessel.Size) + ", " + fillText(s.Vessel.Fill) + " full"
 	}
 	layers := layersOf(s)
 	if len(layers) == 0 {
@@ -129,7 +129,7 @@ func drawBottle(b inventory.Bottle, f inventory.StockForm, size float64) templat
 		}
 	}
 	fill := fillOf(b)
-	name := "bottle " + b.Code + ", " + percentText(chem.Fraction(fill)) + " full"
+	name := "bottle " + b.Code + ", " + fillText(chem.Fraction(fill)) + " full"
 	if b.Size <= 0 {
 		name = "bottle " + b.Code + ", size not known"
 	}
@@ -151,7 +151,7 @@ func drawCarboy(c inventory.Carboy, size float64) template.HTML {
 	if c.SizeUL > 0 {
 		fill = float64(c.ContentUL) / float64(c.SizeUL)
 	}
-	name := "carboy " + c.Code + ", " + percentText(chem.Fraction(fill)) + " full"
+	name := "carboy " + c.Code + ", " + fillText(chem.Fraction(fill)) + " full"
 	return drawVessel(carboyCan(), []layer{{"aqueous", fill}}, c.FillLimit, size, name)
 }
 

@@ -90,6 +90,10 @@ func amountText(n chem.Amount) string { return scaled(float64(n), amountUnits, f
 // percentText writes a share with up to three figures and no idle zeros: 98.2 %.
 func percentText(f chem.Fraction) string { return with(trimmed(f.Percent(), 3), "%") }
 
+// fillText writes how full something is, to the whole per cent where that says
+// enough.
+func fillText(f chem.Fraction) string { return with(trimmed(f.Percent(), 2), "%") }
+
 // chanceText writes a probability with two figures at most. A negative one was
 // not assessed, and neither end is ever called certain.
 func chanceText(p float64) string {

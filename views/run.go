@@ -132,7 +132,7 @@ func (s *Server) planRun(p *runPage, shelf *inventory.Shelf) error {
 	if len(p.Faults) > 0 {
 		return nil
 	}
-	plan, err := s.Plan(planner.Request{
+	plan, err := s.plan(planner.Request{
 		Recipe: p.Recipe, Target: p.Ask.target, On: p.Ask.on, Today: s.Today(),
 		Run: p.Run.ID, Store: p.Run.StoreID, Certainty: p.Ask.certainty,
 	}, shelf)

@@ -4,6 +4,7 @@ import (
 	"cmp"
 	"fmt"
 	"html/template"
+	"slices"
 	"strings"
 
 	"stillroom/chem"
@@ -145,26 +146,46 @@ func wareText(v planner.VesselReport) string {
 	}
 	switch {
 	case v.Size > 0 && v.Fits:
-		return volumePlain(v.Size) + " " + kind + ", " + percentText(v.Fill) + " full"
+		return volumePlain(v.Size) + " " + kind + ", " + fillText(v.Fill) + " full"
 	case v.Size > 0:
-		return volumePlain(v.Size) + " " + kind + " is too small: " + percentText(v.Fill) + " full, at most " + percentText(v.Limit)
+		return volumePlain(v.Size) + " " + kind + " is too small: " + fillText(v.Fill) + " full, at most " + percentText(v.Limit)
 	}
 	return kind + ", size not chosen"
 }
 
+// intoLines says what goes into a vessel; several portions of the same are one
+// line.
 func intoLines(adds []planner.Add) []string {
 	var lines []string
-	for _, a := range adds {
-		amount := massText(a.Mass)
-		switch {
-		case a.Pieces > 0:
-			amount = piecesText(a.Pieces)
-		case a.HasVolume && a.Volume > 0:
-			amount = volumeText(a.Volume)
+	for i, a := range adds {
+		portions := 1
+		if slices.ContainsFunc(adds[:i], func(b planner.Add) bool { return b.Substance == a.Substance }) {
+			continue
 		}
-		lines = append(lines, amount+" "+a.Substance)
+		for _, b := range adds[i+1:] {
+			if b.Substance == a.Substance {
+				a.Mass, a.Volume, a.Pieces = a.Mass+b.Mass, a.Volume+b.Volume, a.Pieces+b.Pieces
+				a.HasVolume = a.HasVolume && b.HasVolume
+				portions++
+			}
+		}
+		line := addedText(a) + " " + a.Substance
+		if portions > 1 {
+			line += fmt.Sprintf(" in %d portions", portions)
+		}
+		lines = append(lines, line)
 	}
 	return lines
+}
+
+func addedText(a planner.Add) string {
+	switch {
+	case a.Pieces > 0:
+		return piecesText(a.Pieces)
+	case a.HasVolume && a.Volume > 0:
+		return volumeText(a.Volume)
+	}
+	return massText(a.Mass)
 }
 
 // mostSays is how many of a step's own remarks stand under its vessel at once.
@@ -199,16 +220,10 @@ func stepLines(s planner.StepReport) []string {
 	if s.Shortest > 0 {
 		lines = append(lines, "no faster than "+timeText(s.Shortest))
 	}
-	if s.Temperature > 0 {
-		lines = append(lines, "at "+celsiusText(s.Temperature))
-	}
 	if q := s.Heat.Kilojoules(); q >= 0.5 {
-		lines = append(lines, heatText(s.Heat)+" given off")
+		lines = append(lines, heatText(s.Heat)+" given off"+iceText(s.Ice))
 	} else if q <= -0.5 {
-		lines = append(lines, heatText(-s.Heat)+" taken up")
-	}
-	if s.Ice > 0 {
-		lines = append(lines, massText(s.Ice)+" of ice")
+		lines = append(lines, heatText(-s.Heat)+" taken up"+iceText(s.Ice))
 	}
 	if s.Gas > chem.Millilitre {
 		lines = append(lines, volumeText(s.Gas)+" of "+cmp.Or(s.GasOf, "gas")+" given off")
@@ -216,16 +231,35 @@ func stepLines(s planner.StepReport) []string {
 	if s.IfCoolingLost > 0 {
 		lines = append(lines, "if cooling stops: "+celsiusText(s.IfCoolingLost))
 	}
-	switch {
-	case s.TimeNotAssessed:
-		lines = append(lines, "time not assessed")
-	case s.Time > 0:
-		lines = append(lines, "takes "+timeText(s.Time))
+	if when := whenText(s); when != "" {
+		lines = append(lines, when)
 	}
 	if s.HoldPoint {
 		lines = append(lines, strings.TrimSpace("may stand here "+s.HoldNote))
 	}
 	return lines
+}
+
+func iceText(ice chem.Mass) string {
+	if ice <= 0 {
+		return ""
+	}
+	return ", ice " + massText(ice)
+}
+
+// whenText is the temperature of a step and how long it takes.
+func whenText(s planner.StepReport) string {
+	var parts []string
+	if s.Temperature > 0 {
+		parts = append(parts, "at "+celsiusText(s.Temperature))
+	}
+	switch {
+	case s.TimeNotAssessed:
+		parts = append(parts, "time not assessed")
+	case s.Time > 0:
+		parts = append(parts, "takes "+timeText(s.Time))
+	}
+	return strings.Join(parts, ", ")
 }
 
 // contentRow is a component of a vessel at the fullest moment of a step.
@@ -263,7 +297,7 @@ func wasteRows(lots []planner.WasteLot, carboys []inventory.Carboy) []wasteRow {
 			if c.Code == lot.Carboy && c.SizeUL > 0 {
 				c.ContentUL += int64(lot.Volume / chem.Microlitre)
 				rows[i].Picture = drawCarboy(c, 40)
-				rows[i].After = percentText(chem.Fraction(float64(c.ContentUL)/float64(c.SizeUL))) + " full after this run"
+				rows[i].After = fillText(chem.Fraction(float64(c.ContentUL)/float64(c.SizeUL))) + " full after this run"
 			}
 		}
 	}

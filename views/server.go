@@ -51,6 +51,7 @@ type Server struct {
 	Config
 	sets    templateSets
 	meters  *meters
+	memory  *memory
 	handler http.Handler
 }
 
@@ -72,7 +73,7 @@ func New(c Config) (*Server, error) {
 	if err != nil {
 		return nil, err
 	}
-	s := &Server{Config: c, sets: sets, meters: newMeters()}
+	s := &Server{Config: c, sets: sets, meters: newMeters(), memory: newMemory()}
 	s.handler = secured(s.routes())
 	return s, nil
 }

@@ -62,7 +62,7 @@ func (s *Server) slate(c *gin.Context) (*inventory.Shelf, []planner.SlateLine, e
 		}
 		runs = append(runs, planner.SlateRun{Run: run, Recipe: recipe})
 	}
-	lines := planner.SlateOf(runs, shelf, s.Today()).Lines
+	lines := slices.Clone(s.slateLines(runs, shelf))
 	for i := range lines {
 		if err := unread[lines[i].Run.ID]; err != nil {
 			lines[i].Err = err
@@ -95,7 +95,7 @@ func (s *Server) planKept(run inventory.Run, shelf *inventory.Shelf) (*planner.P
 	if err != nil {
 		return nil, err
 	}
-	return s.Plan(planner.Request{
+	return s.plan(planner.Request{
 		Recipe: recipe, Target: chem.Mass(run.TargetUG) * chem.Microgram,
 		On: run.On, Today: s.Today(), Run: run.ID, Store: run.StoreID,
 	}, shelf)

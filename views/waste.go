@@ -79,7 +79,7 @@ func newCarboyRow(c inventory.Carboy, shelf *inventory.Shelf) carboyRow {
 	liquid := func(ul int64) chem.Volume { return chem.Volume(ul) * chem.Microlitre }
 	r.Holds, r.Size = volumeText(liquid(c.ContentUL)), volumePlain(liquid(c.SizeUL))
 	if c.SizeUL > 0 {
-		r.Fill = percentText(chem.Fraction(float64(c.ContentUL) / float64(c.SizeUL)))
+		r.Fill = fillText(chem.Fraction(float64(c.ContentUL) / float64(c.SizeUL)))
 	}
 	r.Limit = percentText(chem.Fraction(c.FillLimit))
 	room := int64(c.FillLimit*float64(c.SizeUL)) - c.ContentUL

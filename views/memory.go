@@ -1,0 +1,132 @@
+package views
+
+import (
+	"hash/maphash"
+	"sync"
+
+	"stillroom/chem"
+	"stillroom/inventory"
+	"stillroom/planner"
+)
+
+// memory keeps the plans made against the stock as it stands, because the page
+// of a run, its papers and its explanations ask for the same one and making it
+// takes longer than everything else. Plans are never changed, so that several
+// requests may share one. When anything on the shelf changes, all are forgotten.
+type memory struct {
+	mu    sync.Mutex
+	seed  maphash.Seed
+	state labState
+	plans map[planKey]*planner.Plan
+	slate []planner.SlateLine
+}
+
+// labState is the stock on a day, by its fingerprint.
+type labState struct {
+	shelf uint64
+	today inventory.Date
+}
+
+// planKey is everything in a request that the pages set.
+type planKey struct {
+	recipe    string // its whole text, because a run may keep an older one
+	target    chem.Mass
+	on        inventory.Date
+	run       int64
+	store     int64
+	certainty chem.Fraction
+}
+
+// mostPlans bounds the memory; a plan takes some hundred kilobytes.
+const mostPlans = 64
+
+func newMemory() *memory {
+	return &memory{seed: maphash.MakeSeed(), plans: map[planKey]*planner.Plan{}}
+}
+
+// at makes the memory that of a state of the lab. Its caller holds the lock.
+func (m *memory) at(state labState) {
+	if m.state != state || len(m.plans) >= mostPlans {
+		m.state, m.slate = state, nil
+		clear(m.plans)
+	}
+}
+
+// plan makes a plan, or gives the one made before.
+func (s *Server) plan(req planner.Request, shelf *inventory.Shelf) (*planner.Plan, error) {
+	state := labState{s.memory.fingerprint(shelf), req.Today}
+	key := planKey{req.Recipe.Name + "\n" + req.Recipe.Text, req.Target, req.On, req.Run, req.Store, req.Certainty}
+	s.memory.mu.Lock()
+	s.memory.at(state)
+	plan, ok := s.memory.plans[key]
+	s.memory.mu.Unlock()
+	if ok {
+		return plan, nil
+	}
+	plan, err := s.Plan(req, shelf)
+	if err != nil {
+		return nil, err
+	}
+	s.memory.mu.Lock()
+	defer s.memory.mu.Unlock()
+	if s.memory.state == state {
+		s.memory.plans[key] = plan
+	}
+	return plan, nil
+}
+
+// slateLines plans the slate, or gives the lines worked out before.
+func (s *Server) slateLines(runs []planner.SlateRun, shelf *inventory.Shelf) []planner.SlateLine {
+	state := labState{s.memory.fingerprint(shelf), s.Today()}
+	s.memory.mu.Lock()
+	s.memory.at(state)
+	lines := s.memory.slate
+	s.memory.mu.Unlock()
+	if lines != nil {
+		return lines
+	}
+	lines = planner.SlateOf(runs, shelf, state.today).Lines
+	s.memory.mu.Lock()
+	defer s.memory.mu.Unlock()
+	if s.memory.state == state {
+		s.memory.slate = lines
+	}
+	return lines
+}
+
+// fingerprint sums up everything on a shelf. Rows have a fixed order, so that
+// the same stock gives the same number as long as the program runs.
+func (m *memory) fingerprint(shelf *inventory.Shelf) uint64 {
+	var h maphash.Hash
+	h.SetSeed(m.seed)
+	write(&h, shelf.Substances)
+	write(&h, shelf.Forms)
+	write(&h, shelf.Places)
+	write(&h, shelf.Bottles)
+	write(&h, shelf.Earmarks)
+	for i := range shelf.Offers {
+		writeOffer(&h, &shelf.Offers[i])
+	}
+	write(&h, shelf.Orders)
+	write(&h, shelf.Carboys)
+	write(&h, shelf.Equipment)
+	write(&h, shelf.Runs)
+	write(&h, shelf.Policy.Rows())
+	return h.Sum64()
+}
+
+// writeOffer adds an offer, whose price breaks are a list. Every number of it
+// counts; a field that is added to the type has to be added here.
+func writeOffer(h *maphash.Hash, o *inventory.Offer) {
+	write(h, o.Breaks)
+	write(h, []string{o.Supplier, o.Item, o.Currency})
+	write(h, []int64{o.ID, o.FormID, o.PackSize, o.PriceMinor, o.OrderFee, o.Surcharge, o.MinOrder,
+		int64(o.LeadDays), int64(o.LeadDays90), int64(o.ShelfLifeDays)})
+}
+
+func write[R comparable](h *maphash.Hash, rows []R) {
+	maphash.WriteComparable(h, len(rows))
+	for _, r := range rows {
+		maphash.WriteComparable(h, r)
+	}
+}
