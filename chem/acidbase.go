@@ -2,7 +2,6 @@ package chem
 
 import (
 	"errors"
-	"fmt"
 	"math"
 )
 
@@ -55,16 +54,19 @@ func PH(mix []Protolyte, strong Concentration, t Temperature) (float64, error) {
 	return b.solve()
 }
 
+// mostConcentrated bounds a concentration in mol/m³: no liquid holds 1000 mol/L.
+const mostConcentrated = 1e6
+
 // checkMix refuses concentrations that are negative or no numbers, and pKa that
 // no acid in water has.
 func checkMix(mix []Protolyte, strong Concentration) error {
-	if !Finite(strong) {
-		return errors.New("pH: the charge of the strong ions is no number")
+	if !(math.Abs(float64(strong)) <= mostConcentrated) {
+		return &RangeError{"pH", "charge of the strong ions", strong.MolesPerLitre(), -mostConcentrated / 1e3, mostConcentrated / 1e3, "mol/L", ""}
 	}
 	for i := range mix {
 		p := &mix[i]
-		if !(p.C >= 0) || math.IsInf(float64(p.C), 1) {
-			return fmt.Errorf("pH: concentration of %s is %v mol/L; it must be 0 or more", p.Name, p.C.MolesPerLitre())
+		if !(p.C >= 0 && p.C <= mostConcentrated) {
+			return &RangeError{"pH", "concentration of " + p.Name, p.C.MolesPerLitre(), 0, mostConcentrated / 1e3, "mol/L", ""}
 		}
 		for _, pKa := range p.PKa {
 			if !(pKa >= -20 && pKa <= 50) {

@@ -50,32 +50,32 @@ type Degassed struct {
 	Left    Concentration // of CO2 and its ions in the solution
 }
 
-// Degas returns the pH of a vat that also holds an amount of carbonate of all
+// Degas returns the pH of a solution that also holds an amount of carbonate of all
 // forms, and the carbon dioxide that leaves until the rest is in equilibrium with
 // the gas at a pressure of CO2: the air's whole pressure while it bubbles, 0 when
 // it was boiled or blown out. The charge of the carbonate's counter-ions belongs
-// in v.Strong.
-func (v Vat) Degas(carbon Amount, p Pressure) (Degassed, error) {
-	if !(v.Volume > 0) {
-		return Degassed{}, fmt.Errorf("carbon dioxide given off: volume %v mL must be above 0", v.Volume.Millilitres())
+// in s.Strong.
+func (s Solution) Degas(carbon Amount, p Pressure) (Degassed, error) {
+	if !(s.Volume > 0) {
+		return Degassed{}, fmt.Errorf("carbon dioxide given off: volume %v mL must be above 0", s.Volume.Millilitres())
 	}
 	if !(carbon >= 0) || !Finite(carbon) {
 		return Degassed{}, fmt.Errorf("carbon dioxide given off: %v mol of carbonate must be 0 or more", float64(carbon))
 	}
-	held, err := CarbonDioxideSolubility(p, v.At)
+	held, err := CarbonDioxideSolubility(p, s.At)
 	if err != nil {
 		return Degassed{}, err
 	}
-	pKw, err := PKw(v.At)
+	pKw, err := PKw(s.At)
 	if err != nil {
 		return Degassed{}, err
 	}
-	if err := checkMix(v.Mix, v.Strong); err != nil {
+	if err := checkMix(s.Mix, s.Strong); err != nil {
 		return Degassed{}, err
 	}
-	total := Concentration(float64(carbon) / float64(v.Volume))
-	closed := append([]Protolyte{{Name: "carbonic acid", PKa: carbonPKa[:], C: total}}, v.Mix...)
-	b := balance{mix: closed, strong: float64(v.Strong), pKw: pKw}
+	total := Concentration(float64(carbon) / float64(s.Volume))
+	closed := append([]Protolyte{{Name: "carbonic acid", PKa: carbonPKa[:], C: total}}, s.Mix...)
+	b := balance{mix: closed, strong: float64(s.Strong), pKw: pKw}
 	pH, err := b.solve()
 	if err != nil {
 		return Degassed{}, err
@@ -83,11 +83,11 @@ func (v Vat) Degas(carbon Amount, p Pressure) (Degassed, error) {
 	if float64(total)*float64(Ionised(carbonPKa[:], pH)[0]) <= float64(held) {
 		return Degassed{pH, 0, total}, nil
 	}
-	b = balance{mix: v.Mix, strong: float64(v.Strong), pKw: pKw, carbonDioxide: float64(held), carbonPK: carbonPKa}
+	b = balance{mix: s.Mix, strong: float64(s.Strong), pKw: pKw, carbonDioxide: float64(held), carbonPK: carbonPKa}
 	if pH, err = b.solve(); err != nil {
 		return Degassed{}, err
 	}
 	one, two := b.carbonIons(pH)
 	left := min(total, held+Concentration(one+two))
-	return Degassed{pH, Amount(float64(total-left) * float64(v.Volume)), left}, nil
+	return Degassed{pH, Amount(float64(total-left) * float64(s.Volume)), left}, nil
 }

@@ -174,17 +174,17 @@ func TestIonised(t *testing.T) {
 // (common practice), bicarbonate boiled out turns alkaline, acid frees what it
 // should, and carbon is kept.
 func TestDegas(t *testing.T) {
-	rain, err := Vat{Volume: Litre, At: Celsius(25)}.Degas(1, 0.0004*Atmosphere)
+	rain, err := Solution{Volume: Litre, At: Celsius(25)}.Degas(1, 0.0004*Atmosphere)
 	if err != nil || math.Abs(rain.PH-5.61) > 0.05 {
 		t.Errorf("water under air: pH %v, %v; want 5.6", rain.PH, err)
 	}
 	// 1 mol NaHCO3 and 1 mol HCl in 1 L: all but the dissolved gas leaves.
-	fizz, err := Vat{Volume: Litre, At: Celsius(25)}.Degas(1, Atmosphere)
+	fizz, err := Solution{Volume: Litre, At: Celsius(25)}.Degas(1, Atmosphere)
 	if err != nil || math.Abs(float64(fizz.Evolved)-0.966) > 0.002 {
 		t.Errorf("1 mol/L bicarbonate acidified: %v mol CO2, %v; want 1 less 0.034", fizz.Evolved, err)
 	}
 	for _, strong := range []float64{-0.5, 0, 0.4, 0.9, 1.5} {
-		d, err := Vat{Strong: litre(strong), Volume: 2 * Litre, At: Celsius(25)}.Degas(2, Atmosphere)
+		d, err := Solution{Strong: litre(strong), Volume: 2 * Litre, At: Celsius(25)}.Degas(2, Atmosphere)
 		if err != nil {
 			t.Fatal(err)
 		}

@@ -6,17 +6,17 @@ import (
 	"math"
 )
 
-// A Vat is a volume of a solution of weak acids and bases and of strong ions, to
+// A Solution is a volume of water with weak acids and bases and strong ions in it, to
 // which something is added.
-type Vat struct {
+type Solution struct {
 	Mix    []Protolyte
 	Strong Concentration // net charge of the strong ions, as in PH
 	Volume Volume
 	At     Temperature
 }
 
-// PH returns the pH of the vat.
-func (v Vat) PH() (float64, error) { return PH(v.Mix, v.Strong, v.At) }
+// PH returns the pH of the solution.
+func (s Solution) PH() (float64, error) { return PH(s.Mix, s.Strong, s.At) }
 
 // A Titrant is what is added: a strong acid or base, or a protolyte with its
 // counter-ions.
@@ -45,33 +45,33 @@ var (
 // lower it, or where a weak one can't reach it at any amount.
 var ErrWrongWay = errors.New("the addition can't bring this pH about")
 
-// AmountToPH returns the amount of titrant that brings the vat to a pH, solved
+// AmountToPH returns the amount of titrant that brings the solution to a pH, solved
 // straight from the charge balance at that pH,
 //
 //	n·z + n/c·(h − oh) = −V·(strong + h − oh + Σ C·z(pH))
 //
 // where z is the charge that one mole of titrant brings along at the pH. The
-// protolytes stay in the vat: carbonic acid that leaves as gas has to be left
+// protolytes stay in the solution: carbonic acid that leaves as gas has to be left
 // out of the mix. The error wraps ErrWrongWay where no amount does it.
-func (v Vat) AmountToPH(add Titrant, pH float64) (Amount, error) {
-	pKw, err := PKw(v.At)
+func (s Solution) AmountToPH(add Titrant, pH float64) (Amount, error) {
+	pKw, err := PKw(s.At)
 	if err != nil {
 		return 0, err
 	}
-	if err := checkMix(v.Mix, v.Strong); err != nil {
+	if err := checkMix(s.Mix, s.Strong); err != nil {
 		return 0, err
 	}
 	if !(pH >= lowestPH && pH <= highestPH) {
 		return 0, &RangeError{"amount to a pH", "pH", pH, lowestPH, highestPH, "", ""}
 	}
-	b := balance{mix: v.Mix, strong: float64(v.Strong), pKw: pKw}
-	lack := -float64(v.Volume) * b.at(pH)
+	b := balance{mix: s.Mix, strong: float64(s.Strong), pKw: pKw}
+	lack := -float64(s.Volume) * b.at(pH)
 	brings := add.Strong + meanCharge(add.PKa, add.Charge, pH, 0)
 	if add.C > 0 {
 		brings += 1e3 * (pow10(-pH) - pow10(pH-pKw)) / float64(add.C)
 	}
 	n := lack / brings
-	if math.Abs(lack) <= 1e-12*float64(v.Volume) {
+	if math.Abs(lack) <= 1e-12*float64(s.Volume) {
 		return 0, nil
 	}
 	if !(n >= 0) || math.IsInf(n, 0) {
@@ -83,13 +83,13 @@ func (v Vat) AmountToPH(add Titrant, pH float64) (Amount, error) {
 // BaseToPH returns the amount of strong base (of OH⁻) that brings a volume of the
 // mixture up to a pH, without counting the base's own volume.
 func BaseToPH(mix []Protolyte, strong Concentration, v Volume, pH float64, t Temperature) (Amount, error) {
-	return Vat{mix, strong, v, t}.AmountToPH(SodiumHydroxide, pH)
+	return Solution{mix, strong, v, t}.AmountToPH(SodiumHydroxide, pH)
 }
 
 // AcidToPH returns the amount of strong acid (of H⁺) that brings a volume of the
 // mixture down to a pH, without counting the acid's own volume.
 func AcidToPH(mix []Protolyte, strong Concentration, v Volume, pH float64, t Temperature) (Amount, error) {
-	return Vat{mix, strong, v, t}.AmountToPH(HydrogenChloride, pH)
+	return Solution{mix, strong, v, t}.AmountToPH(HydrogenChloride, pH)
 }
 
 // BufferCapacity returns how much strong base, in mol/m³, a mixture takes up for

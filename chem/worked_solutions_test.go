@@ -221,7 +221,7 @@ var workedSolutions = map[string]func(r workedRow) float64{
 		// Salt brings the acid to the pH when its sodium balances the charge.
 		acidC, v, pKa := r.concOf("acid", 1), r.volumeOf("acid", 3), -math.Log10(r.number("Ka"))
 		salt := Titrant{Name: "acetate", Strong: 1, PKa: []float64{pKa}}
-		n, err := Vat{Mix: []Protolyte{{PKa: []float64{pKa}, C: acidC}}, Volume: v, At: Celsius(25)}.AmountToPH(salt, r.number("target_pH"))
+		n, err := Solution{Mix: []Protolyte{{PKa: []float64{pKa}, C: acidC}}, Volume: v, At: Celsius(25)}.AmountToPH(salt, r.number("target_pH"))
 		if err != nil {
 			r.t.Fatal(err)
 		}

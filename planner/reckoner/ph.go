@@ -19,6 +19,7 @@ func phSum() Sum {
 			{"mix", "Substances with their concentrations", "acetic acid: 0.1 mol/L; sodium acetate: 0.05 mol/L", false},
 			{"temperature", "Temperature; 25 °C if none is given", "25 °C", true},
 			{"pka", "pKa of what the table lacks, steps parted by a slash, with the name where several are meant", "4.76, or malonic acid: 2.85/5.70", true},
+			{"carbon_dioxide", "Pressure of carbon dioxide above the solution, where it may leave: 101.325 kPa while it bubbles, 0.04 kPa in air", "101.325 kPa", true},
 			{"charge", "Charge of what the table lacks when all its protons are on: 0 for an acid, 1 for an amine", "0", true},
 		},
 		Gives:   []string{"pH", "one row for each species"},
@@ -49,12 +50,22 @@ func runPH(_ context.Context, args Args) (Answer, error) {
 	if err != nil {
 		return Answer{}, err
 	}
+	var gas []Result
+	if args.Has("carbon_dioxide") {
+		if gas, err = mix.degas(args, t); err != nil {
+			return Answer{}, err
+		}
+	}
 	pH, err := chem.PH(mix.acids, mix.strong, t)
 	if err != nil {
 		return Answer{}, err
 	}
 	answer := Answer{Notes: append(notes, mix.sources...), Derivation: chem.DerivePH(mix.acids, mix.strong, t, pH)}
 	answer.Results = append([]Result{Number("pH", pH, "")}, speciesRows(mix, pH, t)...)
+	answer.Results = append(answer.Results, gas...)
+	if beta, err := chem.BufferCapacity(mix.acids, pH, t); err == nil {
+		answer.Results = append(answer.Results, Number("buffer_capacity", beta.MolesPerLitre(), "mol/L per pH"))
+	}
 	switch active, err := chem.PHDavies(mix.acids, mix.strong, mix.ions, t); {
 	case err == nil:
 		answer.Results = append(answer.Results, Number("pH_activity", active.PH, ""),
@@ -63,6 +74,39 @@ func runPH(_ context.Context, args Args) (Answer, error) {
 		answer.Notes = append(answer.Notes, err.Error())
 	}
 	return answer, nil
+}
+
+// carbonicAcid is the name under which carbonates are in the mixture.
+const carbonicAcid = "carbonic acid"
+
+// degas lets carbon dioxide leave until the rest is in equilibrium with its pressure,
+// and says how much left.
+func (m *mixture) degas(args Args, t chem.Temperature) ([]Result, error) {
+	p, err := args.Pressure("carbon_dioxide")
+	if err != nil {
+		return nil, err
+	}
+	open := chem.Solution{Strong: m.strong, Volume: chem.Litre, At: t}
+	var carbon *chem.Protolyte
+	for i := range m.acids {
+		if m.acids[i].Name == carbonicAcid {
+			carbon = &m.acids[i]
+			continue
+		}
+		open.Mix = append(open.Mix, m.acids[i])
+	}
+	if carbon == nil {
+		return nil, &KeyError{Key: "carbon_dioxide", Text: args["carbon_dioxide"], What: "there is no carbonate in the mixture", Wanted: "leave it out", Cause: chem.ErrNoData}
+	}
+	out, err := open.Degas(chem.Amount(carbon.C)*chem.Amount(chem.Litre), p)
+	if err != nil {
+		return nil, err
+	}
+	carbon.C = out.Left
+	return []Result{
+		Number("carbon_dioxide_given_off", float64(out.Evolved), "mol per litre"),
+		Number("gas_volume", chem.GasVolume(out.Evolved, t, chem.Atmosphere).Litres(), "L per litre"),
+	}, nil
 }
 
 // speciesRows gives the concentration of every form at the pH.
