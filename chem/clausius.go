@@ -88,12 +88,12 @@ func (e VapourEquation) VaporisationHeat(t Temperature) (MolarEnergy, error) {
 // coefficients.
 const MillimetreMercury Pressure = 133.322387415
 
-// Antoine turns coefficients of log10(p/unit) = A − B/(T + C) into an equation.
-// zero is the zero of the temperature scale that the coefficients were fitted in:
-// ZeroCelsius for °C, 0 for K. From and to are its range; pass equal temperatures
-// where none is stated. It refuses coefficients that are no numbers and a B that
-// isn't above zero.
-func Antoine(a, b, c float64, unit Pressure, zero, from, to Temperature) (VapourEquation, error) {
+// Antoine turns coefficients of log(p/unit) = A − B/(T + C) into an equation; form
+// says whether the logarithm is decadic or natural. zero is the zero of the
+// temperature scale that they were fitted in: ZeroCelsius for °C, 0 for K. From
+// and to are their range; pass equal temperatures where none is stated. It
+// refuses coefficients that are no numbers and a B that isn't above zero.
+func Antoine(form VapourForm, a, b, c float64, unit Pressure, zero, from, to Temperature) (VapourEquation, error) {
 	const of = "Antoine equation"
 	if err := mustBePositive(of, "unit of pressure", unit); err != nil {
 		return VapourEquation{}, err
@@ -101,7 +101,15 @@ func Antoine(a, b, c float64, unit Pressure, zero, from, to Temperature) (Vapour
 	if !Finite(a) || !Finite(c) || !Finite(from) || !Finite(to) || !(b > 0) || !Finite(b) {
 		return VapourEquation{}, &DataError{Of: of, Err: ErrOutOfRange, Limit: "A, B and C must be numbers, B above zero", Remedy: "give antoine=A;B;C for p in mmHg and t in °C"}
 	}
-	e := VapourEquation{Form: AntoineLog10, A: a + math.Log10(float64(unit)), B: b, C: c - float64(zero), Source: "coefficients given"}
+	e := VapourEquation{Form: form, B: b, C: c - float64(zero), Source: "coefficients given"}
+	switch form {
+	case AntoineLog10:
+		e.A = a + math.Log10(float64(unit))
+	case AntoineLn:
+		e.A = a + math.Log(float64(unit))
+	default:
+		return VapourEquation{}, &DataError{Of: of, Err: ErrOutOfRange, Limit: "three coefficients belong to an Antoine equation"}
+	}
 	if to > from {
 		e.From, e.To = from, to
 	}
@@ -111,7 +119,7 @@ func Antoine(a, b, c float64, unit Pressure, zero, from, to Temperature) (Vapour
 // AntoineMillimetres turns the usual handbook triple, log10(p/mmHg) =
 // A − B/(t/°C + C), into an equation without a stated range.
 func AntoineMillimetres(a, b, c float64) (VapourEquation, error) {
-	return Antoine(a, b, c, MillimetreMercury, ZeroCelsius, 0, 0)
+	return Antoine(AntoineLog10, a, b, c, MillimetreMercury, ZeroCelsius, 0, 0)
 }
 
 // BoilingRise returns how much a solute raises the boiling point,

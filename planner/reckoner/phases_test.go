@@ -53,7 +53,12 @@ func TestPhaseSums(t *testing.T) {
 		{"vapour|substance=something|temperature=78.32 °C|antoine=8.20417;1642.89;230.300|antoine_range=-57 °C; 80 °C", "pressure", 101.33, 0.07},
 		// OpenStax Chemistry 2e, Appendix E: 23.8 torr at 25 °C
 		{"vapour|substance=water|temperature=25 °C", "pressure", 3.1731, 0.01},
-		// the same coefficients in bar and kelvin
+		// the same coefficients in other units, stated or told from the numbers
+		{"vapour|substance=something|temperature=78.32 °C|antoine=10.32907;1642.89;-42.85", "pressure", 101.33, 0.1},
+		{"vapour|substance=something|temperature=78.32 °C|antoine=5.32907;1642.89;-42.85", "pressure", 101.33, 0.1},
+		{"vapour|substance=something|temperature=78.32 °C|antoine=23.78356;3782.894;-42.85", "pressure", 101.33, 0.1},
+		{"vapour|substance=ethanol|temperature=78.32 °C|antoine=7.32907;1642.89;-42.85", "pressure", 101.33, 0.1},
+		{"vapour|substance=ethanol|temperature=78.32 °C|antoine=23.78356;3782.894;-42.85;Pa;K;ln", "pressure", 101.33, 0.1},
 		{"vapour|substance=something|temperature=78.32 °C|antoine=5.32907;1642.89;-42.85;bar;K", "pressure", 101.33, 0.1},
 		// benzene and water: 10.1 g per g at 69.4 °C, laboratory text problem
 		{"steam|substance=benzene|pressure=760 mmHg", "mass_ratio", 10.1, 0.3},
@@ -110,6 +115,7 @@ func TestPhaseSumsRefuse(t *testing.T) {
 		{"boil|substance=butyl butanoate|pressure=2 kPa", chem.ErrNoData, "antoine=A;B;C"},
 		{"boil|substance=water|altitude=20000", chem.ErrOutOfRange, "11000"},
 		{"boil|substance=water|pressure=10 kPa|antoine=8;1700", chem.ErrSyntax, "A;B;C"},
+		{"vapour|substance=x|temperature=50 °C|antoine=7.3;1642.89;-42.85", chem.ErrSyntax, "units"},
 		{"vapour|substance=water|temperature=500 °C", chem.ErrOutOfRange, "°C"},
 		{"vapour|substance=x|temperature=90 °C|antoine=8.20417;1642.89;230.3|antoine_range=-57 °C; 80 °C", chem.ErrOutOfRange, "80.0 °C"},
 		{"steam|substance=something|pressure=101 kPa|antoine=6.86064;1438.817;205.441", chem.ErrNoData, "molar_mass="},

@@ -49,7 +49,7 @@ func runSteam(_ context.Context, args Args) (Answer, error) {
 	s := steamSum()
 	return Answer{
 		Results: []Result{Number("temperature", d.Temperature.Celsius(), "°C"), Number("mass_ratio", d.MassPerMassWater, "g per g water")},
-		Notes:   slices.Clip(append(notes, e.Range())),
+		Notes:   slices.Concat(notes, l.notes, []string{e.Range()}),
 		Derivation: chem.Derivation{
 			Of: l.name + " carried by water", Formula: "m/m(water) = p(substance) · M / (p(water) · M(water))",
 			Inserted: fmt.Sprintf("%.6g kPa · %.6g g/mol / (%.6g kPa · 18.015 g/mol) = %.6g at %.5g °C", d.Substance.Kilopascals(), molar.GramsPerMole(), d.Water.Kilopascals(), d.MassPerMassWater, d.Temperature.Celsius()),

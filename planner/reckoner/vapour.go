@@ -14,10 +14,7 @@ const vapourGroup = "Vapour"
 var (
 	rangeKey    = Key{"antoine_range", "Range of the Antoine coefficients", "1 °C; 100 °C", true}
 	altitudeKey = Key{"altitude", "Height of the lab above the sea in metres, in place of the pressure", "1600", true}
-	antoineForm = "Antoine coefficients A;B;C for log10(p/mmHg) and °C, in place of the table's; add the units for others: A;B;C;bar;K"
 )
-
-func vapourAntoineKey() Key { return Key{"antoine", antoineForm, "8.07131;1730.63;233.426", true} }
 
 func boilSum() Sum {
 	return Sum{
@@ -51,7 +48,7 @@ func runBoil(_ context.Context, args Args) (Answer, error) {
 	if err != nil {
 		return Answer{}, err
 	}
-	notes = append(notes, l.otherBoiling(p, t, e)...)
+	notes = append(append(notes, l.notes...), l.otherBoiling(p, t, e)...)
 	s := boilSum()
 	return Answer{
 		Results: []Result{Number("temperature", t.Celsius(), "°C")},
@@ -100,6 +97,7 @@ type liquid struct {
 	cas       string
 	substance chem.Substance
 	equations []chem.VapourEquation
+	notes     []string
 }
 
 // liquidOf reads the substance and, where given, its own Antoine coefficients.
@@ -110,72 +108,13 @@ func liquidOf(args Args) (liquid, error) {
 	}
 	l := liquid{name: s.Name, cas: s.CAS, substance: s, equations: chem.VapourEquations(s.CAS)}
 	if args.Has("antoine") {
-		e, err := antoineEquation(args)
+		e, note, err := antoineEquation(args, s.Boiling)
 		if err != nil {
 			return liquid{}, err
 		}
-		l.equations = []chem.VapourEquation{e}
+		l.equations, l.notes = []chem.VapourEquation{e}, []string{note}
 	}
 	return l, nil
-}
-
-// antoineEquation reads antoine=A;B;C with optional units of pressure and
-// temperature, and antoine_range.
-func antoineEquation(args Args) (chem.VapourEquation, error) {
-	items, err := args.List("antoine")
-	if err != nil {
-		return chem.VapourEquation{}, err
-	}
-	wrong := func(what string) error {
-		return &KeyError{Key: "antoine", Text: args["antoine"], What: what, Wanted: "write A;B;C for log10(p/mmHg) and °C, or A;B;C;bar;K", Cause: chem.ErrSyntax}
-	}
-	if len(items) != 3 && len(items) != 5 {
-		return chem.VapourEquation{}, wrong("not three numbers, nor three with two units")
-	}
-	var c [3]float64
-	for i := range c {
-		if c[i], err = chem.ParseNumber(items[i]); err != nil {
-			return chem.VapourEquation{}, &KeyError{Key: "antoine", Text: items[i], Cause: err}
-		}
-	}
-	unit, zero := chem.MillimetreMercury, chem.ZeroCelsius
-	if len(items) == 5 {
-		if unit, err = chem.ParsePressure("1 " + items[3]); err != nil {
-			return chem.VapourEquation{}, &KeyError{Key: "antoine", Text: items[3], Cause: err}
-		}
-		switch items[4] {
-		case "K":
-			zero = 0
-		case "°C", "C", "Cel":
-		default:
-			return chem.VapourEquation{}, wrong("the unit of temperature must be K or °C")
-		}
-	}
-	from, to, err := antoineRange(args)
-	if err != nil {
-		return chem.VapourEquation{}, err
-	}
-	return chem.Antoine(c[0], c[1], c[2], unit, zero, from, to)
-}
-
-func antoineRange(args Args) (from, to chem.Temperature, err error) {
-	if !args.Has("antoine_range") {
-		return 0, 0, nil
-	}
-	ends, err := args.List("antoine_range")
-	if err != nil {
-		return 0, 0, err
-	}
-	if len(ends) != 2 {
-		return 0, 0, &KeyError{Key: "antoine_range", Text: args["antoine_range"], What: "not two temperatures", Wanted: "write 1 °C; 100 °C", Cause: chem.ErrSyntax}
-	}
-	if from, err = chem.ParseTemperature(ends[0]); err == nil {
-		to, err = chem.ParseTemperature(ends[1])
-	}
-	if err == nil && to <= from {
-		return 0, 0, &KeyError{Key: "antoine_range", Text: args["antoine_range"], What: "the second isn't above the first", Wanted: "write 1 °C; 100 °C", Cause: chem.ErrOutOfRange}
-	}
-	return from, to, err
 }
 
 // boiling returns the boiling point and the equation that gave it.
@@ -282,7 +221,7 @@ func runVapour(_ context.Context, args Args) (Answer, error) {
 	}
 	return Answer{
 		Results: []Result{Number("pressure", p.Kilopascals(), "kPa")},
-		Notes:   []string{e.Range()},
+		Notes:   append(l.notes, e.Range()),
 		Derivation: chem.Derivation{
 			Of: "vapour pressure of " + l.name, Formula: e.Form.String(),
 			Inserted: fmt.Sprintf("T = %.6g K with %s: p = %.6g kPa", float64(t), coefficients(e), p.Kilopascals()),
