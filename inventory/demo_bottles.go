@@ -131,8 +131,8 @@ var demoBottles = []demoBottle{
 	{"", "heptane", "solvents-2", mL(1000), mL(560), Opened, ByLevel, 400, 380, 150, 1400, Bottle{}},
 
 	// What nobody lists and every run needs.
-	{"", "water", "water", mL(50000), mL(38000), Opened, ByLevel, 7, 7, 1, 30, Bottle{Note: "storage tank of the deioniser"}},
-	{"", "ice", "ice", g(40000), g(26000), Opened, ByLevel, 1, 1, 1, 7, Bottle{}},
+	{"", "water", "water", mL(50000), mL(38000), Opened, ByLevel, 7, 7, 1, 0, Bottle{Note: "storage tank of the deioniser, filled up daily"}},
+	{"", "ice", "ice", g(40000), g(26000), Opened, ByLevel, 1, 1, 1, 0, Bottle{Note: "made anew every day"}},
 	{"", "filter aid", "salts-3", g(1000), g(640), Opened, ByLevel, 500, 450, 160, 3000, Bottle{}},
 	{"", "carbon", "salts-3", g(250), g(180), Opened, ByLevel, 500, 450, 160, 3000, Bottle{}},
 	{"", "filter paper", "paper", 100, 64, Opened, ByLedger, 120, 110, 30, 3000, Bottle{}},
