@@ -3,6 +3,7 @@ package planner
 import (
 	"errors"
 	"fmt"
+	"math"
 	"slices"
 
 	"stillroom/chem"
@@ -13,7 +14,8 @@ import (
 type coming struct {
 	covers bool           // the orders cover what is short
 	on     inventory.Date // the day on which they do
-	text   string         // "order of 2 × 1 L from …, due …"
+	text   string         // "the order of 2 packs from …, due …"
+	late   float64        // chance that it comes after the run
 }
 
 // expected finds the orders under way that cover what is short, the earliest
@@ -42,10 +44,33 @@ func (m *matcher) expected(c *coverage) coming {
 		sum += a.pure
 		if sum >= c.alloc.short*(1-enough) {
 			due := max(a.order.Due, m.req.Today)
-			return coming{true, due, fmt.Sprintf("the order of %d from %s, due %s", a.order.Packs, a.offer.Supplier, a.order.Due.Short())}
+			return coming{true, due, fmt.Sprintf("the order from %s, due %s,", a.offer.Supplier, a.order.Due.Short()), m.lateChance(a.order, a.offer)}
 		}
 	}
 	return coming{}
+}
+
+// lateChance is the chance that an order comes after the run, given that it
+// hasn't come yet: lead times are taken as log-normal through the offer's
+// median and its ninth decile (practice §5). Without a spread the due date holds.
+func (m *matcher) lateChance(o inventory.Order, offer inventory.Offer) float64 {
+	until := float64(m.req.On-o.Ordered) - m.policy.value("buy.receiving-days")
+	gone := float64(m.req.Today - o.Ordered)
+	if offer.LeadDays <= 0 || offer.LeadDays90 <= offer.LeadDays || until <= 0 || !o.Ordered.Set() {
+		return float64(b2i(o.Due > m.req.On))
+	}
+	const ninthDecile = 1.2815515655446004 // of the standard normal distribution
+	sigma := math.Log(float64(offer.LeadDays90)/float64(offer.LeadDays)) / ninthDecile
+	after := func(days float64) float64 {
+		if days <= 0 {
+			return 1
+		}
+		return 0.5 * math.Erfc(math.Log(days/float64(offer.LeadDays))/sigma/math.Sqrt2)
+	}
+	if still := after(gone); still > 0 {
+		return min(1, after(until)/still)
+	}
+	return 1
 }
 
 func (m *matcher) offer(formID, id int64) (inventory.Offer, bool) {

@@ -18,8 +18,8 @@ type coverage struct {
 	need   Need
 	first  inventory.Date // when the first fit bottle reaches its end of life
 	coming coming
-	chance float64 // of running short with spares; negative for not assessed
-
+	// onlyFinding says that it suffices for certain if its bottles are found.
+	onlyFinding bool
 }
 
 // coverAll matches and allocates every demand. Demands of one substance share

@@ -80,14 +80,22 @@ func (l *laddering) rung(act, text string, change func(*planning)) (Rung, bool) 
 	}, true
 }
 
+// worthWeighing is the fall of the risk below which weighing isn't worth saying:
+// what rounding to whole per cents would hide.
+const worthWeighing = 0.005
+
 // weigh helps where the doubt is in a bottle's content.
 func (l *laddering) weigh() (Rung, bool) {
 	code := l.plan.Risk.WeighFirst
-	if code == "" || l.plan.Verdict > Tight {
+	if code == "" || l.plan.Verdict > Tight || l.plan.Risk.WeighBefore-l.plan.Risk.WeighAfter < worthWeighing {
 		return Rung{}, false
 	}
+	text := "weigh %s; if it holds what the record says, everything suffices with %s"
+	if l.plan.Risk.LookOnly {
+		text = "make sure that %s is there; then everything suffices with %s"
+	}
 	return Rung{
-		Act: "weigh", Text: fmt.Sprintf("weigh %s; if it holds what the record says, everything suffices with %s", code, percent(1-l.plan.Risk.WeighAfter)),
+		Act: "weigh", Text: fmt.Sprintf(text, code, percent(1-l.plan.Risk.WeighAfter)),
 		Works: true, On: l.plan.On, Target: l.plan.Target.Mass, Enough: 1 - l.plan.Risk.WeighAfter,
 	}, true
 }
@@ -246,7 +254,11 @@ func (l *laddering) buy() (Rung, bool) {
 }
 
 func (l *laddering) move() (Rung, bool) {
-	for _, on := range l.dates() {
+	days, err := l.dates()
+	if err != nil {
+		return Rung{}, false
+	}
+	for _, on := range days {
 		if on <= l.req.On {
 			continue
 		}

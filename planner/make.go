@@ -24,6 +24,7 @@ type planning struct {
 	policy  *policyTable
 	claims  map[int64]int64 // promised to earlier runs of a slate, by bottle
 	relax   func(*Ask)      // loosens what the recipe accepts; nil for not at all
+	light   bool            // states only: no risk, no sheets
 
 	scale   Scale
 	batches int
@@ -261,6 +262,10 @@ func (p *planning) write() (*Plan, error) {
 	}
 	plan.Scale.Batches = p.batches
 	p.shortfalls(plan)
+	if p.light {
+		p.states(plan)
+		return plan, nil
+	}
 	p.risk(plan)
 	p.states(plan)
 	p.insertMakeUps(plan)

@@ -34,7 +34,11 @@ func (p *planning) outlook() (Outlook, error) {
 		return Outlook{}, err
 	}
 	var o Outlook
-	for _, on := range p.dates() {
+	days, err := p.dates()
+	if err != nil {
+		return o, err
+	}
+	for _, on := range days {
 		verdict, buys, err := p.tryOn(on)
 		if err != nil {
 			return o, err
@@ -54,29 +58,47 @@ func (p *planning) outlook() (Outlook, error) {
 }
 
 // dates are the days on which something can change for the better: today, the
-// day asked for, arrivals, and the latest end of an earmark.
-func (p *planning) dates() []inventory.Date {
-	today := p.req.Today
-	horizon := today.AddDays(int(newPolicyTable(p.shelf.Policy).value("slate.horizon")))
-	receiving := int(newPolicyTable(p.shelf.Policy).value("buy.receiving-days"))
-	days := []inventory.Date{today, p.req.On}
-	for i := range p.shelf.Orders {
-		if p.shelf.Orders[i].State == inventory.OrderUnderWay {
-			days = append(days, p.shelf.Orders[i].Due)
-		}
+// day asked for, and the days on which what is short can arrive.
+func (p *planning) dates() ([]inventory.Date, error) {
+	try := planning{req: p.req, shelf: p.shelf, program: p.program, claims: p.claims, light: true}
+	if _, err := try.plan(); err != nil {
+		return nil, err
 	}
-	for i := range p.shelf.Offers {
-		days = append(days, today.AddDays(p.shelf.Offers[i].LeadDays90+receiving))
+	today := p.req.Today
+	horizon := today.AddDays(int(try.policy.value("slate.horizon")))
+	days := []inventory.Date{today, p.req.On}
+	for i := range try.covers {
+		if c := &try.covers[i]; c.alloc.short > 0 {
+			days = append(days, try.matcher.arrivals(c)...)
+		}
 	}
 	slices.Sort(days)
 	days = slices.Compact(days)
-	return slices.DeleteFunc(days, func(d inventory.Date) bool { return d < today || d > horizon && d != p.req.On })
+	return slices.DeleteFunc(days, func(d inventory.Date) bool { return d < today || d > horizon && d != p.req.On }), nil
+}
+
+// arrivals are the days on which orders under way are due and offers would
+// arrive if ordered today.
+func (m *matcher) arrivals(c *coverage) []inventory.Date {
+	var days []inventory.Date
+	receiving := int(m.policy.value("buy.receiving-days"))
+	m.eachForm(&c.demand, func(f *formMatch) {
+		for _, o := range m.shelf.OrdersOf(f.form.ID) {
+			if o.State == inventory.OrderUnderWay {
+				days = append(days, o.Due)
+			}
+		}
+		for _, o := range m.shelf.OffersOf(f.form.ID) {
+			days = append(days, m.req.Today.AddDays(o.LeadDays90+receiving))
+		}
+	})
+	return days
 }
 
 // tryOn plans for a day and reports the verdict, and whether all that is short
 // could be bought in time.
 func (p *planning) tryOn(on inventory.Date) (State, bool, error) {
-	try := planning{req: p.req, shelf: p.shelf, program: p.program, claims: p.claims}
+	try := planning{req: p.req, shelf: p.shelf, program: p.program, claims: p.claims, light: true}
 	try.req.On = on
 	plan, err := try.plan()
 	if err != nil {

@@ -337,7 +337,9 @@ type Risk struct {
 	MassHigh   chem.Mass // 95th
 	Decides    string    // the need that decides
 	// WeighFirst is the bottle whose weighing lowers the risk most.
-	WeighFirst  string
+	WeighFirst string
+	// LookOnly says that the doubt is whether it is found, not what it holds.
+	LookOnly    bool
 	WeighBefore float64
 	WeighAfter  float64
 	ScaleFor90  chem.Mass // target at which this much charge gives 90 %

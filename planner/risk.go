@@ -309,10 +309,7 @@ func (a *assessor) assessNeed(r *needRisk, share float64) {
 		n.ChanceShort, n.ChanceError = 0, 0
 		return
 	case r.cover.alloc.short > 0:
-		n.ChanceShort, n.ChanceError = 1, 0
-		for i := range a.run {
-			a.run[i]++
-		}
+		a.waitFor(r)
 		return
 	}
 	r.short = make([]bool, a.n)
@@ -329,6 +326,20 @@ func (a *assessor) assessNeed(r *needRisk, share float64) {
 	}
 }
 
+// waitFor draws whether an order under way comes in time for what is short;
+// without one the need is short for certain.
+func (a *assessor) waitFor(r *needRisk) {
+	n, late := &r.cover.need, 1.0
+	if r.cover.coming.covers {
+		late = r.cover.coming.late
+	}
+	order := chem.NewStream(a.seed, "order for "+r.cover.demand.name)
+	for i := range a.run {
+		a.run[i] += uint8(b2i(order.Uniform(i) < late))
+	}
+	n.ChanceShort, n.ChanceError = late, 0
+}
+
 // bound finds the most the need can be, whether the bottles drawn on suffice
 // whatever the draw, as long as each is found, and for a single bottle the
 // random number above which its content is enough, so that most draws are
@@ -343,6 +354,7 @@ func (r *needRisk) bound() {
 		least += r.bottles[k].least()
 	}
 	r.certain = least > r.most
+	r.cover.onlyFinding = r.certain
 	if len(r.bottles) == 1 && !r.certain {
 		r.safe = r.bottles[0].enoughAbove(r.most)
 	}
@@ -520,15 +532,13 @@ func (a *assessor) weighFirst(risk *Risk) {
 	best := risk.WeighBefore
 	for k := range a.needs {
 		r := &a.needs[k]
-		if r.short == nil || r.chance == 0 || r.certain {
+		if r.short == nil || r.chance == 0 {
 			continue
 		}
 		for b := range r.bottles {
-			if !r.bottles[b].doubtful {
-				continue
-			}
 			if after := a.afterWeighing(r, b); after < best {
 				best, risk.WeighFirst = after, r.bottles[b].fit.bottle.Code
+				risk.LookOnly = !r.bottles[b].doubtful || r.certain
 			}
 		}
 	}
@@ -539,7 +549,10 @@ func (a *assessor) weighFirst(risk *Risk) {
 // known to the spread of a weighing.
 func (a *assessor) afterWeighing(r *needRisk, b int) float64 {
 	bottles := slices.Clone(r.bottles)
-	bottles[b].content = a.weighed(&bottles[b])
+	bottles[b].missing = 0 // what is weighed has been found
+	if bottles[b].doubtful {
+		bottles[b].content = a.weighed(&bottles[b])
+	}
 	bad := 0
 	for i := range r.short {
 		others := int(a.run[i]) - b2i(r.short[i])

@@ -20,6 +20,7 @@ func etherNeed(a *assessor, missing float64) *needRisk {
 	}
 	one := quantity{mean: 1, most: 1}
 	return &needRisk{
+		cover:   &coverage{},
 		charges: []float64{1200}, losses: []quantity{normal("loss", 1.07, 0.05)}, short: make([]bool, a.n),
 		bottles: []bottleRisk{
 			{fit: &x[0], content: normal("sealed", 1000, 0), strength: one, missing: missing, found: chem.NewStream(a.seed, "found a")},
@@ -71,6 +72,7 @@ func TestRiskOfTheRun(t *testing.T) {
 	for k := range 8 {
 		x := fit{pure: 1, bottle: &inventory.Bottle{}}
 		r := needRisk{
+			cover:   &coverage{},
 			charges: []float64{1}, losses: []quantity{{mean: 1}}, short: make([]bool, a.n),
 			bottles: []bottleRisk{{fit: &x, content: quantity{mean: 2, most: 2}, strength: quantity{mean: 1},
 				missing: 0.05, found: chem.NewStream(a.seed, string(rune('a'+k)))}},

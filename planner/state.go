@@ -10,8 +10,9 @@ import (
 
 // decide gives a need its state and says why:
 //
-//	covered  fit bottles cover it, and the chance of running short is within the limit
-//	tight    fit bottles cover it, but the chance exceeds the limit; or an order under way has to come first
+//	covered  fit bottles, or an order under way that is due before the run, cover it,
+//	         and the chance of running short is within the limit
+//	tight    they cover it, but the chance exceeds the limit
 //	late     an order under way, or the quickest offer, covers it only after the run's date
 //	unfit    only barred bottles would cover it
 //	short    nothing on the shelf or on its way covers it
@@ -21,8 +22,11 @@ func (m *matcher) decide(c *coverage, buys []Purchase, limit float64) {
 	case c.alloc.short <= 0:
 		m.decideCovered(c, limit)
 	case c.coming.covers && c.coming.on <= m.req.On:
-		n.State = Tight
-		n.Because = fmt.Sprintf("%s are not on the shelf; %s brings them before the run, if it is on time", shortText(c), c.coming.text)
+		n.State = Covered
+		if c.coming.late > limit {
+			n.State = Tight
+		}
+		n.Because = fmt.Sprintf("%s are not on the shelf; %s brings them before the run; it is late with a chance of %.2g %%", shortText(c), c.coming.text, 100*c.coming.late)
 	case c.coming.covers:
 		n.State, n.CoveredOn = Late, c.coming.on
 		n.Because = fmt.Sprintf("%s are short; %s covers them only after the run", shortText(c), c.coming.text)

@@ -2,6 +2,7 @@ package planner
 
 import (
 	"fmt"
+	"strings"
 
 	"stillroom/chem"
 	"stillroom/inventory"
@@ -43,8 +44,12 @@ func sentence(plan *Plan, covers []coverage) string {
 		return s + "."
 	}
 	s += "; the chief doubt is " + doubt
-	if w := plan.Risk.WeighFirst; w != "" && plan.Risk.WeighBefore-plan.Risk.WeighAfter >= 0.005 {
-		return s + fmt.Sprintf(". Weighing %s makes it %s.", w, percent(1-plan.Risk.WeighAfter))
+	if w := plan.Risk.WeighFirst; w != "" && plan.Risk.WeighBefore-plan.Risk.WeighAfter >= worthWeighing {
+		act := "Weighing"
+		if plan.Risk.LookOnly {
+			act = "Making sure of"
+		}
+		return s + fmt.Sprintf(". %s %s makes it %s.", act, w, percent(1-plan.Risk.WeighAfter))
 	}
 	return s + "."
 }
@@ -86,9 +91,12 @@ func doubtOf(plan *Plan, covers []coverage) string {
 			continue
 		}
 		if c.coming.covers && c.alloc.short > 0 {
-			return c.coming.text + " of " + c.need.Substance
+			return "whether " + c.need.Substance + " comes in time: " + strings.TrimSuffix(c.coming.text, ",")
 		}
 		b := doubtfulBottle(&c.need, plan.Risk.WeighFirst)
+		if c.onlyFinding {
+			return fmt.Sprintf("whether %s of %s is found, last seen in %s", b.Code, c.need.Substance, lastSeen(b))
+		}
 		return fmt.Sprintf("%s of %s, %s", b.Code, c.need.Substance, howMeasured(b))
 	}
 	if plan.Risk.Decides != "" {
@@ -111,6 +119,15 @@ func doubtfulBottle(n *Need, weigh string) inventory.Bottle {
 		}
 	}
 	return worst
+}
+
+// lastSeen is the month in which somebody had a bottle in hand.
+func lastSeen(b inventory.Bottle) string {
+	seen := max(b.MeasuredOn, b.Received, b.Opened)
+	if !seen.Set() {
+		return "a time nobody wrote down"
+	}
+	return seen.Time().Format("January")
 }
 
 // howMeasured says how and when a content was found out, without a figure.
