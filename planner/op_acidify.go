@@ -89,6 +89,7 @@ func (o *acidifyOp) tell(w *Workspace, v int, n float64) {
 	m := &w.p.matter[o.dose.component]
 	w.say("%.4g g of %s to pH %.3g", n*m.molar*1e3, m.name, o.pH)
 	w.sayHeat()
+	w.report.dosed(w)
 	w.caution("add the acid in portions with cooling; gas may be given off from carbonate")
 	w.derive(func() chem.Derivation {
 		return chem.Derivation{

@@ -87,8 +87,8 @@ func (o *addOp) run(w *Workspace) error {
 	}
 	w.settle(v)
 	w.fullest(v)
-	if o.limited {
-		w.celsius[v] = min(w.celsius[v], o.below.Celsius())
+	if o.limited && (w.heat > 0 || w.celsius[v] > o.below.Celsius()) {
+		w.celsius[v] = o.below.Celsius() // what is given off warms it to the limit
 	}
 	if o.iceAsk >= 0 {
 		w.useIce(o.iceAsk, w.heat)

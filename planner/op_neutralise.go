@@ -96,6 +96,7 @@ func (o *neutraliseOp) tell(w *Workspace, v int, n float64) {
 	m := &w.p.matter[o.dose.component]
 	w.say("%.4g g of %s to pH %.3g", n*m.molar*1e3, m.name, o.pH)
 	w.sayHeat()
+	w.report.dosed(w)
 	w.say("heats of dissolving and of precipitating are not counted")
 	w.derive(func() chem.Derivation {
 		cations, anions, _ := w.charges(v, o.pH)

@@ -130,6 +130,7 @@ func (o *quenchOp) tell(w *Workspace, x *reactionOf, left, needed, acid float64,
 		w.caution("%.3g mol of %s are still there: something the quench needs runs out", still, oxidant.name)
 	}
 	w.say("test that no oxidant is left before going on")
+	w.report.dosed(w)
 	w.sayHeat()
 	w.derive(func() chem.Derivation {
 		return chem.Derivation{

@@ -122,6 +122,7 @@ func Compile(r *Recipe) (*Program, error) {
 	c.addElements()
 	c.addPhases()
 	c.addDilutions()
+	c.noteGaps()
 	note(c.theory())
 	return c.p, errors.Join(faults...)
 }
