@@ -12,5 +12,5 @@
 // rounded only for people's eyes, by whoever shows it. The package reads no
 // clock, no file and no database; its tables are embedded from data/, one
 // source per row. Where a table has no value the functions say so with an
-// error and never fall back on a guess.
+// error; an estimate says that it is one.
 package chem
