@@ -108,6 +108,9 @@ func (s *Server) routes() http.Handler {
 	e.GET("/runs/:id/explain/:what", s.page(s.explain))
 
 	e.GET("/shelf", s.page(s.showShelf))
+	for i := range stockFormats {
+		e.GET("/"+stockFormats[i].file, s.page(s.exportStock(i)))
+	}
 	e.GET("/shelf/bottles/:code", s.page(s.showBottle))
 	e.POST("/shelf/bottles/:code/count", s.page(s.countBottle))
 	e.GET("/recipes", s.page(s.showRecipes))
