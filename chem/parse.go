@@ -65,8 +65,12 @@ func ParseDensity(text string) (Density, error) {
 	return above(parseQuantity(text, quantityKind[Density]{"density", "0.815 g/mL", densityUnit, false}))("density", text)
 }
 
-// ParseMolarMass reads a molar mass above nought: "98.072 g/mol". A bare number is
-// in g/mol.
+// lightest is below the molar mass of every substance, hydrogen atoms included, and
+// heaviest above that of every molecule with a formula.
+const lightest, heaviest = 1 * GramPerMole, 1e9 * GramPerMole
+
+// ParseMolarMass reads a molar mass from 1 to 10⁹ g/mol: "98.072 g/mol". A bare number
+// is in g/mol.
 func ParseMolarMass(text string) (MolarMass, error) {
 	unit := func(u string) (MolarMass, bool) {
 		if u == "" {
@@ -74,7 +78,11 @@ func ParseMolarMass(text string) (MolarMass, error) {
 		}
 		return molarMassUnit(u)
 	}
-	return above(parseQuantity(text, quantityKind[MolarMass]{"molar mass", "98.072 g/mol", unit, false}))("molar mass", text)
+	m, err := parseQuantity(text, quantityKind[MolarMass]{"molar mass", "98.072 g/mol", unit, false})
+	if err == nil && (m < lightest || m > heaviest) {
+		return 0, &QuantityError{"molar mass", text, "no substance is that light or that heavy", "give 1 to 1e9 g/mol", ErrOutOfRange}
+	}
+	return m, err
 }
 
 // ParseConcentration reads an amount concentration: "0.5 mol/L".
@@ -183,9 +191,21 @@ func ParseFraction(text string) (Fraction, error) {
 	return f, err
 }
 
+// mostExcess is a thousand times the theoretical amount, above which an excess is a
+// slip.
+const mostExcess = 1000
+
 // ParseExcess reads what is taken beyond the theoretical amount, as a share of it:
 // "20 %" and "0.2" and "1.2 equiv" are all 0.2.
 func ParseExcess(text string) (Fraction, error) {
+	f, err := parseExcess(text)
+	if err == nil && f > mostExcess {
+		return 0, &QuantityError{"excess", text, "more than a thousand times the theoretical amount", "write it as 20 %", ErrOutOfRange}
+	}
+	return f, err
+}
+
+func parseExcess(text string) (Fraction, error) {
 	n := readNumber(text)
 	if u := plainUnit(n.rest); n.err == nil && (u == "equiv" || u == "eq") {
 		if n.value < 1 {

@@ -59,8 +59,8 @@ func TestParseQuantitiesRefuse(t *testing.T) {
 		"120 %": ErrOutOfRange, "98": ErrOutOfRange, "5 % w/v": ErrUnknownUnit, "40 % v/v": ErrUnknownUnit, "40 vol%": ErrUnknownUnit, "-1 %": ErrOutOfRange})
 	checkRefuse(t, "ParseTemperature", ParseTemperature, map[string]error{"25": ErrNoUnit, "-300 °C": ErrOutOfRange, "-1 K": ErrOutOfRange, "25 g": ErrUnknownUnit})
 	checkRefuse(t, "ParseDensity", ParseDensity, map[string]error{"0 g/mL": ErrOutOfRange, "1.2": ErrNoUnit})
-	checkRefuse(t, "ParseMolarMass", ParseMolarMass, map[string]error{"0 g/mol": ErrOutOfRange, "5 g": ErrUnknownUnit})
-	checkRefuse(t, "ParseExcess", ParseExcess, map[string]error{"0.5 equiv": ErrOutOfRange, "-5 %": ErrOutOfRange})
+	checkRefuse(t, "ParseMolarMass", ParseMolarMass, map[string]error{"0 g/mol": ErrOutOfRange, "0.5 g/mol": ErrOutOfRange, "1e300": ErrOutOfRange, "5 g": ErrUnknownUnit})
+	checkRefuse(t, "ParseExcess", ParseExcess, map[string]error{"0.5 equiv": ErrOutOfRange, "1e9 %": ErrOutOfRange, "-5 %": ErrOutOfRange})
 	checkRefuse(t, "ParseDuration", ParseDuration, map[string]error{"1 h 30": ErrNoUnit, "1 fortnight": ErrUnknownUnit})
 	checkRefuse(t, "ParseNumber", ParseNumber, map[string]error{"4 g": ErrUnknownUnit, "1,234": ErrAmbiguous})
 }
