@@ -33,10 +33,43 @@ func (m *matcher) coverAll(asks []Ask, demands []demand, limiting string) []cove
 	}
 	slices.SortStableFunc(order, func(i, j int) int { return cmp.Compare(laxity(&demands[i]), laxity(&demands[j])) })
 	prices := allocatePoints(m.policy)
-	for _, i := range order {
-		covers[i] = m.cover(asks, demands[i], prices, limiting)
+	for k := 0; k < len(order); k++ {
+		i := order[k]
+		covers[i] = coverage{demand: demands[i], found: m.match(&demands[i]), need: demands[i].need(asks)}
+		together := []*coverage{&covers[i]}
+		if !demands[i].alone {
+			together = m.likewise(asks, covers, demands, order, k)
+			order = slices.DeleteFunc(order, func(j int) bool { return j != i && covers[j].found != nil && slices.Contains(together, &covers[j]) })
+		}
+		m.cover(asks, together, prices, limiting)
 	}
 	return covers
+}
+
+// likewise finds, behind the demand at order[k], those of the same substance
+// that the same bottles are fit for: they are covered together, so that no
+// bottle is opened twice over.
+func (m *matcher) likewise(asks []Ask, covers []coverage, demands []demand, order []int, k int) []*coverage {
+	first := &covers[order[k]]
+	together := []*coverage{first}
+	for _, j := range order[k+1:] {
+		if !demands[j].known || demands[j].substance.ID != first.demand.substance.ID || demands[j].count != first.demand.count {
+			continue
+		}
+		found := m.match(&demands[j])
+		if !sameFits(found.fits, first.found.fits) {
+			continue
+		}
+		covers[j] = coverage{demand: demands[j], found: found, need: demands[j].need(asks)}
+		together = append(together, &covers[j])
+	}
+	return together
+}
+
+func sameFits(a, b []fit) bool {
+	return slices.EqualFunc(a, b, func(x, y fit) bool {
+		return x.bottle == y.bottle && x.pure == y.pure && x.free == y.free && x.dilute == y.dilute
+	})
 }
 
 // laxity is small for a strict acceptance. Substances don't compete with each
@@ -50,14 +83,45 @@ func laxity(d *demand) float64 {
 	return lax + float64(len(a.Substitutes))
 }
 
-func (m *matcher) cover(asks []Ask, d demand, prices points, limiting string) coverage {
-	c := coverage{demand: d, found: m.match(&d), need: d.need(asks)}
-	lines := m.lines(&c, d.name == limiting || d.asksFor(asks, limiting))
-	c.first = firstLife(lines)
-	c.alloc = allocate(d.amount, lines, prices)
-	m.writeDraws(&c, asks)
-	m.writeAmounts(&c)
-	return c
+// cover allocates demands that the same bottles are fit for as one, and hands
+// what is drawn to them in their order.
+func (m *matcher) cover(asks []Ask, together []*coverage, prices points, limiting string) {
+	first := together[0]
+	oneLot, amount := false, 0.0
+	for _, c := range together {
+		oneLot = oneLot || c.demand.name == limiting || c.demand.asksFor(asks, limiting)
+		amount += c.demand.amount
+	}
+	lines := m.lines(first, oneLot)
+	whole := allocate(amount, lines, prices)
+	for _, c := range together {
+		c.first = firstLife(lines)
+		c.alloc = whole.part(c.demand.amount)
+		m.writeDraws(c, asks)
+		m.writeAmounts(c)
+	}
+}
+
+// part splits the next amount off an allocation; what is left of it stays.
+func (a *allocation) part(amount float64) allocation {
+	p := allocation{proven: a.proven, mixed: a.mixed, cost: a.cost}
+	left := amount
+	for left > amount*enough && len(a.taken) > 0 {
+		t := &a.taken[0]
+		use := min(left, t.amount)
+		if t.amount-use <= t.amount*enough {
+			use = t.amount
+		}
+		p.taken = append(p.taken, taken{t.line, use})
+		left -= use
+		if t.amount -= use; t.amount <= 0 {
+			a.taken = a.taken[1:]
+		}
+	}
+	if left > amount*enough {
+		p.short = left
+	}
+	return p
 }
 
 // asksFor reports whether one of the demand's asks goes by that name.

@@ -242,6 +242,17 @@ func (p *planning) match() error {
 	return nil
 }
 
+// carried are the needs without what is drawn at a tank or a bin: that stays
+// where it is.
+func (p *planning) carried(needs []Need) []Need {
+	most := p.policy.value("prior.missing.most-size")
+	needs = slices.Clone(needs)
+	for i := range needs {
+		needs[i].Draws = slices.DeleteFunc(slices.Clone(needs[i].Draws), func(d Draw) bool { return standsStill(&d.Bottle, &d.Form, most) })
+	}
+	return needs
+}
+
 func (p *planning) relaxed(asks []Ask) []Ask {
 	if p.relax == nil {
 		return asks
@@ -320,7 +331,14 @@ func (p *planning) sheets(plan *Plan) {
 	plan.Waste = SortWaste(p.walk.Waste, p.shelf.Carboys, p.policy.value("fill.waste"))
 	plan.Hazards = NoteHazards(plan.Needs, plan.Steps, plan.Waste)
 	plan.Pairs = PairsOf(plan.Needs, plan.Steps)
-	carriers, err := CarriersFor(plan.Needs, CarrierLimits{
+	for _, w := range plan.Waste {
+		if !w.Fits {
+			plan.Findings = append(plan.Findings, Finding{Kind: "no-room-for-waste", Severity: Warning,
+				Text:  fmt.Sprintf("no carboy takes %s of %s: %s", massText(w.Mass), w.Stream, firstOf(w.Note, "none is kept for that stream")),
+				Would: "empty or provide a carboy before the run; no work starts before its disposal is planned"})
+		}
+	}
+	carriers, err := CarriersFor(p.carried(plan.Needs), CarrierLimits{
 		MostMass: chem.Mass(p.policy.value("carrier.mass")), MostCount: int(p.policy.value("carrier.count")),
 	})
 	plan.Carriers = carriers

@@ -170,7 +170,7 @@ func (a *assessor) needRisk(c *coverage, asks []Ask, do func(step int) string) n
 		r.losses = append(r.losses, a.loss(asks[i], do(asks[i].Step), name))
 	}
 	for _, t := range c.alloc.taken {
-		r.bottles = append(r.bottles, a.bottleRisk(&c.found.fits[t.line]))
+		r.bottles = append(r.bottles, a.bottleRisk(&c.found.fits[t.line], t.amount/c.found.fits[t.line].pure))
 	}
 	return r
 }
@@ -217,12 +217,14 @@ func shifted(base, mean, sd float64) chem.Dist {
 	return shiftedLogNormal{base, l}
 }
 
-func (a *assessor) bottleRisk(x *fit) bottleRisk {
+// bottleRisk sets up a bottle of which a need takes own ledger units.
+func (a *assessor) bottleRisk(x *fit, own float64) bottleRisk {
 	b := x.bottle
 	r := bottleRisk{
 		fit: x, missing: a.missing(x), found: chem.NewStream(a.seed, "found "+b.Code),
-		off: float64(b.Content - x.free), // promised, taken by other needs, dead
 	}
+	// What isn't for this need: promised, taken by other needs, dead.
+	r.off = float64(x.promised+a.m.used[b.ID]+a.m.dead(x)) - own
 	r.content, r.doubtful = a.content(x)
 	r.strength = quantity{stream: chem.NewStream(a.seed, "assay "+b.Code), mean: 1, least: 1, most: 1}
 	if x.top > x.strength && b.LotAssay == 0 && x.form.Measure != inventory.ByCount && !x.aged {
@@ -233,8 +235,7 @@ func (a *assessor) bottleRisk(x *fit) bottleRisk {
 
 // missing is the chance that a bottle isn't found, by when it was last seen.
 func (a *assessor) missing(x *fit) float64 {
-	size := float64(x.bottle.Size)
-	if x.form.Measure != inventory.ByCount && size*1e-9 >= a.m.policy.value("prior.missing.most-size")*1e-3*massOrVolume(x.form) {
+	if standsStill(x.bottle, x.form, a.m.policy.value("prior.missing.most-size")) {
 		return 0
 	}
 	seen := max(x.bottle.MeasuredOn, x.bottle.Received, x.bottle.Opened)
@@ -247,13 +248,16 @@ func (a *assessor) missing(x *fit) float64 {
 	return a.m.policy.value("prior.missing.older")
 }
 
-// massOrVolume is 1 for volumes, counted in m³, and 1000 for masses in kg, so
-// that litres and kilograms are compared with the same number.
-func massOrVolume(form *inventory.StockForm) float64 {
-	if form.Measure == inventory.ByMass {
-		return 1000
+// standsStill reports whether a container is so large, in litres or kilograms,
+// that it is neither mislaid nor carried.
+func standsStill(b *inventory.Bottle, form *inventory.StockForm, most float64) bool {
+	switch form.Measure {
+	case inventory.ByMass:
+		return float64(inventory.MassUnits(b.Size)) >= most
+	case inventory.ByVolume:
+		return inventory.VolumeUnits(b.Size).Litres() >= most
 	}
-	return 1
+	return false
 }
 
 // content is the distribution of what is in a bottle, by how that was found
@@ -321,6 +325,9 @@ func (a *assessor) assessNeed(r *needRisk, share float64) {
 	}
 	n.ChanceShort = r.chance
 	n.ChanceError = math.Sqrt(r.chance * (1 - r.chance) / float64(a.n))
+	if r.certain && len(r.bottles) == 1 {
+		n.ChanceShort, n.ChanceError = r.bottles[0].missing, 0 // no need of draws
+	}
 	if r.chance > a.limit && !r.certain {
 		n.CoverWith = chem.Mass(r.lacking(1 - a.limit))
 	}
@@ -461,7 +468,7 @@ func (a *assessor) nameSpares(r *needRisk, share float64) {
 		if x == nil {
 			break
 		}
-		spare := a.bottleRisk(x)
+		spare := a.bottleRisk(x, 0)
 		was := r.chance
 		bottles := append(slices.Clone(r.bottles), spare)
 		r.drawSpare(bottles)

@@ -114,6 +114,8 @@ func (m *matcher) decideShort(c *coverage, buys []Purchase) {
 		n.Because += "; there is no bottle of it"
 	case len(c.found.fits) == 0:
 		n.Because += "; " + c.barredText()
+	case len(n.Draws) == 0:
+		n.Because += "; other steps of the run use up the fit bottles"
 	default:
 		n.Because += fmt.Sprintf("; all fit bottles together (%s) give the rest", drawCodes(n.Draws))
 	}
