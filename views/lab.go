@@ -11,6 +11,10 @@ type Lab interface {
 	Load(ctx context.Context) (*inventory.Shelf, error)
 	Ledger(ctx context.Context, code string, limit int) ([]inventory.Entry, error)
 
+	Import(ctx context.Context, t inventory.Table, m inventory.Mapping, o inventory.ImportOptions) (inventory.ImportReport, error)
+	Imports(ctx context.Context) ([]inventory.StockImport, error)
+	UndoImport(ctx context.Context, id int64, act inventory.Act) error
+
 	AddRun(ctx context.Context, r inventory.Run, act inventory.Act) (inventory.Run, error)
 	SetTarget(ctx context.Context, id, targetUG int64, on inventory.Date, version int64, act inventory.Act) (inventory.Run, error)
 	SetState(ctx context.Context, id int64, state inventory.RunState, version int64, act inventory.Act) (inventory.Run, error)

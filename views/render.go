@@ -126,6 +126,7 @@ var templateFuncs = template.FuncMap{
 	"money":    moneyText,
 	"number":   numberText,
 	"formula":  formulaHTML,
+	"sentence": sentence,
 	"state":    stateMark,
 	"severity": severityWord,
 	"pair":     pairText,

@@ -111,6 +111,9 @@ func (s *Server) routes() http.Handler {
 	for i := range stockFormats {
 		e.GET("/"+stockFormats[i].file, s.page(s.exportStock(i)))
 	}
+	e.GET("/shelf/import", s.page(s.showImport))
+	e.POST("/shelf/import", s.page(s.takeImport))
+	e.POST("/shelf/import/:id/undo", s.page(s.undoImport))
 	e.GET("/shelf/bottles/:code", s.page(s.showBottle))
 	e.POST("/shelf/bottles/:code/count", s.page(s.countBottle))
 	e.GET("/recipes", s.page(s.showRecipes))

@@ -163,6 +163,7 @@ func TestRoutes(t *testing.T) {
 		{"/shelf.csv", 200, ""},
 		{"/shelf.xlsx", 200, ""},
 		{"/shelf.json", 200, ""},
+		{"/shelf/import", 200, "Bring in a stock list"},
 		{"/shelf/bottles/NOSUCH", 404, "No bottle “NOSUCH”"},
 		{"/recipes", 200, "Recipes"},
 		{"/recipes/pentanoic-acid-dichromate", 200, "Pentanoic acid from 1-pentanol with acid dichromate"},
@@ -229,7 +230,7 @@ func (s *Server) firstBottle(t testing.TB) string {
 func TestPagesAreWellFormed(t *testing.T) {
 	s := newSampleServer(t)
 	for _, address := range []string{"/slate", "/runs/new", "/runs/1", "/runs/1?wanted=x", "/runs/1/promise", "/runs/1/hazards", "/runs/1/answers", "/runs/1/explain/need-2",
-		"/shelf", "/shelf?find=zzzz", "/shelf/bottles/" + s.firstBottle(t), "/recipes", "/recipes/pentanoic-acid-dichromate",
+		"/shelf", "/shelf?find=zzzz", "/shelf/import", "/shelf/bottles/" + s.firstBottle(t), "/recipes", "/recipes/pentanoic-acid-dichromate",
 		"/shortfalls", "/buying", "/waste", "/reckoner", "/reckoner/amount?mass=50+g", "/reckoner/amount?mass=x", "/nowhere"} {
 		doc := parse(t, get(t, s, address))
 		if lang, _ := attribute(one(t, doc, "html"), "lang"); lang != "en" {
@@ -388,7 +389,7 @@ func TestUserTextIsEscaped(t *testing.T) {
 
 // The papers carry what the address asks and say what they are.
 func TestPapers(t *testing.T) {
-	s := newDemoServer(t)
+	s := newSampleServer(t)
 	for _, file := range []string{"pick-list.pdf", "hazard-sheet.pdf", "requisition.pdf"} {
 		w := get(t, s, "/runs/1/"+file)
 		if kind := w.Header().Get("Content-Type"); w.Code != 200 || kind != "application/pdf" || !strings.HasPrefix(w.Body.String(), "%PDF-") {
