@@ -127,22 +127,18 @@ func runAmount(_ context.Context, args Args) (Answer, error) {
 	if err != nil {
 		return Answer{}, err
 	}
-	purity := chem.Fraction(1)
-	if args.Has("purity") {
-		if purity, err = args.Fraction("purity"); err != nil {
-			return Answer{}, err
-		}
-		if purity == 0 {
-			return Answer{}, &KeyError{Key: "purity", Text: args["purity"], What: "nothing of the substance in it", Wanted: "give a purity above nought", Cause: chem.ErrOutOfRange}
-		}
+	purity, notes, err := purityOf(args, s)
+	if err != nil {
+		return Answer{}, err
 	}
+	s = densityAtPurity(s, purity)
 	mass, err := amountMass(args, s, molarMass, purity)
 	if err != nil {
 		return Answer{}, err
 	}
 	n, derivation := chem.AmountIn(s.Name, mass, purity, molarMass)
 	derivation.Inputs[2].Source = s.Sources["molar_mass"]
-	answer := Answer{Derivation: derivation, Results: []Result{
+	answer := Answer{Derivation: derivation, Notes: notes, Results: []Result{
 		Number("amount", float64(n), "mol"),
 		Number("mass", mass.Grams(), "g"),
 		Number("pure_mass", float64(purity)*mass.Grams(), "g"),
@@ -152,6 +148,46 @@ func runAmount(_ context.Context, args Args) (Answer, error) {
 		answer.Notes = append(answer.Notes, densityNote(s))
 	}
 	return answer, nil
+}
+
+// purityOf reads the purity, which may be left out of what isn't sold as a solution.
+func purityOf(args Args, s chem.Substance) (chem.Fraction, []string, error) {
+	if !args.Has("purity") {
+		if s.State == "liquid (solution)" {
+			return 0, nil, &KeyError{Key: "purity", What: s.Name + " is sold as a solution, and no strength is given",
+				Wanted: "give its strength, such as purity=\"37 %\"", Cause: ErrMissingKey}
+		}
+		return 1, []string{"taken as pure, since no purity is given"}, nil
+	}
+	purity, err := args.Fraction("purity")
+	if err == nil && purity == 0 {
+		return 0, nil, &KeyError{Key: "purity", Text: args["purity"], What: "nothing of the substance in it",
+			Wanted: "give a purity above nought", Cause: chem.ErrOutOfRange}
+	}
+	return purity, nil, err
+}
+
+// nearlyPure is the purity from which the density of the pure substance stands in for
+// that of the material: a liquid is sold as pure from about there on.
+const nearlyPure = 0.95
+
+// densityAtPurity puts the density of the aqueous solution in place of that of the pure
+// substance where the table has one. Where it hasn't, and the material is far from pure,
+// there is no density: somebody has to give it.
+func densityAtPurity(s chem.Substance, purity chem.Fraction) chem.Substance {
+	if purity == 1 || s.Sources["density"] == given {
+		return s
+	}
+	const room = 20 // °C, at which volumes are measured unless said otherwise
+	d, err := chem.SolutionDensity(s.CAS, purity, chem.Celsius(room))
+	switch {
+	case err == nil:
+		s.Density, s.DensityAt = d, chem.Celsius(room)
+		s.Sources["density"] = chem.SolutionDensitySource(s.CAS, purity, chem.Celsius(room)) + ", as an aqueous solution"
+	case purity < nearlyPure:
+		s.Density = 0
+	}
+	return s
 }
 
 // amountSubstance reads formula or substance, exactly one of them.

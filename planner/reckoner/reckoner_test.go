@@ -120,6 +120,10 @@ func TestFormulaSums(t *testing.T) {
 	// The person's own numbers win over the table's.
 	near(t, "own M", number(t, "amount", "amount", "substance=unheard of", "mass=10 g", "molar_mass=50"), 0.2, 1e-12)
 	near(t, "V and density", number(t, "amount", "mass", "substance=unheard of", "volume=10 mL", "molar_mass=50", "density=1.2 g/mL"), 12, 1e-9)
+	// Org. Synth. 1929, 9, 52: 54.3 mL of sulfuric acid are 100 g and, at 95 %, 0.97 mol.
+	near(t, "acid", number(t, "amount", "amount", "substance=sulfuric acid", "volume=54.3 mL", "purity=95 %"), 0.97, 0.01)
+	// 37 % hydrochloric acid is 12.0 mol/L (reagent tables, from memory).
+	near(t, "HCl", number(t, "amount", "amount", "substance=HCl", "volume=1 L", "purity=37 %"), 12.0, 0.1)
 	near(t, "purity", number(t, "amount", "pure_mass", "substance=NaOH", "mass=10 g", "purity=97 %"), 9.7, 1e-9)
 }
 
@@ -140,7 +144,9 @@ func TestFormulaSumsRefuse(t *testing.T) {
 		{"amount", []string{"substance=NaOH", "mass=5"}, chem.ErrNoUnit, "50 g"},
 		{"amount", []string{"substance=NaOH", "mass=1,234 g"}, chem.ErrAmbiguous, "1234"},
 		{"amount", []string{"substance=NaOH", "mass=5 g", "purity=120 %"}, chem.ErrOutOfRange, "100 %"},
-		{"amount", []string{"substance=hydrochloric acid", "volume=5 mL"}, chem.ErrNoData, "density="},
+		{"amount", []string{"substance=hydrochloric acid", "volume=5 mL"}, ErrMissingKey, "37 %"},
+		{"amount", []string{"substance=hydrochloric acid", "mass=5 g"}, ErrMissingKey, "37 %"},
+		{"amount", []string{"substance=1-pentanol", "volume=5 mL", "purity=50 %"}, chem.ErrNoData, "density="},
 		{"amount", []string{"substance=NaOH"}, ErrMissingKey, "mass"},
 	} {
 		args, err := ParseArgs(test.pairs)
