@@ -117,6 +117,9 @@ func SolutionDensity(cas string, w Fraction, t Temperature) (Density, error) {
 	if rho, ok := table.moved(float64(w), t); ok {
 		return Density(rho), nil
 	}
+	if c := table.nearest(float64(w), t); c != nil && math.Abs(float64(t-c.at)) <= sameTemperature {
+		return Density(c.rho(float64(w))), nil
+	}
 	return 0, table.refuse(w, t)
 }
 
@@ -139,7 +142,10 @@ func SolutionDensitySource(cas string, w Fraction, t Temperature) string {
 	if _, ok := d.tabulated(float64(w), t); ok {
 		return c.sourceAt(float64(w))
 	}
-	if d.model.covers(float64(w), c.at) {
+	switch {
+	case !d.model.covers(float64(w), t):
+		return c.sourceAt(float64(w))
+	case d.model.covers(float64(w), c.at):
 		return c.sourceAt(float64(w)) + "; carried to this temperature by the " + model
 	}
 	return model
@@ -171,13 +177,11 @@ func (d *densityTable) tabulated(w float64, t Temperature) (float64, bool) {
 		}
 	}
 	switch {
+	case below != nil && below.at == t:
+		return below.rho(w), true
 	case below != nil && above != nil:
 		share := float64((t - below.at) / (above.at - below.at))
 		return below.rho(w) + share*(above.rho(w)-below.rho(w)), true
-	case below != nil && t-below.at <= sameTemperature:
-		return below.rho(w), true
-	case above != nil && above.at-t <= sameTemperature:
-		return above.rho(w), true
 	}
 	return 0, false
 }
