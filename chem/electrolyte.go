@@ -78,7 +78,7 @@ func ElectrolyteOf(name, cas string, f Formula) (Electrolyte, error) {
 		acid, n = acidIn(counts)
 	}
 	isSalt := parts.Strong > 0 || len(parts.Acids) > 0 || f.Charge() != 0
-	if acid == nil || (!isSalt && acid.isOrganic()) {
+	if acid == nil || (!isSalt && acid.isOrganic() && !acid.toldApart(name, f.String())) {
 		return Electrolyte{}, noAcid(name, "it is no acid or base of the table")
 	}
 	parts.Acids = append(parts.Acids, AcidCount{acid, n})
@@ -104,6 +104,40 @@ func noAcid(name, why string) error {
 // isOrganic reports whether other molecules than this acid may have its
 // composition, as methyl formate has that of acetic acid.
 func (a *Acid) isOrganic() bool { return a.Formula.Count("C") > 0 && a.CAS != "463-79-6" }
+
+// toldApart reports whether an organic acid is told from its isomers by the name, as that
+// of its hydrate, or by a formula written with its carboxyl group.
+func (a *Acid) toldApart(name, formula string) bool {
+	return strings.HasPrefix(strings.ToLower(name), a.Name) ||
+		strings.Contains(formula, "COOH") || strings.Contains(formula, "CO2H")
+}
+
+// saltCations are the ions that the name of a salt may begin with.
+var saltCations = map[string]string{"lithium": "Li", "sodium": "Na", "potassium": "K", "rubidium": "Rb", "caesium": "Cs", "ammonium": "NH4"}
+
+// ElectrolyteOfSalt takes a salt apart by its name, such as "sodium pentanoate": one
+// cation of charge one and the anion of an acid with one proton that the table has.
+func ElectrolyteOfSalt(name string) (Electrolyte, bool) {
+	first, rest, _ := strings.Cut(strings.ToLower(strings.TrimSpace(name)), " ")
+	cation := saltCations[first]
+	stem, isAnion := strings.CutSuffix(rest, "ate")
+	if cation == "" || !isAnion {
+		return Electrolyte{}, false
+	}
+	for _, a := range acids().byCAS {
+		if a.Name != stem+"ic acid" || a.Charge != 0 || len(a.PKa) != 1 {
+			continue
+		}
+		salt := Electrolyte{Acids: []AcidCount{{a, 1}}}
+		if ammonia, _ := AcidByCAS("7664-41-7"); cation == "NH4" {
+			salt.Acids = append(salt.Acids, AcidCount{ammonia, 1})
+		} else {
+			salt.Strong, salt.Ions = 1, 0.5
+		}
+		return salt, true
+	}
+	return Electrolyte{}, false
+}
 
 // ammoniumIn counts the ammonium ions that a formula is written with.
 func ammoniumIn(text string) float64 {

@@ -29,6 +29,8 @@ func TestElectrolyteOf(t *testing.T) {
 		{"K2Cr2O7", "chromic acid", 2, 2},
 		{"CrO3", "chromic acid", 1, 0},
 		{"Na2S2O5", "sulfurous acid", 2, 2},
+		{"CH3COOH", "acetic acid", 1, 0},
+		{"CH3COONa", "acetic acid", 1, 1},
 		{"Cl^-", "hydrogen chloride", 1, 0},
 		{"Na^+", "", 0, 1},
 	}
@@ -50,6 +52,18 @@ func TestElectrolyteOf(t *testing.T) {
 		f, _ := ParseFormula(text)
 		if got, err := ElectrolyteOf(text, "", f); !errors.Is(err, ErrNoData) {
 			t.Errorf("%s: %+v, %v; want a refusal", text, got, err)
+		}
+	}
+	hydrate, _ := ParseFormula("C2H2O4·2H2O")
+	if got, err := ElectrolyteOf("oxalic acid dihydrate", "6153-56-6", hydrate); err != nil || len(got.Acids[0].Acid.PKa) != 2 {
+		t.Errorf("oxalic acid dihydrate: %+v, %v", got, err)
+	}
+	if got, ok := ElectrolyteOfSalt("Sodium pentanoate"); !ok || got.Strong != 1 || got.Acids[0].Acid.Name != "pentanoic acid" {
+		t.Errorf("sodium pentanoate: %+v, %v", got, ok)
+	}
+	for _, name := range []string{"sodium carbonate", "sodium", "iron pentanoate", "sodium citrate", "pentanoate"} {
+		if got, ok := ElectrolyteOfSalt(name); ok {
+			t.Errorf("%s: %+v", name, got)
 		}
 	}
 	ammonium, _ := ParseFormula("(NH4)2SO4")

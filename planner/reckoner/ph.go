@@ -192,15 +192,7 @@ func (m *mixture) addOwn(p chem.Protolyte, c chem.Concentration) {
 
 // dissolve adds a substance of the table, or a formula.
 func (m *mixture) dissolve(name string, c chem.Concentration, t chem.Temperature) error {
-	s, ok := chem.LookupSubstance(name)
-	if !ok {
-		s = &chem.Substance{Name: name, Formula: name}
-	}
-	f, err := chem.ParseFormula(s.Formula)
-	if err != nil && !ok {
-		return &chem.NoDataError{What: "acid dissociation", Of: name, Advice: fmt.Sprintf("check the spelling, or give pka=%q", name+": 4.76")}
-	}
-	e, err := chem.ElectrolyteOf(s.Name, s.CAS, f)
+	e, err := electrolyteOf(name)
 	if err != nil {
 		return err
 	}
@@ -215,6 +207,22 @@ func (m *mixture) dissolve(name string, c chem.Concentration, t chem.Temperature
 		m.add(chem.Protolyte{Name: a.Acid.Name, PKa: pKa, Charge: a.Acid.Charge, C: c * chem.Concentration(a.Count)}, note)
 	}
 	return nil
+}
+
+// electrolyteOf takes a substance of the table, a formula or a salt by name apart.
+func electrolyteOf(name string) (chem.Electrolyte, error) {
+	if s, ok := chem.LookupSubstance(name); ok {
+		f, _ := chem.ParseFormula(s.Formula)
+		return chem.ElectrolyteOf(s.Name, s.CAS, f)
+	}
+	if e, ok := chem.ElectrolyteOfSalt(name); ok {
+		return e, nil
+	}
+	f, err := chem.ParseFormula(name)
+	if err != nil {
+		return chem.Electrolyte{}, &chem.NoDataError{What: "acid dissociation", Of: name, Advice: fmt.Sprintf("check the spelling, or give pka=%q", name+": 4.76")}
+	}
+	return chem.ElectrolyteOf(name, "", f)
 }
 
 func joinNumbers(xs []float64) string {
