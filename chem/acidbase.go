@@ -89,6 +89,53 @@ type balance struct {
 	// gas above the solution; its ions then grow with pH.
 	carbonDioxide float64
 	carbonPK      [2]float64
+	// constants are the dissociation constants of all steps of the mix, in order, as
+	// powers, where raised is set; else they are worked out as they are needed.
+	constants [mostSteps]float64
+	raised    bool
+}
+
+// mostSteps is how many dissociation steps solve keeps as powers without allocating;
+// a longer mixture is solved as well, only slower.
+const mostSteps = 48
+
+// raise works out the constants of all steps as powers, where they fit.
+func (b *balance) raise() {
+	n := 0
+	b.raised = false
+	for i := range b.mix {
+		p := &b.mix[i]
+		for step, pKa := range p.PKa {
+			if n == mostSteps {
+				return
+			}
+			b.constants[n] = pow10(daviesShift(p.Charge-step, b.davies) - pKa)
+			n++
+		}
+	}
+	b.raised = true
+}
+
+// weakCharge returns the charge of all protolytes where inverse is 1/[H⁺]: meanCharge
+// over the mix with its constants raised already.
+func (b *balance) weakCharge(inverse float64) float64 {
+	var charge float64
+	next := 0
+	for i := range b.mix {
+		p := &b.mix[i]
+		weight, sum, lost := 1.0, 1.0, 0.0
+		for step := range p.PKa {
+			weight *= b.constants[next] * inverse
+			next++
+			sum += weight
+			lost += weight * float64(step+1)
+			if sum > 1e100 {
+				weight, sum, lost = weight/sum, 1, lost/sum
+			}
+		}
+		charge += float64(p.C) * (float64(p.Charge) - lost/sum)
+	}
+	return charge
 }
 
 // at returns the net charge at a pH; it falls with pH throughout.
@@ -96,9 +143,13 @@ func (b *balance) at(pH float64) float64 {
 	const litre = 1e3 // mol/L to mol/m³
 	charge := b.strong +
 		litre*pow10(b.davies-pH) - litre*pow10(pH-b.pKw+b.davies)
-	for i := range b.mix {
-		p := &b.mix[i]
-		charge += float64(p.C) * meanCharge(p.PKa, p.Charge, pH, b.davies)
+	if b.raised {
+		charge += b.weakCharge(pow10(pH))
+	} else {
+		for i := range b.mix {
+			p := &b.mix[i]
+			charge += float64(p.C) * meanCharge(p.PKa, p.Charge, pH, b.davies)
+		}
 	}
 	if b.carbonDioxide > 0 {
 		one, two := b.carbonIons(pH)
@@ -148,6 +199,8 @@ const pHTolerance = 1e-11
 // Chandrupatla, Adv. Eng. Software 28 (1997) 145: inverse quadratic
 // interpolation where it is sound, halving where it isn't.
 func (b *balance) solve() (float64, error) {
+	b.raise()
+	defer func() { b.raised = false }()
 	x1, x2 := lowestPH, highestPH
 	f1, f2 := b.at(x1), b.at(x2)
 	if f1 < 0 || f2 > 0 {

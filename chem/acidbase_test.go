@@ -73,3 +73,18 @@ func TestPHAllocatesNothing(t *testing.T) {
 		t.Errorf("PH allocates %v times", n)
 	}
 }
+
+// TestLongMixtures checks that a mixture with more steps than are kept ready gives the
+// same pH as one with its acids counted together.
+func TestLongMixtures(t *testing.T) {
+	var long []Protolyte
+	for range 20 {
+		long = append(long, Protolyte{"citric acid", []float64{3.13, 4.76, 6.40}, 0, litre(0.005)})
+	}
+	short := []Protolyte{{"citric acid", []float64{3.13, 4.76, 6.40}, 0, litre(0.1)}}
+	a, err1 := PH(long, litre(0.15), Celsius(25))
+	b, err2 := PH(short, litre(0.15), Celsius(25))
+	if err1 != nil || err2 != nil || math.Abs(a-b) > 1e-9 {
+		t.Errorf("pH %v, %v in twenty parts, %v, %v in one", a, err1, b, err2)
+	}
+}
