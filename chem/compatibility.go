@@ -78,8 +78,9 @@ type chartRow struct {
 	note, source string
 }
 
-var epaChart = sync.OnceValue(func() []chartRow {
-	var rows []chartRow
+// epaChart holds the rows of the chart by their two groups, smaller first.
+var epaChart = sync.OnceValue(func() map[[2]int][]chartRow {
+	rows := map[[2]int][]chartRow{}
 	for _, row := range readTable("incompatibility.csv") {
 		if row.text("chart") != "EPA" {
 			continue
@@ -89,7 +90,9 @@ var epaChart = sync.OnceValue(func() []chartRow {
 		if errA != nil || errB != nil {
 			panic("chem: incompatibility.csv: groups " + row.text("group_a") + ", " + row.text("group_b"))
 		}
-		rows = append(rows, chartRow{a, b, row.text("group_a_name"), row.text("group_b_name"), strings.Fields(row.text("codes")), row.text("note"), row.text("source")})
+		key := [2]int{min(a, b), max(a, b)}
+		rows[key] = append(rows[key], chartRow{a, b, row.text("group_a_name"), row.text("group_b_name"),
+			strings.Fields(row.text("codes")), row.text("note"), row.text("source")})
 	}
 	return rows
 })
@@ -104,12 +107,10 @@ const waterReactive = 107
 // unknown": a pair that is absent is not evidence that the pair is harmless.
 func IncompatibleReactants(rs []Reactant) []Incompatibility {
 	var found []Incompatibility
-	for i, a := range rs {
-		for _, b := range rs[i+1:] {
-			if a.Name == b.Name {
-				continue
-			}
-			if inc, ok := pairOf(a, b, rs); ok {
+	profiles := profilesOf(rs)
+	for i := range profiles {
+		for k := i + 1; k < len(profiles); k++ {
+			if inc, ok := pairOf(profiles[i], profiles[k]); ok {
 				found = append(found, inc)
 			}
 		}
@@ -124,53 +125,93 @@ func IncompatibleReactants(rs []Reactant) []Incompatibility {
 	return found
 }
 
-// pairOf gathers every row that speaks of a pair into one.
-func pairOf(a, b Reactant, all []Reactant) (Incompatibility, bool) {
-	inc := Incompatibility{A: a.Name, B: b.Name}
-	var groupsA, groupsB, notes, sources []string
-	add := func(nameA, nameB, note, source string, codes []string) {
-		groupsA, groupsB = appendNew(groupsA, nameA), appendNew(groupsB, nameB)
-		inc.Codes = appendNew(inc.Codes, codes...)
-		if note != "" {
-			notes = appendNew(notes, note)
-		}
-		sources = appendNew(sources, source)
-	}
-	for _, row := range supplementRows() {
-		if row.a(a, all) && row.b(b, all) {
-			add(row.nameA, row.nameB, row.note, row.source, row.codes)
-		} else if row.a(b, all) && row.b(a, all) {
-			add(row.nameB, row.nameA, row.note, row.source, row.codes)
-		}
-	}
-	for _, row := range epaChart() {
-		if row.mild(a, b) {
-			continue
-		}
-		if slices.Contains(a.Groups, row.a) && slices.Contains(b.Groups, row.b) {
-			add(row.nameA, row.nameB, row.note, row.source, row.codes)
-		} else if slices.Contains(a.Groups, row.b) && slices.Contains(b.Groups, row.a) {
-			add(row.nameB, row.nameA, row.note, row.source, row.codes)
-		}
-	}
-	if slices.Contains(a.Groups, waterReactive) != slices.Contains(b.Groups, waterReactive) && len(inc.Codes) == 0 {
-		add("Water Reactive Substances", "any chemical", "row 107: extremely reactive", "EPA-600/2-80-076 row 107 (read)", []string{"X"})
-	}
-	if len(inc.Codes) == 0 {
-		return Incompatibility{}, false
-	}
-	sort.SliceStable(inc.Codes, func(i, j int) bool { return gravity(inc.Codes[i:i+1]) > gravity(inc.Codes[j:j+1]) })
-	inc.GroupA, inc.GroupB = strings.Join(groupsA, "; "), strings.Join(groupsB, "; ")
-	inc.Consequences, inc.Note, inc.Source = consequenceWords(inc.Codes), strings.Join(notes, "; "), strings.Join(sources, "; ")
-	return inc, true
+// profile is a reactant with the sides of the supplementary rows it is on, one
+// bit for each row, and whether it is a mild reducing agent.
+type profile struct {
+	Reactant
+	a, b uint64
+	mild bool
 }
 
-// mild excepts the sulfites and thiosulfates, which the table of groups puts
-// with the strong reducing agents by analogy, from what those do with water:
-// "mild reducer … not water reactive".
-func (row chartRow) mild(a, b Reactant) bool {
-	return row.a == 105 && row.b == 106 && (isSulfite(a) || isThiosulfate(a) || isSulfite(b) || isThiosulfate(b) ||
-		named(a, "sulfur dioxide") || named(b, "sulfur dioxide"))
+func profilesOf(rs []Reactant) []profile {
+	profiles := make([]profile, len(rs))
+	for i, r := range rs {
+		p := profile{Reactant: r, mild: isSulfite(r) || isThiosulfate(r) || named(r, "sulfur dioxide")}
+		for k, row := range supplementRows() {
+			if row.a(r, rs) {
+				p.a |= 1 << k
+			}
+			if row.b(r, rs) {
+				p.b |= 1 << k
+			}
+		}
+		profiles[i] = p
+	}
+	return profiles
+}
+
+// pairOf gathers every row that speaks of a pair into one.
+func pairOf(a, b profile) (Incompatibility, bool) {
+	if a.Name == b.Name {
+		return Incompatibility{}, false
+	}
+	g := gathered{Incompatibility: Incompatibility{A: a.Name, B: b.Name}}
+	if a.a&b.b|a.b&b.a != 0 {
+		for k, row := range supplementRows() {
+			switch bit := uint64(1) << k; {
+			case a.a&b.b&bit != 0:
+				g.add(row.nameA, row.nameB, row.note, row.source, row.codes)
+			case a.b&b.a&bit != 0:
+				g.add(row.nameB, row.nameA, row.note, row.source, row.codes)
+			}
+		}
+	}
+	for _, x := range a.Groups {
+		for _, y := range b.Groups {
+			g.addChart(x, y, a.mild || b.mild)
+		}
+	}
+	if slices.Contains(a.Groups, waterReactive) != slices.Contains(b.Groups, waterReactive) && len(g.Codes) == 0 {
+		g.add("Water Reactive Substances", "any chemical", "row 107: extremely reactive", "EPA-600/2-80-076 row 107 (read)", []string{"X"})
+	}
+	if len(g.Codes) == 0 {
+		return Incompatibility{}, false
+	}
+	sort.SliceStable(g.Codes, func(i, j int) bool { return gravity(g.Codes[i:i+1]) > gravity(g.Codes[j:j+1]) })
+	g.GroupA, g.GroupB = strings.Join(g.groupsA, "; "), strings.Join(g.groupsB, "; ")
+	g.Consequences, g.Note, g.Source = consequenceWords(g.Codes), strings.Join(g.notes, "; "), strings.Join(g.sources, "; ")
+	return g.Incompatibility, true
+}
+
+// gathered is a pair with what the rows on it say so far.
+type gathered struct {
+	Incompatibility
+	groupsA, groupsB, notes, sources []string
+}
+
+func (g *gathered) add(nameA, nameB, note, source string, codes []string) {
+	g.groupsA, g.groupsB = appendNew(g.groupsA, nameA), appendNew(g.groupsB, nameB)
+	g.Codes = appendNew(g.Codes, codes...)
+	if note != "" {
+		g.notes = appendNew(g.notes, note)
+	}
+	g.sources = appendNew(g.sources, source)
+}
+
+// addChart adds what the chart says of two groups. The sulfites and thiosulfates
+// are with the strong reducing agents by analogy only, "mild reducer … not water
+// reactive" in the table of groups, and are excepted from what those do with
+// water.
+func (g *gathered) addChart(x, y int, mild bool) {
+	for _, row := range epaChart()[[2]int{min(x, y), max(x, y)}] {
+		switch {
+		case mild && row.a == 105 && row.b == 106:
+		case row.a == x:
+			g.add(row.nameA, row.nameB, row.note, row.source, row.codes)
+		default:
+			g.add(row.nameB, row.nameA, row.note, row.source, row.codes)
+		}
+	}
 }
 
 // consequenceCodes orders the chart's codes from the gravest; the order is this
@@ -210,10 +251,28 @@ func consequenceWords(codes []string) string {
 // assessed is carried apart from everything but what was assessed to be in no
 // group.
 func CarryApart(a, b Reactant) (why string, apart bool) {
+	p := profilesOf([]Reactant{a, b})
+	return carryApart(p[0], p[1])
+}
+
+// CarriedApart answers CarryApart for any two of many, by their index, without
+// looking each up again.
+func CarriedApart(rs []Reactant) func(i, j int) bool {
+	profiles := make([]profile, len(rs))
+	for i, r := range rs {
+		profiles[i] = profilesOf([]Reactant{r})[0]
+	}
+	return func(i, j int) bool {
+		_, apart := carryApart(profiles[i], profiles[j])
+		return apart
+	}
+}
+
+func carryApart(a, b profile) (why string, apart bool) {
 	if a.Name == b.Name {
 		return "", false
 	}
-	if inc, ok := pairOf(a, b, []Reactant{a, b}); ok && gravity(inc.Codes) > gravity([]string{"S"}) {
+	if inc, ok := pairOf(a, b); ok && gravity(inc.Codes) > gravity([]string{"S"}) {
 		return a.Name + " and " + b.Name + ": " + inc.Consequences, true
 	}
 	if !a.Assessed && !(b.Assessed && len(b.Groups) == 0) {

@@ -2,6 +2,7 @@ package chem
 
 import (
 	"slices"
+	"strconv"
 	"strings"
 )
 
@@ -13,9 +14,10 @@ func IngredientOf(name string, s *Substance, w Fraction) Ingredient {
 	}
 	in := Ingredient{Name: name, CAS: s.CAS, Fraction: w, Hazard: s.Hazard, Known: s.Hazard.Assessed || s.NotClassified(),
 		State: s.State, LimitShare: chromateShare(s)}
+	in.read = readHazard(s.Hazard)
 	a := s.Hazard.Acute
 	add := func(route string, value float64) {
-		if value > 0 && w.Percent() >= ruleLimit("AT-047") {
+		if value > 0 {
 			in.Estimates = append(in.Estimates, AcuteEstimate{Route: route, Value: value})
 		}
 	}
@@ -30,6 +32,28 @@ func IngredientOf(name string, s *Substance, w Fraction) Ingredient {
 		add(InhaledDust, a.Inhalation)
 	}
 	return in
+}
+
+// hazardReading is a record with its classes and limits read.
+type hazardReading struct {
+	classes []HazardClass
+	limits  []specificLimit
+	acute   []AcuteEstimate
+	bad     []string // what couldn't be read
+}
+
+func readHazard(h HazardRecord) *hazardReading {
+	r := &hazardReading{classes: h.HazardClasses()}
+	r.limits, r.acute, r.bad = parseSpecificLimits(h.SCL)
+	for i, text := range r.bad {
+		r.bad[i] = "specific limit " + strconv.Quote(text)
+	}
+	for _, c := range r.classes {
+		if _, ok := LabelElementsOf(c); !ok {
+			r.bad = append(r.bad, "classification "+strconv.Quote(c.String()))
+		}
+	}
+	return r
 }
 
 // NotClassified reports a record that says, from memory, that common suppliers

@@ -2,6 +2,7 @@ package chem
 
 import (
 	"fmt"
+	"slices"
 	"sort"
 	"strings"
 )
@@ -42,6 +43,8 @@ type Ingredient struct {
 	// count; 0 means all of it. Limits of chromates count chromate ion (CLP
 	// Annex VI, note 3).
 	LimitShare Fraction
+
+	read *hazardReading // of Hazard; nil until somebody needs it
 }
 
 // MixtureOptions are what may be known of the whole mixture.
@@ -125,7 +128,7 @@ type mixture struct {
 
 // mixPart is an ingredient with its record read.
 type mixPart struct {
-	Ingredient
+	*Ingredient
 	percent float64
 	// limited is the per cent that specific limits count.
 	limited float64
@@ -139,7 +142,9 @@ func (m *mixture) read(ingredients []Ingredient) error {
 		return fmt.Errorf("classifying a mixture: no ingredients; give at least one with its mass fraction")
 	}
 	total := 0.0
-	for _, in := range ingredients {
+	m.parts = make([]mixPart, 0, len(ingredients)+1)
+	for i := range ingredients {
+		in := &ingredients[i]
 		if !(in.Fraction >= 0 && in.Fraction <= 1) {
 			return fmt.Errorf("classifying a mixture: %s has a mass fraction of %g %%; want 0 to 100 %%", in.Name, in.Fraction.Percent())
 		}
@@ -151,30 +156,27 @@ func (m *mixture) read(ingredients []Ingredient) error {
 		return fmt.Errorf("classifying a mixture: the mass fractions sum to %.4g %%; want at most 100 %%", total)
 	}
 	if rest := 100 - total; rest > 0.1 {
-		m.add(Ingredient{Name: "rest, not named", Fraction: Fraction(rest / 100)})
+		m.add(&Ingredient{Name: "rest, not named", Fraction: Fraction(rest / 100)})
 	}
 	m.noteUnknown()
 	return nil
 }
 
-func (m *mixture) add(in Ingredient) {
+func (m *mixture) add(in *Ingredient) {
 	p := mixPart{Ingredient: in, percent: in.Fraction.Percent()}
 	p.limited = p.percent
 	if in.LimitShare > 0 {
 		p.limited *= float64(in.LimitShare)
 	}
-	p.classes = in.Hazard.HazardClasses()
-	for _, c := range p.classes {
-		if _, ok := LabelElementsOf(c); !ok {
-			m.note("%s: classification %q not understood; read the supplier's sheet", in.Name, c)
-		}
+	read := in.read
+	if read == nil {
+		read = readHazard(in.Hazard)
 	}
-	limits, acute, bad := parseSpecificLimits(in.Hazard.SCL)
-	for _, text := range bad {
-		m.note("%s: specific limit %q not understood; read the supplier's sheet", in.Name, text)
+	for _, text := range read.bad {
+		m.note("%s: %s not understood; read the supplier's sheet", in.Name, text)
 	}
-	p.limits = limits
-	p.acute = append(append(p.acute, in.Estimates...), acute...)
+	p.classes, p.limits = read.classes, read.limits
+	p.acute = slices.Concat(in.Estimates, read.acute)
 	m.parts = append(m.parts, p)
 }
 

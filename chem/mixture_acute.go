@@ -106,7 +106,7 @@ func (p mixPart) unknownFor(route string) bool {
 func (p mixPart) estimate(route string) (float64, bool) {
 	for _, e := range p.acute {
 		if e.Route == route {
-			return e.Value, e.Value > 0 && p.percent > 0
+			return e.Value, e.Value > 0 && p.percent >= ruleLimit("AT-047")
 		}
 	}
 	for _, c := range p.classes {

@@ -125,17 +125,18 @@ func LabelElementsOf(c HazardClass) (LabelElements, bool) {
 
 // classKey folds the spellings under which a class is found: the effect letters
 // of H360FD or H350i, and the categories that share a row.
-func classKey(c HazardClass) string {
-	category := strings.Trim(c.Category, "()")
+func classKey(c HazardClass) HazardClass {
 	switch {
-	case (c.Name == "Org. Perox." || c.Name == "Self-react.") && (category == "C" || category == "D"):
-		category = "CD"
-	case (c.Name == "Org. Perox." || c.Name == "Self-react.") && (category == "E" || category == "F"):
-		category = "EF"
 	case c.Name == "Press. Gas":
-		category = ""
+		c.Category = ""
+	case c.Name != "Org. Perox." && c.Name != "Self-react.":
+	case c.Category == "C" || c.Category == "D":
+		c.Category = "CD"
+	case c.Category == "E" || c.Category == "F":
+		c.Category = "EF"
 	}
-	return strings.TrimSpace(c.Name+" "+category) + "|" + baseCode(c.Code)
+	c.Code = baseCode(c.Code)
+	return c
 }
 
 // baseCode drops the effect letters: H360FD is H360.
@@ -143,8 +144,8 @@ func baseCode(code string) string {
 	return strings.TrimRight(code, "abcdefghijklmnopqrstuvwxyzABCDEFGIJKLMNOPQRSTUVWXYZ")
 }
 
-var labelElements = sync.OnceValue(func() map[string]LabelElements {
-	byClass := map[string]LabelElements{}
+var labelElements = sync.OnceValue(func() map[HazardClass]LabelElements {
+	byClass := map[HazardClass]LabelElements{}
 	for _, row := range readTable("ghs_classes.csv") {
 		e := LabelElements{Signal: row.text("signal_word")}
 		for p := range strings.SplitSeq(row.text("pictogram"), ";") {
@@ -155,12 +156,10 @@ var labelElements = sync.OnceValue(func() map[string]LabelElements {
 		for _, column := range []string{"p_prevention_clp", "p_response_clp", "p_storage_clp", "p_disposal_clp"} {
 			e.P = append(e.P, strings.Fields(row.text(column))...)
 		}
-		name := row.text("clp_abbreviation")
-		if strings.HasPrefix(name, "Press. Gas") {
-			name = "Press. Gas"
-		}
 		for code := range strings.SplitSeq(row.text("h_code"), ";") {
-			byClass[name+"|"+strings.TrimSpace(code)] = e
+			if c, ok := ParseHazardClass(row.text("clp_abbreviation") + " " + code); ok {
+				byClass[classKey(c)] = e
+			}
 		}
 	}
 	return byClass

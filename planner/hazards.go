@@ -27,6 +27,7 @@ const (
 // each step, layer by layer, what is formed on the way, and the waste lots.
 // What has no record gets a note that says so.
 func NoteHazards(needs []Need, steps []StepReport, waste []WasteLot) []HazardNote {
+	m := &mixtures{ingredients: map[string]chem.Ingredient{}, records: map[string]*chem.Substance{}}
 	var notes []HazardNote
 	stored := map[string]bool{}
 	for _, n := range needs {
@@ -39,12 +40,12 @@ func NoteHazards(needs []Need, steps []StepReport, waste []WasteLot) []HazardNot
 			stored[d.Form.Name] = true
 		}
 	}
-	notes = append(notes, formedNotes(steps, stored)...)
+	notes = append(notes, m.formedNotes(steps, stored)...)
 	for _, s := range steps {
-		notes = append(notes, vesselNotes(s)...)
+		notes = append(notes, m.vesselNotes(s)...)
 	}
 	for _, w := range waste {
-		if note, ok := mixtureNote(InWaste, w.Stream, w.Contains); ok {
+		if note, ok := m.note(InWaste, w.Stream, w.Contains); ok {
 			notes = append(notes, note)
 		}
 	}
@@ -116,10 +117,10 @@ var hydrateSuffixes = []string{"hemihydrate", "monohydrate", "dihydrate", "trihy
 
 // formedNotes speak of what arises in the run: contents and gases that no need
 // brings. Ions and the products of a run that have no record say "no data".
-func formedNotes(steps []StepReport, stored map[string]bool) []HazardNote {
+func (m *mixtures) formedNotes(steps []StepReport, stored map[string]bool) []HazardNote {
 	seen := map[string]bool{}
 	for name := range stored {
-		if s := substance(name, ""); s != nil {
+		if s := m.record(name); s != nil {
 			seen[s.Name] = true
 		}
 		seen[name] = true
@@ -127,7 +128,7 @@ func formedNotes(steps []StepReport, stored map[string]bool) []HazardNote {
 	var notes []HazardNote
 	add := func(step, name string) {
 		key := name
-		if s := substance(name, ""); s != nil {
+		if s := m.record(name); s != nil {
 			key = s.Name
 		}
 		if name == "" || seen[key] {
@@ -138,7 +139,7 @@ func formedNotes(steps []StepReport, stored map[string]bool) []HazardNote {
 	}
 	for _, s := range steps {
 		for _, a := range s.Adds {
-			if r := substance(a.Substance, ""); r != nil {
+			if r := m.record(a.Substance); r != nil {
 				seen[r.Name] = true
 			}
 			seen[a.Substance] = true
@@ -175,7 +176,7 @@ func formedNote(step, name string) HazardNote {
 
 // vesselNotes classify each liquid or solid phase of a step's contents. Layers
 // are apart, because each is a mixture by itself.
-func vesselNotes(s StepReport) []HazardNote {
+func (m *mixtures) vesselNotes(s StepReport) []HazardNote {
 	var phases []string
 	byPhase := map[string][]Content{}
 	for _, c := range s.Contents {
@@ -189,7 +190,7 @@ func vesselNotes(s StepReport) []HazardNote {
 		if phase == "gas" {
 			continue
 		}
-		if note, ok := mixtureNote(s.Name, phaseName(phase, len(phases)), byPhase[phase]); ok {
+		if note, ok := m.note(s.Name, phaseName(phase, len(phases)), byPhase[phase]); ok {
 			notes = append(notes, note)
 		}
 	}
@@ -206,8 +207,21 @@ func phaseName(phase string, phases int) string {
 	return phase + " layer"
 }
 
-// mixtureNote classifies contents by mass; false where there is nothing.
-func mixtureNote(at, what string, contents []Content) (HazardNote, bool) {
+// mixtures classifies contents and remembers what it has seen: the same
+// substances, and often the same contents, come again step by step.
+type mixtures struct {
+	ingredients map[string]chem.Ingredient
+	records     map[string]*chem.Substance // by the name used; nil for none
+	seen        []seenMixture
+}
+
+type seenMixture struct {
+	contents []Content
+	note     HazardNote // without its place
+}
+
+// note classifies contents by mass; false where there is nothing.
+func (m *mixtures) note(at, what string, contents []Content) (HazardNote, bool) {
 	total := chem.Mass(0)
 	for _, c := range contents {
 		total += max(c.Mass, 0)
@@ -215,21 +229,52 @@ func mixtureNote(at, what string, contents []Content) (HazardNote, bool) {
 	if !(total > 0) {
 		return HazardNote{}, false
 	}
-	var ingredients []chem.Ingredient
+	note := m.classified(contents, total)
+	note.At, note.What = at, what+note.What
+	return note, true
+}
+
+func (m *mixtures) classified(contents []Content, total chem.Mass) HazardNote {
+	for _, s := range m.seen {
+		if slices.Equal(s.contents, contents) {
+			return s.note
+		}
+	}
+	ingredients := make([]chem.Ingredient, 0, len(contents))
 	for _, c := range contents {
 		if c.Mass > 0 {
-			ingredients = append(ingredients, chem.IngredientOf(c.Substance, substance(c.Substance, ""), chem.Fraction(c.Mass/total)))
+			ingredients = append(ingredients, m.ingredient(c.Substance, chem.Fraction(c.Mass/total)))
 		}
 	}
 	got, err := chem.ClassifyMixture(ingredients)
-	if err != nil {
-		return unknownNote(at, what), true
+	note := unknownNote("", "")
+	if err == nil {
+		note = noteOf("", ": "+shares(contents, total), got)
+		if note.Signal == "" && got.Unknown.Percent() >= 1 { // below, it is in the notes; the standard counts from 1 % on
+			note.Basis = basisNoData + fmt.Sprintf(" (%.3g %% of it)", got.Unknown.Percent())
+		}
 	}
-	note := noteOf(at, what+": "+shares(contents, total), got)
-	if note.Signal == "" && got.Unknown.Percent() >= 1 { // below, it is in the notes; the standard counts from 1 % on
-		note.Basis = basisNoData + fmt.Sprintf(" (%.3g %% of it)", got.Unknown.Percent())
+	m.seen = append(m.seen, seenMixture{contents, note})
+	return note
+}
+
+func (m *mixtures) record(name string) *chem.Substance {
+	s, ok := m.records[name]
+	if !ok {
+		s = substance(name, "")
+		m.records[name] = s
 	}
-	return note, true
+	return s
+}
+
+func (m *mixtures) ingredient(name string, w chem.Fraction) chem.Ingredient {
+	in, ok := m.ingredients[name]
+	if !ok {
+		in = chem.IngredientOf(name, m.record(name), w)
+		m.ingredients[name] = in
+	}
+	in.Fraction = w
+	return in
 }
 
 // shares writes contents from the largest, down to one per cent.
@@ -256,18 +301,20 @@ func shares(contents []Content, total chem.Mass) string {
 // noteOf turns a classified mixture into a note, with its physical hazards as
 // those of the worst ingredient.
 func noteOf(at, what string, c chem.Classification) HazardNote {
+	note := HazardNote{At: at, What: what, Classes: c.Classes, Signal: c.Signal, Pictograms: c.Pictograms, P: c.P,
+		Statements: c.Statements, Basis: basisCalculated, Limits: []string{noLimit}, Notes: c.Notes}
+	if len(c.Physical) == 0 {
+		return note
+	}
+	note.Classes = slices.Concat(c.Physical, c.Classes)
 	var classes []chem.HazardClass
-	for _, text := range append(slices.Clone(c.Physical), c.Classes...) {
+	for _, text := range note.Classes {
 		if class, ok := chem.ParseHazardClass(text); ok {
 			classes = append(classes, class)
 		}
 	}
 	label := chem.LabelOf(classes)
-	note := HazardNote{At: at, What: what, Signal: label.Signal, Pictograms: label.Pictograms, P: label.P,
-		Statements: label.Statements, Basis: basisCalculated, Limits: []string{noLimit}, Notes: c.Notes}
-	for _, class := range classes {
-		note.Classes = append(note.Classes, class.String())
-	}
+	note.Signal, note.Pictograms, note.P, note.Statements = label.Signal, label.Pictograms, label.P, label.Statements
 	for _, s := range c.Statements { // supplemental ones
 		if strings.HasPrefix(s, "EUH") {
 			note.Statements = append(note.Statements, s)
@@ -350,11 +397,15 @@ func PairsOf(needs []Need, steps []StepReport) []chem.Incompatibility {
 	var rs []chem.Reactant
 	seen := map[string]bool{}
 	add := func(name, formula string) {
-		r := reactant(name, formula)
-		if name == "" || seen[r.Name] {
+		if name == "" || seen[name] {
 			return
 		}
-		seen[r.Name] = true
+		r := reactant(name, formula)
+		before := seen[r.Name]
+		seen[name], seen[r.Name] = true, true
+		if before {
+			return
+		}
 		rs = append(rs, r)
 	}
 	for _, n := range needs {
@@ -387,8 +438,5 @@ func CarriersFor(needs []Need, limits CarrierLimits) ([]Carrier, error) {
 			rs = append(rs, reactant(n.Substance, n.Formula))
 		}
 	}
-	return GroupCarriers(items, func(i, j int) bool {
-		_, apart := chem.CarryApart(rs[i], rs[j])
-		return apart
-	}, limits)
+	return GroupCarriers(items, chem.CarriedApart(rs), limits)
 }
