@@ -18,6 +18,8 @@ type coverage struct {
 	need   Need
 	first  inventory.Date // when the first fit bottle reaches its end of life
 	coming coming
+	// blendOf is the strength of a blend with bottles too weak alone; 0 for none.
+	blendOf float64
 	// onlyFinding says that it suffices for certain if its bottles are found.
 	onlyFinding bool
 }
@@ -97,6 +99,7 @@ func (m *matcher) cover(asks []Ask, together []*coverage, prices points, limitin
 	for _, c := range together {
 		c.first = firstLife(lines)
 		c.alloc = whole.part(c.demand.amount)
+		m.blend(c)
 		m.writeDraws(c, asks)
 		m.writeAmounts(c)
 	}
@@ -238,6 +241,9 @@ func (m *matcher) whyDraw(c *coverage, x *fit, left float64) string {
 	}
 	if x.dilute {
 		why += fmt.Sprintf("; stronger than asked (%.3g %%), so it is made up to %.3g %% first", x.top.Percent(), c.demand.accept.Most.Percent())
+	}
+	if x.blended {
+		why += fmt.Sprintf("; too weak alone (%.3g %%), only as part of a blend of %.3g %%", x.strength.Percent(), c.blendOf*100)
 	}
 	if x.aged {
 		why += fmt.Sprintf("; counted at %.3g %%, its strength on the day at room temperature: titrate it before use", x.strength.Percent())

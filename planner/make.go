@@ -279,6 +279,7 @@ func (p *planning) write() (*Plan, error) {
 	}
 	p.risk(plan)
 	p.states(plan)
+	p.blends(plan)
 	p.insertMakeUps(plan)
 	p.sheets(plan)
 	plan.Metrics = p.metrics(plan)

@@ -308,3 +308,39 @@ func TestPlanNoVessel(t *testing.T) {
 		t.Errorf("error %q doesn't name the 61.3 g that fit", err)
 	}
 }
+
+// 800 g of pure acid are wanted at 45 % or more; 500 g of pure acid lie there at
+// 96 %, the rest at 30 %. With P = 500 g and M = 520.8 g the weak one may give
+// (500/0.45 − 520.8)/(1/0.30 − 1/0.45) = 531 g, so the 300 g missing fit, and the
+// blend is 800/(520.8 + 1000) = 52.6 %.
+func TestPlanBlendsWeakStock(t *testing.T) {
+	lab := dichromateLab()
+	lab.Substances = append(lab.Substances, inventory.Substance{ID: 3, Name: "sulfuric acid", Formula: "H2SO4", CAS: "7664-93-9"})
+	lab.Forms = append(lab.Forms,
+		inventory.StockForm{ID: 3, SubstanceID: 3, Name: "sulfuric acid 96 %", AssayLow: .96, AssayHigh: .96, Diluent: "water", Measure: inventory.ByMass},
+		inventory.StockForm{ID: 4, SubstanceID: 3, Name: "sulfuric acid 30 %", AssayLow: .30, AssayHigh: .30, Diluent: "water", Measure: inventory.ByMass})
+	lab.Bottles = append(lab.Bottles,
+		inventory.Bottle{ID: 3, StoreID: 1, Code: "S1", FormID: 3, PlaceID: 1, State: inventory.Opened, Content: 520833333, Size: 1, MeasuredBy: inventory.ByWeighing, MeasuredOn: onDay - 10},
+		inventory.Bottle{ID: 4, StoreID: 1, Code: "S2", FormID: 4, PlaceID: 1, State: inventory.Opened, Content: 2000e6, Size: 1, MeasuredBy: inventory.ByWeighing, MeasuredOn: onDay - 10})
+	n := 50 / 102.13 / 0.6
+	ask := testAsk(t, "sulfuric acid", "H2SO4", 800/98.078/n, Accept{Least: .45, Solution: true})
+	plan := planOf(t, &asked{asks: []Ask{ask}}, inventory.NewShelf(lab), grams(50))
+	need := needOf(t, plan, "sulfuric acid")
+	if len(need.Draws) != 2 || need.Short > 0 {
+		t.Fatalf("draws %d, short %.3f g: %s", len(need.Draws), need.Short.Grams(), need.Because)
+	}
+	pure, mass := 0.0, 0.0
+	for _, d := range need.Draws {
+		pure += float64(d.Pure)
+		mass += float64(d.Mass)
+	}
+	if got := pure / mass; math.Abs(got-0.526) > 0.001 {
+		t.Errorf("blend of %.4f, want 0.526", got)
+	}
+	// At 60 % the weak one may give only (500/0.6 − 520.8)/(1/0.3 − 1/0.6) = 187.5 g.
+	ask.Accept.Least = .6
+	need = needOf(t, planOf(t, &asked{asks: []Ask{ask}}, inventory.NewShelf(lab), grams(50)), "sulfuric acid")
+	if got := need.Short.Grams(); math.Abs(got-112.5) > 0.2 {
+		t.Errorf("short %.3f g, want 112.5 g", got)
+	}
+}

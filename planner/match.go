@@ -30,6 +30,7 @@ type fit struct {
 	free     int64         // ledger units
 	promised int64         // to other runs
 	dilute   bool          // stronger than the need allows: it has to be made up first
+	blended  bool          // weaker than the need allows: only in a blend
 	standsIn string        // name of the substitute; "" for the substance itself
 	aged     bool          // its strength has fallen with time
 	life     inventory.Date
@@ -120,6 +121,7 @@ const mostBarred = 24
 // matches is what matching a demand gives.
 type matches struct {
 	fits     []fit // by form, then code
+	weak     []fit // too weak alone, where a blend is allowed
 	barred   []Barred
 	more     int                 // barred and not listed
 	onShelf  float64             // pure in fit bottles, before anybody's promises
@@ -268,6 +270,11 @@ func (f *formMatch) bottle(b *inventory.Bottle, found *matches) {
 	}
 	if kind == "" {
 		kind, why = f.promises(&x)
+	}
+	if kind == barWeak && f.demand.accept.Solution {
+		if promised, _ := f.promises(&x); promised == "" {
+			found.weak = append(found.weak, x)
+		}
 	}
 	if kind != "" {
 		found.bar(b, f.form, kind, why, float64(b.Content)*x.pure)
