@@ -31,11 +31,11 @@ type exchange struct {
 // order only.
 const waterPKa = 14
 
-// metalProtons are the steps by which chromium(III) lets go of protons in
-// water, from memory (hydrolysis constants of the hexaaqua ion, 4.0, 5.6, 6.8);
-// its hydroxide falls from pH 7 on and goes back into solution above 11
-// (METHODS j).
-var metalProtons = map[string][]float64{"chromium(III)": {4.0, 5.6, 6.8}}
+// metalProtons are the steps by which chromium(III) lets go of protons in water:
+// the first is the hydrolysis constant of the hexaaqua ion (4.0, from memory),
+// the others stand for the fall of the hydroxide, which is over before pH 7
+// (METHODS j; it goes back into solution above 11, which isn't modelled).
+var metalProtons = map[string][]float64{"chromium(III)": {4.0, 4.5, 5.0}}
 
 // metalHydroxides are the hydroxides that metal salts fall as.
 var metalHydroxides = map[string]string{"chromium(III)": "chromium(III) hydroxide"}

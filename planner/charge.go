@@ -57,7 +57,7 @@ const (
 func readCharge(f *fields, withAmount bool) charge {
 	c := charge{substance: f.text("substance", true), pos: f.place(), rule: byLoad}
 	readAcceptance(f, &c)
-	c.madeUp, _ = take(f, "made-up", false, readShare, "a mass fraction such as 10 %")
+	c.madeUp, _ = take(f, "made-up", false, chem.ParseFraction, "a mass fraction such as 10 %")
 	c.exact = f.flag("exact")
 	if h := f.inner("hidden", false); h != nil {
 		c.hiddenKey, c.hiddenWhy = h.text("key", true), h.text("why", true)
@@ -75,7 +75,7 @@ func readAcceptance(f *fields, c *charge) {
 	if stated {
 		c.accept.Least, c.accept.Most = c.strength.least, c.strength.most
 	}
-	if least, ok := take(f, "at-least", false, readShare, "a mass fraction such as 98 %"); ok {
+	if least, ok := take(f, "at-least", false, chem.ParseFraction, "a mass fraction such as 98 %"); ok {
 		c.accept.Least = least
 	}
 	c.accept.Hydrate = f.flag("hydrate")
@@ -124,7 +124,7 @@ func readChargeSize(f *fields, c *charge) {
 	case "surface":
 		c.rule = bySurface
 		readSize(f, key, c)
-		c.at, _ = take(f, "at", true, readAmount, "the scale at which that holds, such as 0.5 mol")
+		c.at, _ = take(f, "at", true, chem.ParseAmount, "the scale at which that holds, such as 0.5 mol")
 	case "each-batch":
 		c.rule = perBatch
 		readSize(f, key, c)
@@ -138,11 +138,11 @@ func readChargeSize(f *fields, c *charge) {
 func readSize(f *fields, key string, c *charge) {
 	n := f.values[key]
 	text := nodeText(n)
-	if m, err := readMass(text); err == nil {
+	if m, err := chem.ParseMass(text); err == nil {
 		c.size, c.dimension = float64(m), inMass
 		return
 	}
-	if v, err := readVolume(text); err == nil {
+	if v, err := chem.ParseVolume(text); err == nil {
 		c.size, c.dimension = float64(v), inVolume
 		return
 	}
@@ -150,9 +150,9 @@ func readSize(f *fields, key string, c *charge) {
 		c.size, c.dimension = n, inPieces
 		return
 	}
-	a, err := readAmount(text)
+	a, err := chem.ParseAmount(text)
 	if err != nil {
-		f.faultAt(n, fmt.Sprintf("%s %q: %v", key, text, err), "a mass, a volume, an amount or pieces, such as 20 g, 150 mL, 0.5 mol, 3 pieces")
+		f.faultAt(n, fmt.Sprintf("%s %q: %s", key, text, reason(err)), "a mass, a volume, an amount or pieces, such as 20 g, 150 mL, 0.5 mol, 3 pieces")
 		return
 	}
 	c.size, c.dimension = float64(a), inAmount

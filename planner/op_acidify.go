@@ -23,7 +23,7 @@ func (o *acidifyOp) read(f *fields) {
 		o.acid = readCharge(g, false)
 		g.done()
 	}
-	o.pH, _ = take(f, "to-pH", true, readSigned, "a pH such as 2")
+	o.pH, _ = take(f, "to-pH", true, readPH, "a pH such as 2")
 	o.strips, _ = take(f, "strips", false, readNumber, "how many pH strips, such as 4")
 }
 

@@ -23,7 +23,7 @@ func (o *addOp) read(f *fields) {
 	if o.from == "" && len(o.charges) == 0 && f.values["charges"] == nil {
 		f.fault(f.at, f.what+" adds nothing", "charges: or from:")
 	}
-	o.below, o.limited = take(f, "below", false, readTemperature, "the highest temperature allowed, such as 25 °C")
+	o.below, o.limited = take(f, "below", false, chem.ParseTemperature, "the highest temperature allowed, such as 25 °C")
 	o.list = readProgress(f, false)
 	o.ice = f.text("with", false) == "ice"
 }

@@ -15,7 +15,7 @@ type boilDownOp struct {
 }
 
 func (o *boilDownOp) read(f *fields) {
-	o.off, _ = take(f, "boil-off", true, readShare, "the share of the water that is boiled off, such as 60 %")
+	o.off, _ = take(f, "boil-off", true, chem.ParseFraction, "the share of the water that is boiled off, such as 60 %")
 	o.to = f.text("to", true)
 }
 

@@ -22,7 +22,7 @@ type distilOp struct {
 func (o *distilOp) read(f *fields) {
 	o.pressure = readPressureOr(f, chem.Atmosphere)
 	o.forerun = f.text("forerun-to", true)
-	o.cut, _ = take(f, "cut", false, readShare, "the share of the product that goes with the forerun, such as 2 %")
+	o.cut, _ = take(f, "cut", false, chem.ParseFraction, "the share of the product that goes with the forerun, such as 2 %")
 }
 
 func (o *distilOp) names(visit func(kind, name string, at place)) {

@@ -34,7 +34,7 @@ func (o *extractOp) read(f *fields) {
 	}
 	o.what = f.text("of", false)
 	o.portions, _ = take(f, "portions", false, readCount, "how many portions, such as 5")
-	o.recovery, _ = take(f, "recovery", false, readShare, "the share to be taken out, such as 98 %")
+	o.recovery, _ = take(f, "recovery", false, chem.ParseFraction, "the share to be taken out, such as 98 %")
 	if o.portions == 0 && o.recovery == 0 && f.values["portions"] == nil && f.values["recovery"] == nil {
 		f.fault(f.at, f.what+" says neither portions nor recovery", "portions: 5 or recovery: 98 %")
 	}

@@ -9,7 +9,7 @@ type holdOp struct {
 }
 
 func (o *holdOp) read(f *fields) {
-	o.at, o.stated = take(f, "at", false, readTemperature, "a temperature such as 20 °C")
+	o.at, o.stated = take(f, "at", false, chem.ParseTemperature, "a temperature such as 20 °C")
 }
 
 func (o *holdOp) names(func(kind, name string, at place)) {}

@@ -17,7 +17,7 @@ type makeUpOp struct {
 
 func (o *makeUpOp) read(f *fields) {
 	o.charges = readCharges(f, true)
-	o.to, _ = take(f, "to", true, readShare, "the strength of the solution as a mass fraction, such as 30 %")
+	o.to, _ = take(f, "to", true, chem.ParseFraction, "the strength of the solution as a mass fraction, such as 30 %")
 	if f.values["to"] != nil && !(o.to > 0 && o.to < 1) {
 		f.faultAt(f.values["to"], "a strength of "+nodeText(f.values["to"]), "more than 0 and less than 100 %")
 	}

@@ -25,9 +25,9 @@ func (o *neutraliseOp) read(f *fields) {
 		o.base = readCharge(g, false)
 		g.done()
 	}
-	o.pH, _ = take(f, "to-pH", true, readSigned, "a pH such as 8")
+	o.pH, _ = take(f, "to-pH", true, readPH, "a pH such as 8")
 	o.strips, _ = take(f, "strips", false, readNumber, "how many pH strips, such as 4")
-	stays, stated := take(f, "gas-left", false, readShare, "the share of the carbon dioxide water can hold that is left when the pH is read, such as 10 %")
+	stays, stated := take(f, "gas-left", false, chem.ParseFraction, "the share of the carbon dioxide water can hold that is left when the pH is read, such as 10 %")
 	o.stays = 1
 	if stated {
 		o.stays = float64(stays)

@@ -32,7 +32,7 @@ func (o *quenchOp) read(f *fields) {
 		g.done()
 	}
 	o.reaction = f.text("reaction", true)
-	excess, _ := take(f, "excess", true, readShare, "how much more than theory, such as 30 %")
+	excess, _ := take(f, "excess", true, chem.ParseFraction, "how much more than theory, such as 30 %")
 	o.excess = float64(excess)
 }
 

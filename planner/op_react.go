@@ -66,7 +66,7 @@ type reactOp struct {
 
 func (o *reactOp) read(f *fields) {
 	o.list = readProgress(f, true)
-	o.at, o.stated = take(f, "at", false, readTemperature, "a temperature such as 100 °C")
+	o.at, o.stated = take(f, "at", false, chem.ParseTemperature, "a temperature such as 100 °C")
 }
 
 func (o *reactOp) names(visit func(kind, name string, at place)) { nameProgress(o.list, visit) }

@@ -21,14 +21,14 @@ type stripOp struct {
 
 func (o *stripOp) read(f *fields) {
 	o.solvent, o.pos = f.text("solvent", true), f.place()
-	o.leaves, _ = take(f, "leaves", true, readShare, "the share of the solvent that stays, such as 2 %")
+	o.leaves, _ = take(f, "leaves", true, chem.ParseFraction, "the share of the solvent that stays, such as 2 %")
 	o.pressure = readPressureOr(f, chem.Atmosphere)
 	o.to = f.text("to", true)
 }
 
 // readPressureOr reads the pressure of a step, by default that of the room.
 func readPressureOr(f *fields, otherwise chem.Pressure) chem.Pressure {
-	if p, ok := take(f, "pressure", false, readPressure, "a pressure such as 200 mbar"); ok {
+	if p, ok := take(f, "pressure", false, chem.ParsePressure, "a pressure such as 200 mbar"); ok {
 		return p
 	}
 	return otherwise

@@ -16,7 +16,7 @@ type temperOp struct {
 }
 
 func (o *temperOp) read(f *fields) {
-	o.to, _ = take(f, "to", true, readTemperature, "a temperature such as 10 °C")
+	o.to, _ = take(f, "to", true, chem.ParseTemperature, "a temperature such as 10 °C")
 	if f.text("with", false) == "ice" {
 		o.ice = "ice"
 	}

@@ -204,7 +204,7 @@ func take[Q any](f *fields, key string, needed bool, parse func(string) (Q, erro
 	}
 	q, err := parse(nodeText(n))
 	if err != nil {
-		f.faultAt(n, fmt.Sprintf("%s %q: %v", key, nodeText(n), err), expected)
+		f.faultAt(n, fmt.Sprintf("%s %q: %s", key, nodeText(n), reason(err)), expected)
 		return zero, false
 	}
 	return q, true

@@ -85,9 +85,9 @@ func readYield(f *fields, r *Recipe) {
 	if g == nil {
 		return
 	}
-	r.Yield.Mean, _ = take(g, "mean", true, readShare, "a share such as 68 %")
-	r.Yield.SD, _ = take(g, "spread", true, readShare, "a standard deviation in points, such as 6 %")
-	r.Yield.Cap, _ = take(g, "at-most", false, readShare, "a share such as 95 %")
+	r.Yield.Mean, _ = take(g, "mean", true, chem.ParseFraction, "a share such as 68 %")
+	r.Yield.SD, _ = take(g, "spread", true, chem.ParseFraction, "a standard deviation in points, such as 6 %")
+	r.Yield.Cap, _ = take(g, "at-most", false, chem.ParseFraction, "a share such as 95 %")
 	r.Yield.Basis = g.text("basis", true)
 	runs, _ := take(g, "runs", false, readNumber, "a whole number of own runs")
 	r.Yield.Runs = int(runs)
@@ -102,7 +102,7 @@ func readProven(f *fields, r *Recipe) {
 	if g == nil {
 		return
 	}
-	r.ProvenScale, _ = take(g, "scale", true, readAmount, "an amount of limiting reagent such as 0.5 mol")
+	r.ProvenScale, _ = take(g, "scale", true, chem.ParseAmount, "an amount of limiting reagent such as 0.5 mol")
 	runs, _ := take(g, "runs", true, readNumber, "a whole number of runs")
 	r.ProvenRuns = int(runs)
 	g.done()
@@ -116,9 +116,9 @@ func readSubstance(name string, f *fields) SubstanceNote {
 		Phase: f.text("phase", false), Source: f.text("source", false), at: f.place(),
 	}
 	s.Density, _ = take(f, "density", false, readDensity, "a density such as 0.81 g/mL")
-	s.Boiling, _ = take(f, "boiling", false, readTemperature, "a temperature such as 186 °C")
-	s.Azeotrope, _ = take(f, "azeotrope", false, readShare, "the mass fraction in the vapour over water, such as 38 %")
-	s.AzeotropeBoils, _ = take(f, "azeotrope-boils", false, readTemperature, "a temperature such as 95 °C")
+	s.Boiling, _ = take(f, "boiling", false, chem.ParseTemperature, "a temperature such as 186 °C")
+	s.Azeotrope, _ = take(f, "azeotrope", false, chem.ParseFraction, "the mass fraction in the vapour over water, such as 38 %")
+	s.AzeotropeBoils, _ = take(f, "azeotrope-boils", false, chem.ParseTemperature, "a temperature such as 95 °C")
 	if s.Phase != "" && !slices.Contains(phaseNames, s.Phase) {
 		f.faultAt(f.values["phase"], fmt.Sprintf("phase %q", s.Phase), "one of "+strings.Join(phaseNames, ", "))
 	}
@@ -134,7 +134,7 @@ func readReaction(name string, f *fields) Reaction {
 		g.done()
 	}
 	var stated bool
-	r.Enthalpy, stated = take(f, "enthalpy", false, readMolar, "an enthalpy such as -510 kJ/mol")
+	r.Enthalpy, stated = take(f, "enthalpy", false, chem.ParseMolarEnergy, "an enthalpy such as -510 kJ/mol")
 	if stated && r.EnthalpySource == "" {
 		f.fault(f.at, fmt.Sprintf("reaction %s states an enthalpy without its source", name), "a line enthalpy-source: …")
 	}
@@ -166,7 +166,7 @@ func readStep(n int, f *fields) Step {
 		f.known = append(f.known, "time")
 		s.ForScale = true
 	} else {
-		s.Time, _ = take(f, "time", false, readTime, `a time such as 2 h, or "set for this scale"`)
+		s.Time, _ = take(f, "time", false, chem.ParseDuration, `a time such as 2 h, or "set for this scale"`)
 	}
 	s.spec = newOperation(s.Do)
 	if s.spec == nil {
