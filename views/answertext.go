@@ -15,7 +15,7 @@ func WriteAnswerText(out io.Writer, a reckoner.Answer) error {
 	for _, r := range a.Results {
 		value := r.Text
 		if !r.IsText {
-			value = figures(r.Value, 5)
+			value = trimmed(r.Value, 5)
 		}
 		fmt.Fprintf(w, "%s\t%s\n", r.Name, joined(value, r.Unit))
 	}
