@@ -71,5 +71,5 @@ func (p *recipePage) walk(shelf *inventory.Shelf) {
 		return
 	}
 	p.Walk = walk
-	p.Steps = stepRows(walk.Steps, func(int) string { return "" })
+	p.Steps = stepRows(walk.Steps, nowhere)
 }

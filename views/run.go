@@ -25,7 +25,9 @@ type runPage struct {
 	Kept bool
 	// Plan is nil where what was asked can't be read.
 	Plan     *planner.Plan
-	Lead     string // first sentence of the verdict
+	Warnings []planner.Finding
+	Notes    []planner.Finding
+	Lead     string // first part of the verdict, which says how likely
 	Rest     string
 	Needs    []needRow
 	Steps    []stepRow
@@ -150,11 +152,22 @@ func (p *runPage) dress(printed string) {
 	if plan == nil {
 		return
 	}
-	p.Lead, p.Rest = firstSentence(plan.Sentence)
+	p.Lead, p.Rest = leadOf(plan.Sentence)
 	p.Needs = p.needRows()
-	p.Steps = stepRows(plan.Steps, func(n int) string {
-		return runAddress(p.Run.ID) + "/explain/step-" + strconv.Itoa(n) + string(p.Query())
+	p.Steps = stepRows(plan.Steps, func(about string, n int) string {
+		part := "/steps/"
+		if about == "explain" {
+			part = "/explain/step-"
+		}
+		return runAddress(p.Run.ID) + part + strconv.Itoa(n) + string(p.Query())
 	})
+	for _, f := range plan.Findings {
+		if f.Severity == planner.Note {
+			p.Notes = append(p.Notes, f)
+		} else {
+			p.Warnings = append(p.Warnings, f)
+		}
+	}
 	p.Contents = contentRows(plan.Steps)
 	p.Flow = drawFlow(plan.Flow)
 	p.Risk = riskWords(plan.Risk)
@@ -202,10 +215,13 @@ func (s *Server) recipeOf(run inventory.Run) (*planner.Recipe, error) {
 	return nil, &missing{"recipe", run.Recipe, "The recipe of this run is no longer among the recipes."}
 }
 
-// firstSentence cuts a text after its first sentence.
-func firstSentence(text string) (first, rest string) {
-	if i := strings.Index(text, ". "); i >= 0 {
-		return text[:i+1], text[i+2:]
+// leadOf cuts the verdict after what it says first, at a semicolon or a full
+// stop; the rest is why, and what would change it.
+func leadOf(text string) (lead, rest string) {
+	for i := range len(text) - 1 {
+		if (text[i] == ';' || text[i] == '.') && text[i+1] == ' ' {
+			return text[:i+1], text[i+2:]
+		}
 	}
 	return text, ""
 }

@@ -111,20 +111,22 @@ type stepRow struct {
 	Into    []string
 	Lines   []string // what everybody has to know
 	More    []string // the rest
-	Explain string
+	Explain string   // address of how its numbers came about, or ""
+	At      string   // address of the step by itself, or ""
 }
 
-// stepRows makes the strip. Where says which address explains a step; it is ""
-// where nothing does.
-func stepRows(steps []planner.StepReport, where func(n int) string) []stepRow {
+// stepRows makes the strip. Where gives the address of something about a step:
+// "explain" or "step"; it may be "" where there is nothing.
+func stepRows(steps []planner.StepReport, where func(about string, n int) string) []stepRow {
 	largest := largestVessel(steps)
 	rows := make([]stepRow, len(steps))
 	for i, s := range steps {
 		rows[i] = stepRow{StepReport: s, Picture: drawStep(s, largest), Ware: wareText(s.Vessel), Into: intoLines(s.Adds)}
 		told, more := tellingSays(s)
 		rows[i].Lines, rows[i].More = append(told, stepLines(s)...), more
+		rows[i].At = where("step", s.N)
 		if len(s.Derivations) > 0 || len(s.Adds) > 0 {
-			rows[i].Explain = where(s.N)
+			rows[i].Explain = where("explain", s.N)
 		}
 	}
 	return rows

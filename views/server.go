@@ -101,6 +101,7 @@ func (s *Server) routes() http.Handler {
 		e.GET("/runs/:id/"+file, s.page(s.showPaper(file)))
 	}
 	e.GET("/runs/:id/answers", s.page(s.showAnswers))
+	e.GET("/runs/:id/steps/:n", s.page(s.showStep))
 	e.GET("/runs/:id/hazards", s.page(s.showHazards))
 	e.GET("/runs/:id/promise", s.page(s.showPromise))
 	e.POST("/runs/:id/promise", s.page(s.promise))

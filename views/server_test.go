@@ -147,6 +147,8 @@ func TestRoutes(t *testing.T) {
 		{"/runs/1/explain/scale", 200, "How the scale came about"},
 		{"/runs/1/explain/need-99", 404, "No explanation “need-99”"},
 		{"/runs/1/explain/draw-1-x", 404, ""},
+		{"/runs/1/steps/1", 200, "1 make up the oxidant"},
+		{"/runs/1/steps/0", 404, "No step “0”"},
 		{"/runs/1/hazards", 200, "Hazards, step by step"},
 		{"/runs/1/answers", 200, "What would do"},
 		{"/runs/1/pick-list.pdf", 200, ""},
@@ -229,7 +231,7 @@ func (s *Server) firstBottle(t testing.TB) string {
 // people fill in has one.
 func TestPagesAreWellFormed(t *testing.T) {
 	s := newSampleServer(t)
-	for _, address := range []string{"/slate", "/runs/new", "/runs/1", "/runs/1?wanted=x", "/runs/1/promise", "/runs/1/hazards", "/runs/1/answers", "/runs/1/explain/need-2",
+	for _, address := range []string{"/slate", "/runs/new", "/runs/1", "/runs/1?wanted=x", "/runs/1/promise", "/runs/1/hazards", "/runs/1/answers", "/runs/1/steps/1", "/runs/1/explain/need-2",
 		"/shelf", "/shelf?find=zzzz", "/shelf/import", "/shelf/bottles/" + s.firstBottle(t), "/recipes", "/recipes/pentanoic-acid-dichromate",
 		"/shortfalls", "/buying", "/waste", "/reckoner", "/reckoner/amount?mass=50+g", "/reckoner/amount?mass=x", "/nowhere"} {
 		doc := parse(t, get(t, s, address))
