@@ -34,7 +34,11 @@ func NoteHazards(needs []Need, steps []StepReport, waste []WasteLot) []HazardNot
 		if n.Count {
 			continue
 		}
-		notes = append(notes, storedNotes(n)...)
+		for _, note := range storedNotes(n) {
+			if !slices.ContainsFunc(notes, func(had HazardNote) bool { return had.What == note.What }) {
+				notes = append(notes, note)
+			}
+		}
 		stored[n.Substance] = true
 		for _, d := range n.Draws {
 			stored[d.Form.Name] = true
@@ -338,6 +342,9 @@ func substanceNote(at, name, cas string) HazardNote {
 	}
 	for _, code := range s.Hazard.EUH {
 		note.Statements = append(note.Statements, chem.StatementLine(code))
+	}
+	if class := s.PeroxideClass; class == "A" || class == "B" || class == "C" {
+		note.Notes = append(note.Notes, "forms peroxides (class "+class+"): test before distilling or stripping, never to dryness")
 	}
 	if s.Hazard.SupplierAdditions != "" {
 		note.Notes = append(note.Notes, "suppliers add: "+s.Hazard.SupplierAdditions)

@@ -210,6 +210,22 @@ func TestPapersWithoutPlan(t *testing.T) {
 	}
 }
 
+// A bottle that two needs draw from is fetched once, with both amounts.
+func TestPickListOneBottleTwoNeeds(t *testing.T) {
+	p := paperPlan(t)
+	second := p.Needs[4]
+	second.Draws = []planner.Draw{second.Draws[0]}
+	second.Draws[0].Mass, second.Draws[0].Leaves = 16*chem.Gram, 50*chem.Gram
+	second.Draws[0].Volume, second.Draws[0].LeavesVolume = 18*chem.Millilitre, 55*chem.Millilitre
+	second.Draws[0].Steps = []planner.StepDraw{{Step: 8, Mass: 16 * chem.Gram, Volume: 18 * chem.Millilitre}}
+	p.Needs = append(p.Needs, second)
+	text := paperText(t, writePaper(t, PickList, p, paperOptions()))
+	wantText(t, text, "about 850 g", "for step 8", "leaves "+massText(50*chem.Gram))
+	if got := strings.Count(text, second.Draws[0].Bottle.Code); got != 1 {
+		t.Errorf("bottle listed %d times, want once", got)
+	}
+}
+
 // A name longer than a line is broken, not cut off or run into the amount.
 func TestPickListLongNames(t *testing.T) {
 	p := paperPlan(t)

@@ -116,10 +116,12 @@ func (l *pickList) bottles() error {
 		l.heading(title, 58)
 		l.carrierNote(c)
 		for _, code := range c.Bottles {
-			for _, f := range fetches[code] {
-				if err := l.bottle(f); err != nil {
-					return err
-				}
+			f, ok := fetches[code]
+			if !ok {
+				continue // a carrier names only bottles that are drawn from
+			}
+			if err := l.bottle(f); err != nil {
+				return err
 			}
 		}
 	}
@@ -141,14 +143,28 @@ func (l *pickList) carrierNote(c planner.Carrier) {
 	l.y += lineHeight + 2
 }
 
-func fetchesByCode(p *planner.Plan) map[string][]fetch {
-	byCode := map[string][]fetch{}
+// fetchesByCode gathers what is drawn from each bottle: several needs may draw
+// from one, and it is fetched once.
+func fetchesByCode(p *planner.Plan) map[string]fetch {
+	byCode := map[string]fetch{}
 	for _, n := range p.Needs {
 		if n.Count {
 			continue
 		}
 		for _, d := range n.Draws {
-			byCode[d.Bottle.Code] = append(byCode[d.Bottle.Code], fetch{n, d})
+			f, ok := byCode[d.Bottle.Code]
+			if !ok {
+				byCode[d.Bottle.Code] = fetch{n, d}
+				continue
+			}
+			f.need.Exact = f.need.Exact || n.Exact
+			f.draw.Mass += d.Mass
+			f.draw.Volume += d.Volume
+			f.draw.Leaves = min(f.draw.Leaves, d.Leaves)
+			f.draw.LeavesVolume = min(f.draw.LeavesVolume, d.LeavesVolume)
+			f.draw.Opens = f.draw.Opens || d.Opens
+			f.draw.Steps = slices.Concat(f.draw.Steps, d.Steps)
+			byCode[d.Bottle.Code] = f
 		}
 	}
 	return byCode

@@ -78,10 +78,11 @@ func (r *requisition) total() {
 	for _, c := range currencies {
 		words = append(words, moneyText(sums[c], c))
 	}
+	cost := strings.Join(words, " + ") + ", with order fees and surcharges; tax not included"
 	if len(words) == 0 {
-		words = []string{"no offer on record"}
+		cost = "no offer on record"
 	}
-	r.labelled("Cost", strings.Join(words, " + ")+", with order fees and surcharges; tax not included")
+	r.labelled("Cost", cost)
 	r.labelled("For", fmt.Sprintf("%s of %s on %s", massPlain(r.plan.Target.Mass), r.plan.Target.Substance, r.plan.On.Long()))
 	r.labelled("Requested by", orBlank(r.options.PrintedBy))
 }

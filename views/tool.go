@@ -16,10 +16,10 @@ type measured struct {
 }
 
 // fineEnough is the share of an amount that the division of its balance may be:
-// a thousandth, a five-thousandth where it must be exact (common practice).
+// half a per cent, a thousandth where it must be exact (common practice).
 const (
-	fineEnough = 1e-3
-	fineExact  = 2e-4
+	fineEnough = 5e-3
+	fineExact  = 1e-3
 )
 
 // measuredMass rounds a mass to the coarsest balance that carries it and is fine
