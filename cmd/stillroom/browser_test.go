@@ -76,6 +76,8 @@ func newTab(t testing.TB, scripts bool) tab {
 	t.Helper()
 	allocator, stop := chromedp.NewExecAllocator(context.Background(),
 		chromedp.ExecPath(needTool(t, "chromium")),
+		chromedp.Headless,
+		chromedp.DisableGPU,
 		chromedp.NoSandbox,
 		chromedp.Flag("disable-quic", true),
 		chromedp.Flag("disable-component-update", true),
@@ -156,4 +158,36 @@ func (b tab) violations() []string {
 // until waits for the text of an element to hold a piece.
 func until(selector, piece string) chromedp.Action[chromedp.Void] {
 	return chromedp.Poll[chromedp.Void](fmt.Sprintf(`document.querySelector(%q)?.textContent.includes(%q)`, selector, piece))
+}
+
+// A look is a width and a colour scheme a page is seen in.
+type look struct {
+	name          string
+	width, height int64
+	dark          bool
+}
+
+var looks = []look{
+	{"wide-light", 1280, 900, false},
+	{"wide-dark", 1280, 900, true},
+	{"narrow-light", 390, 844, false},
+	{"narrow-dark", 390, 844, true},
+}
+
+func (b tab) look(l look) {
+	b.Helper()
+	b.dark(l.dark)
+	b.do(chromedp.EmulateViewport(l.width, l.height))
+}
+
+// click clicks the first element a selector finds.
+func (b tab) click(selector string) {
+	b.Helper()
+	b.do(chromedp.Click(chromedp.CSS(selector)))
+}
+
+// attribute returns an attribute of the first element a selector finds.
+func (b tab) attribute(selector, name string) string {
+	b.Helper()
+	return read[string](b, fmt.Sprintf(`document.querySelector(%q)?.getAttribute(%q) ?? ""`, selector, name))
 }
