@@ -22,14 +22,11 @@ func TestRunInBrowser(t *testing.T) {
 		t.Run(fmt.Sprintf("scripts=%v", scripts), func(t *testing.T) {
 			b := newTab(t, scripts)
 			b.do(chromedp.Navigate(base + "/slate"))
-			b.click(`a[href="/runs/1"]`)
-			b.do(chromedp.WaitVisible(chromedp.CSS("#verdict")))
+			b.do(chromedp.Navigate(base + b.attribute(`a[href="/runs/1"]`, "href")))
 			before := b.text(".gut span")
-			b.do(chromedp.SetValue(chromedp.CSS("#wanted"), "900 g"))
-			b.click("form.set button.go")
-			b.do(until("h1", "900"))
+			b.ask("#wanted", "400 g", until("h1", "400"))
 			if got := b.attribute("#verdict", "data-state"); got != "short" {
-				t.Errorf("verdict of 900 g is %q, want short", got)
+				t.Errorf("verdict of 400 g is %q, want short", got)
 			}
 			if n := read[int](b, `document.querySelectorAll('#needs tr[data-state="short"]').length`); n == 0 {
 				t.Error("no need is marked short")
@@ -53,9 +50,7 @@ func TestRunInBrowser(t *testing.T) {
 // refuses types what isn't a mass and wants the form back with the fault beside it.
 func refuses(t *testing.T, b tab) {
 	t.Helper()
-	b.do(chromedp.SetValue(chromedp.CSS("#wanted"), "1,234 g"))
-	b.click("form.set button.go")
-	b.do(until("#wanted-fault", "1,234"))
+	b.ask("#wanted", "1,234 g", until("#wanted-fault", "1,234"))
 	if typed := read[string](b, `document.querySelector("#wanted").value`); typed != "1,234 g" {
 		t.Errorf("the form came back with %q, want what was typed", typed)
 	}

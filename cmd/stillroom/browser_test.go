@@ -68,7 +68,8 @@ func startDemo(t testing.TB) string {
 // A tab is a browser tab. Its browser ends with the test.
 type tab struct {
 	testing.TB
-	ctx context.Context
+	ctx     context.Context
+	scripts bool
 }
 
 // newTab opens a browser tab; scripts says whether JavaScript runs in it.
@@ -85,7 +86,7 @@ func newTab(t testing.TB, scripts bool) tab {
 	t.Cleanup(stop)
 	ctx, closeTab := chromedp.NewContext(allocator)
 	t.Cleanup(closeTab)
-	b := tab{t, ctx}
+	b := tab{t, ctx, scripts}
 	b.do()
 	b.ctx, stop = context.WithTimeout(ctx, 3*time.Minute)
 	t.Cleanup(stop)
@@ -180,10 +181,22 @@ func (b tab) look(l look) {
 	b.do(chromedp.EmulateViewport(l.width, l.height))
 }
 
-// click clicks the first element a selector finds.
-func (b tab) click(selector string) {
+// ask types a value into a field and submits its form. With JavaScript the
+// part of the page that changes is exchanged, and done says when; without it
+// the browser loads the page anew.
+func (b tab) ask(field, value string, done chromedp.Action[chromedp.Void]) {
 	b.Helper()
-	b.do(chromedp.Click(chromedp.CSS(selector)))
+	b.do(chromedp.SetValue(chromedp.CSS(field), value))
+	click := chromedp.Click(chromedp.CSS("form.set button.go"))
+	if b.scripts {
+		b.do(click, done)
+		return
+	}
+	b.call(func() error {
+		_, err := chromedp.RunResponse(b.ctx, click)
+		return err
+	})
+	b.do(done)
 }
 
 // attribute returns an attribute of the first element a selector finds.

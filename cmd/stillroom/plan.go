@@ -25,6 +25,7 @@ type planOptions struct {
 	json       bool
 	papers     string
 	letter     bool
+	batches    int
 }
 
 func newPlan(today func() inventory.Date) *cobra.Command {
@@ -50,6 +51,7 @@ Recipes that come with the program: ` + strings.Join(recipeNames(), ", ") + ".",
 	f.BoolVar(&o.json, "json", false, "print the plan as JSON")
 	f.StringVar(&o.papers, "papers", "", "folder to write pick-list.pdf, hazard-sheet.pdf and requisition.pdf into")
 	f.BoolVar(&o.letter, "letter", false, "print the papers on Letter instead of A4")
+	f.IntVar(&o.batches, "batches", 0, "number of equal batches (default: as many as the ware asks for)")
 	o.data.register(f)
 	return cmd
 }
@@ -98,7 +100,7 @@ func (o *planOptions) request(recipe string, today inventory.Date) (planner.Requ
 			return planner.Request{}, usagef("--on: %w", err)
 		}
 	}
-	return planner.Request{Recipe: r, Target: target, On: on, Today: today}, nil
+	return planner.Request{Recipe: r, Target: target, On: on, Today: today, Batches: o.batches}, nil
 }
 
 // findRecipe takes a recipe that comes with the program, by name, or reads a file.
