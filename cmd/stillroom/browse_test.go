@@ -73,6 +73,7 @@ func TestPagesAreAccessible(t *testing.T) {
 		for _, look := range looks {
 			b.look(look)
 			b.do(chromedp.Navigate(base + page))
+			b.photograph(page, look)
 			for _, v := range b.violations() {
 				t.Errorf("%s, %s: %s", page, look.name, v)
 			}

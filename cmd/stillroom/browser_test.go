@@ -8,7 +8,9 @@ import (
 	"io"
 	"os"
 	"os/exec"
+	"path/filepath"
 	"regexp"
+	"strings"
 	"testing"
 	"time"
 
@@ -203,4 +205,22 @@ func (b tab) ask(field, value string, done chromedp.Action[chromedp.Void]) {
 func (b tab) attribute(selector, name string) string {
 	b.Helper()
 	return read[string](b, fmt.Sprintf(`document.querySelector(%q)?.getAttribute(%q) ?? ""`, selector, name))
+}
+
+// photograph writes a picture of the whole page into the folder that
+// STILLROOM_SCREENSHOTS names, for people to look at; without it, it does
+// nothing.
+func (b tab) photograph(page string, l look) {
+	b.Helper()
+	dir := os.Getenv("STILLROOM_SCREENSHOTS")
+	if dir == "" {
+		return
+	}
+	const lossless = 100
+	png, err := chromedp.Run(b.ctx, chromedp.FullScreenshot(lossless))
+	if err != nil {
+		b.Fatal(err)
+	}
+	name := strings.Trim(strings.NewReplacer("/", "-", "?", "-", "=", "-").Replace(page), "-")
+	b.call(func() error { return os.WriteFile(filepath.Join(dir, name+"-"+l.name+".png"), png, 0o644) })
 }
