@@ -1,6 +1,7 @@
 package inventory
 
 import (
+	"database/sql"
 	"strconv"
 	"strings"
 
@@ -15,7 +16,7 @@ type bulk struct {
 	columns int
 	batch   int // rows with each statement
 	args    []any
-	full    string // the statement for a whole batch
+	full    *sql.Stmt // for a whole batch; nil until the first
 }
 
 // bulkRows is how many rows go into a statement: past some hundred the gain is
@@ -26,7 +27,6 @@ func newBulk(tx *gorm.DB, engine engine, table string, columns ...string) *bulk 
 	b := &bulk{tx: tx, engine: engine, columns: len(columns), batch: bulkRows,
 		head: "INSERT INTO " + table + " (" + strings.Join(columns, ", ") + ") VALUES "}
 	b.args = make([]any, 0, b.columns*b.batch)
-	b.full = b.statement(b.batch)
 	return b
 }
 
@@ -61,19 +61,28 @@ func (b *bulk) add(values ...any) error {
 	if len(b.args) < b.columns*b.batch {
 		return nil
 	}
-	return b.exec(b.full)
+	pool, ctx := b.tx.Statement.ConnPool, b.tx.Statement.Context
+	if b.full == nil {
+		full, err := pool.PrepareContext(ctx, b.statement(b.batch))
+		if err != nil {
+			return err
+		}
+		b.full = full
+	}
+	_, err := b.full.ExecContext(ctx, b.args...)
+	b.args = b.args[:0]
+	return err
 }
 
 // flush inserts what is left.
 func (b *bulk) flush() error {
+	if b.full != nil {
+		defer b.full.Close()
+	}
 	if len(b.args) == 0 {
 		return nil
 	}
-	return b.exec(b.statement(len(b.args) / b.columns))
-}
-
-func (b *bulk) exec(statement string) error {
-	_, err := b.tx.Statement.ConnPool.ExecContext(b.tx.Statement.Context, statement, b.args...)
+	_, err := b.tx.Statement.ConnPool.ExecContext(b.tx.Statement.Context, b.statement(len(b.args)/b.columns), b.args...)
 	b.args = b.args[:0]
 	return err
 }

@@ -20,6 +20,10 @@ const (
 	sqliteReaders      = 4
 	postgresConns      = 16
 	statementsPrepared = true
+	// An import writes into a dozen indexes at random places: with SQLite's own
+	// two megabytes the pages go to the disk and come back many times over.
+	writerCacheKiB = 96 << 10
+	readerCacheKiB = 8 << 10
 )
 
 func (s *Store) openSQLite(ctx context.Context) error {
@@ -74,6 +78,11 @@ func (s *Store) sqliteDSN(lock string) string {
 	q.Add("_pragma", "trusted_schema(0)")
 	q.Add("_pragma", "cell_size_check(1)")
 	q.Add("_txlock", lock)
+	cache := writerCacheKiB
+	if lock == "deferred" {
+		cache = readerCacheKiB
+	}
+	q.Add("_pragma", "cache_size(-"+strconv.Itoa(cache)+")")
 	if s.options.ReadOnly {
 		q.Add("mode", "ro")
 		q.Add("_pragma", "query_only(1)")

@@ -127,6 +127,9 @@ func readDrafts(t Table, m Mapping, report *ImportReport) []draft {
 	marks, whole := map[string]int{}, map[string]int{}
 	for i, row := range t.Rows {
 		d, faults := reader.read(i)
+		if len(row) > len(t.Header) && !blank(row[len(t.Header):]) {
+			faults = []string{fmt.Sprintf("%d cells under %d headings; quote a cell that holds a comma", len(row), len(t.Header))}
+		}
 		key := strings.Join(row, "\x00")
 		if at, seen := whole[key]; seen {
 			faults = append(faults, fmt.Sprintf("the same as line %d; give each bottle its own number, or their count", at))

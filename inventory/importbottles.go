@@ -2,16 +2,17 @@ package inventory
 
 import "gorm.io/gorm/clause"
 
-// importWriter inserts bottles with their first ledger entry and state.
+// importWriter inserts bottles with their first ledger entry, which also says
+// who took them in, when and why.
 type importWriter struct {
-	in                      *importer
-	bottles, ledger, states *bulk
-	heads                   map[int64]*chain
-	ids                     []int64 // taken in advance
-	stamp                   Stamp
-	today                   Date
-	why                     string
-	done                    int
+	in              *importer
+	bottles, ledger *bulk
+	heads           map[int64]*chain
+	ids             []int64 // taken in advance
+	stamp           Stamp
+	today           Date
+	why             string
+	done            int
 }
 
 // bottles writes all drafts.
@@ -29,10 +30,9 @@ func (in *importer) bottles(drafts []draft) error {
 		bottles: newBulk(in.tx, s.engine, "bottles", "id", "store_id", "code", "mark", "form_id", "place_id", "state", "lot", "content",
 			"size", "received", "opened", "expiry", "measured_by", "measured_on", "supplier", "note", "import_id"),
 		ledger: newBulk(in.tx, s.engine, "ledger", "store_id", "seq", "bottle_id", "kind", "amount", "content", "by_whom", "at", "why", "hash"),
-		states: newBulk(in.tx, s.engine, "bottle_states", "store_id", "bottle_id", "was", "state", "by_whom", "at", "why"),
 	}
-	// Bottles, ledger and states are flushed together, so that no entry comes
-	// before its bottle.
+	// Bottles and ledger are flushed together, so that no entry comes before its
+	// bottle.
 	for i := range drafts {
 		if err := w.write(&drafts[i]); err != nil {
 			return err
@@ -80,10 +80,7 @@ func (w *importWriter) add(b *Bottle) error {
 		orNull(b.Received), orNull(b.Opened), orNull(b.Expiry), string(b.MeasuredBy), orNull(b.MeasuredOn), b.Supplier, b.Note, w.in.id); err != nil {
 		return err
 	}
-	if err := w.ledger.add(e.StoreID, e.Seq, e.BottleID, string(e.Kind), e.Amount, e.Content, e.ByWhom, at, e.Why, e.Hash); err != nil {
-		return err
-	}
-	return w.states.add(b.StoreID, b.ID, "", string(b.State), e.ByWhom, at, e.Why)
+	return w.ledger.add(e.StoreID, e.Seq, e.BottleID, string(e.Kind), e.Amount, e.Content, e.ByWhom, at, e.Why, e.Hash)
 }
 
 // orNull stores a date, or NULL for none.
@@ -106,7 +103,7 @@ func (w *importWriter) head(store int64) (*chain, error) {
 }
 
 func (w *importWriter) end() error {
-	for _, b := range []*bulk{w.bottles, w.ledger, w.states} {
+	for _, b := range []*bulk{w.bottles, w.ledger} {
 		if err := b.flush(); err != nil {
 			return err
 		}

@@ -138,7 +138,12 @@ func (in *importer) refuseMarks(drafts []draft) ([]draft, error) {
 	taken := map[string]string{}
 	for part := range slices.Chunk(marks, 5000) {
 		var there []Bottle
-		if err := in.tx.Select("code", "mark").Where("mark IN ? AND state <> ?", part, Discarded).Find(&there).Error; err != nil {
+		plain := make([]string, len(part))
+		for i, mark := range part {
+			plain[i] = spelledPlain(mark)
+		}
+		spelling := in.store.plainColumn("mark") // the index is over this spelling
+		if err := in.tx.Select("code", "mark").Where("mark <> '' AND "+spelling+" IN ? AND state <> ?", plain, Discarded).Find(&there).Error; err != nil {
 			return nil, err
 		}
 		for _, b := range there {

@@ -76,7 +76,7 @@ func (s *Store) searchBottles(tx *gorm.DB, query string, names *catalogue, found
 		}
 		return nil
 	}
-	if plain := plainText(query); plain != "" {
+	if plain := spelledPlain(query); plain != "" {
 		for _, column := range []string{"mark", "lot"} {
 			if err := add(s.prefixed(tx, column, plain)); err != nil {
 				return err
@@ -110,11 +110,30 @@ func (s *Store) searchBottles(tx *gorm.DB, query string, names *catalogue, found
 // prefixed finds bottles whose number or lot begins with a text, by the index
 // over the plain spelling.
 func (s *Store) prefixed(tx *gorm.DB, column, plain string) *gorm.DB {
-	spelling := "lower(replace(replace(" + column + ", '-', ''), ' ', ''))"
-	if s.engine == onPostgres {
-		spelling += ` COLLATE "C"`
-	}
+	spelling := s.plainColumn(column)
 	return tx.Where(column+" <> '' AND "+spelling+" >= ? AND "+spelling+" < ?", plain, plain+"\U0010ffff").Order(spelling)
+}
+
+// plainColumn is the expression of the indexes over numbers and lots.
+func (s *Store) plainColumn(column string) string {
+	if s.engine == onPostgres {
+		return "lower(replace(replace(" + column + `, '-', ''), ' ', '') COLLATE "C")`
+	}
+	return "lower(replace(replace(" + column + ", '-', ''), ' ', ''))"
+}
+
+// spelledPlain spells a text as plainColumn does in the database, where only the
+// letters A to Z are made small.
+func spelledPlain(s string) string {
+	return strings.Map(func(r rune) rune {
+		switch {
+		case r == '-' || r == ' ':
+			return -1
+		case r >= 'A' && r <= 'Z':
+			return r + 'a' - 'A'
+		}
+		return r
+	}, s)
 }
 
 // noted finds bottles whose note has words that begin with all those given.

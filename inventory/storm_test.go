@@ -27,7 +27,14 @@ func TestMain(m *testing.M) {
 		storm(dir)
 		os.Exit(0)
 	}
-	os.Exit(m.Run())
+	status := m.Run()
+	for _, s := range benchStores {
+		s.Close()
+	}
+	for _, dir := range benchDirs {
+		os.RemoveAll(dir)
+	}
+	os.Exit(status)
 }
 
 // An ack is an acknowledged act: its key, and the ledger entry or run it made.

@@ -15,4 +15,3 @@ CREATE UNIQUE INDEX imports_once ON imports (fingerprint) WHERE undone IS NULL;
 
 ALTER TABLE bottles ADD COLUMN import_id BIGINT NOT NULL DEFAULT 0;
 CREATE INDEX bottles_import ON bottles (import_id) WHERE import_id > 0;
-CREATE INDEX bottles_mark ON bottles (mark) WHERE mark <> '';

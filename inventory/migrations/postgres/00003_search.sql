@@ -1,6 +1,6 @@
 -- +goose Up
-CREATE INDEX bottles_mark_plain ON bottles (lower(replace(replace(mark, '-', ''), ' ', '')) COLLATE "C") WHERE mark <> '';
-CREATE INDEX bottles_lot_plain ON bottles (lower(replace(replace(lot, '-', ''), ' ', '')) COLLATE "C") WHERE lot <> '';
+CREATE INDEX bottles_mark_plain ON bottles (lower(replace(replace(mark, '-', ''), ' ', '') COLLATE "C")) WHERE mark <> '';
+CREATE INDEX bottles_lot_plain ON bottles (lower(replace(replace(lot, '-', ''), ' ', '') COLLATE "C")) WHERE lot <> '';
 CREATE INDEX bottles_note_words ON bottles USING gin (to_tsvector('simple', note)) WHERE note <> '';
 
 -- What the catalogue of names in memory was read from: it is read again when n

@@ -79,7 +79,6 @@ CREATE TABLE bottles (
 ) STRICT;
 CREATE INDEX bottles_form ON bottles (form_id);
 CREATE INDEX bottles_place ON bottles (place_id);
-CREATE INDEX bottles_lot ON bottles (lot) WHERE lot <> '';
 
 CREATE TABLE runs (
     id          INTEGER PRIMARY KEY,
