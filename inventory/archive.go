@@ -221,7 +221,7 @@ func (a *archiveReader) loadTable(s *Store, tx *gorm.DB, table archiveTable) err
 		for i, v := range row {
 			value, err := fromArchive(v, kinds[i])
 			if err != nil {
-				return err
+				return notArchive(err)
 			}
 			args = append(args, value)
 		}
@@ -293,7 +293,7 @@ func fromArchive(v any, kind string) (any, error) {
 		}
 		return v.Int64()
 	}
-	return nil, notArchive(fmt.Errorf("a %T in a row", v))
+	return nil, fmt.Errorf("a %T in a row", v)
 }
 
 // skim reads an archive to its end without keeping anything.

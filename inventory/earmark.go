@@ -264,20 +264,41 @@ func total(marks []Earmark) (sum int64) {
 
 func promiseError(tx *gorm.DB, b *Bottle, form StockForm, wanted, free int64, others []Earmark) error {
 	e := &PromiseError{Bottle: b.Code, Measure: form.Measure, Wanted: wanted, Free: free, Content: b.Content}
-	for _, m := range others {
-		p, err := promiseOf(tx, m)
-		if err != nil {
-			return err
-		}
-		e.Others = append(e.Others, p)
+	promises, err := promisesOf(tx, others)
+	if err != nil {
+		return err
 	}
+	e.Others = promises
 	return e
 }
 
 func promiseOf(tx *gorm.DB, m Earmark) (Promise, error) {
-	var r Run
-	err := tx.Select("recipe").Where("id = ?", m.RunID).Limit(1).Find(&r).Error
-	return Promise{Run: m.RunID, Recipe: r.Recipe, On: m.ForDate, Owner: m.Owner, Amount: m.Amount, Ends: m.Ends}, err
+	promises, err := promisesOf(tx, []Earmark{m})
+	if err != nil {
+		return Promise{}, err
+	}
+	return promises[0], nil
+}
+
+// promisesOf names the runs of earmarks, in one query for all of them.
+func promisesOf(tx *gorm.DB, marks []Earmark) ([]Promise, error) {
+	ids := make([]int64, len(marks))
+	for i, m := range marks {
+		ids[i] = m.RunID
+	}
+	var runs []Run
+	if err := tx.Select("id", "recipe").Where("id IN ?", ids).Find(&runs).Error; err != nil {
+		return nil, err
+	}
+	recipes := make(map[int64]string, len(runs))
+	for _, r := range runs {
+		recipes[r.ID] = r.Recipe
+	}
+	promises := make([]Promise, len(marks))
+	for i, m := range marks {
+		promises[i] = Promise{Run: m.RunID, Recipe: recipes[m.RunID], On: m.ForDate, Owner: m.Owner, Amount: m.Amount, Ends: m.Ends}
+	}
+	return promises, nil
 }
 
 // Reconfirm moves the end of all a run's earmarks.

@@ -11,18 +11,66 @@ import (
 func (s *Store) Load(ctx context.Context) (*Shelf, error) {
 	var lab Lab
 	err := s.read(ctx, "load the shelf", func(tx *gorm.DB) error {
-		var policy []PolicyRow
-		for _, list := range []any{&lab.Substances, &lab.Forms, &lab.Places, &lab.Bottles, &lab.Earmarks, &lab.Offers,
-			&lab.Orders, &lab.Carboys, &lab.Equipment, &lab.Runs, &policy} {
-			if err := tx.Find(list).Error; err != nil {
-				return err
-			}
+		if err := loadRest(tx, &lab); err != nil {
+			return err
 		}
-		lab.Policy = PolicyOf(policy)
-		return nil
+		if err := tx.Find(&lab.Bottles).Error; err != nil {
+			return err
+		}
+		return tx.Find(&lab.Earmarks).Error
 	})
 	if err != nil {
 		return nil, err
 	}
 	return NewShelf(lab), nil
+}
+
+// LoadFor is Load with the bottles of only some substances, by name, synonym or
+// registry number; everything else is whole. Substances that may be put in
+// another's place have to be named too. A site with a million bottles plans with it.
+func (s *Store) LoadFor(ctx context.Context, substances []string) (*Shelf, error) {
+	var lab Lab
+	err := s.read(ctx, "load the shelf", func(tx *gorm.DB) error {
+		if err := loadRest(tx, &lab); err != nil {
+			return err
+		}
+		ids := formsNamed(lab, substances)
+		if len(ids) == 0 {
+			return nil
+		}
+		if err := tx.Where("form_id IN ? AND state NOT IN ?", ids, []BottleState{Discarded, Empty}).Find(&lab.Bottles).Error; err != nil {
+			return err
+		}
+		return tx.Where("bottle_id IN (SELECT id FROM bottles WHERE form_id IN ?)", ids).Find(&lab.Earmarks).Error
+	})
+	if err != nil {
+		return nil, err
+	}
+	return NewShelf(lab), nil
+}
+
+// loadRest reads all lists but those that grow with the bottles.
+func loadRest(tx *gorm.DB, lab *Lab) error {
+	var policy []PolicyRow
+	for _, list := range []any{&lab.Substances, &lab.Forms, &lab.Places, &lab.Offers, &lab.Orders, &lab.Carboys, &lab.Equipment, &lab.Runs, &policy} {
+		if err := tx.Find(list).Error; err != nil {
+			return err
+		}
+	}
+	lab.Policy = PolicyOf(policy)
+	return nil
+}
+
+func formsNamed(lab Lab, names []string) (ids []int64) {
+	shelf := NewShelf(lab)
+	for _, name := range names {
+		substance, ok := shelf.Substance(name)
+		if !ok {
+			continue
+		}
+		for _, form := range shelf.FormsOf(substance.ID) {
+			ids = append(ids, form.ID)
+		}
+	}
+	return ids
 }

@@ -350,20 +350,19 @@ func TestParallelEarmarks(t *testing.T) {
 		filled(t, s)
 		b := open1(t, s, "1-hexanol open") // 390 mL, 60 of them for run 2
 		const people = 1000
-		runs := make([]int64, people)
-		for i := range runs {
-			r, err := s.AddRun(ctx, Run{StoreID: 1, Recipe: "hexanoic-acid-permanganate", TargetUG: g(1), On: demoDay.AddDays(3)}, clerk)
-			if err != nil {
-				t.Fatal(err)
-			}
-			runs[i] = r.ID
+		rows := make([]Run, people)
+		for i := range rows {
+			rows[i] = Run{StoreID: 1, Recipe: "hexanoic-acid-permanganate", TargetUG: g(1), On: demoDay.AddDays(3), State: Pencilled, Made: s.stamp(), Version: 1}
+		}
+		if err := createAll(s.writer, rows); err != nil {
+			t.Fatal(err)
 		}
 		var mu sync.Mutex
 		var got, conflicts int
 		var wait sync.WaitGroup
-		for _, run := range runs {
+		for _, run := range rows {
 			wait.Go(func() {
-				_, err := s.Earmark(ctx, run, Want{Bottle: b.Code, Amount: mL(1)}, clerk)
+				_, err := s.Earmark(ctx, run.ID, Want{Bottle: b.Code, Amount: mL(1)}, clerk)
 				mu.Lock()
 				defer mu.Unlock()
 				switch {
