@@ -30,8 +30,10 @@ func (c *compiler) dose(ch charge) (dose, error) {
 		d.phase = map[string]int{"aqueous": aqueous, "organic": organic, "contents": -1}[ch.of]
 	}
 	d.ask = c.ask(i, ch.accept, ch.rule, ch.hiddenKey, ch.exact)
+	c.p.asks[d.ask].Why = ch.hiddenWhy
 	if ch.madeUp > 0 {
 		d.waterAsk = c.ask(c.p.water, Accept{}, ch.rule, ch.hiddenKey, false)
+		c.p.asks[d.waterAsk].Why = ch.hiddenWhy
 	}
 	return d, nil
 }

@@ -79,6 +79,9 @@ func (r *reporter) finish(w *Workspace) *Walk {
 		a.Amount *= chem.Amount(w.batches)
 		a.Pieces *= w.batches
 		a.Index = i
+		if a.Hidden && a.Pure > 0 && !hasNumber(a.Why) {
+			a.Why = fmt.Sprintf("%s: %.3g g, %s", a.Why, a.Pure.Grams(), a.Rule)
+		}
 		if a.Pure == 0 && a.Pieces == 0 {
 			continue
 		}
