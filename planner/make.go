@@ -279,6 +279,7 @@ func (p *planning) write() (*Plan, error) {
 	}
 	p.risk(plan)
 	p.states(plan)
+	plan.Findings = append(plan.Findings, p.scaleFindings(plan)...)
 	p.blends(plan)
 	p.insertMakeUps(plan)
 	p.sheets(plan)

@@ -276,7 +276,7 @@ func (a *assessor) content(x *fit) (quantity, bool) {
 		return q, false
 	case inventory.ByLedger:
 		q.sd = has * prior("ledger")
-		if x.form.StorageClass == "flammable liquid" && b.MeasuredOn.Set() {
+		if x.form.StorageClass == flammable && b.MeasuredOn.Set() {
 			months := max(0, float64(a.m.req.On-b.MeasuredOn)/30)
 			q.sd = math.Hypot(q.sd, has*prior("ledger-month")*months)
 		}

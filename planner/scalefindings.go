@@ -1,0 +1,68 @@
+package planner
+
+import (
+	"fmt"
+
+	"stillroom/chem"
+	"stillroom/inventory"
+)
+
+// scaleFindings warns of a scale that goes beyond what was done before, and of
+// what counts as large (practice §1, scale facts).
+func (p *planning) scaleFindings(plan *Plan) []Finding {
+	var found []Finding
+	factor := p.scale.Factor / float64(p.batches)
+	warn := p.policy.value("scale.warn")
+	switch {
+	case p.scale.Factor == 0:
+		found = append(found, Finding{Kind: "nothing-proven", Severity: Warning,
+			Text:  "the recipe has no proven scale: no run of it has been recorded",
+			Would: "a small run first, and a review"})
+	case factor > warn:
+		found = append(found, Finding{Kind: "scale-beyond-proven", Severity: Warning,
+			Text:  fmt.Sprintf("%.2g times the largest proven scale; from %.2g times on a scale-up needs a review", factor, warn),
+			Would: fmt.Sprintf("at most %s in one run, or smaller batches", massText(p.req.Target*chem.Mass(warn/factor)))})
+	}
+	limiting := p.limitingMass()
+	if most := p.policy.value("scale.large-substrate"); limiting.Grams() > most {
+		found = append(found, Finding{Kind: "large-substrate", Severity: Note,
+			Text: fmt.Sprintf("%s of %s a batch: above %.3g g a run counts as large", massText(limiting), p.scale.Limiting, most)})
+	}
+	solvent := p.solventVolume(plan)
+	if most := p.policy.value("scale.large-solvent"); solvent.Millilitres() > most {
+		found = append(found, Finding{Kind: "large-solvent", Severity: Note,
+			Text: fmt.Sprintf("%.2g L of organic solvents a batch: above %.3g mL a run counts as large", solvent.Litres(), most)})
+	}
+	return found
+}
+
+// limitingMass is the pure mass of limiting reagent in one batch.
+func (p *planning) limitingMass() chem.Mass {
+	sum := chem.Mass(0)
+	for i := range p.asks {
+		if p.asks[i].Substance == p.scale.Limiting {
+			sum += p.asks[i].Pure
+		}
+	}
+	return sum / chem.Mass(p.batches)
+}
+
+// solventVolume is what one batch draws of flammable liquids beside the
+// limiting reagent.
+func (p *planning) solventVolume(plan *Plan) chem.Volume {
+	sum := chem.Volume(0)
+	for i := range plan.Needs {
+		if plan.Needs[i].Substance == p.scale.Limiting {
+			continue
+		}
+		for _, d := range plan.Needs[i].Draws {
+			if d.Form.StorageClass == flammable && d.Form.Measure == inventory.ByVolume {
+				sum += d.Volume
+			}
+		}
+	}
+	return sum / chem.Volume(p.batches)
+}
+
+// flammable is the storage class of flammable liquids.
+const flammable = "flammable liquid"
