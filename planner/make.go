@@ -309,8 +309,15 @@ func (p *planning) risk(plan *Plan) {
 	for _, s := range p.walk.Steps {
 		do[s.N] = s.Do
 	}
-	plan.Risk = newAssessor(p.matcher).assess(p.covers, p.asks, func(step int) string { return do[step] })
+	a := newAssessor(p.matcher)
+	if s, ok := p.program.(sampler); ok && p.req.Drawn {
+		a.walks = drawWalks(s, p.conditions(), p.covers, p.walk.Asks, a.seed, a.n)
+	}
+	plan.Risk = a.assess(p.covers, p.asks, func(step int) string { return do[step] })
 	plan.Risk.product(p.walk.Product, p.scale, p.req.Target)
+	if a.walks != nil {
+		plan.Risk.drawn(a.walks, p.req.Target)
+	}
 }
 
 func (p *planning) states(plan *Plan) {

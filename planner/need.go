@@ -21,8 +21,10 @@ type demand struct {
 	// amount is in kilograms of pure, anhydrous substance or in pieces.
 	amount float64
 	asks   []int // into the asks of the walk
-	key    string
-	alone  bool // no other demand shares its substance, and it has no substitutes
+	// charges are the amounts of the asks.
+	charges []float64
+	key     string
+	alone   bool // no other demand shares its substance, and it has no substitutes
 }
 
 // unknownMolar is for what has no formula, such as filter aid.
@@ -49,6 +51,7 @@ func demandsOf(asks []Ask, shelf *inventory.Shelf) ([]demand, error) {
 		}
 		d := &demands[at]
 		d.asks = append(d.asks, i)
+		d.charges = append(d.charges, amountOf(ask))
 		d.amount += amountOf(ask)
 	}
 	markAlone(demands)

@@ -25,6 +25,9 @@ type Request struct {
 	Leave []int64
 	// Free lists earmarks, by ID, that are taken as freed.
 	Free []int64
+	// Drawn asks for the chances from draws of the whole walk-through, not from
+	// the spread of each charge by itself; that takes some tenths of a second.
+	Drawn bool
 	// Batches splits the run into equal batches; 0 means as few as the ware allows.
 	Batches int
 }
@@ -328,8 +331,12 @@ type Metrics struct {
 
 // Risk is what the draws of the whole run say.
 type Risk struct {
-	Draws      int
-	Seed       uint64
+	Draws int
+	Seed  uint64
+	// Drawn says that the walk-through itself was drawn; Failed is the share of
+	// draws in which a step could not be done.
+	Drawn      bool
+	Failed     float64
 	RunEnough  float64 // chance that every need is met; negative means not assessed
 	TargetMet  float64
 	MassLow    chem.Mass // 5th percentile of product

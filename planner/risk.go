@@ -13,7 +13,7 @@ import (
 
 // The chance of running short. For each draw of the run
 //
-//	need = Σ charge · loss          over the charges of the need
+//	need = Σ charge · loss          over the charges of the need, or drawn with the walk-through
 //	have = Σ found · (content − promised − dead) · strength   over its bottles, spares included
 //
 // and the need is short where need > have. Content, strength, finding and loss
@@ -113,9 +113,10 @@ type needRisk struct {
 	charges []float64
 	losses  []quantity
 	bottles []bottleRisk
-	certain bool    // it suffices whatever happens, if the bottles drawn on are found
-	most    float64 // more than the need comes to in any draw
-	safe    float64 // of a single bottle: if its content's random number is above this, it suffices
+	certain bool      // it suffices whatever happens, if the bottles drawn on are found
+	drawn   []float64 // draws of the need, where the walk-through was drawn
+	most    float64   // more than the need comes to in any draw
+	safe    float64   // of a single bottle: if its content's random number is above this, it suffices
 	short   []bool
 	chance  float64
 }
@@ -126,6 +127,7 @@ type assessor struct {
 	n     int
 	seed  uint64
 	limit float64
+	walks *sampled // nil if only the charges are drawn
 	needs []needRisk
 	run   []uint8 // how many needs are short in each draw, up to 255
 }
@@ -140,12 +142,20 @@ func newAssessor(m *matcher) *assessor {
 // assess fills in the chance of every need and returns that of the run.
 func (a *assessor) assess(covers []coverage, asks []Ask, do func(step int) string) Risk {
 	a.run = make([]uint8, a.n)
+	if a.walks != nil {
+		for i, failed := range a.walks.failed {
+			a.run[i] = uint8(b2i(failed))
+		}
+	}
 	a.needs = make([]needRisk, len(covers))
 	// So that the run as a whole stays within the limit, a need has to stay
 	// within its share: eight needs at 95 % are a run at 66 %.
 	share := 1 - math.Pow(1-a.limit, 1/float64(max(1, len(covers))))
 	for i := range covers {
 		a.needs[i] = a.needRisk(&covers[i], asks, do)
+		if a.walks != nil {
+			a.needs[i].drawn = a.walks.asked[i]
+		}
 		a.assessNeed(&a.needs[i], share)
 	}
 	risk := Risk{Draws: a.n, Seed: a.seed, RunEnough: a.enough()}
@@ -353,8 +363,12 @@ func (a *assessor) waitFor(r *needRisk) {
 // decided by two comparisons.
 func (r *needRisk) bound() {
 	r.most, r.safe = 0, 1
-	for k := range r.charges {
-		r.most += r.charges[k] * r.losses[k].extreme(true)
+	if r.drawn != nil {
+		r.most = slices.Max(r.drawn)
+	} else {
+		for k := range r.charges {
+			r.most += r.charges[k] * r.losses[k].extreme(true)
+		}
 	}
 	least := 0.0
 	for k := range r.bottles {
@@ -434,6 +448,9 @@ func allFound(bottles []bottleRisk, i int) bool {
 
 // needAt is draw i of the need.
 func (r *needRisk) needAt(i int) float64 {
+	if r.drawn != nil {
+		return r.drawn[i]
+	}
 	sum := 0.0
 	for k := range r.charges {
 		sum += float64(r.charges[k] * r.losses[k].at(i))
