@@ -79,7 +79,7 @@ func (s *Server) render(c *gin.Context, status int, name string, p pageValue) er
 	defer buffers.Put(b)
 	b.Reset()
 	block := wantedBlock(c.Request, set)
-	if block != "layout" {
+	if block != "layout" && !besides[block] {
 		// htmx takes the title of the window out of the part as well.
 		if err := set.ExecuteTemplate(b, "title", p); err != nil {
 			return fmt.Errorf("rendering the title of %s: %w", name, err)
@@ -91,6 +91,10 @@ func (s *Server) render(c *gin.Context, status int, name string, p pageValue) er
 	c.Data(status, "text/html; charset=utf-8", b.Bytes())
 	return nil
 }
+
+// besides are the blocks that come into a page that stays what it is; the title
+// of the window isn't theirs.
+var besides = map[string]bool{"why": true, "answers": true}
 
 // wantedBlock names the block a request wants: the whole layout, or, when htmx
 // exchanges a part, the block that has the name of the part's identity without

@@ -345,6 +345,9 @@ func TestParts(t *testing.T) {
 	if !strings.Contains(restored, "<html") {
 		t.Error("a restored page has to be whole")
 	}
+	if body := get(t, s, "/runs/1/explain/need-2", "HX-Request", "true", "HX-Target", "why").Body.String(); strings.Contains(body, "<title>") {
+		t.Error("a note must not change the title of the window")
+	}
 	note := parse(t, get(t, s, "/runs/1/explain/need-2", "HX-Request", "true", "HX-Target", "why"))
 	if n := len(all(note, "dialog[open] h2")); n != 1 {
 		t.Errorf("%d headings in the note, want 1", n)
