@@ -6,6 +6,7 @@ import (
 	"strings"
 
 	"stillroom/chem"
+	"stillroom/inventory"
 )
 
 // The three places a hazard note speaks of besides steps.
@@ -74,6 +75,13 @@ func storedNotes(n Need) []HazardNote {
 		notes = append(notes, note)
 	}
 	return notes
+}
+
+// HazardOf is the note of what is in a bottle, at the high end of its strength.
+func HazardOf(s inventory.Substance, f inventory.StockForm, b inventory.Bottle) HazardNote {
+	note := formNote(Need{Substance: s.Name, CAS: s.CAS}, Draw{Form: f, Bottle: b})
+	note.What = f.Name
+	return note
 }
 
 // formNote classifies a stock form at the high end of its strength, which is the

@@ -84,20 +84,26 @@ func newSheet(p *planner.Plan, o PaperOptions, kind string) (*sheet, error) {
 		return nil, err
 	}
 	s.qr = qr
-	pdf.SetCompression(!o.Plain)
-	pdf.SetCatalogSort(true)
-	pdf.SetCreationDate(o.PrintedAt.UTC())
-	pdf.SetModificationDate(o.PrintedAt.UTC())
-	pdf.SetAutoPageBreak(false, 0)
-	pdf.SetCellMargin(0)
+	s.setUp(kind + ": " + p.Recipe.Title)
 	if err := s.fonts(); err != nil {
 		return nil, err
 	}
-	pdf.SetTitle(kind+": "+p.Recipe.Title, true)
-	pdf.SetProducer("Stillroom", true)
-	pdf.SetCreator("Stillroom", true)
 	s.page()
 	return s, nil
+}
+
+// setUp settles everything that would make the bytes of the file depend on when
+// and where it is made.
+func (s *sheet) setUp(title string) {
+	s.pdf.SetCompression(!s.options.Plain)
+	s.pdf.SetCatalogSort(true)
+	s.pdf.SetCreationDate(s.options.PrintedAt.UTC())
+	s.pdf.SetModificationDate(s.options.PrintedAt.UTC())
+	s.pdf.SetAutoPageBreak(false, 0)
+	s.pdf.SetCellMargin(0)
+	s.pdf.SetTitle(title, true)
+	s.pdf.SetProducer("Stillroom", true)
+	s.pdf.SetCreator("Stillroom", true)
 }
 
 // The weights of the typeface.

@@ -1,0 +1,90 @@
+package views
+
+import (
+	"bytes"
+	"errors"
+	"os/exec"
+	"path/filepath"
+	"strings"
+	"testing"
+
+	"stillroom/inventory"
+	"stillroom/planner"
+)
+
+// demoLabels are labels for the first bottles of the demonstration lab.
+func demoLabels(t testing.TB, n int) []BottleLabel {
+	t.Helper()
+	shelf := inventory.NewShelf(inventory.DemoLab(inventory.NewDate(2026, 12, 1)))
+	var labels []BottleLabel
+	for _, b := range shelf.Bottles {
+		f, ok := shelf.Form(b.FormID)
+		if !ok || f.Measure == inventory.ByCount {
+			continue
+		}
+		sub, _ := shelf.SubstanceByID(f.SubstanceID)
+		labels = append(labels, BottleLabel{Bottle: b, Form: f, Substance: sub, Owner: "Marrow Lane standards bench", URL: "http://127.0.0.1:8087/bottles/" + b.Code})
+		if len(labels) == n {
+			break
+		}
+	}
+	return labels
+}
+
+func printLabels(labels []BottleLabel) paperMaker {
+	return func(_ *planner.Plan, o PaperOptions) ([]byte, error) { return BottleLabels(labels, o) }
+}
+
+func TestBottleLabelsReadBack(t *testing.T) {
+	labels := demoLabels(t, 10)
+	text := paperText(t, writePaper(t, printLabels(labels), nil, paperOptions()))
+	for _, l := range labels {
+		wantText(t, text, l.Bottle.Code, l.Form.Name)
+		note := planner.HazardOf(l.Substance, l.Form, l.Bottle)
+		if note.Signal != "" {
+			wantText(t, text, note.Signal)
+		}
+	}
+}
+
+func TestBottleLabelsScan(t *testing.T) {
+	zbar, pdftoppm := paperTool(t, "zbarimg"), paperTool(t, "pdftoppm")
+	labels := demoLabels(t, 8)
+	file := writePaper(t, printLabels(labels), nil, paperOptions())
+	images := filepath.Join(filepath.Dir(file), "page")
+	if out, err := exec.Command(pdftoppm, "-r", "200", "-png", file, images).CombinedOutput(); err != nil {
+		t.Fatalf("pdftoppm: %v\n%s", err, out)
+	}
+	pages, _ := filepath.Glob(images + "*.png")
+	out, _ := exec.Command(zbar, append([]string{"-q"}, pages...)...).Output()
+	for _, l := range labels {
+		for _, want := range []string{"CODE-128:" + l.Bottle.Code + "\n", "QR-Code:" + l.URL + "\n"} {
+			if !strings.Contains(string(out), want) {
+				t.Errorf("not read: %q", want)
+			}
+		}
+	}
+}
+
+func TestBottleLabelsBytes(t *testing.T) {
+	if _, err := BottleLabels(nil, paperOptions()); !errors.Is(err, ErrNoLabels) {
+		t.Errorf("no labels: error %v, want ErrNoLabels", err)
+	}
+	first, err := BottleLabels(demoLabels(t, 9), paperOptions())
+	if err != nil {
+		t.Fatal(err)
+	}
+	if again, _ := BottleLabels(demoLabels(t, 9), paperOptions()); !bytes.Equal(first, again) {
+		t.Error("the same labels give other bytes")
+	}
+}
+
+// A bottle without a record says so, a small one keeps what the law keeps.
+func TestBottleLabelNoData(t *testing.T) {
+	l := BottleLabel{Bottle: inventory.Bottle{Code: inventory.MakeCode(inventory.BottleCode, 3), Size: 500e6},
+		Form: inventory.StockForm{Name: "an invented powder", Measure: inventory.ByMass}, Substance: inventory.Substance{Name: "an invented powder"}}
+	text := paperText(t, writePaper(t, printLabels([]BottleLabel{l}), nil, paperOptions()))
+	wantText(t, text, "NO DATA: not assessed", "use by no data")
+	l.Bottle.Size = 25e6
+	wantText(t, paperText(t, writePaper(t, printLabels([]BottleLabel{l}), nil, paperOptions())), "Small container", "NO DATA")
+}
