@@ -88,3 +88,19 @@ func TestBottleLabelNoData(t *testing.T) {
 	l.Bottle.Size = 25e6
 	wantText(t, paperText(t, writePaper(t, printLabels([]BottleLabel{l}), nil, paperOptions())), "Small container", "NO DATA")
 }
+
+func TestLabelPage(t *testing.T) {
+	s := newSampleServer(t)
+	l := demoLabels(t, 1)[0]
+	page := get(t, s, "/shelf/bottles/"+l.Bottle.Code)
+	if !strings.Contains(page.Body.String(), "/shelf/bottles/"+l.Bottle.Code+"/label.pdf") {
+		t.Error("the bottle's page has no link to its label")
+	}
+	label := get(t, s, "/shelf/bottles/"+l.Bottle.Code+"/label.pdf")
+	if label.Code != 200 || label.Header().Get("Content-Type") != "application/pdf" || !bytes.HasPrefix(label.Body.Bytes(), []byte("%PDF-")) {
+		t.Errorf("label = %d, %s", label.Code, label.Header().Get("Content-Type"))
+	}
+	if missing := get(t, s, "/shelf/bottles/B00000/label.pdf"); missing.Code != 404 {
+		t.Errorf("label of no bottle = %d, want 404", missing.Code)
+	}
+}

@@ -48,13 +48,18 @@ func (s *Server) showPaper(file string) func(*gin.Context) error {
 // runURL is the whole address of a run as somebody with the paper in hand
 // reaches it: the configured one, or else the one the browser used.
 func (s *Server) runURL(r *http.Request, run *runPage) string {
-	base := s.Address
-	if base == "" {
-		scheme := "http"
-		if r.TLS != nil {
-			scheme = "https"
-		}
-		base = (&url.URL{Scheme: scheme, Host: r.Host}).String()
+	return s.baseURL(r) + runAddress(run.Run.ID) + string(run.Query())
+}
+
+// baseURL is the address of the program as people reach it: the configured one,
+// or else the one the browser used.
+func (s *Server) baseURL(r *http.Request) string {
+	if s.Address != "" {
+		return s.Address
 	}
-	return base + runAddress(run.Run.ID) + string(run.Query())
+	scheme := "http"
+	if r.TLS != nil {
+		scheme = "https"
+	}
+	return (&url.URL{Scheme: scheme, Host: r.Host}).String()
 }

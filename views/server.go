@@ -116,6 +116,7 @@ func (s *Server) routes() http.Handler {
 	e.POST("/shelf/import", s.page(s.takeImport))
 	e.POST("/shelf/import/:id/undo", s.page(s.undoImport))
 	e.GET("/shelf/bottles/:code", s.page(s.showBottle))
+	e.GET("/shelf/bottles/:code/label.pdf", s.page(s.showLabel))
 	e.POST("/shelf/bottles/:code/count", s.page(s.countBottle))
 	e.GET("/recipes", s.page(s.showRecipes))
 	e.GET("/recipes/:name", s.page(s.showRecipe))
