@@ -8,7 +8,7 @@ func PolicyDefaults(today Date) []PolicyRow {
 	var all []PolicyRow
 	for _, group := range [][]PolicyRow{
 		riskDefaults(), fillDefaults(), stockDefaults(), reviewDefaults(),
-		yieldPriors(), contentPriors(), lossPriors(), heatDefaults(), allocateDefaults(),
+		yieldPriors(), contentPriors(), lossPriors(), heatDefaults(), allocateDefaults(), dayDefaults(),
 	} {
 		all = append(all, group...)
 	}

@@ -283,6 +283,7 @@ func (p *planning) write() (*Plan, error) {
 	p.blends(plan)
 	p.insertMakeUps(plan)
 	p.sheets(plan)
+	p.budget(plan)
 	plan.Metrics = p.metrics(plan)
 	plan.Findings = append(plan.Findings, p.policy.findings()...)
 	plan.Sentence = sentence(plan, p.covers)
@@ -358,6 +359,18 @@ func (p *planning) sheets(plan *Plan) {
 		}
 		plan.Findings = append(plan.Findings, Finding{Kind: kind, Severity: severity, Text: err.Error()})
 	}
+}
+
+// budget lays the steps over working days and says what no day holds.
+func (p *planning) budget(plan *Plan) {
+	budget, err := timeBudget(plan.Steps, p.batches, plan.On, p.policy)
+	if err != nil {
+		plan.Findings = append(plan.Findings, Finding{Kind: "no-working-day", Severity: Note,
+			Text: "the last safe start is not assessed: " + err.Error(), Would: "mend the row in the policy table"})
+		return
+	}
+	plan.Budget = budget
+	plan.Findings = append(plan.Findings, budget.findings()...)
 }
 
 // measuringTools are the balances and cylinders among the lab's ware.

@@ -56,6 +56,9 @@ type Plan struct {
 	Pairs   []chem.Incompatibility
 	Metrics Metrics
 	Risk    Risk
+	// Budget is how the steps fall on working days; it has no stretches where the
+	// policy's working day can't be, which a finding then says.
+	Budget TimeBudget
 	// Flow is the material flow of the run: what went where.
 	Flow     []Flow
 	Findings []Finding

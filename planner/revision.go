@@ -7,7 +7,7 @@ import (
 )
 
 // revisionOf is the fingerprint of what a chemist would act on: recipe, target,
-// day, needs, draws, steps, carriers, waste and hazards. Reasons, chances,
+// day, needs, draws, steps, last safe start, carriers, waste and hazards. Reasons, chances,
 // prices and today's date don't count, so that a paper stays current until
 // something on it changes. Numbers enter with nine figures.
 func revisionOf(p *Plan) string {
@@ -19,6 +19,10 @@ func revisionOf(p *Plan) string {
 	}
 	for i := range p.Steps {
 		putStep(h, &p.Steps[i])
+	}
+	if len(p.Budget.Stretches) > 0 {
+		s := p.Budget.Stretches[0]
+		put(h, "begin", float64(s.LastStart), float64(p.Budget.Day.End), s.Fits)
 	}
 	for _, c := range p.Carriers {
 		put(h, "carrier", c.N, fmt.Sprintf("%q", c.Bottles), c.Note)

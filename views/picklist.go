@@ -515,6 +515,9 @@ func (l *pickList) beforeStart() {
 		"Waste containers are labelled and have room",
 		"Every bottle's name, strength and code agree with this list",
 	}
+	if len(l.plan.Budget.Stretches) > 0 {
+		checks = append(checks, startText(l.plan.Budget))
+	}
 	l.heading("Before the start", float64(len(checks))*(tickSide+1.5)+24)
 	l.put(family, "", textSize, textLeft, l.y, "An empty box means that the run does not start.")
 	l.y += lineHeight + 1.5

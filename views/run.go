@@ -33,6 +33,7 @@ type runPage struct {
 	Steps    []stepRow
 	Contents []contentRow
 	Flow     template.HTML
+	Budget   *budgetView // nil where there is none
 	Risk     []string
 	Hazards  []hazardRow // as stored, and what is formed
 	Noted    int         // hazards noted altogether
@@ -170,6 +171,7 @@ func (p *runPage) dress(printed string) {
 	}
 	p.Contents = contentRows(plan.Steps)
 	p.Flow = drawFlow(plan.Flow)
+	p.Budget = budgetOf(plan.Budget)
 	p.Risk = riskWords(plan.Risk)
 	p.Hazards, p.Noted = hazardRows(plan.Hazards), len(plan.Hazards)
 	p.Waste = wasteRows(plan.Waste, p.carboys)
