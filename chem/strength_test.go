@@ -195,3 +195,27 @@ func TestAgeing(t *testing.T) {
 		t.Error("wine ages")
 	}
 }
+
+// TestHydrometer reads densities back into strengths: battery acid of 1.26 g/mL at 20 °C
+// is 35 % (row 35 of the table: 1.2599), and sulfuric acid of 1.8355 is 96 % or beyond
+// its maximum.
+func TestHydrometer(t *testing.T) {
+	got, err := FractionsOfDensity(sulfuricCAS, 1.2599*GramPerMillilitre, Celsius(20))
+	if err != nil || len(got) != 1 || math.Abs(float64(got[0])-0.35) > 1e-4 {
+		t.Errorf("1.2599 g/mL: %v, %v; want 35 %%", got, err)
+	}
+	got, err = FractionsOfDensity(sulfuricCAS, 1.8355*GramPerMillilitre, Celsius(20))
+	if err != nil || len(got) != 2 || math.Abs(float64(got[0])-0.96) > 1e-4 || got[1] < 0.98 {
+		t.Errorf("1.8355 g/mL: %v, %v; want 96 %% and one above 98 %%", got, err)
+	}
+	if got, err := FractionsOfDensity(sulfuricCAS, 2*GramPerMillilitre, Celsius(20)); !errors.Is(err, ErrOutOfRange) {
+		t.Errorf("2 g/mL: %v, %v", got, err)
+	}
+	for _, w := range []Fraction{0.1, 0.3, 0.6} {
+		rho, _ := SolutionDensity("7697-37-2", w, Celsius(30))
+		got, err := FractionsOfDensity("7697-37-2", rho, Celsius(30))
+		if err != nil || len(got) != 1 || math.Abs(float64(got[0]-w)) > 1e-6 {
+			t.Errorf("nitric acid of %v: %v, %v; want %v", rho, got, err, w)
+		}
+	}
+}

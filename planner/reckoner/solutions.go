@@ -74,7 +74,11 @@ func soluteOf(s chem.Substance, t chem.Temperature) chem.Solute {
 
 // strengthAt reads a key as a strength and turns it into a mass fraction. density is
 // the key under which the density of this solution may be given.
+// The word density in place of a strength asks for the strength that has the density.
 func strengthAt(args Args, key, density string, solute chem.Solute) (chem.Fraction, error) {
+	if args[key] == "density" {
+		return strengthByDensity(args, key, density, solute)
+	}
 	from, err := get(args, key, chem.ParseStrength)
 	if err != nil {
 		return 0, err
@@ -89,6 +93,24 @@ func strengthAt(args Args, key, density string, solute chem.Solute) (chem.Fracti
 		return 0, &KeyError{Key: key, Text: args[key], Cause: err}
 	}
 	return w, nil
+}
+
+// strengthByDensity reads the strength off the density, where just one has it.
+func strengthByDensity(args Args, key, density string, solute chem.Solute) (chem.Fraction, error) {
+	rho, err := args.Density(density)
+	if err != nil {
+		return 0, err
+	}
+	found, err := chem.FractionsOfDensity(solute.CAS, rho, solute.Temperature)
+	switch {
+	case err != nil:
+		return 0, &KeyError{Key: density, Text: args[density], Cause: err}
+	case len(found) > 1:
+		return 0, &KeyError{Key: key, Text: args[key],
+			What:   fmt.Sprintf("%s %% w/w and %s %% w/w have this density", figures(found[0].Percent()), figures(found[len(found)-1].Percent())),
+			Wanted: "titrate it, or give the strength", Cause: chem.ErrAmbiguous}
+	}
+	return found[0], nil
 }
 
 // densityAt returns the density of a solution: the one given under the key, or else

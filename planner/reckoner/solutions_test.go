@@ -25,6 +25,7 @@ func TestSolutionSums(t *testing.T) {
 		{"supplier's table, from memory", "strength", "mass_fraction", []string{"substance=hydrochloric acid", "from=12.0 mol/L"}, 37, 0.2},
 		{"OIML table: 40 % v/v is 33.3 % w/w, from memory", "strength", "mass_fraction", []string{"substance=ethanol", "from=40 % v/v"}, 33.3, 0.15},
 		{"definition", "strength", "molarity", []string{"substance=unheard of", "from=50 %", "molar_mass=100 g/mol", "density=1.2 g/mL"}, 6, 1e-9},
+		{"density table, row of 35 %: 1.2599 g/mL", "strength", "mass_fraction", []string{"substance=sulfuric acid", "from=density", "density=1.2599 g/mL"}, 35, 0.01},
 		{"row C19", "dilute", "stock_mass", []string{"substance=sodium hydroxide", "from=97.0 %", "to=10.0 %", "make=1.00 L", "to_density=1.109 g/mL"}, 114.33, 0.5},
 		{"row C10", "dilute", "stock_volume", []string{"substance=unheard of", "from=0.45 mol/L", "to=0.12 mol/L", "make=41.25 mL"}, 11, 1e-6},
 		{"practice, 640 kJ for 1 kg of 96 % into much water", "dilute", "heat", []string{"substance=sulfuric acid", "from=96 %", "to=4.8 %", "make=20 kg"}, 640, 20},
@@ -66,6 +67,8 @@ func TestSolutionSumsRefuse(t *testing.T) {
 		{"strength", []string{"substance=nitric acid", "from=65 furlongs"}, chem.ErrUnknownUnit, "furlongs"},
 		{"strength", []string{"substance=nitric acid", "from=65"}, chem.ErrNoUnit, "% w/w"},
 		{"strength", []string{"substance=nitric acid", "from=1,234 mol/L"}, chem.ErrAmbiguous, "thousands"},
+		{"strength", []string{"substance=sulfuric acid", "from=density", "density=1.8355 g/mL"}, chem.ErrAmbiguous, "96"},
+		{"strength", []string{"substance=sulfuric acid", "from=density"}, ErrMissingKey, "density"},
 		{"dilute", []string{"substance=nitric acid", "from=10 %", "to=20 %", "make=1 kg"}, chem.ErrOutOfRange, "0 to 10 %"},
 		{"dilute", []string{"substance=nitric acid", "from=60 %", "to=20 %", "make=1 mol"}, chem.ErrUnknownUnit, "make"},
 		{"blend", []string{"substance=nitric acid", "strong=60 %", "weak=30 %", "to=20 %", "make=1 kg"}, chem.ErrOutOfRange, "30 to 60 %"},
@@ -104,4 +107,42 @@ func TestUnknownHeatIsSaid(t *testing.T) {
 	if !strings.Contains(strings.Join(answer.Notes, "\n"), "heat not known") {
 		t.Errorf("notes %q don't say that the heat isn't known", answer.Notes)
 	}
+}
+
+// FuzzSolutionSums wants an answer in numbers or a refusal, never a panic, whatever is
+// typed.
+func FuzzSolutionSums(f *testing.F) {
+	for i, s := range solutionSums() {
+		args, _ := ParseArgs(s.Example)
+		var values [4]string
+		for k, key := range s.Keys[:4] {
+			values[k] = args[key.Name]
+		}
+		f.Add(uint8(i), values[0], values[1], values[2], values[3], "")
+	}
+	f.Add(uint8(4), "acetic acid: 1e300 mol/L", "-273.15 °C", "4.76;", "", "")
+	f.Add(uint8(0), "HCl", "density", "1e-9 g/mL", "25 °C", "1e-300 g/mol")
+	f.Fuzz(func(t *testing.T, which uint8, a, b, c, d, last string) {
+		sums := solutionSums()
+		s := sums[int(which)%len(sums)]
+		values := []string{a, b, c, d}
+		args := Args{}
+		for i, key := range s.Keys {
+			if i < len(values) && values[i] != "" {
+				args[key.Name] = values[i]
+			}
+		}
+		if last != "" {
+			args[s.Keys[len(s.Keys)-1].Name] = last
+		}
+		answer, err := s.Reckon(context.Background(), args)
+		if err != nil && err.Error() == "" {
+			t.Fatal("an empty error")
+		}
+		for _, r := range answer.Results {
+			if !r.IsText && !chem.Finite(r.Value) {
+				t.Fatalf("%s is %v", r.Name, r.Value)
+			}
+		}
+	})
 }

@@ -14,7 +14,7 @@ func strengthSum() Sum {
 		About: "States one strength in every other way.",
 		Keys: []Key{
 			{"substance", "Solute", "sulfuric acid", false},
-			{"from", "Strength", "98 % w/w, 18.4 mol/L, 2 mol/kg, 50 g/L, 40 % v/v, 36 N, 20 vol", false},
+			{"from", "Strength, or the word density to read it off the density", "98 % w/w, 18.4 mol/L, 2 mol/kg, 50 g/L, 40 % v/v, 36 N, 20 vol", false},
 			{"density", "Density of the solution, in place of the table's", "1.84 g/mL", true},
 			temperatureKey, molarMassKey,
 			{"pure_density", "Density of the pure liquid, for % v/v", "0.789 g/mL", true},
