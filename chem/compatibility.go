@@ -90,9 +90,13 @@ var epaChart = sync.OnceValue(func() map[[2]int][]chartRow {
 		if errA != nil || errB != nil {
 			panic("chem: incompatibility.csv: groups " + row.text("group_a") + ", " + row.text("group_b"))
 		}
+		note, source := row.text("note"), row.text("source")
+		if strings.HasPrefix(note, "missing from the transcription") {
+			note, source = "", note+"; "+source // it speaks of the table, not of the pair
+		}
 		key := [2]int{min(a, b), max(a, b)}
 		rows[key] = append(rows[key], chartRow{a, b, row.text("group_a_name"), row.text("group_b_name"),
-			strings.Fields(row.text("codes")), row.text("note"), row.text("source")})
+			strings.Fields(row.text("codes")), note, source})
 	}
 	return rows
 })

@@ -88,7 +88,7 @@ func sortWaste(shares []WasteShare) (name, why string) {
 		return streamHalogenated, fmt.Sprintf("halogenated solvent, %.3g %%", 100*w.share(w.halogenated))
 	case w.share(w.unknownMass) >= unknownTrace:
 		return "", fmt.Sprintf("%s was not assessed (%.3g %%): ask the safety officer", w.unknown, 100*w.share(w.unknownMass))
-	case w.oxidiser > 0 && w.share(w.solid) > 0.5:
+	case w.oxidiser > 0 && w.share(w.solid) > 0.1:
 		return streamSolidOxidiser, "a solid with an oxidiser"
 	case w.chromiumIII > 0 && w.share(w.solid) > 0.1:
 		return streamChromiumSludge, "a solid with chromium(III)"

@@ -50,7 +50,7 @@ func NoteHazards(needs []Need, steps []StepReport, waste []WasteLot) []HazardNot
 		notes = append(notes, m.vesselNotes(s)...)
 	}
 	for _, w := range waste {
-		if note, ok := m.note(InWaste, w.Stream, w.Contains); ok {
+		if note, ok := m.note(InWaste, w.Stream, w.Contains, w.PH); ok {
 			notes = append(notes, note)
 		}
 	}
@@ -202,7 +202,7 @@ func (m *mixtures) vesselNotes(s StepReport) []HazardNote {
 		if phase == "gas" {
 			continue
 		}
-		if note, ok := m.note(s.Name, phaseName(phase, len(phases)), byPhase[phase]); ok {
+		if note, ok := m.note(s.Name, phaseName(phase, len(phases)), byPhase[phase], 0); ok {
 			notes = append(notes, note)
 		}
 	}
@@ -229,11 +229,13 @@ type mixtures struct {
 
 type seenMixture struct {
 	contents []Content
+	pH       float64
 	note     HazardNote // without its place
 }
 
-// note classifies contents by mass; false where there is nothing.
-func (m *mixtures) note(at, what string, contents []Content) (HazardNote, bool) {
+// note classifies contents by mass, and by their pH unless that is 0 for not
+// known; false where there is nothing.
+func (m *mixtures) note(at, what string, contents []Content, pH float64) (HazardNote, bool) {
 	total := chem.Mass(0)
 	for _, c := range contents {
 		total += max(c.Mass, 0)
@@ -241,14 +243,14 @@ func (m *mixtures) note(at, what string, contents []Content) (HazardNote, bool) 
 	if !(total > 0) {
 		return HazardNote{}, false
 	}
-	note := m.classified(contents, total)
+	note := m.classified(contents, total, pH)
 	note.At, note.What = at, what+note.What
 	return note, true
 }
 
-func (m *mixtures) classified(contents []Content, total chem.Mass) HazardNote {
+func (m *mixtures) classified(contents []Content, total chem.Mass, pH float64) HazardNote {
 	for _, s := range m.seen {
-		if slices.Equal(s.contents, contents) {
+		if s.pH == pH && slices.Equal(s.contents, contents) {
 			return s.note
 		}
 	}
@@ -258,7 +260,7 @@ func (m *mixtures) classified(contents []Content, total chem.Mass) HazardNote {
 			ingredients = append(ingredients, m.ingredient(c.Substance, chem.Fraction(c.Mass/total)))
 		}
 	}
-	got, err := chem.ClassifyMixture(ingredients)
+	got, err := chem.ClassifyMixtureWith(ingredients, chem.MixtureOptions{PH: pH, HasPH: pH != 0})
 	note := unknownNote("", "")
 	if err == nil {
 		note = noteOf("", ": "+shares(contents, total), got)
@@ -266,7 +268,7 @@ func (m *mixtures) classified(contents []Content, total chem.Mass) HazardNote {
 			note.Basis = basisNoData + fmt.Sprintf(" (%.3g %% of it)", got.Unknown.Percent())
 		}
 	}
-	m.seen = append(m.seen, seenMixture{contents, note})
+	m.seen = append(m.seen, seenMixture{contents, pH, note})
 	return note
 }
 
@@ -391,6 +393,9 @@ func substance(name, cas string) *chem.Substance {
 		if s, ok := chem.SubstanceByCAS(cas); ok {
 			return s
 		}
+	}
+	if name == "ice" || strings.HasPrefix(name, "ice,") {
+		name = "water"
 	}
 	if s, ok := chem.LookupSubstance(name); ok {
 		return s

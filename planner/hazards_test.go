@@ -123,6 +123,21 @@ func TestSortWaste(t *testing.T) {
 	}
 }
 
+// A stricter stream than the contents ask for is no fault; a pH of 1.5 makes any
+// aqueous waste corrosive (CLP Annex I 3.2.3.1.2).
+func TestSortWasteStricterStreamAndPH(t *testing.T) {
+	carboys := []inventory.Carboy{{Code: "W1", Stream: "chromium(III) aqueous after reduction", SizeUL: 5e6, FillLimit: .75}}
+	lots := SortWaste([]Discard{{Stream: "chromium(III) aqueous after reduction", Mass: 1, Volume: chem.Litre, PH: 1.5,
+		Contents: []Content{{Substance: "water", Phase: "aqueous", Mass: .9}, {Substance: "sodium sulfate", Phase: "aqueous", Mass: .1}}}}, carboys, 0)
+	if !lots[0].Fits || lots[0].Note != "" {
+		t.Errorf("lot %+v, want it to fit without a note", lots[0])
+	}
+	note := noteAt(t, NoteHazards(nil, nil, lots), InWaste, "chromium(III)")
+	if !slices.Contains(note.Classes, "Skin Corr. 1 H314") {
+		t.Errorf("waste of pH 1.5: %v, want Skin Corr. 1", note.Classes)
+	}
+}
+
 func TestSortWasteClash(t *testing.T) {
 	carboys := []inventory.Carboy{{Code: "W9", Stream: "non-halogenated organic", SizeUL: 5e6, FillLimit: .75, Contains: "nitric acid: 10 %; acetone: 90 %"}}
 	lots := SortWaste([]Discard{{Stream: "non-halogenated organic", Mass: 1, Volume: chem.Litre,

@@ -300,6 +300,7 @@ type WasteLot struct {
 	Stream   string
 	Mass     chem.Mass
 	Volume   chem.Volume
+	PH       float64 // the one furthest from 7 of its aqueous parts; 0 where none is known
 	Contains []Content
 	Carboy   string // code, "" if none takes it
 	Fits     bool

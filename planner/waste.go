@@ -2,6 +2,7 @@ package planner
 
 import (
 	"fmt"
+	"math"
 	"sort"
 	"strconv"
 	"strings"
@@ -13,6 +14,10 @@ import (
 // unitDensity stands in for the density of a waste whose volume the
 // walk-through doesn't know; the lot says so.
 const unitDensity = 1 * chem.GramPerMillilitre
+
+// mildestStream is where contents belong that nothing speaks against. A lot that
+// a recipe sends into a stricter stream stays there.
+const mildestStream = "aqueous bicarbonate or brine wash"
 
 // SortWaste puts what the steps discard into lots, one for each stream in the
 // order in which the run first feeds it, and finds each lot the carboy of its
@@ -46,6 +51,9 @@ func SortWaste(discards []Discard, carboys []inventory.Carboy, fillLimit float64
 func (w *WasteLot) take(d Discard) {
 	w.Mass += d.Mass
 	w.Volume += d.Volume
+	if d.PH != 0 && (w.PH == 0 || math.Abs(d.PH-7) > math.Abs(w.PH-7)) {
+		w.PH = d.PH
+	}
 	if d.Volume == 0 && d.Mass > 0 {
 		w.Volume += unitDensity.Volume(d.Mass)
 		w.say("volume not known, taken as of density 1 g/mL")
@@ -88,6 +96,8 @@ func (w *WasteLot) judgeStream() {
 	switch {
 	case !ok:
 		w.say("stream not assessed: " + why)
+	case stream.Name == mildestStream && w.Stream != "":
+		// What was cleaned up before stays in its own stream until a test shows it clean.
 	case !strings.EqualFold(stream.Name, w.Stream):
 		w.say(fmt.Sprintf("by its contents it belongs to %q (%s): ask the safety officer", stream.Name, why))
 	}

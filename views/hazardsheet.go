@@ -173,6 +173,7 @@ func (h *hazardSheet) scale() {
 	h.labelled("Heat", h.worstHeat())
 	h.labelled("Gas", h.worstGas())
 	h.labelled("Fullest", h.fullest())
+	h.labelled("Special", h.special())
 	for _, f := range p.Findings {
 		if f.Severity >= planner.Warning {
 			text := f.Text
@@ -227,6 +228,50 @@ func (h *hazardSheet) fullest() string {
 		return "not assessed"
 	}
 	return fmt.Sprintf("%s of %s in step %d (%s)", percentText(worst.Vessel.Fill), wareName(worst.Vessel), worst.N, worst.Name)
+}
+
+// special names what calls for more than the usual care: carcinogens and the
+// like, what kills in small amounts, and what the law watches.
+func (h *hazardSheet) special() string {
+	var cmr, fatal, watched []string
+	for _, n := range h.plan.Hazards {
+		if n.At != planner.AsStored && !n.Formed {
+			continue
+		}
+		for _, c := range n.Classes {
+			switch {
+			case strings.HasPrefix(c, "Carc."), strings.HasPrefix(c, "Muta."), strings.HasPrefix(c, "Repr."):
+				cmr = appendOnce(cmr, n.What)
+			case strings.HasPrefix(c, "Acute Tox. 1"), strings.HasPrefix(c, "Acute Tox. 2"):
+				fatal = appendOnce(fatal, n.What)
+			}
+		}
+	}
+	for _, n := range h.plan.Needs {
+		if !n.Count && len(chem.PurchaseNotes(n.Substance, 0)) > 0 {
+			watched = appendOnce(watched, n.Substance)
+		}
+	}
+	var words []string
+	for _, kind := range []struct {
+		what  string
+		names []string
+	}{{"causes or may cause cancer, genetic damage or harm to reproduction", cmr}, {"fatal in small amounts", fatal}, {"watched by law, look it up", watched}} {
+		if len(kind.names) > 0 {
+			words = append(words, kind.what+": "+strings.Join(kind.names, ", "))
+		}
+	}
+	if len(words) == 0 {
+		return "none on record; that is not evidence that there is none"
+	}
+	return sentence(strings.Join(words, "; "))
+}
+
+func appendOnce(list []string, item string) []string {
+	if slices.Contains(list, item) {
+		return list
+	}
+	return append(list, item)
 }
 
 func wareName(v planner.VesselReport) string {
