@@ -11,6 +11,9 @@ type Lab interface {
 	Load(ctx context.Context) (*inventory.Shelf, error)
 	Ledger(ctx context.Context, code string, limit int) ([]inventory.Entry, error)
 
+	RecipeTexts(ctx context.Context) ([]inventory.RecipeText, error)
+	SaveRecipe(ctx context.Context, name, text string, act inventory.Act) error
+
 	Import(ctx context.Context, t inventory.Table, m inventory.Mapping, o inventory.ImportOptions) (inventory.ImportReport, error)
 	Imports(ctx context.Context) ([]inventory.StockImport, error)
 	UndoImport(ctx context.Context, id int64, act inventory.Act) error

@@ -35,6 +35,7 @@ type planKey struct {
 	run       int64
 	store     int64
 	certainty chem.Fraction
+	drawn     bool
 }
 
 // mostPlans bounds the memory; a plan takes some hundred kilobytes.
@@ -55,7 +56,7 @@ func (m *memory) at(state labState) {
 // plan makes a plan, or gives the one made before.
 func (s *Server) plan(req planner.Request, shelf *inventory.Shelf) (*planner.Plan, error) {
 	state := labState{s.memory.fingerprint(shelf), req.Today}
-	key := planKey{req.Recipe.Name + "\n" + req.Recipe.Text, req.Target, req.On, req.Run, req.Store, req.Certainty}
+	key := planKey{req.Recipe.Name + "\n" + req.Recipe.Text, req.Target, req.On, req.Run, req.Store, req.Certainty, req.Drawn}
 	s.memory.mu.Lock()
 	s.memory.at(state)
 	plan, ok := s.memory.plans[key]

@@ -21,27 +21,34 @@ type newRunPage struct {
 
 // newRun answers /runs/new.
 func (s *Server) newRun(c *gin.Context) error {
-	p := s.newRunForm()
+	p, err := s.newRunForm(c)
+	if err != nil {
+		return err
+	}
 	p.Chosen = c.Query("recipe")
 	p.Ask.Wanted, p.Ask.On = c.Query("wanted"), c.DefaultQuery("on", s.Today().AddDays(14).Short())
 	return s.render(c, http.StatusOK, "newrun", p)
 }
 
-func (s *Server) newRunForm() *newRunPage {
-	p := &newRunPage{Recipes: s.Recipes}
+func (s *Server) newRunForm(c *gin.Context) (*newRunPage, error) {
+	recipes, err := s.recipes(c.Request.Context())
+	p := &newRunPage{Recipes: recipes}
 	p.Title, p.Section = "Pencil in a run", "/slate"
-	return p
+	return p, err
 }
 
 // addRun answers the form. The run is planned before it is written down, so
 // that nothing comes on the slate that can't be planned at all.
 func (s *Server) addRun(c *gin.Context) error {
-	p := s.newRunForm()
+	p, err := s.newRunForm(c)
+	if err != nil {
+		return err
+	}
 	p.Chosen, p.Who = c.PostForm("recipe"), c.PostForm("who")
 	p.Ask, p.Faults = readAsk(c.PostForm("wanted"), c.PostForm("on"), "", s.Today())
 	act := actOf(c, "pencilled in", &p.Faults)
-	recipe, ok := s.recipeNamed(p.Chosen)
-	if !ok {
+	recipe, err := s.recipeNamed(c.Request.Context(), p.Chosen)
+	if err != nil {
 		p.Faults = append(faults{{"recipe", "Choose one of the recipes."}}, p.Faults...)
 	}
 	if len(p.Faults) == 0 {
@@ -63,15 +70,6 @@ func (s *Server) addRun(c *gin.Context) error {
 		return err
 	}
 	return s.goTo(c, runAddress(run.ID))
-}
-
-func (s *Server) recipeNamed(name string) (*planner.Recipe, bool) {
-	for _, r := range s.Recipes {
-		if r.Name == name {
-			return r, true
-		}
-	}
-	return nil, false
 }
 
 func (s *Server) tryPlan(ctx context.Context, recipe *planner.Recipe, ask askForm) error {

@@ -27,20 +27,25 @@ type recipePage struct {
 	Walk   *planner.Walk
 	Fault  string // why it can't be walked through
 	Steps  []stepRow
+	Vague  []planner.RecipeFault
 }
 
 // showRecipes answers /recipes.
 func (s *Server) showRecipes(c *gin.Context) error {
-	p := &recipesPage{Recipes: s.Recipes}
+	recipes, err := s.recipes(c.Request.Context())
+	if err != nil {
+		return err
+	}
+	p := &recipesPage{Recipes: recipes}
 	p.Title, p.Section = "Recipes", "/recipes"
 	return s.render(c, http.StatusOK, "recipes", p)
 }
 
 // showRecipe answers /recipes/:name.
 func (s *Server) showRecipe(c *gin.Context) error {
-	recipe, ok := s.recipeNamed(c.Param("name"))
-	if !ok {
-		return &missing{"recipe", c.Param("name"), "All recipes are listed on their own page."}
+	recipe, err := s.recipeNamed(c.Request.Context(), c.Param("name"))
+	if err != nil {
+		return err
 	}
 	shelf, err := s.Lab.Load(c.Request.Context())
 	if err != nil {
@@ -49,6 +54,7 @@ func (s *Server) showRecipe(c *gin.Context) error {
 	p := &recipePage{Recipe: recipe, Lines: strings.Split(strings.TrimRight(recipe.Text, "\n"), "\n")}
 	p.Title, p.Section = recipe.Title, "/recipes"
 	p.walk(shelf)
+	p.Vague = planner.Lint(recipe.Name, recipe.Text)
 	return s.render(c, http.StatusOK, "recipe", p)
 }
 

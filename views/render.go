@@ -94,7 +94,7 @@ func (s *Server) render(c *gin.Context, status int, name string, p pageValue) er
 
 // besides are the blocks that come into a page that stays what it is; the title
 // of the window isn't theirs.
-var besides = map[string]bool{"why": true, "answers": true}
+var besides = map[string]bool{"why": true, "answers": true, "chance": true, "checked": true}
 
 // wantedBlock names the block a request wants: the whole layout, or, when htmx
 // exchanges a part, the block that has the name of the part's identity without

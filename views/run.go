@@ -1,8 +1,10 @@
 package views
 
 import (
+	"context"
 	"html/template"
 	"net/http"
+	"net/url"
 	"strconv"
 	"strings"
 
@@ -41,6 +43,7 @@ type runPage struct {
 	Paper    *paperCheck // set when the address came from a printed sheet
 
 	carboys []inventory.Carboy
+	drawn   bool // the chances come from draws of the whole walk-through
 }
 
 // Query carries what is asked to the addresses of papers and explanations. It
@@ -85,10 +88,15 @@ func (s *Server) askedRun(c *gin.Context) (*runPage, error) {
 		return nil, err
 	}
 	p := s.runPageFor(run, recipe)
-	if typed := c.Request.URL.Query(); typed.Has("wanted") || typed.Has("on") {
-		p.tryAsk(typed.Get("wanted"), typed.Get("on"), typed.Get("certainty"), s.Today())
-	}
+	p.readQuery(c.Request.URL.Query(), s.Today())
 	return p, s.planRun(p, shelf)
+}
+
+// readQuery tries what the query of an address asks, if it asks anything.
+func (p *runPage) readQuery(typed url.Values, today inventory.Date) {
+	if typed.Has("wanted") || typed.Has("on") || typed.Has("certainty") {
+		p.tryAsk(typed.Get("wanted"), typed.Get("on"), typed.Get("certainty"), today)
+	}
 }
 
 // answerFaults shows a page with what was typed and what is wrong with it.
@@ -137,7 +145,7 @@ func (s *Server) planRun(p *runPage, shelf *inventory.Shelf) error {
 	}
 	plan, err := s.plan(planner.Request{
 		Recipe: p.Recipe, Target: p.Ask.target, On: p.Ask.on, Today: s.Today(),
-		Run: p.Run.ID, Store: p.Run.StoreID, Certainty: p.Ask.certainty,
+		Run: p.Run.ID, Store: p.Run.StoreID, Certainty: p.Ask.certainty, Drawn: p.drawn,
 	}, shelf)
 	if err != nil {
 		return p.refused(err)
@@ -200,21 +208,18 @@ func (s *Server) findRun(c *gin.Context) (*inventory.Shelf, inventory.Run, *plan
 	if err != nil || !ok {
 		return nil, run, nil, &missing{"run", c.Param("id"), "The runs to come are on the slate."}
 	}
-	recipe, err := s.recipeOf(run)
+	recipe, err := s.recipeOf(c.Request.Context(), run)
 	return shelf, run, recipe, err
 }
 
 // recipeOf returns the recipe a run was planned with: the text kept with the
-// run, so that a later version of the recipe changes nothing in it.
-func (s *Server) recipeOf(run inventory.Run) (*planner.Recipe, error) {
-	r, ok := s.recipeNamed(run.Recipe)
-	if ok && (run.RecipeText == "" || run.RecipeText == r.Text) {
-		return r, nil
-	}
+// run, so that a later version of the recipe changes nothing in it. A run
+// without a text goes by the recipe of its name.
+func (s *Server) recipeOf(ctx context.Context, run inventory.Run) (*planner.Recipe, error) {
 	if run.RecipeText != "" {
-		return planner.ParseRecipe(run.Recipe, []byte(run.RecipeText))
+		return s.book.recipe(run.Recipe, run.RecipeText)
 	}
-	return nil, &missing{"recipe", run.Recipe, "The recipe of this run is no longer among the recipes."}
+	return s.recipeNamed(ctx, run.Recipe)
 }
 
 // leadOf cuts the verdict after what it says first, at a semicolon or a full

@@ -117,7 +117,7 @@ func (s *Server) promisePage(c *gin.Context) (*promisePage, error) {
 	if err != nil {
 		return nil, err
 	}
-	plan, err := s.planKept(run, shelf)
+	plan, err := s.planKept(run, recipe, shelf)
 	if err != nil {
 		return nil, err
 	}

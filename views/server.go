@@ -31,7 +31,8 @@ import (
 type Config struct {
 	Lab Lab
 	// Plan makes a plan for a request; nil means planner.MakePlan.
-	Plan    func(planner.Request, *inventory.Shelf) (*planner.Plan, error)
+	Plan func(planner.Request, *inventory.Shelf) (*planner.Plan, error)
+	// Recipes are those that come with the program; what the lab saved is added.
 	Recipes []*planner.Recipe
 	Sums    []reckoner.Sum
 	// Today gives the present day of the lab.
@@ -52,6 +53,7 @@ type Server struct {
 	sets    templateSets
 	meters  *meters
 	memory  *memory
+	book    recipeBook
 	handler http.Handler
 }
 
@@ -102,6 +104,7 @@ func (s *Server) routes() http.Handler {
 	}
 	e.GET("/runs/:id/answers", s.page(s.showAnswers))
 	e.GET("/runs/:id/steps/:n", s.page(s.showStep))
+	e.GET("/runs/:id/chance", s.page(s.showChance))
 	e.GET("/runs/:id/hazards", s.page(s.showHazards))
 	e.GET("/runs/:id/promise", s.page(s.showPromise))
 	e.POST("/runs/:id/promise", s.page(s.promise))
@@ -120,6 +123,8 @@ func (s *Server) routes() http.Handler {
 	e.POST("/shelf/bottles/:code/count", s.page(s.countBottle))
 	e.GET("/recipes", s.page(s.showRecipes))
 	e.GET("/recipes/:name", s.page(s.showRecipe))
+	e.GET("/recipes/:name/edit", s.page(s.showEdit))
+	e.POST("/recipes/:name/edit", s.page(s.saveEdit))
 	e.GET("/shortfalls", s.page(s.showShortfalls))
 	e.GET("/buying", s.page(s.showBuying))
 	e.GET("/waste", s.page(s.showWaste))

@@ -169,6 +169,9 @@ func TestRoutes(t *testing.T) {
 		{"/shelf/bottles/NOSUCH", 404, "No bottle “NOSUCH”"},
 		{"/recipes", 200, "Recipes"},
 		{"/recipes/pentanoic-acid-dichromate", 200, "Pentanoic acid from 1-pentanol with acid dichromate"},
+		{"/recipes/pentanoic-acid-dichromate/edit", 200, "Change pentanoic-acid-dichromate"},
+		{"/recipes/lead-into-gold/edit", 404, "No recipe “lead-into-gold”"},
+		{"/runs/1/chance", 200, "Chance, drawn through the whole run"},
 		{"/recipes/lead-into-gold", 404, "No recipe “lead-into-gold”"},
 		{"/shortfalls", 200, "Shortfalls"},
 		{"/buying", 200, "Buying"},
@@ -232,7 +235,7 @@ func (s *Server) firstBottle(t testing.TB) string {
 func TestPagesAreWellFormed(t *testing.T) {
 	s := newSampleServer(t)
 	for _, address := range []string{"/slate", "/runs/new", "/runs/1", "/runs/1?wanted=x", "/runs/1/promise", "/runs/1/hazards", "/runs/1/answers", "/runs/1/steps/1", "/runs/1/explain/need-2",
-		"/shelf", "/shelf?find=zzzz", "/shelf/import", "/shelf/bottles/" + s.firstBottle(t), "/recipes", "/recipes/pentanoic-acid-dichromate",
+		"/shelf", "/shelf?find=zzzz", "/shelf/import", "/shelf/bottles/" + s.firstBottle(t), "/recipes", "/recipes/pentanoic-acid-dichromate", "/recipes/pentanoic-acid-dichromate/edit", "/runs/1/chance",
 		"/shortfalls", "/buying", "/waste", "/reckoner", "/reckoner/amount?mass=50+g", "/reckoner/amount?mass=x", "/nowhere"} {
 		doc := parse(t, get(t, s, address))
 		if lang, _ := attribute(one(t, doc, "html"), "lang"); lang != "en" {

@@ -56,7 +56,7 @@ func (s *Server) slate(c *gin.Context) (*inventory.Shelf, []planner.SlateLine, e
 	var runs []planner.SlateRun
 	unread := map[int64]error{}
 	for _, run := range shelf.Runs {
-		recipe, err := s.recipeOf(run)
+		recipe, err := s.recipeOf(c.Request.Context(), run)
 		if err != nil {
 			unread[run.ID] = err
 		}
@@ -90,11 +90,7 @@ func newSlateRow(l planner.SlateLine) slateRow {
 func wantedText(r inventory.Run) string { return massPlain(chem.Mass(r.TargetUG) * chem.Microgram) }
 
 // planKept plans a run as it stands on the slate.
-func (s *Server) planKept(run inventory.Run, shelf *inventory.Shelf) (*planner.Plan, error) {
-	recipe, err := s.recipeOf(run)
-	if err != nil {
-		return nil, err
-	}
+func (s *Server) planKept(run inventory.Run, recipe *planner.Recipe, shelf *inventory.Shelf) (*planner.Plan, error) {
 	return s.plan(planner.Request{
 		Recipe: recipe, Target: chem.Mass(run.TargetUG) * chem.Microgram,
 		On: run.On, Today: s.Today(), Run: run.ID, Store: run.StoreID,

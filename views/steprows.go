@@ -21,6 +21,7 @@ type stepRow struct {
 	More    []string // the rest
 	Explain string   // address of how its numbers came about, or ""
 	At      string   // address of the step by itself, or ""
+	Held    chem.Mass
 }
 
 // stepRows makes the strip. Where gives the address of something about a step:
@@ -33,6 +34,9 @@ func stepRows(steps []planner.StepReport, where func(about string, n int) string
 		told, more := tellingSays(s)
 		rows[i].Lines, rows[i].More = append(told, stepLines(s)...), more
 		rows[i].At = where("step", s.N)
+		for _, c := range s.Contents {
+			rows[i].Held += c.Mass
+		}
 		if len(s.Derivations) > 0 || len(s.Adds) > 0 {
 			rows[i].Explain = where("explain", s.N)
 		}
