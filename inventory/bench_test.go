@@ -279,7 +279,7 @@ func BenchmarkLoad(b *testing.B) {
 	large, small := stocked(b, *benchBottles), stocked(b, *benchBottles/10)
 	load := func(s *Store) time.Duration {
 		from := time.Now()
-		if _, err := s.Load(context.Background()); err != nil {
+		if _, err := s.load(context.Background()); err != nil {
 			b.Fatal(err)
 		}
 		return time.Since(from)
@@ -290,6 +290,16 @@ func BenchmarkLoad(b *testing.B) {
 	var m runtime.MemStats
 	runtime.ReadMemStats(&m)
 	b.ReportMetric(float64(m.Sys)/1e6, "MB")
+}
+
+// BenchmarkLoadAgain loads when nothing was written since.
+func BenchmarkLoadAgain(b *testing.B) {
+	s := stocked(b, *benchBottles)
+	for b.Loop() {
+		if _, err := s.Load(context.Background()); err != nil {
+			b.Fatal(err)
+		}
+	}
 }
 
 func BenchmarkBackup(b *testing.B) {

@@ -52,8 +52,23 @@ func (s *Store) openSQLite(ctx context.Context) error {
 	}
 	reader.SetMaxOpenConns(sqliteReaders)
 	s.pools = append(s.pools, reader)
-	s.reader, err = openGorm(ctx, sqlite.New(sqlite.Config{Conn: reader}), reader)
-	return err
+	if s.reader, err = openGorm(ctx, sqlite.New(sqlite.Config{Conn: reader}), reader); err != nil {
+		return err
+	}
+	return s.openWatcher()
+}
+
+// openWatcher keeps one connection for good, because the number it is asked for
+// means something only on the same connection.
+func (s *Store) openWatcher() error {
+	watcher, err := sql.Open("sqlite", s.sqliteDSN("deferred"))
+	if err != nil {
+		return err
+	}
+	watcher.SetMaxOpenConns(1)
+	watcher.SetMaxIdleConns(1)
+	s.pools, s.watcher = append(s.pools, watcher), watcher
+	return nil
 }
 
 // notEmptied refuses a database file without a byte in it beside a write-ahead
@@ -77,6 +92,7 @@ func (s *Store) sqliteDSN(lock string) string {
 	q.Add("_pragma", "synchronous(FULL)")
 	q.Add("_pragma", "trusted_schema(0)")
 	q.Add("_pragma", "cell_size_check(1)")
+	q.Add("_pragma", "temp_store(2)") // journals of single statements stay in memory
 	q.Add("_txlock", lock)
 	cache := writerCacheKiB
 	if lock == "deferred" {

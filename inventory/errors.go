@@ -87,10 +87,15 @@ type Promise struct {
 
 // Error names the bottle, what is free and the runs that have the rest.
 func (e *PromiseError) Error() string {
-	others := make([]string, len(e.Others))
+	const most = 5 // of the runs are named
+	others := make([]string, 0, most+1)
 	for i, o := range e.Others {
-		others[i] = fmt.Sprintf("run %d (%s on %s, %s) has %s until %s",
-			o.Run, o.Recipe, o.On, o.Owner, amountText(o.Amount, e.Measure), o.Ends)
+		if i == most {
+			others = append(others, fmt.Sprintf("and %d more", len(e.Others)-most))
+			break
+		}
+		others = append(others, fmt.Sprintf("run %d (%s on %s, %s) has %s until %s",
+			o.Run, o.Recipe, o.On, o.Owner, amountText(o.Amount, e.Measure), o.Ends))
 	}
 	return fmt.Sprintf("bottle %s: %s wanted, %s free of %s: %s", e.Bottle, amountText(e.Wanted, e.Measure),
 		amountText(e.Free, e.Measure), amountText(e.Content, e.Measure), strings.Join(others, ", "))

@@ -2,9 +2,7 @@ package inventory
 
 import (
 	"context"
-	"crypto/sha256"
 	"encoding/csv"
-	"encoding/hex"
 	"errors"
 	"fmt"
 	"io"
@@ -82,11 +80,10 @@ func (s *Store) Import(ctx context.Context, t Table, m Mapping, o ImportOptions)
 	if err := m.usable(t); err != nil {
 		return report, err
 	}
-	drafts := readDrafts(t, m, &report)
 	err := s.write(ctx, doing, func(tx *gorm.DB) error {
 		again := report
-		in := &importer{store: s, tx: tx, options: o, report: &again, table: t}
-		if err := in.run(drafts); err != nil {
+		in := &importer{store: s, tx: tx, options: o, report: &again, table: t, mapping: m}
+		if err := in.run(ctx); err != nil {
 			return err
 		}
 		report = again
@@ -118,48 +115,6 @@ func (m Mapping) usable(t Table) error {
 		return invalid("import", t.Name, "columns for the name or CAS number and for the amount are needed", "say which columns they are; the headings are "+strings.Join(t.Header, ", "))
 	}
 	return nil
-}
-
-// readDrafts reads all rows and refuses those that say the same as one before.
-func readDrafts(t Table, m Mapping, report *ImportReport) []draft {
-	reader := newRowReader(t, m)
-	drafts := make([]draft, 0, len(t.Rows))
-	marks, whole := map[string]int{}, map[string]int{}
-	for i, row := range t.Rows {
-		d, faults := reader.read(i)
-		if len(row) > len(t.Header) && !blank(row[len(t.Header):]) {
-			faults = []string{fmt.Sprintf("%d cells under %d headings; quote a cell that holds a comma", len(row), len(t.Header))}
-		}
-		key := strings.Join(row, "\x00")
-		if at, seen := whole[key]; seen {
-			faults = append(faults, fmt.Sprintf("the same as line %d; give each bottle its own number, or their count", at))
-		} else if at, seen := marks[d.bottle.Mark]; seen && d.bottle.Mark != "" {
-			faults = append(faults, fmt.Sprintf("the number %q is on line %d too", d.bottle.Mark, at))
-		}
-		whole[key] = t.Lines[i]
-		if len(faults) > 0 {
-			report.Refused = append(report.Refused, RefusedRow{t.Lines[i], faults, row})
-			continue
-		}
-		if d.bottle.Mark != "" {
-			marks[d.bottle.Mark] = t.Lines[i]
-		}
-		drafts = append(drafts, d)
-	}
-	return drafts
-}
-
-// fingerprint sums up the content of a table.
-func (t Table) fingerprint() string {
-	h := sha256.New()
-	for _, row := range append([][]string{t.Header}, t.Rows...) {
-		for _, cell := range row {
-			fmt.Fprintf(h, "%d:", len(cell))
-			io.WriteString(h, cell)
-		}
-		h.Write([]byte{'\n'})
-	}
-	return hex.EncodeToString(h.Sum(nil))
 }
 
 // StockImport is an import that was made.

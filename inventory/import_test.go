@@ -6,6 +6,7 @@ import (
 	"errors"
 	"fmt"
 	"math"
+	"slices"
 	"strings"
 	"testing"
 
@@ -381,7 +382,8 @@ func stockLines(s *Shelf) string {
 		place, _ := s.Place(b.PlaceID)
 		lines = append(lines, fmt.Sprint(substance.CAS, "|", form.HydrateWaters, form.AssayLow, form.AssayHigh, form.Grade, form.Measure, "|", b.Size, b.Content, place.String(), b.Lot, b.Expiry, b.Opened))
 	}
-	return strings.Join(sortedBy(lines, func(a, b *string) int { return strings.Compare(*a, *b) }), "\n")
+	slices.Sort(lines)
+	return strings.Join(lines, "\n")
 }
 
 func firstDifference(got, want string) string {

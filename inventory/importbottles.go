@@ -1,6 +1,11 @@
 package inventory
 
-import "gorm.io/gorm/clause"
+import (
+	"context"
+	"fmt"
+
+	"gorm.io/gorm/clause"
+)
 
 // importWriter inserts bottles with their first ledger entry, which also says
 // who took them in, when and why.
@@ -9,40 +14,74 @@ type importWriter struct {
 	bottles, ledger *bulk
 	heads           map[int64]*chain
 	ids             []int64 // taken in advance
+	last            int64   // the last of those taken
 	stamp           Stamp
 	today           Date
 	why             string
 	done            int
 }
 
-// bottles writes all drafts.
-func (in *importer) bottles(drafts []draft) error {
-	total := 0
-	for _, d := range drafts {
-		total += int(d.bottles)
-	}
-	ids, err := in.store.nextIDs(in.tx, "bottles", total)
-	if err != nil {
-		return err
-	}
+// bottles reads and writes all rows of the list.
+func (in *importer) bottles(ctx context.Context) error {
+	ctx, stop := context.WithCancel(ctx)
+	defer stop()
 	s := in.store
-	w := &importWriter{in: in, ids: ids, heads: map[int64]*chain{}, stamp: s.stamp(), today: s.today(), why: "import of " + in.table.Name,
+	// Bottles and ledger are flushed together, so that no entry comes before its
+	// bottle.
+	w := &importWriter{in: in, heads: map[int64]*chain{}, stamp: s.stamp(), today: s.today(), why: "import of " + in.table.Name,
 		bottles: newBulk(in.tx, s.engine, "bottles", "id", "store_id", "code", "mark", "form_id", "place_id", "state", "lot", "content",
 			"size", "received", "opened", "expiry", "measured_by", "measured_on", "supplier", "note", "import_id"),
 		ledger: newBulk(in.tx, s.engine, "ledger", "store_id", "seq", "bottle_id", "kind", "amount", "content", "by_whom", "at", "why", "hash"),
 	}
-	// Bottles and ledger are flushed together, so that no entry comes before its
-	// bottle.
-	for i := range drafts {
-		if err := w.write(&drafts[i]); err != nil {
-			return err
+	for part := range readAll(ctx, in.table, in.mapping) {
+		for i := range part {
+			if err := w.take(&part[i]); err != nil {
+				return err
+			}
 		}
-		if in.options.Progress != nil && (i%1000 == 999 || i == len(drafts)-1) {
-			in.options.Progress(i+1, len(drafts))
+		if in.options.Progress != nil {
+			in.options.Progress(part[len(part)-1].row+1, len(in.table.Rows))
 		}
+	}
+	if err := ctx.Err(); err != nil {
+		return err
 	}
 	in.report.Bottles = w.done
 	return w.end()
+}
+
+// take writes a row that was read, or refuses it.
+func (w *importWriter) take(r *reading) error {
+	mark := r.draft.bottle.Mark
+	if code, there := w.in.marks[mark]; there && mark != "" {
+		r.faults = append(r.faults, fmt.Sprintf("the number %q is on bottle %s already", mark, code))
+	}
+	if len(r.faults) > 0 {
+		w.in.report.Refused = append(w.in.report.Refused, RefusedRow{w.in.table.Lines[r.row], r.faults, w.in.table.Rows[r.row]})
+		return nil
+	}
+	w.in.report.Taken++
+	return w.write(&r.draft)
+}
+
+// nextID hands out identities of bottles, of which it takes some hundred at a
+// time.
+func (w *importWriter) nextID() (int64, error) {
+	if len(w.ids) == 0 {
+		ids, err := w.in.store.nextIDs(w.in.tx, "bottles", bulkRows)
+		if err != nil {
+			return 0, err
+		}
+		if w.last >= ids[0] { // what was handed out isn't in the table yet
+			for i := range ids {
+				ids[i] = w.last + 1 + int64(i)
+			}
+		}
+		w.ids, w.last = ids, ids[len(ids)-1]
+	}
+	id := w.ids[0]
+	w.ids = w.ids[1:]
+	return id, nil
 }
 
 func (w *importWriter) write(d *draft) error {
@@ -56,7 +95,10 @@ func (w *importWriter) write(d *draft) error {
 	}
 	for range d.bottles {
 		b := d.bottle
-		b.ID, b.StoreID, b.FormID, b.PlaceID = w.ids[w.done], place.StoreID, form.ID, place.ID
+		b.StoreID, b.FormID, b.PlaceID = place.StoreID, form.ID, place.ID
+		if b.ID, err = w.nextID(); err != nil {
+			return err
+		}
 		b.Code, b.MeasuredOn = MakeCode(BottleCode, b.ID), w.today
 		w.done++
 		if err := w.add(&b); err != nil {

@@ -1,6 +1,7 @@
 package inventory
 
 import (
+	"context"
 	"fmt"
 	"slices"
 	"strings"
@@ -15,7 +16,9 @@ type importer struct {
 	options ImportOptions
 	report  *ImportReport
 	table   Table
+	mapping Mapping
 	id      int64
+	marks   map[string]string // own numbers that are on bottles already → code
 
 	byName, byCAS map[string]Substance
 	forms         map[formKey]StockForm
@@ -39,7 +42,7 @@ func keyOf(f StockForm) formKey {
 	return formKey{f.SubstanceID, f.HydrateWaters, f.AssayLow, f.AssayHigh, f.Diluent, f.Grade, f.Additive, f.Measure}
 }
 
-func (in *importer) run(drafts []draft) error {
+func (in *importer) run(ctx context.Context) error {
 	print := in.table.fingerprint()
 	if err := in.refuseAgain(print); err != nil {
 		return err
@@ -47,20 +50,20 @@ func (in *importer) run(drafts []draft) error {
 	if err := in.loadKnown(); err != nil {
 		return err
 	}
-	drafts, err := in.refuseMarks(drafts)
-	if err != nil {
+	if err := in.loadMarks(); err != nil {
 		return err
 	}
+	var err error
 	if in.id, err = in.store.nextID(in.tx, "imports"); err != nil {
 		return err
 	}
-	if err := in.bottles(drafts); err != nil {
+	err = in.store.withoutIndexes(in.tx, len(in.table.Rows), func() error { return in.bottles(ctx) })
+	if err != nil {
 		return err
 	}
-	slices.SortStableFunc(in.report.Refused, func(a, b RefusedRow) int { return a.Line - b.Line })
-	in.report.Import, in.report.Taken = in.id, len(drafts)
+	in.report.Import = in.id
 	row := StockImport{ID: in.id, At: in.store.stamp(), ByWhom: in.options.Act.By, Name: in.table.Name, Fingerprint: print,
-		RowsRead: in.report.Rows, Taken: len(drafts), Bottles: in.report.Bottles}
+		RowsRead: in.report.Rows, Taken: in.report.Taken, Bottles: in.report.Bottles}
 	return in.tx.Create(&row).Error
 }
 
@@ -127,43 +130,30 @@ func placeWords(p Place) Place {
 	return Place{Store: p.Store, Room: p.Room, Cabinet: p.Cabinet, Shelf: p.Shelf}
 }
 
-// refuseMarks refuses rows whose own number is on a bottle already.
-func (in *importer) refuseMarks(drafts []draft) ([]draft, error) {
-	var marks []string
-	for _, d := range drafts {
-		if d.bottle.Mark != "" {
-			marks = append(marks, d.bottle.Mark)
-		}
+// loadMarks finds the own numbers of the list that are on bottles already.
+func (in *importer) loadMarks() error {
+	in.marks = map[string]string{}
+	column, ok := in.mapping.Columns[FieldMark]
+	if !ok {
+		return nil
 	}
-	taken := map[string]string{}
-	for part := range slices.Chunk(marks, 5000) {
-		var there []Bottle
-		plain := make([]string, len(part))
-		for i, mark := range part {
-			plain[i] = spelledPlain(mark)
+	spelling := in.store.plainColumn("mark") // the index is over this spelling
+	for part := range slices.Chunk(in.table.Rows, 5000) {
+		plain := make([]string, 0, len(part))
+		for _, row := range part {
+			if column < len(row) && strings.TrimSpace(row[column]) != "" {
+				plain = append(plain, spelledPlain(strings.TrimSpace(row[column])))
+			}
 		}
-		spelling := in.store.plainColumn("mark") // the index is over this spelling
+		var there []Bottle
 		if err := in.tx.Select("code", "mark").Where("mark <> '' AND "+spelling+" IN ? AND state <> ?", plain, Discarded).Find(&there).Error; err != nil {
-			return nil, err
+			return err
 		}
 		for _, b := range there {
-			taken[b.Mark] = b.Code
+			in.marks[b.Mark] = b.Code
 		}
 	}
-	if len(taken) == 0 {
-		return drafts, nil
-	}
-	kept := make([]draft, 0, len(drafts))
-	for _, d := range drafts {
-		code, there := taken[d.bottle.Mark]
-		if !there {
-			kept = append(kept, d)
-			continue
-		}
-		at, _ := slices.BinarySearch(in.table.Lines, d.line)
-		in.report.Refused = append(in.report.Refused, RefusedRow{d.line, []string{fmt.Sprintf("the number %q is on bottle %s already", d.bottle.Mark, code)}, in.table.Rows[at]})
-	}
-	return kept, nil
+	return nil
 }
 
 // substance finds the substance of a draft in stock or adds it.

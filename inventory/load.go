@@ -7,14 +7,54 @@ import (
 )
 
 // Load reads everything the planner needs in one transaction, so that it is one
-// moment of the database.
+// moment of the database. As long as nothing was written, the same shelf is
+// returned again, which is safe because a shelf never changes.
 func (s *Store) Load(ctx context.Context) (*Shelf, error) {
+	version, known, err := s.version(ctx)
+	if err != nil {
+		return nil, translate("load the shelf", err)
+	}
+	if last := s.loaded.Load(); known && last != nil && last.version == version {
+		return last.shelf, nil
+	}
+	shelf, err := s.load(ctx)
+	if err == nil && known {
+		s.loaded.Store(&loadedShelf{version, shelf})
+	}
+	return shelf, err
+}
+
+// loadedShelf is the last shelf loaded and the version of the database before
+// that; a write in between makes the next Load read again.
+type loadedShelf struct {
+	version int64
+	shelf   *Shelf
+}
+
+// version returns a number that changes with every write by whatever process:
+// SQLite's own count, as seen by a connection that never writes. In memory,
+// where there is one connection, it is the count of rows changed. PostgreSQL
+// has no such number that is cheap, so there it isn't known.
+func (s *Store) version(ctx context.Context) (n int64, known bool, err error) {
+	switch {
+	case s.engine == onPostgres:
+		return 0, false, nil
+	case s.watcher != nil:
+		// Never cancelled: a connection given up for that would count anew.
+		err = s.watcher.QueryRowContext(context.WithoutCancel(ctx), "PRAGMA data_version").Scan(&n)
+	default:
+		err = s.pools[0].QueryRowContext(ctx, "SELECT total_changes()").Scan(&n)
+	}
+	return n, err == nil, err
+}
+
+func (s *Store) load(ctx context.Context) (*Shelf, error) {
 	var lab Lab
 	err := s.read(ctx, "load the shelf", func(tx *gorm.DB) error {
 		if err := loadRest(tx, &lab); err != nil {
 			return err
 		}
-		if err := tx.Find(&lab.Bottles).Error; err != nil {
+		if err := tx.Order("form_id, code").Find(&lab.Bottles).Error; err != nil {
 			return err
 		}
 		return tx.Find(&lab.Earmarks).Error
@@ -22,7 +62,7 @@ func (s *Store) Load(ctx context.Context) (*Shelf, error) {
 	if err != nil {
 		return nil, err
 	}
-	return NewShelf(lab), nil
+	return shelfOf(lab), nil
 }
 
 // LoadFor is Load with the bottles of only some substances, by name, synonym or
@@ -46,7 +86,7 @@ func (s *Store) LoadFor(ctx context.Context, substances []string) (*Shelf, error
 	if err != nil {
 		return nil, err
 	}
-	return NewShelf(lab), nil
+	return shelfOf(lab), nil
 }
 
 // loadRest reads all lists but those that grow with the bottles.

@@ -2,6 +2,7 @@ package inventory
 
 import (
 	"cmp"
+	"maps"
 	"slices"
 	"strings"
 )
@@ -36,7 +37,16 @@ type stretch struct{ from, to int }
 // NewShelf sorts copies of the lab's lists and indexes them. The lab may be
 // changed afterwards without touching the shelf.
 func NewShelf(lab Lab) *Shelf {
-	s := &Shelf{Lab: sorted(lab)}
+	lab = Lab{slices.Clone(lab.Substances), slices.Clone(lab.Forms), slices.Clone(lab.Places), slices.Clone(lab.Bottles),
+		slices.Clone(lab.Earmarks), slices.Clone(lab.Offers), slices.Clone(lab.Orders), slices.Clone(lab.Carboys),
+		slices.Clone(lab.Equipment), slices.Clone(lab.Runs), maps.Clone(lab.Policy)}
+	return shelfOf(lab)
+}
+
+// shelfOf is NewShelf for a lab that nobody else has.
+func shelfOf(lab Lab) *Shelf {
+	lab.sort()
+	s := &Shelf{Lab: lab}
 	s.byID = positions(s.Substances, func(r *Substance) int64 { return r.ID })
 	s.forms = positions(s.Forms, func(r *StockForm) int64 { return r.ID })
 	s.places = positions(s.Places, func(r *Place) int64 { return r.ID })
@@ -52,37 +62,36 @@ func NewShelf(lab Lab) *Shelf {
 	return s
 }
 
-// sorted returns a copy of the lab in the order a Shelf promises.
-func sorted(lab Lab) Lab {
-	lab.Substances = sortedBy(lab.Substances, func(a, b *Substance) int { return cmp.Compare(a.ID, b.ID) })
-	lab.Forms = sortedBy(lab.Forms, func(a, b *StockForm) int {
+// sort puts the lists into the order a Shelf promises. The keys are unique, so
+// the order is the same whatever it was before.
+func (lab *Lab) sort() {
+	sortBy(lab.Substances, func(a, b *Substance) int { return cmp.Compare(a.ID, b.ID) })
+	sortBy(lab.Forms, func(a, b *StockForm) int {
 		return cmp.Or(cmp.Compare(a.SubstanceID, b.SubstanceID), cmp.Compare(a.ID, b.ID))
 	})
-	lab.Places = sortedBy(lab.Places, func(a, b *Place) int {
-		return cmp.Or(cmp.Compare(a.Walk, b.Walk), cmp.Compare(a.ID, b.ID))
-	})
-	lab.Bottles = sortedBy(lab.Bottles, func(a, b *Bottle) int {
+	sortBy(lab.Places, func(a, b *Place) int { return cmp.Or(cmp.Compare(a.Walk, b.Walk), cmp.Compare(a.ID, b.ID)) })
+	sortBy(lab.Bottles, func(a, b *Bottle) int {
 		return cmp.Or(cmp.Compare(a.FormID, b.FormID), cmp.Compare(a.Code, b.Code))
 	})
-	lab.Earmarks = sortedBy(lab.Earmarks, func(a, b *Earmark) int {
+	sortBy(lab.Earmarks, func(a, b *Earmark) int {
 		return cmp.Or(cmp.Compare(a.BottleID, b.BottleID), cmp.Compare(a.ID, b.ID))
 	})
-	lab.Offers = sortedBy(lab.Offers, func(a, b *Offer) int {
-		return cmp.Or(cmp.Compare(a.FormID, b.FormID), cmp.Compare(a.ID, b.ID))
-	})
-	lab.Orders = sortedBy(lab.Orders, func(a, b *Order) int {
-		return cmp.Or(cmp.Compare(a.FormID, b.FormID), cmp.Compare(a.ID, b.ID))
-	})
-	lab.Carboys = sortedBy(lab.Carboys, func(a, b *Carboy) int { return cmp.Compare(a.ID, b.ID) })
-	lab.Equipment = sortedBy(lab.Equipment, func(a, b *Equipment) int { return cmp.Compare(a.ID, b.ID) })
-	lab.Runs = sortedBy(lab.Runs, func(a, b *Run) int { return cmp.Compare(a.ID, b.ID) })
-	return lab
+	sortBy(lab.Offers, func(a, b *Offer) int { return cmp.Or(cmp.Compare(a.FormID, b.FormID), cmp.Compare(a.ID, b.ID)) })
+	sortBy(lab.Orders, func(a, b *Order) int { return cmp.Or(cmp.Compare(a.FormID, b.FormID), cmp.Compare(a.ID, b.ID)) })
+	sortBy(lab.Carboys, func(a, b *Carboy) int { return cmp.Compare(a.ID, b.ID) })
+	sortBy(lab.Equipment, func(a, b *Equipment) int { return cmp.Compare(a.ID, b.ID) })
+	sortBy(lab.Runs, func(a, b *Run) int { return cmp.Compare(a.ID, b.ID) })
 }
 
-func sortedBy[R any](rows []R, order func(a, b *R) int) []R {
-	rows = slices.Clone(rows)
-	slices.SortStableFunc(rows, func(a, b R) int { return order(&a, &b) })
-	return rows
+// sortBy leaves alone what is in order, as what a store loads is: a pass over
+// it is far cheaper than moving large records about.
+func sortBy[R any](rows []R, order func(a, b *R) int) {
+	for i := 1; i < len(rows); i++ {
+		if order(&rows[i-1], &rows[i]) > 0 {
+			slices.SortStableFunc(rows, func(a, b R) int { return order(&a, &b) })
+			return
+		}
+	}
 }
 
 func positions[R any, K comparable](rows []R, key func(*R) K) map[K]int {

@@ -44,6 +44,8 @@ type Store struct {
 	pools   []*sql.DB
 	path    string // of the SQLite file; "" otherwise
 	names   atomic.Pointer[catalogue]
+	watcher *sql.DB // one connection that never writes; nil but for SQLite files
+	loaded  atomic.Pointer[loadedShelf]
 }
 
 type engine int

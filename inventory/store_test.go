@@ -137,6 +137,40 @@ func TestMemory(t *testing.T) {
 	wait.Wait()
 }
 
+// A shelf that is loaded again is the same one until somebody writes, be it
+// through another store on the same file.
+func TestLoadAgain(t *testing.T) {
+	ctx := context.Background()
+	dir := t.TempDir()
+	file, other := filled(t, openIn(t, dir)), openIn(t, dir)
+	memory, err := Open(ctx, Options{Memory: true, Now: noon})
+	if err != nil {
+		t.Fatal(err)
+	}
+	defer memory.Close()
+	filled(t, memory)
+	for _, c := range []struct{ reads, writes *Store }{{file, file}, {file, other}, {memory, memory}} {
+		first, err := c.reads.Load(ctx)
+		if err != nil {
+			t.Fatal(err)
+		}
+		if again, _ := c.reads.Load(ctx); again != first {
+			t.Error("nothing was written and another shelf is loaded")
+		}
+		b := open1(t, c.writes, "permanganate open")
+		if _, err := c.writes.Draw(ctx, Taking{b.Code, 1, 0}, clerk); err != nil {
+			t.Fatal(err)
+		}
+		after, err := c.reads.Load(ctx)
+		if err != nil {
+			t.Fatal(err)
+		}
+		if got, _ := after.BottleByCode(b.Code); got.Content != b.Content-1 {
+			t.Errorf("content %d after the draw, want %d", got.Content, b.Content-1)
+		}
+	}
+}
+
 func open1(t *testing.T, s *Store, key string) Bottle {
 	t.Helper()
 	d := demo{today: demoDay, forms: map[string]int64{}, places: map[string]int64{}, bottles: map[string]int64{}}
