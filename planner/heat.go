@@ -1,12 +1,17 @@
 package planner
 
-import "stillroom/chem"
+import (
+	"fmt"
+
+	"stillroom/chem"
+)
 
 // figuresOf takes out of the policy what the walk needs on its way.
 func figuresOf(p *policyTable) policyFigures {
 	return policyFigures{
 		heatU: p.value("heat.u"), heatGap: p.value("heat.gap"), iceSpare: p.value("heat.ice-spare"),
 		stillLeave: p.value("still.leave"), emulsionExtra: p.value("prior.emulsion.extra"), emulsionChance: p.value("prior.emulsion.chance"),
+		scaleWarn: p.value("scale.warn"),
 	}
 }
 
@@ -113,6 +118,21 @@ func (w *Workspace) heatCapacity(v int) float64 {
 	return sum
 }
 
+// deriveRise explains the temperature without cooling.
+func (w *Workspace) deriveRise(cp float64) chem.Derivation {
+	start := w.celsius[w.step.vessel]
+	return chem.Derivation{
+		Of: "temperature if cooling is lost", Formula: "T = T0 + q / Σ m·cp",
+		Inserted: fmt.Sprintf("%.3g °C + %.5g kJ / %.4g kJ/K = %.4g °C", start, w.heat/1e3, cp/1e3, start+w.heat/cp),
+		Inputs: []chem.Input{
+			{Symbol: "T0", Name: "temperature of the contents", Value: start, Unit: "°C", Source: "recipe"},
+			{Symbol: "q", Name: "heat of reactions, dilution and neutralisation", Value: w.heat / 1e3, Unit: "kJ", Source: "heat balance of the step"},
+			{Symbol: "Σ m·cp", Name: "heat capacity of the contents, dissolved salts as nothing beside their water", Value: cp / 1e3, Unit: "kJ/K", Source: "heat capacities of the table of substances"},
+		},
+		Value: start + w.heat/cp, Unit: "°C", Range: "no heat to the room, no boiling", Source: "METHODS h",
+	}
+}
+
 // mixTemperature sets the temperature of place v to that of its contents mixed
 // with those of another place.
 func (w *Workspace) mixTemperature(from, v int) {
@@ -132,6 +152,7 @@ func (w *Workspace) sayHeat() {
 	if w.heat <= 0 || cp <= 0 {
 		return
 	}
+	w.derive(func() chem.Derivation { return w.deriveRise(cp) })
 	rise := w.heat / cp
 	w.report.step.IfCoolingLost = chem.Celsius(w.celsius[w.step.vessel] + rise)
 	if rise > 10 {

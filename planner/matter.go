@@ -39,8 +39,6 @@ type matter struct {
 	protons   constitution // empty for what is no electrolyte
 	electro   bool
 	groups    []int
-	solution  float64 // mass fraction of the usual solution, for what is sold only as one
-	record    bool
 	liquid    bool // at 20 °C, when pure
 }
 
@@ -97,7 +95,6 @@ func noteOn(r *Recipe, name string) (SubstanceNote, bool) {
 
 // take copies what the table of substances knows.
 func (m *matter) take(s *chem.Substance) {
-	m.record = true
 	m.cas, m.text = s.CAS, s.Formula
 	m.density = float64(s.Density)
 	m.groups = s.ReactiveGroups
@@ -165,7 +162,7 @@ func (m matter) finish() (matter, error) {
 		m.name, m.miscible, m.soluble = waterName, true, math.Inf(1)
 	}
 	if m.home < 0 {
-		return m, fmt.Errorf("the phase of %s is not known; state it under substances:", m.name)
+		return m, fmt.Errorf("the phase of %s is not known: state it under substances", m.name)
 	}
 	m.inWater = apparentDensities(m)
 	return m, nil
@@ -270,9 +267,10 @@ func apparentDensities(m matter) []float64 {
 	return list
 }
 
-// litreOf returns the volume in m3 that mass of the substance takes up beside
-// water kg of water; known is false where a density had to be taken as water's.
-func (m *matter) litreOf(mass, water float64) float64 {
+// volumeOf returns the volume in m3 that mass of the substance takes up beside
+// water kg of water. Without any density it counts as that of as much water,
+// which the program's notes say.
+func (m *matter) volumeOf(mass, water float64) float64 {
 	if mass == 0 {
 		return 0
 	}

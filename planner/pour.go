@@ -146,7 +146,7 @@ func (w *Workspace) amountIn(d *dose, volume float64) float64 {
 	if d.component == w.p.water {
 		return volume * waterDensity / m.molar
 	}
-	perKilogram := m.litreOf(s, 1-s) + (1-s)/waterDensity
+	perKilogram := m.volumeOf(s, 1-s) + (1-s)/waterDensity
 	return volume / perKilogram * s / m.molar
 }
 

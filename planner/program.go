@@ -5,8 +5,6 @@ import (
 	"fmt"
 	"math"
 	"slices"
-
-	"stillroom/chem"
 )
 
 // Program is a recipe with every name looked up once, ready to be walked
@@ -268,5 +266,11 @@ func (p *Program) yieldBy(x *reactionOf, i int, seen map[int]bool) float64 {
 	return best
 }
 
-// massOf returns the molar mass of component i.
-func (p *Program) massOf(i int) chem.MolarMass { return chem.MolarMass(p.matter[i].molar) }
+// IsStep returns the *StepError in err, or nil if there is none.
+func IsStep(err error) *StepError {
+	var step *StepError
+	if errors.As(err, &step) {
+		return step
+	}
+	return nil
+}

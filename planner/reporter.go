@@ -26,11 +26,11 @@ type reporter struct {
 
 type flowKey struct{ from, to, component int }
 
-// peak is a vessel at its fullest in a step, for choosing the ware.
+// peak is how full a vessel gets in a step, for choosing the ware.
 type peak struct {
 	step, vessel int
 	volume       float64
-	foams        bool
+	limit        string // policy row of the fill limit that holds
 }
 
 const fromShelf = -1
@@ -81,7 +81,7 @@ func (w *Workspace) stockDensity(ask, c int) float64 {
 		return s.density
 	}
 	if s.water > 0.01 && m.inWater != nil {
-		return 1 / (m.litreOf(s.pure, s.water) + s.water/waterDensity)
+		return 1 / (m.volumeOf(s.pure, s.water) + s.water/waterDensity)
 	}
 	if m.cas == waterNumber {
 		return waterDensity
@@ -130,7 +130,7 @@ func (w *Workspace) fullest(v int) {
 		return
 	}
 	volume := w.filled(v)
-	r.peaks = append(r.peaks, peak{w.step.N, v, volume, w.step.Do == "neutralise"})
+	r.peaks = append(r.peaks, peak{w.step.N, v, volume, r.limitKey(w.step, v)})
 	if v != w.step.vessel && r.most > 0 || volume < r.most {
 		return
 	}
@@ -173,9 +173,9 @@ func volumeBeside(m *matter, mass, water float64, phase int) float64 {
 		return mass / waterDensity
 	}
 	if phase == aqueous {
-		return m.litreOf(mass, water)
+		return m.volumeOf(mass, water)
 	}
-	return m.litreOf(mass, 0)
+	return m.volumeOf(mass, 0)
 }
 
 // vent lets the gas of a place go and notes its volume at 20 °C.
@@ -213,9 +213,22 @@ func (r *reporter) end(w *Workspace) {
 		r.step.GasOf += name
 	}
 	if r.step.Gas > 0 {
+		r.step.Derivations = append(r.step.Derivations, deriveGas(r.step))
 		w.say("%.3g L of %s at 20 °C: %.4g mol · R · T / p", r.step.Gas.Litres(), r.step.GasOf, float64(r.step.Gas)/gasVolume)
 	}
 }
 
 // dosed notes that the step adds something at a rate that cooling limits.
 func (r *reporter) dosed(w *Workspace) { r.dosing = append(r.dosing, w.step.N) }
+
+func deriveGas(s *StepReport) chem.Derivation {
+	n := float64(s.Gas) / gasVolume
+	return chem.Derivation{
+		Of: "gas given off", Formula: "V = n · R · T / p",
+		Inserted: fmt.Sprintf("%.5g mol · 8.314 J/(mol K) · 293.15 K / 101.325 kPa = %.5g L", n, s.Gas.Litres()),
+		Inputs: []chem.Input{
+			{Symbol: "n", Name: s.GasOf, Value: n, Unit: "mol", Source: "balance of the step"},
+		},
+		Value: s.Gas.Litres(), Unit: "L", Range: "20 °C, 101.325 kPa, ideal; what stays dissolved isn't taken off", Source: "METHODS d",
+	}
+}

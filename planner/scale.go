@@ -74,3 +74,23 @@ func (p *Program) deriveScale(target chem.Mass, n, planned float64, certainty ch
 		Value: n, Unit: "mol", Source: "METHODS a",
 	}
 }
+
+// scaleFindings says how the run stands to what the recipe has been proven at.
+func (r *reporter) scaleFindings(w *Workspace) {
+	recipe := r.p.Recipe
+	warn := w.policy.scaleWarn
+	if recipe.ProvenScale <= 0 {
+		r.walk.Findings = append(r.walk.Findings, Finding{Kind: "scale-not-proven", Severity: Note,
+			Text: fmt.Sprintf("version %s of the recipe has no proven scale", recipe.Version), Would: "run it small first and write the close-out"})
+		return
+	}
+	factor := w.limiting / float64(recipe.ProvenScale)
+	if factor <= warn {
+		return
+	}
+	r.walk.Findings = append(r.walk.Findings, Finding{
+		Kind: "scale-beyond-proven", Severity: Warning,
+		Text:  fmt.Sprintf("%.3g mol in a batch is %.2g times the proven scale of %.3g mol (%d runs); more than %.3g times asks for a review", w.limiting, factor, float64(recipe.ProvenScale), recipe.ProvenRuns, warn),
+		Would: fmt.Sprintf("%.0f batches stay within it", math.Ceil(w.limiting*w.batches/(warn*float64(recipe.ProvenScale)))),
+	})
+}

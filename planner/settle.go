@@ -180,7 +180,7 @@ func (w *Workspace) mainOrganic(v int) int {
 		if n <= 0 || m.home != organic {
 			continue
 		}
-		if x := m.litreOf(n*m.molar, 0); x > most {
+		if x := m.volumeOf(n*m.molar, 0); x > most {
 			best, most = c, x
 		}
 	}

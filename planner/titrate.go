@@ -102,7 +102,7 @@ func (w *Workspace) baseFor(t titration, v int, pH, stays float64) float64 {
 
 // carbonicKept is the carbonic acid in all its forms that stays in the water.
 func (w *Workspace) carbonicKept(volume, pH, stays float64) float64 {
-	k := w.carbonicIndex()
+	k := w.p.carbonic
 	if k < 0 {
 		return 0
 	}
@@ -112,14 +112,12 @@ func (w *Workspace) carbonicKept(volume, pH, stays float64) float64 {
 }
 
 func (w *Workspace) carbonicCharge(carbonic, volume, pH, stays float64) float64 {
-	k := w.carbonicIndex()
+	k := w.p.carbonic
 	if k < 0 || carbonic == 0 {
 		return 0
 	}
 	return math.Min(carbonic, w.carbonicKept(volume, pH, stays)) * anionCharge(w.p.acids[k].pKa, pH)
 }
-
-func (w *Workspace) carbonicIndex() int { return w.p.carbonic }
 
 // pH returns that of the aqueous phase of a place; known is false where there is
 // none or nothing in it is an electrolyte.
@@ -165,14 +163,4 @@ func (p *Program) metalIndex(cation string) int {
 		}
 	}
 	return -1
-}
-
-// sayPH says the pH that came out.
-func (w *Workspace) sayPH(v int) {
-	if w.report == nil {
-		return
-	}
-	if pH, ok := w.pH(v); ok {
-		w.say("pH %.1f", pH)
-	}
 }

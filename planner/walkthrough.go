@@ -2,7 +2,6 @@ package planner
 
 import (
 	"cmp"
-	"errors"
 	"fmt"
 	"math"
 	"slices"
@@ -93,6 +92,7 @@ func (r *reporter) finish(w *Workspace) *Walk {
 	walk.Product = r.product(w)
 	walk.Flow = r.flowList()
 	walk.Findings = append(walk.Findings, r.p.notes...)
+	r.scaleFindings(w)
 	r.chooseWare(w)
 	for i := range walk.Steps {
 		walk.Time += walk.Steps[i].Time
@@ -223,13 +223,4 @@ func (w *Workspace) elementName(k int) string {
 		return "mass"
 	}
 	return "charge"
-}
-
-// IsStep returns the *StepError in err, or nil.
-func IsStep(err error) *StepError {
-	var step *StepError
-	if errors.As(err, &step) {
-		return step
-	}
-	return nil
 }

@@ -18,10 +18,26 @@ import (
 type use struct {
 	vessel      int
 	first, last int     // step numbers
-	most        float64 // m3 at its fullest
+	most        float64 // m3 when it needs the largest ware
 	step        int     // when that is
-	limit       float64
-	piece       int // index in the equipment; -1 for none
+	limit       float64 // fill limit then
+	limitKey    string
+	need        float64 // nominal volume that keeps every limit, in m3
+	piece       int     // index in the equipment; -1 for none
+}
+
+// limitKey names the policy row whose fill limit holds for a vessel in a step:
+// that of the ware, or of a still or an evaporator while it is one.
+func (r *reporter) limitKey(s *compiledStep, v int) string {
+	if v == s.vessel {
+		switch s.Do {
+		case "strip":
+			return "fill.evaporator"
+		case "distil", "co-distil", "boil-down":
+			return "fill.still"
+		}
+	}
+	return "fill." + strings.ReplaceAll(r.p.Recipe.Vessels[v].Ware, " ", "-")
 }
 
 // uses gathers the peaks of a walk by vessel, in order of first use.
@@ -29,7 +45,6 @@ func (r *reporter) uses(policy inventory.Policy) []use {
 	list := make([]use, r.p.vessels)
 	for i := range list {
 		list[i] = use{vessel: i, piece: -1}
-		list[i].limit, _ = policy.Value("fill." + strings.ReplaceAll(r.p.Recipe.Vessels[i].Ware, " ", "-"))
 	}
 	for _, k := range r.peaks {
 		u := &list[k.vessel]
@@ -37,8 +52,13 @@ func (r *reporter) uses(policy inventory.Policy) []use {
 			u.first = k.step
 		}
 		u.last = k.step
-		if k.volume > u.most {
-			u.most, u.step = k.volume, k.step
+		limit, _ := policy.Value(k.limit)
+		if limit <= 0 || u.limitKey != "" && u.limit <= 0 {
+			u.limit, u.limitKey, u.step = 0, k.limit, k.step
+			continue
+		}
+		if need := k.volume / limit; need > u.need || u.limitKey == "" {
+			u.need, u.most, u.step, u.limit, u.limitKey = need, k.volume, k.step, limit, k.limit
 		}
 	}
 	list = slices.DeleteFunc(list, func(u use) bool { return u.first == 0 })
@@ -61,7 +81,7 @@ func (r *reporter) chooseWare(w *Workspace) {
 	}
 	for i := range r.walk.Steps {
 		s := &r.walk.Steps[i]
-		r.describeWare(s, r.p.steps[i].vessel, byVessel, w.conditions.Equipment)
+		r.describeWare(s, r.p.steps[i].vessel, byVessel, w.conditions.Equipment, w.conditions.Policy)
 		r.coolingOf(s, w)
 	}
 }
@@ -75,7 +95,7 @@ func (r *reporter) pick(u *use, earlier []use, owned []inventory.Equipment) {
 	}
 	kind := r.p.Recipe.Vessels[u.vessel].Ware
 	for i, e := range owned {
-		if e.Kind != kind || float64(e.Size)*1e-9*u.limit < u.most {
+		if e.Kind != kind || float64(e.Size)*1e-9 < u.need {
 			continue
 		}
 		taken := 0
@@ -101,7 +121,7 @@ func (r *reporter) tooSmall(u *use, owned []inventory.Equipment) Finding {
 	if u.limit <= 0 {
 		f.Kind, f.Severity = "no-fill-limit", Warning
 		f.Text = fmt.Sprintf("the policy has no fill limit for a %s, so that none was picked for %s", vessel.Ware, vessel.Name)
-		f.Would = fmt.Sprintf("add the policy row fill.%s", strings.ReplaceAll(vessel.Ware, " ", "-"))
+		f.Would = "add the policy row " + u.limitKey
 		return f
 	}
 	largest := 0.0
@@ -110,7 +130,7 @@ func (r *reporter) tooSmall(u *use, owned []inventory.Equipment) Finding {
 			largest = math.Max(largest, float64(e.Size)*1e-9)
 		}
 	}
-	need := u.most / u.limit
+	need := u.need
 	f.Text = fmt.Sprintf("%s holds %.3g L in step %d and needs a %s of %.3g L at a fill limit of %.0f %%", vessel.Name, u.most*1e3, u.step, vessel.Ware, need*1e3, 100*u.limit)
 	switch {
 	case largest == 0:
@@ -124,22 +144,37 @@ func (r *reporter) tooSmall(u *use, owned []inventory.Equipment) Finding {
 	return f
 }
 
-func (r *reporter) describeWare(s *StepReport, vessel int, byVessel map[int]use, owned []inventory.Equipment) {
+func (r *reporter) describeWare(s *StepReport, vessel int, byVessel map[int]use, owned []inventory.Equipment, policy inventory.Policy) {
 	u, used := byVessel[vessel]
 	note := r.p.Recipe.Vessels[vessel]
-	s.Vessel = VesselReport{Name: note.Name, Kind: note.Ware, Limit: chem.Fraction(u.limit)}
+	s.Vessel = VesselReport{Name: note.Name, Kind: note.Ware}
+	volume := 0.0
+	for _, k := range r.peaks {
+		if k.step == s.N && k.vessel == vessel {
+			volume = math.Max(volume, k.volume)
+			limit, _ := policy.Value(k.limit)
+			s.Vessel.Limit = chem.Fraction(limit)
+		}
+	}
 	if !used || u.piece < 0 {
 		return
 	}
 	e := owned[u.piece]
 	s.Vessel.Ware, s.Vessel.Size, s.Vessel.Fits = e.Name, chem.Volume(float64(e.Size)*1e-9), true
-	volume := 0.0
-	for _, k := range r.peaks {
-		if k.step == s.N && k.vessel == vessel {
-			volume = math.Max(volume, k.volume)
-		}
-	}
 	s.Vessel.Fill = chem.Fraction(volume) / chem.Fraction(s.Vessel.Size)
+	s.Derivations = append(s.Derivations, deriveFill(s, volume))
+}
+
+func deriveFill(s *StepReport, volume float64) chem.Derivation {
+	return chem.Derivation{
+		Of: "fill of " + s.Vessel.Name, Formula: "φ = V(contents) / V(nominal)",
+		Inserted: fmt.Sprintf("%.5g mL / %.5g mL = %.3g", volume*1e6, s.Vessel.Size.Millilitres(), float64(s.Vessel.Fill)),
+		Inputs: []chem.Input{
+			{Symbol: "V(contents)", Name: "all that is in it at the fullest moment of the step, but gas", Value: volume * 1e6, Unit: "mL", Source: "contents of the vessel"},
+			{Symbol: "V(nominal)", Name: s.Vessel.Ware, Value: s.Vessel.Size.Millilitres(), Unit: "mL", Source: "equipment of the lab, the smallest that keeps the limits from its first step to its last"},
+		},
+		Value: float64(s.Vessel.Fill), Range: fmt.Sprintf("limit %.3g", float64(s.Vessel.Limit)), Source: "METHODS m",
+	}
 }
 
 // coolingOf works out the shortest time of a dosed addition: the heat over what

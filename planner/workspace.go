@@ -53,8 +53,8 @@ type stockOf struct {
 
 // policyFigures are the rows of the policy that the walk reads on its way.
 type policyFigures struct {
-	heatU, heatGap, iceSpare, stillLeave float64
-	emulsionExtra, emulsionChance        float64
+	heatU, heatGap, iceSpare, stillLeave     float64
+	emulsionExtra, emulsionChance, scaleWarn float64
 }
 
 // Workspace makes a workspace for walking p under conditions.
@@ -210,10 +210,10 @@ func (w *Workspace) volume(v, phase int) float64 {
 		}
 		m := &w.p.matter[c]
 		if phase == aqueous {
-			sum += m.litreOf(n*m.molar, water)
+			sum += m.volumeOf(n*m.molar, water)
 			continue
 		}
-		sum += m.litreOf(n*m.molar, 0)
+		sum += m.volumeOf(n*m.molar, 0)
 	}
 	return sum
 }
