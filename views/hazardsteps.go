@@ -12,7 +12,7 @@ import (
 // assess goes through the run step by step.
 func (h *hazardSheet) assess() {
 	h.heading("Assess: step by step", 50)
-	h.paragraph("", textLeft, h.right-textLeft, "Codes are those of the mixture in the vessel at its fullest moment, each layer by itself. Physical hazards of mixtures need a test that nobody made: they are taken from the worst ingredient.")
+	h.paragraph("", textLeft, h.right-textLeft, "Codes are those of the mixture in the vessel at its fullest moment, each layer by itself. Physical hazards of mixtures need a test that nobody made: they are taken from the worst ingredient. A step without the line “what if” was not assessed beyond the stop order on page 1.")
 	h.y += 2
 	said := map[string]int{}
 	for i, s := range h.plan.Steps {
@@ -36,32 +36,50 @@ func (h *hazardSheet) step(s planner.StepReport, said map[string]int) {
 	texts := []styledText{{"B", s.Name}, {"", stepNumbers(s)}}
 	var vessel []string
 	for _, n := range h.plan.Hazards {
-		if n.At == s.Name && !n.Formed {
+		if n.At == s.Name && !n.Formed && s.Do != "discard" {
 			vessel = append(vessel, vesselText(n))
 		}
 	}
-	for _, text := range once(said, s.N, "contents", vessel) {
+	contents := once(said, s.N, "contents", vessel)
+	if s.Do == "discard" {
+		contents = []string{"Goes to waste: see “Prepare: waste”."}
+	}
+	for _, text := range contents {
 		texts = append(texts, styledText{"", text})
 	}
+	failures := once(said, s.N, "", whatIf(s))
+	// A step that brings nothing new is short: no signs, no line for controls.
+	brief := len(s.Cautions) == 0 && len(failures) == 0 && !slices.Equal(contents, vessel)
+	if brief {
+		pictograms, obstacle = nil, 0
+	}
 	lines := h.flow(texts, obstacle, pictogramSide+1)
-	h.room(min(float64(len(lines))*lineHeight+20, h.bottom-60))
+	height := float64(len(lines)) * lineHeight
+	if !brief {
+		height = max(height, pictogramSide) + float64(len(s.Cautions)+len(failures))*lineHeight + 15
+	}
+	h.room(min(height, h.bottom-60))
 	for i, code := range pictograms {
 		h.drawPictogram(code, h.right-float64(len(pictograms)-i)*(pictogramSide+1), h.y, pictogramSide)
 	}
 	h.putRight(family, "B", 13, textLeft-4, h.y-0.5, fmt.Sprint(s.N))
-	h.writeLines(lines, pictogramSide)
+	least := pictogramSide
+	if len(pictograms) == 0 {
+		least = 0
+	}
+	h.writeLines(lines, least)
 	for _, c := range s.Cautions {
 		h.labelledIn("caution", sentence(c), "B")
-	}
-	failures := once(said, s.N, "", whatIf(s))
-	if len(failures) == 0 {
-		failures = []string{"Not assessed beyond the stop order on page 1."}
 	}
 	for _, w := range failures {
 		h.labelledIn("what if", w, "")
 	}
 	if s.HoldPoint {
 		h.labelledIn("hold", "may stop here: "+orNotAssessed(s.HoldNote), "")
+	}
+	if brief {
+		h.y += 1.5
+		return
 	}
 	h.room(8)
 	h.y++
@@ -251,6 +269,9 @@ func (h *hazardSheet) minimise() {
 	for i := range lines {
 		lines[i] = sentence(lines[i])
 	}
+	h.room(3 * lineHeight)
+	h.put(family, "B", textSize, textLeft, h.y, "Precautionary statements of the substances used and formed")
+	h.y += lineHeight
 	h.paragraph("", textLeft, h.right-textLeft, strings.Join(lines, " "))
 }
 
@@ -284,7 +305,7 @@ func (h *hazardSheet) wasteLot(w planner.WasteLot) {
 	texts := []styledText{{"B", fmt.Sprintf("%s: %s, %s", w.Stream, volumeText(w.Volume), where)}}
 	stream, known := chem.WasteStreamNamed(w.Stream)
 	if known {
-		texts = append(texts, styledText{"", sentence(strings.Join(nonEmpty(stream.How, stream.Never, "codes that often apply: "+strings.Join(nonEmpty(stream.CodeUS, stream.CodeEU), ", ")), "; ") + "; defer to local law and the contractor")})
+		texts = append(texts, styledText{"", sentence(strings.Join(nonEmpty(stream.How, stream.Never, "codes that often apply: "+strings.ReplaceAll(strings.Join(nonEmpty(stream.CodeUS, stream.CodeEU), ", "), "<=", "≤ ")), "; ") + "; defer to local law and the contractor")})
 	} else {
 		texts = append(texts, styledText{"", "No rule on record for this stream: not assessed."})
 	}
