@@ -1,6 +1,7 @@
 // Package static holds the files that pages load: htmx 2.0.11, the style
-// sheet, a small script for the focus, the typeface and the icon. They are part
-// of the program, so that nothing is ever loaded from elsewhere.
+// sheet, a small script for the focus, the typeface and the icon, with the
+// licences of what isn't ours. They are part of the program, so that nothing is
+// ever loaded from elsewhere.
 //
 // Every file has an address that carries a fingerprint of its content, and may
 // therefore be kept by a browser for a year; a changed file has a new address.
@@ -22,7 +23,7 @@ import (
 // Root is the path under which Handler serves the files.
 const Root = "/static/"
 
-//go:embed app.css app.js icon.svg htmx/htmx.min.js font/*.woff2 font/*.ttf
+//go:embed app.css app.js icon.svg htmx/* font/* font/*.ttf
 var files embed.FS
 
 // A file is what is sent for one address.
@@ -101,7 +102,7 @@ func kindOf(ext string) string {
 	case ".woff2":
 		return "font/woff2"
 	}
-	return "application/octet-stream"
+	return "text/plain; charset=utf-8" // the licences
 }
 
 // Address returns the address of an embedded file, such as "app.css", with the
