@@ -1,9 +1,7 @@
 package planner
 
 import (
-	"errors"
 	"fmt"
-	"math"
 	"slices"
 
 	"stillroom/chem"
@@ -152,9 +150,9 @@ func findingOf(walk *Walk, kind string) (Finding, bool) {
 func (p *planning) noVessel(f Finding) error {
 	e := &RequestError{Field: "target", Got: massText(p.req.Target), What: "no vessel fits: " + f.Text, Would: f.Would, Err: ErrNoVessel}
 	if most := p.largestThatFits(); most > 0 {
-		e.Would = fmt.Sprintf("at most %s fits in %d batch(es)", massText(most), max(1, p.req.Batches))
-		if n := math.Ceil(float64(p.req.Target / most)); n <= 1000 {
-			e.Would += fmt.Sprintf("; or ask for %.0f batches", n*float64(max(1, p.req.Batches)))
+		e.Would = fmt.Sprintf("at most %s fits in one batch, and %d are planned at the most without being asked for", massText(most), mostBatches)
+		if p.req.Batches > 0 {
+			e.Would = fmt.Sprintf("at most %s fits in %d batches", massText(most), p.req.Batches)
 		}
 	}
 	return e
@@ -242,17 +240,6 @@ func (p *planning) match() error {
 	return nil
 }
 
-// carried are the needs without what is drawn at a tank or a bin: that stays
-// where it is.
-func (p *planning) carried(needs []Need) []Need {
-	most := p.policy.value("prior.missing.most-size")
-	needs = slices.Clone(needs)
-	for i := range needs {
-		needs[i].Draws = slices.DeleteFunc(slices.Clone(needs[i].Draws), func(d Draw) bool { return standsStill(&d.Bottle, &d.Form, most) })
-	}
-	return needs
-}
-
 func (p *planning) relaxed(asks []Ask) []Ask {
 	if p.relax == nil {
 		return asks
@@ -272,17 +259,20 @@ func (p *planning) write() (*Plan, error) {
 		Steps:  p.walk.Steps, Flow: p.walk.Flow, Findings: append(p.found, p.walk.Findings...),
 	}
 	plan.Scale.Batches = p.batches
-	p.shortfalls(plan)
+	p.insertMakeUps(plan)
 	if p.light {
+		p.shortfalls(plan)
 		p.states(plan)
 		return plan, nil
 	}
+	sheets := p.startSheets(plan)
+	p.shortfalls(plan)
 	p.risk(plan)
 	p.states(plan)
 	plan.Findings = append(plan.Findings, p.scaleFindings(plan)...)
 	p.blends(plan)
-	p.insertMakeUps(plan)
-	p.sheets(plan)
+	sheets.finish(plan)
+	plan.Tools = measuringTools(p.shelf.Equipment)
 	p.budget(plan)
 	plan.Metrics = p.metrics(plan)
 	plan.Findings = append(plan.Findings, p.policy.findings()...)
@@ -332,32 +322,6 @@ func (p *planning) states(plan *Plan) {
 		}
 		plan.Needs = append(plan.Needs, c.need)
 		plan.Verdict = max(plan.Verdict, c.need.State)
-	}
-}
-
-// sheets adds what the papers need: waste, hazards, pairs and carriers.
-func (p *planning) sheets(plan *Plan) {
-	plan.Tools = measuringTools(p.shelf.Equipment)
-	plan.Waste = SortWaste(p.walk.Waste, p.shelf.Carboys, p.policy.value("fill.waste"))
-	plan.Hazards = NoteHazards(plan.Needs, plan.Steps, plan.Waste)
-	plan.Pairs = PairsOf(plan.Needs, plan.Steps)
-	for _, w := range plan.Waste {
-		if !w.Fits {
-			plan.Findings = append(plan.Findings, Finding{Kind: "no-room-for-waste", Severity: Warning,
-				Text:  fmt.Sprintf("no carboy takes %s of %s: %s", massText(w.Mass), w.Stream, firstOf(w.Note, "none is kept for that stream")),
-				Would: "empty or provide a carboy before the run; no work starts before its disposal is planned"})
-		}
-	}
-	carriers, err := CarriersFor(p.carried(plan.Needs), CarrierLimits{
-		MostMass: chem.Mass(p.policy.value("carrier.mass")), MostCount: int(p.policy.value("carrier.count")),
-	})
-	plan.Carriers = carriers
-	if err != nil {
-		severity, kind := Warning, "no-carriers"
-		if errors.Is(err, ErrCarriersNotProven) {
-			severity, kind = Note, "carriers-not-proven"
-		}
-		plan.Findings = append(plan.Findings, Finding{Kind: kind, Severity: severity, Text: err.Error()})
 	}
 }
 

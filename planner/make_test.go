@@ -283,6 +283,8 @@ func TestPlanRefusals(t *testing.T) {
 		{"no recipe", Request{Target: 1, On: onDay, Today: onDay}, ErrNoRecipe},
 		{"zero", Request{Recipe: recipe, On: onDay, Today: onDay}, ErrTarget},
 		{"negative", Request{Recipe: recipe, Target: -1, On: onDay, Today: onDay}, ErrTarget},
+		{"less than the ledger knows", Request{Recipe: recipe, Target: 1e-15, On: onDay, Today: onDay}, ErrTarget},
+		{"more than a laboratory makes", Request{Recipe: recipe, Target: 1e9, On: onDay, Today: onDay}, ErrTarget},
 		{"no number", Request{Recipe: recipe, Target: chem.Mass(math.NaN()), On: onDay, Today: onDay}, ErrTarget},
 		{"past", Request{Recipe: recipe, Target: 1, On: onDay - 1, Today: onDay}, ErrDate},
 		{"no date", Request{Recipe: recipe, Target: 1, Today: onDay}, ErrDate},

@@ -85,12 +85,12 @@ func (p *planning) insertMakeUps(plan *Plan) {
 		steps = append(steps, s)
 	}
 	plan.Steps = steps
-	renumber(plan, number)
+	p.renumber(plan, number)
 }
 
-func renumber(plan *Plan, number map[int]int) {
-	for i := range plan.Needs {
-		n := &plan.Needs[i]
+func (p *planning) renumber(plan *Plan, number map[int]int) {
+	for i := range p.covers {
+		n := &p.covers[i].need
 		n.Parts = slices.Clone(n.Parts)
 		for k := range n.Parts {
 			n.Parts[k].Step = number[n.Parts[k].Step]

@@ -139,7 +139,7 @@ type Need struct {
 	// ChanceShort is the chance that what was drawn doesn't suffice; negative means not assessed.
 	ChanceShort float64
 	ChanceError float64   // its standard error
-	CoverWith   chem.Mass // amount that brings the chance under the lab's limit
+	CoverWith   chem.Mass // further pure mass, found for sure, that brings the chance under the lab's limit; 0 if it is
 	State       State
 	Because     string         // why this state, in words
 	CoveredOn   inventory.Date // for Late: when cover arrives

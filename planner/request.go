@@ -41,6 +41,13 @@ func (e *RequestError) Error() string {
 // Unwrap returns the kind.
 func (e *RequestError) Unwrap() error { return e.Err }
 
+// The ledger's smallest unit, and far more than any laboratory makes: beyond
+// them the numbers of a walk-through lose their meaning.
+const (
+	leastTarget = 1 * chem.Microgram
+	mostTarget  = 1e6 * chem.Kilogram
+)
+
 // check refuses what no plan can be made of, before anything is computed.
 func (r *Request) check() error {
 	switch {
@@ -48,6 +55,9 @@ func (r *Request) check() error {
 		return &RequestError{Field: "recipe", What: "none given", Would: "name one of the recipes", Err: ErrNoRecipe}
 	case !chem.Finite(r.Target) || r.Target <= 0:
 		return &RequestError{Field: "target", Got: fmt.Sprintf("%g g", r.Target.Grams()), What: "must be more than 0",
+			Would: "give the mass of product wanted, such as 50 g", Err: ErrTarget}
+	case r.Target < leastTarget || r.Target > mostTarget:
+		return &RequestError{Field: "target", Got: fmt.Sprintf("%g g", r.Target.Grams()), What: "is no amount that could be weighed: less than a microgram or more than a million kilograms",
 			Would: "give the mass of product wanted, such as 50 g", Err: ErrTarget}
 	case !r.On.Set():
 		return &RequestError{Field: "on", What: "no date given", Would: "give the day of the run, such as " + r.Today.String(), Err: ErrDate}

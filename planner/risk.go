@@ -370,11 +370,7 @@ func (r *needRisk) bound() {
 			r.most += r.charges[k] * r.losses[k].extreme(true)
 		}
 	}
-	least := 0.0
-	for k := range r.bottles {
-		least += r.bottles[k].least()
-	}
-	r.certain = least > r.most
+	r.certain = r.sureWith(r.bottles)
 	r.cover.onlyFinding = r.certain
 	if len(r.bottles) == 1 && !r.certain {
 		r.safe = r.bottles[0].enoughAbove(r.most)
@@ -577,12 +573,24 @@ func (a *assessor) afterWeighing(r *needRisk, b int) float64 {
 	if bottles[b].doubtful {
 		bottles[b].content = a.weighed(&bottles[b])
 	}
+	onlyBetter := !bottles[b].doubtful || r.sureWith(bottles)
 	bad := 0
 	for i := range r.short {
-		others := int(a.run[i]) - b2i(r.short[i])
-		if others > 0 || r.shortOf(bottles, i) {
+		switch others := int(a.run[i]) - b2i(r.short[i]); {
+		case others > 0:
 			bad++
+		case r.short[i] || !onlyBetter:
+			bad += b2i(r.shortOf(bottles, i))
 		}
 	}
 	return float64(bad) / float64(a.n)
+}
+
+// sureWith reports whether bottles suffice whatever the draw, if each is found.
+func (r *needRisk) sureWith(bottles []bottleRisk) bool {
+	least := 0.0
+	for k := range bottles {
+		least += bottles[k].least()
+	}
+	return least > r.most
 }

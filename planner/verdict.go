@@ -2,6 +2,7 @@ package planner
 
 import (
 	"fmt"
+	"slices"
 	"strings"
 
 	"stillroom/chem"
@@ -87,14 +88,17 @@ func percent(p float64) string {
 func doubtOf(plan *Plan, covers []coverage) string {
 	for i := range covers {
 		c := &covers[i]
-		if c.need.Substance != plan.Risk.Decides || len(c.need.Draws) == 0 {
+		if !c.doubted(&plan.Risk) {
 			continue
+		}
+		if len(c.need.Draws) == 0 && !c.coming.covers {
+			return c.need.Substance
 		}
 		if c.coming.covers && c.alloc.short > 0 {
 			return "whether " + c.need.Substance + " comes in time: " + strings.TrimSuffix(c.coming.text, ",")
 		}
 		b := doubtfulBottle(&c.need, plan.Risk.WeighFirst)
-		if c.onlyFinding {
+		if c.onlyFinding || plan.Risk.LookOnly && b.Code == plan.Risk.WeighFirst {
 			return fmt.Sprintf("whether %s of %s is found, last seen in %s", b.Code, c.need.Substance, lastSeen(b))
 		}
 		return fmt.Sprintf("%s of %s, %s", b.Code, c.need.Substance, howMeasured(b))
@@ -103,6 +107,15 @@ func doubtOf(plan *Plan, covers []coverage) string {
 		return plan.Risk.Decides
 	}
 	return ""
+}
+
+// doubted reports whether a need is the one to speak of: the one with the
+// bottle that lowers the risk most, else the one that decides.
+func (c *coverage) doubted(r *Risk) bool {
+	if len(c.need.Draws) == 0 || r.WeighFirst == "" || r.WeighBefore-r.WeighAfter < worthWeighing {
+		return c.need.Substance == r.Decides
+	}
+	return slices.ContainsFunc(c.need.Draws, func(d Draw) bool { return d.Bottle.Code == r.WeighFirst })
 }
 
 // doubtfulBottle is the one to weigh if it is among the draws, else the one
