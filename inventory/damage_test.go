@@ -160,12 +160,12 @@ func TestTruncatedToNothingBesideItsLog(t *testing.T) {
 	}
 }
 
-// A flipped bit is found, or it hit nothing that counts: the ledger and every
-// bottle's amounts are then as they were.
+// A flipped bit is found, or it hit nothing that counts: the ledger and the
+// whole shelf are then as they were.
 func TestBitFlips(t *testing.T) {
 	data, entries, shelf := wholeFile(t)
 	random := rand.New(rand.NewPCG(7, 11))
-	flips, foundFlips := 150, 0
+	flips, foundFlips := 250, 0
 	if testing.Short() {
 		flips = 20
 	}
@@ -181,14 +181,11 @@ func TestBitFlips(t *testing.T) {
 		if !reflect.DeepEqual(gotEntries, entries) {
 			t.Errorf("bit %d of byte %d changed the ledger and wasn't found", bit, at)
 		}
-		if !reflect.DeepEqual(gotShelf, shelf) {
-			t.Logf("CHANGED %d", at)
+		for i := range gotShelf.Bottles {
+			gotShelf.Bottles[i].Version = shelf.Bottles[i].Version // only a count of changes, and not guarded
 		}
-		for i, b := range gotShelf.Bottles {
-			want := shelf.Bottles[i]
-			if b.Content != want.Content || b.Promised != want.Promised || b.Code != want.Code {
-				t.Errorf("bit %d of byte %d changed bottle %+v to %+v and wasn't found", bit, at, want, b)
-			}
+		if !reflect.DeepEqual(gotShelf, shelf) {
+			t.Errorf("bit %d of byte %d changed the shelf and wasn't found", bit, at)
 		}
 	}
 	t.Logf("%d of %d flips found", foundFlips, flips)
