@@ -22,6 +22,7 @@ type extractOp struct {
 	emulsion int
 	chance   int
 	loss     int
+	spread   int
 }
 
 // mostPortions is more extractions than anybody makes by hand.
@@ -68,7 +69,7 @@ func (o extractOp) compile(c *compiler) (runner, error) {
 	}
 	o.target = c.place[o.to]
 	o.emulsion = c.ask(o.dose.component, o.dose.accept, byLoad, "emulsion", false)
-	o.chance, o.loss = c.emulsion(), c.solventLoss()
+	o.chance, o.loss, o.spread = c.emulsion(), c.solventLoss(), c.partitionFactor(o.solute, o.dose.component)
 	return &o, nil
 }
 
@@ -83,7 +84,9 @@ func (o *extractOp) run(w *Workspace) error {
 		return w.refuse(ErrEmptyVessel, fmt.Sprintf("there is no %s in %s", w.p.matter[o.solute].name, w.p.places[v]), "set it free in an earlier step")
 	}
 	first := w.amountOf(&o.dose, v)
+	w.spread = w.value(o.spread)
 	done, err := o.shake(w, v, first, there)
+	w.spread = 1
 	if err != nil {
 		return err
 	}

@@ -76,7 +76,7 @@ func (o *washOp) run(w *Workspace) error {
 		w.spare(o.emulsion, d.component, o.chance, w.used[d.ask]/float64(o.times))
 	}
 	if w.report != nil && product > 0 {
-		w.say("%s take %.3g %% of the %s out of the layer", counted(o.times, "wash", "washes"), 100*(1-w.total(v, w.p.product)/product), w.p.matter[w.p.product].name)
+		w.say("%s: %.3g %% of the %s leaves the layer with it", counted(o.times, "wash", "washes"), 100*(1-w.total(v, w.p.product)/product), w.p.matter[w.p.product].name)
 	}
 	return nil
 }

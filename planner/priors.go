@@ -102,6 +102,23 @@ func (c *compiler) solventLoss() int {
 	})
 }
 
+// Relative spreads of partition coefficients, common practice: measured ones
+// differ from paper to paper by a tenth, computed or estimated ones by a third.
+const (
+	spreadMeasured  = 0.10
+	spreadEstimated = 0.33
+)
+
+// partitionFactor enters by how much the partition coefficients of an
+// extraction differ from their values.
+func (c *compiler) partitionFactor(solute, solvent int) int {
+	spread := spreadEstimated
+	if p, err := chem.PartitionOf(c.p.matter[solute].cas, c.p.matter[solvent].cas); err == nil && p.Measured {
+		spread = spreadMeasured
+	}
+	return c.factor("partition", 1, func(*policyTable) (chem.Dist, error) { return chem.NewLogNormal(1, spread) })
+}
+
 // caughtFactor enters the share of a stripped solvent that is caught: 80 to
 // 95 % (common practice; for the waste only).
 func (c *compiler) caughtFactor() int {

@@ -106,8 +106,8 @@ func TestMeanOfDrawsIsTheWalk(t *testing.T) {
 	}
 }
 
-// A stored seed gives the same draws bit for bit, however many goroutines there
-// are; the sum below was computed on amd64 and has to be the same elsewhere.
+// A stored seed gives the same draws bit for bit, however many draws and
+// goroutines there are.
 func TestSeedReproduces(t *testing.T) {
 	p := mustCompile(t, "pentanoic-acid-dichromate")
 	a, _, _ := drawAll(p, labConditions(0.8), 500, 1851)

@@ -262,7 +262,7 @@ func (w *Workspace) distribute(v, main int) {
 		if math.IsNaN(p) {
 			continue // stays where it belongs; noted when the program was made
 		}
-		p /= w.saltedOut(v, c)
+		p *= w.spread / w.saltedOut(v, c)
 		share := p * orgVolume / (p*orgVolume + aqVolume)
 		org[c] = n * share
 		aq[c] = n - org[c]

@@ -35,6 +35,7 @@ type Workspace struct {
 	report     *reporter // nil in the fast walk
 	heat       float64   // given off in this step, J
 	balance    float64   // worst relative error so far
+	spread     float64   // by how much partition coefficients differ from their values in this step
 	arriving   float64   // product that arrives at its isolation, mol
 	isolated   float64
 	conditions Conditions
@@ -101,7 +102,7 @@ func (w *Workspace) reset() {
 	for i := range w.celsius {
 		w.celsius[i] = roomCelsius
 	}
-	w.balance, w.arriving, w.isolated = 0, 0, 0
+	w.balance, w.arriving, w.isolated, w.spread = 0, 0, 0, 1
 }
 
 // roomCelsius is the temperature of the bench at which every vessel starts.
