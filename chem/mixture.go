@@ -78,8 +78,33 @@ type Reason struct {
 	Rule  string // identity of the rule in the table of mixture rules
 	Value float64
 	Limit float64
-	Unit  string // "% weighted", "sum C/L", "mg/kg", …
-	Text  string
+	Unit  string // "% weighted", "sum C/L", "%", "pH", or that of an acute toxicity estimate
+	Who   string // the ingredient, where a single one decides
+}
+
+// Text writes the reason as words with its numbers.
+func (r Reason) Text() string {
+	reached := "at least"
+	if strings.HasPrefix(r.Class, "not ") {
+		reached = "below"
+	}
+	switch {
+	case r.Rule == "EY-011":
+		return "implied by Skin Corr. 1"
+	case r.Unit == "pH":
+		return fmt.Sprintf("pH %.1f of the mixture; its acid or alkaline reserve was not looked at", r.Value)
+	case r.Unit == "sum C/L":
+		return fmt.Sprintf("sum of shares over limits %.3g, %s %g", r.Value, reached, r.Limit)
+	case r.Unit == "% weighted":
+		return fmt.Sprintf("weighted sum %.3g %%, %s %g", r.Value, reached, r.Limit)
+	case r.Unit == "%" && r.Who == "":
+		return fmt.Sprintf("sum %.3g %%, %s %g %%", r.Value, reached, r.Limit)
+	case r.Unit == "%":
+		return fmt.Sprintf("%s at %.3g %%, limit %g %%", r.Who, r.Value, r.Limit)
+	case reached == "below":
+		return fmt.Sprintf("ATE of the mixture %.4g %s, above the last category", r.Value, r.Unit)
+	}
+	return fmt.Sprintf("ATE of the mixture %.4g %s, at most %g", r.Value, r.Unit, r.Limit)
 }
 
 // ClassifyMixture classifies a mixture by the rules of UN GHS as the European

@@ -1,7 +1,6 @@
 package chem
 
 import (
-	"fmt"
 	"strings"
 )
 
@@ -162,11 +161,9 @@ func (m *mixture) acuteCategory(route string, ate float64) {
 		if category == "5" && m.options.System != UNGHS {
 			break
 		}
-		m.reason(Reason{Class: r.result + " " + route, Rule: r.id, Value: ate, Limit: r.high, Unit: unit,
-			Text: fmt.Sprintf("ATE of the mixture %.4g %s, at most %g", ate, unit, r.high)})
+		m.reason(Reason{Class: r.result + " " + route, Rule: r.id, Value: ate, Limit: r.high, Unit: unit})
 		m.give(HazardClass{Name: "Acute Tox.", Category: category, Code: acuteCode(route, category)})
 		return
 	}
-	m.reason(Reason{Class: "not Acute Tox. " + route, Rule: "AT-051", Value: ate, Unit: unit,
-		Text: fmt.Sprintf("ATE of the mixture %.4g %s, above the last category", ate, unit)})
+	m.reason(Reason{Class: "not Acute Tox. " + route, Rule: "AT-051", Value: ate, Unit: unit})
 }

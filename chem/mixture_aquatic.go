@@ -1,7 +1,6 @@
 package chem
 
 import (
-	"fmt"
 	"strings"
 )
 
@@ -82,12 +81,10 @@ func (m *mixture) aquaticStep(name, category, code, rule string, sum float64) bo
 		return false
 	}
 	if !atLeast(sum, limit) {
-		m.reason(Reason{Class: "not " + name + " " + category, Rule: rule, Value: sum, Limit: limit, Unit: "% weighted",
-			Text: fmt.Sprintf("weighted sum %.3g %%, below %g", sum, limit)})
+		m.reason(Reason{Class: "not " + name + " " + category, Rule: rule, Value: sum, Limit: limit, Unit: "% weighted"})
 		return false
 	}
-	m.reason(Reason{Class: name + " " + category, Rule: rule, Value: sum, Limit: limit, Unit: "% weighted",
-		Text: fmt.Sprintf("weighted sum %.3g %%, at least %g", sum, limit)})
+	m.reason(Reason{Class: name + " " + category, Rule: rule, Value: sum, Limit: limit, Unit: "% weighted"})
 	m.give(HazardClass{Name: name, Category: category, Code: code})
 	return true
 }

@@ -1,7 +1,6 @@
 package chem
 
 import (
-	"fmt"
 	"slices"
 	"strings"
 )
@@ -25,8 +24,7 @@ func (m *mixture) singles() {
 			if c.Category == "" { // Annex VI leaves a lone category 1 out in places
 				c.Category = p.categoryOf(c.Name)
 			}
-			m.reason(Reason{Class: c.String(), Rule: "GE-003", Value: p.limited, Limit: l.low, Unit: "%",
-				Text: fmt.Sprintf("%s at %.3g %%, specific limit %g %%", p.Name, p.limited, l.low)})
+			m.reason(Reason{Class: c.String(), Rule: "GE-003", Value: p.limited, Limit: l.low, Unit: "%", Who: p.Name})
 			m.give(c)
 		}
 		for _, c := range p.classes {
@@ -62,8 +60,7 @@ func (m *mixture) generic(p mixPart, c HazardClass) {
 		if r.result != r.ingredient {
 			given = HazardClass{Name: c.Name, Category: r.result[len(r.result)-1:], Code: lowerCode(c.Code)}
 		}
-		m.reason(Reason{Class: given.String(), Rule: r.id, Value: p.percent, Limit: r.low, Unit: "%",
-			Text: fmt.Sprintf("%s at %.3g %%, limit %g %%", p.Name, p.percent, r.low)})
+		m.reason(Reason{Class: given.String(), Rule: r.id, Value: p.percent, Limit: r.low, Unit: "%", Who: p.Name})
 		m.give(given)
 	}
 }
@@ -118,8 +115,7 @@ func (m *mixture) effect(code, rule string) {
 		m.note("STOT SE 3 H335 left out: the corrosive effect covers it (guidance 3.8.2.5)")
 		return
 	}
-	m.reason(Reason{Class: "STOT SE 3 " + code, Rule: rule, Value: sum, Limit: 1, Unit: "sum C/L",
-		Text: fmt.Sprintf("sum of shares over limits %.3g, at least 1", sum)})
+	m.reason(Reason{Class: "STOT SE 3 " + code, Rule: rule, Value: sum, Limit: 1, Unit: "sum C/L"})
 	m.give(HazardClass{Name: "STOT SE", Category: "3", Code: code})
 }
 
@@ -143,12 +139,10 @@ func (m *mixture) aspiration() {
 		return
 	}
 	if !atLeast(sum, limit) {
-		m.reason(Reason{Class: "not Asp. Tox. 1", Rule: "AS-002", Value: sum, Limit: limit, Unit: "%",
-			Text: fmt.Sprintf("sum %.3g %%, below %g %%", sum, limit)})
+		m.reason(Reason{Class: "not Asp. Tox. 1", Rule: "AS-002", Value: sum, Limit: limit, Unit: "%"})
 		return
 	}
 	m.note("Asp. Tox. 1: the viscosity of the mixture is not known and taken as low")
-	m.reason(Reason{Class: "Asp. Tox. 1", Rule: "AS-002", Value: sum, Limit: limit, Unit: "%",
-		Text: fmt.Sprintf("sum %.3g %%, at least %g %%; viscosity not known", sum, limit)})
+	m.reason(Reason{Class: "Asp. Tox. 1", Rule: "AS-002", Value: sum, Limit: limit, Unit: "%"})
 	m.give(HazardClass{Name: "Asp. Tox.", Category: "1", Code: "H304"})
 }

@@ -21,13 +21,11 @@ func (m *mixture) skin() {
 			continue
 		}
 		if atLeast(sum, 1) {
-			m.reason(Reason{Class: "Skin Corr. " + level.category, Rule: level.rule, Value: sum, Limit: 1, Unit: "sum C/L",
-				Text: fmt.Sprintf("sum of shares over limits %.3g, at least 1", sum)})
+			m.reason(Reason{Class: "Skin Corr. " + level.category, Rule: level.rule, Value: sum, Limit: 1, Unit: "sum C/L"})
 			m.giveCorrosion(level.category)
 			return
 		}
-		m.reason(Reason{Class: "not Skin Corr. " + level.category, Rule: level.rule, Value: sum, Limit: 1, Unit: "sum C/L",
-			Text: fmt.Sprintf("sum of shares over limits %.3g, below 1", sum)})
+		m.reason(Reason{Class: "not Skin Corr. " + level.category, Rule: level.rule, Value: sum, Limit: 1, Unit: "sum C/L"})
 	}
 	if !m.has("Skin Corr.", "") {
 		m.skinIrritation()
@@ -60,12 +58,10 @@ func (m *mixture) skinIrritation() {
 		return
 	}
 	if !atLeast(sum, weight) {
-		m.reason(Reason{Class: "not Skin Irrit. 2", Rule: "SK-006", Value: sum, Limit: weight, Unit: "% weighted",
-			Text: fmt.Sprintf("weighted sum %.3g %%, below %g", sum, weight)})
+		m.reason(Reason{Class: "not Skin Irrit. 2", Rule: "SK-006", Value: sum, Limit: weight, Unit: "% weighted"})
 		return
 	}
-	m.reason(Reason{Class: "Skin Irrit. 2", Rule: "SK-006", Value: sum, Limit: weight, Unit: "% weighted",
-		Text: fmt.Sprintf("weighted sum %.3g %%, at least %g", sum, weight)})
+	m.reason(Reason{Class: "Skin Irrit. 2", Rule: "SK-006", Value: sum, Limit: weight, Unit: "% weighted"})
 	m.give(HazardClass{Name: "Skin Irrit.", Category: "2", Code: "H315"})
 }
 
@@ -127,8 +123,7 @@ func extremePH(pH float64) bool { return pH <= 2 || pH >= 11.5 }
 // extreme pH at 1 % or more.
 func (m *mixture) extremePH() {
 	if m.options.HasPH && extremePH(m.options.PH) {
-		m.reason(Reason{Class: "Skin Corr. 1", Rule: "SK-002", Value: m.options.PH, Unit: "pH",
-			Text: fmt.Sprintf("pH %.1f of the mixture; its acid or alkaline reserve was not looked at", m.options.PH)})
+		m.reason(Reason{Class: "Skin Corr. 1", Rule: "SK-002", Value: m.options.PH, Unit: "pH"})
 		m.give(HazardClass{Name: "Skin Corr.", Category: "1", Code: "H314"})
 		m.give(HazardClass{Name: "Eye Dam.", Category: "1", Code: "H318"})
 	}
@@ -141,8 +136,7 @@ func (m *mixture) extremePH() {
 		if p.PH > 7 {
 			rule = "SK-011"
 		}
-		m.reason(Reason{Class: "Skin Corr. 1", Rule: rule, Value: p.percent, Limit: ruleLimit(rule), Unit: "%",
-			Text: fmt.Sprintf("%s of pH %.1f at %.3g %%: additivity doesn't apply", p.Name, p.PH, p.percent)})
+		m.reason(Reason{Class: "Skin Corr. 1", Rule: rule, Value: p.percent, Limit: ruleLimit(rule), Unit: "%", Who: fmt.Sprintf("%s of pH %.1f, whose corrosion does not add,", p.Name, p.PH)})
 		m.give(HazardClass{Name: "Skin Corr.", Category: "1", Code: "H314"})
 	}
 }
@@ -152,7 +146,7 @@ func (m *mixture) extremePH() {
 // corrosive to skin is Eye Dam. 1 without more (3.3.2).
 func (m *mixture) eye() {
 	if m.has("Skin Corr.", "") {
-		m.reason(Reason{Class: "Eye Dam. 1", Rule: "EY-011", Text: "implied by Skin Corr. 1"})
+		m.reason(Reason{Class: "Eye Dam. 1", Rule: "EY-011"})
 		m.give(HazardClass{Name: "Eye Dam.", Category: "1", Code: "H318"})
 		return
 	}
@@ -167,12 +161,10 @@ func (m *mixture) eye() {
 	}
 	switch {
 	case atLeast(damage, 1):
-		m.reason(Reason{Class: "Eye Dam. 1", Rule: "EY-003", Value: damage, Limit: 1, Unit: "sum C/L",
-			Text: fmt.Sprintf("sum of shares over limits %.3g, at least 1", damage)})
+		m.reason(Reason{Class: "Eye Dam. 1", Rule: "EY-003", Value: damage, Limit: 1, Unit: "sum C/L"})
 		m.give(HazardClass{Name: "Eye Dam.", Category: "1", Code: "H318"})
 	case atLeast(irritation, weight):
-		m.reason(Reason{Class: "Eye Irrit. 2", Rule: "EY-006", Value: irritation, Limit: weight, Unit: "% weighted",
-			Text: fmt.Sprintf("weighted sum %.3g %%, at least %g", irritation, weight)})
+		m.reason(Reason{Class: "Eye Irrit. 2", Rule: "EY-006", Value: irritation, Limit: weight, Unit: "% weighted"})
 		m.give(HazardClass{Name: "Eye Irrit.", Category: "2", Code: "H319"})
 	}
 }

@@ -72,8 +72,8 @@ func classifyAnswer(got chem.Classification, ingredients []chem.Ingredient) Answ
 	}
 	var inserted []string
 	for _, r := range got.Reasons {
-		answer.Results = append(answer.Results, Result{Name: r.Class, IsText: true, Text: r.Text + " (" + r.Rule + ")"})
-		inserted = append(inserted, r.Class+": "+r.Text)
+		answer.Results = append(answer.Results, Result{Name: r.Class, IsText: true, Text: r.Text() + " (" + r.Rule + ")"})
+		inserted = append(inserted, r.Class+": "+r.Text())
 	}
 	answer.Notes = append(answer.Notes, "a calculation from records; tests on the mixture, expert judgement and local law go first")
 	answer.Derivation = chem.Derivation{Of: "classification of the mixture", Formula: "Σ C/L ≥ 1; 100 / ATE = Σ C/ATE; Σ C·M ≥ 25 %",
