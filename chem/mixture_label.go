@@ -127,48 +127,84 @@ func appendNew(list []string, items ...string) []string {
 // covered reports a statement that another one says already: H314 covers H318,
 // H410 covers H400 (rules LB-007 to LB-009).
 func covered(c HazardClass, classes []HazardClass) bool {
-	over := map[string][]string{"H318": {"H314"}, "H400": {"H410"}, "H401": {"H410", "H411"}}[c.Code]
-	return slices.ContainsFunc(classes, func(other HazardClass) bool { return slices.Contains(over, other.Code) })
+	switch c.Code {
+	case "H318":
+		return hasCode(classes, "H314")
+	case "H400":
+		return hasCode(classes, "H410")
+	case "H401":
+		return hasCode(classes, "H410") || hasCode(classes, "H411")
+	}
+	return false
 }
+
+func hasCode(classes []HazardClass, code string) bool {
+	for _, c := range classes {
+		if c.Code == code {
+			return true
+		}
+	}
+	return false
+}
+
+// pictogramCodes are the nine of the standard, in order.
+var pictogramCodes = [...]string{"GHS01", "GHS02", "GHS03", "GHS04", "GHS05", "GHS06", "GHS07", "GHS08", "GHS09"}
+
+// Positions in pictogramCodes.
+const (
+	corrosion   = 4
+	skull       = 5
+	exclamation = 6
+)
 
 // pictogramsOf applies rules LB-003 to LB-005: GHS07 stays only if a class asks
 // for it that no graver pictogram covers. Pictograms that the standard makes
 // optional (LB-001, LB-002) stay.
 func pictogramsOf(classes []HazardClass) []string {
-	shown := map[string]bool{}
+	var shown [len(pictogramCodes)]bool
 	for _, c := range classes {
 		e, _ := LabelElementsOf(c)
 		for _, p := range e.Pictograms {
-			shown[p] = true
+			if i := slices.Index(pictogramCodes[:], p); i >= 0 {
+				shown[i] = true
+			}
 		}
 	}
-	if shown["GHS07"] {
-		shown["GHS07"] = slices.ContainsFunc(classes, func(c HazardClass) bool { return keepsExclamation(c, classes, shown) })
+	if shown[exclamation] {
+		shown[exclamation] = false
+		for _, c := range classes {
+			shown[exclamation] = shown[exclamation] || keepsExclamation(c, classes, shown[skull], shown[corrosion])
+		}
 	}
 	var list []string
-	for n := 1; n <= 9; n++ {
-		if code := fmt.Sprintf("GHS%02d", n); shown[code] {
-			list = append(list, code)
+	for i, on := range shown {
+		if on {
+			list = append(list, pictogramCodes[i])
 		}
 	}
 	return list
 }
 
-func keepsExclamation(c HazardClass, classes []HazardClass, shown map[string]bool) bool {
+func keepsExclamation(c HazardClass, classes []HazardClass, skull, corrosion bool) bool {
 	e, _ := LabelElementsOf(c)
 	switch {
 	case c.Name == "Ozone":
 		return true // the precedences are between health hazards
-	case !slices.Contains(e.Pictograms, "GHS07") || shown["GHS06"]:
+	case skull || !slices.Contains(e.Pictograms, pictogramCodes[exclamation]):
 		return false
 	}
 	irritant := c.Name == "Skin Irrit." || c.Name == "Eye Irrit."
-	respiratory := slices.ContainsFunc(classes, func(o HazardClass) bool { return o.Name == "Resp. Sens." })
-	switch {
-	case irritant && shown["GHS05"]:
-		return false
-	case respiratory && (irritant || c.Name == "Skin Sens."):
+	if irritant && corrosion {
 		return false
 	}
-	return true
+	return !(irritant || c.Name == "Skin Sens.") || !hasName(classes, "Resp. Sens.")
+}
+
+func hasName(classes []HazardClass, name string) bool {
+	for _, c := range classes {
+		if c.Name == name {
+			return true
+		}
+	}
+	return false
 }

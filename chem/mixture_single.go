@@ -3,6 +3,7 @@ package chem
 import (
 	"slices"
 	"strings"
+	"sync"
 )
 
 // additiveClasses have rules of their own; all other health and environmental
@@ -49,10 +50,7 @@ func (m *mixture) generic(p mixPart, c HazardClass) {
 	if isEffectSum(c) || p.hasOwnLimit(c) {
 		return
 	}
-	for _, r := range mixtureRules() {
-		if r.kind != "gcl" || r.ingredient != strings.TrimSpace(c.Name+" "+c.Category) || r.condition == "gas mixture" {
-			continue
-		}
+	for _, r := range genericLimits()[[2]string{c.Name, c.Category}] {
 		if !atLeast(p.percent, r.low) || r.hasHigh && atLeast(p.percent, r.high) {
 			continue
 		}
@@ -64,6 +62,23 @@ func (m *mixture) generic(p mixPart, c HazardClass) {
 		m.give(given)
 	}
 }
+
+// genericLimits are the rules with generic limits for liquids and solids, by
+// class and category.
+var genericLimits = sync.OnceValue(func() map[[2]string][]mixtureRule {
+	byClass := map[[2]string][]mixtureRule{}
+	for _, r := range mixtureRules() {
+		if r.kind != "gcl" || r.condition == "gas mixture" {
+			continue
+		}
+		key := [2]string{r.ingredient, ""} // such as "Lact.", "PBT"
+		if i := strings.LastIndexByte(r.ingredient, ' '); i > 0 && isCategory(r.ingredient[i+1:]) {
+			key = [2]string{r.ingredient[:i], r.ingredient[i+1:]}
+		}
+		byClass[key] = append(byClass[key], r)
+	}
+	return byClass
+})
 
 // hasOwnLimit tells carcinogens and the like by class, target organs by class
 // alone too: a specific limit replaces the generic one for that ingredient.

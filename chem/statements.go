@@ -32,12 +32,23 @@ func Statement(code string) (string, bool) {
 // StatementLine returns the code followed by its words, or by "no data" if the
 // table has none.
 func StatementLine(code string) string {
+	if line, ok := statementLines()[code]; ok {
+		return line
+	}
 	text, ok := Statement(code)
 	if !ok {
 		text = "no data: wording not in the table"
 	}
 	return code + " " + text
 }
+
+var statementLines = sync.OnceValue(func() map[string]string {
+	lines := map[string]string{}
+	for code, text := range statements() {
+		lines[code] = code + " " + text
+	}
+	return lines
+})
 
 var statements = sync.OnceValue(func() map[string]string {
 	byCode := map[string]string{}
