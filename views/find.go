@@ -5,52 +5,63 @@ import (
 	"unicode"
 
 	"golang.org/x/text/unicode/norm"
+
+	"stillroom/inventory"
 )
 
-// findRows returns the rows in which every word looked for occurs, whatever the
-// case, hyphens and accents. Nearly allows one wrong, missing or additional
-// letter in words of four letters and more.
-func findRows(rows []shelfRow, find string, nearly bool) []shelfRow {
-	words := strings.Fields(find)
-	for i := range words {
-		words[i] = folded(words[i])
+// answering tells which bottles of the shelf answer what was looked for. Substances
+// and places stand for all their bottles.
+type answering struct {
+	all     bool // nothing was looked for
+	bottles map[int64]bool
+	forms   map[int64]bool
+	places  map[int64]bool
+	// nearly says that the name looked for occurs nowhere as it was typed.
+	nearly bool
+}
+
+func newAnswering(find string, found inventory.Found, shelf *inventory.Shelf) answering {
+	a := answering{all: find == "", bottles: map[int64]bool{}, forms: map[int64]bool{}, places: map[int64]bool{}}
+	for _, b := range found.Bottles {
+		a.bottles[b.ID] = true
 	}
-	if len(words) == 0 {
-		return rows
+	for _, p := range found.Places {
+		a.places[p.ID] = true
 	}
-	var found []shelfRow
-	for _, r := range rows {
-		if holdsAll(r.searchText(), words, nearly) {
-			found = append(found, r)
+	words := foldedWords(find)
+	a.nearly = len(found.Substances) > 0 && len(found.Places) == 0
+	for _, substance := range found.Substances {
+		for _, f := range shelf.FormsOf(substance.ID) {
+			a.forms[f.ID] = true
+		}
+		if isCalled(substance, words) {
+			a.nearly = false
 		}
 	}
-	return found
+	return a
 }
 
-// searchText is everything by which a bottle may be looked for.
-func (r *shelfRow) searchText() []string {
-	return []string{r.Substance.Name, r.Substance.Synonyms, r.Substance.CAS, r.Substance.Formula, r.Form.Name, r.Code, r.Lot, r.Place.String(), r.Note, r.Supplier}
+func (a answering) has(b *inventory.Bottle) bool {
+	return a.all || a.bottles[b.ID] || a.forms[b.FormID] || a.places[b.PlaceID]
 }
 
-func holdsAll(texts []string, words []string, nearly bool) bool {
-	for i, t := range texts {
-		texts[i] = folded(t)
-	}
+// isCalled reports whether every word occurs in what a substance is called.
+func isCalled(s inventory.Substance, words []string) bool {
+	called := folded(s.Name + ";" + s.Synonyms + ";" + s.CAS + ";" + s.Formula)
 	for _, w := range words {
-		if !holdsWord(texts, w, nearly) {
+		if !strings.Contains(called, w) {
 			return false
 		}
 	}
 	return true
 }
 
-func holdsWord(texts []string, word string, nearly bool) bool {
-	for _, t := range texts {
-		if strings.Contains(t, word) || nearly && containsNearly(t, word) {
-			return true
-		}
+func foldedWords(text string) []string {
+	words := strings.Fields(text)
+	for i := range words {
+		words[i] = folded(words[i])
 	}
-	return false
+	return words
 }
 
 // folded writes a text in lower case without accents, hyphens, spaces and
@@ -62,33 +73,4 @@ func folded(text string) string {
 		}
 		return unicode.ToLower(r)
 	}, norm.NFKD.String(text))
-}
-
-// containsNearly reports whether some part of the text is at most one change
-// away from the word (Sellers' algorithm: the edit distance with a free start
-// and end in the text).
-func containsNearly(text, word string) bool {
-	w := []rune(word)
-	if len(w) < 4 {
-		return false
-	}
-	column := make([]int, len(w)+1)
-	for i := range column {
-		column[i] = i
-	}
-	for _, r := range text {
-		diagonal := column[0]
-		for i := 1; i <= len(w); i++ {
-			cost := 1
-			if w[i-1] == r {
-				cost = 0
-			}
-			best := min(diagonal+cost, column[i]+1, column[i-1]+1)
-			diagonal, column[i] = column[i], best
-		}
-		if column[len(w)] <= 1 {
-			return true
-		}
-	}
-	return false
 }

@@ -60,17 +60,3 @@ func TestReadDate(t *testing.T) {
 		}
 	}
 }
-
-func TestContainsNearly(t *testing.T) {
-	for _, tt := range []struct {
-		text, word string
-		want       bool
-	}{
-		{"1pentanol", "pentanl", true}, {"1pentanol", "pentanool", true}, {"1pentanol", "pemtanol", true},
-		{"1pentanol", "hexanol", false}, {"ethylacetate", "acetone", false}, {"abc", "abd", false},
-	} {
-		if got := containsNearly(tt.text, tt.word); got != tt.want {
-			t.Errorf("containsNearly(%q, %q) = %v", tt.text, tt.word, got)
-		}
-	}
-}

@@ -9,6 +9,7 @@ import (
 // Lab is what the pages ask of the stock records; *inventory.Store is one.
 type Lab interface {
 	Load(ctx context.Context) (*inventory.Shelf, error)
+	Search(ctx context.Context, query string) (inventory.Found, error)
 	Ledger(ctx context.Context, code string, limit int) ([]inventory.Entry, error)
 
 	RecipeTexts(ctx context.Context) ([]inventory.RecipeText, error)

@@ -16,6 +16,8 @@ import (
 type memory struct {
 	mu    sync.Mutex
 	seed  maphash.Seed
+	last  *inventory.Shelf // the shelf looked at last, and its fingerprint
+	sum   uint64
 	state labState
 	plans map[planKey]*planner.Plan
 	slate []planner.SlateLine
@@ -55,7 +57,7 @@ func (m *memory) at(state labState) {
 
 // plan makes a plan, or gives the one made before.
 func (s *Server) plan(req planner.Request, shelf *inventory.Shelf) (*planner.Plan, error) {
-	state := labState{s.memory.fingerprint(shelf), req.Today}
+	state := s.memory.stateOf(shelf, req.Today)
 	key := planKey{req.Recipe.Name + "\n" + req.Recipe.Text, req.Target, req.On, req.Run, req.Store, req.Certainty, req.Drawn}
 	s.memory.mu.Lock()
 	s.memory.at(state)
@@ -78,7 +80,7 @@ func (s *Server) plan(req planner.Request, shelf *inventory.Shelf) (*planner.Pla
 
 // slateLines plans the slate, or gives the lines worked out before.
 func (s *Server) slateLines(runs []planner.SlateRun, shelf *inventory.Shelf) []planner.SlateLine {
-	state := labState{s.memory.fingerprint(shelf), s.Today()}
+	state := s.memory.stateOf(shelf, s.Today())
 	s.memory.mu.Lock()
 	s.memory.at(state)
 	lines := s.memory.slate
@@ -93,6 +95,17 @@ func (s *Server) slateLines(runs []planner.SlateRun, shelf *inventory.Shelf) []p
 		s.memory.slate = lines
 	}
 	return lines
+}
+
+// stateOf returns the state of the lab. A shelf never changes, so that the same
+// one isn't summed up twice.
+func (m *memory) stateOf(shelf *inventory.Shelf, today inventory.Date) labState {
+	m.mu.Lock()
+	defer m.mu.Unlock()
+	if m.last != shelf {
+		m.last, m.sum = shelf, m.fingerprint(shelf)
+	}
+	return labState{m.sum, today}
 }
 
 // fingerprint sums up everything on a shelf. Rows have a fixed order, so that

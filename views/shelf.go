@@ -63,15 +63,25 @@ type shelfColumn struct {
 	Number               bool
 }
 
+// shelfEntry is a bottle with what the page sorts and filters by; the rest is
+// looked up for the rows of one page only.
+type shelfEntry struct {
+	bottle    *inventory.Bottle
+	substance string
+	place     *inventory.Place
+}
+
 // shelfOrders are the ways to sort, by their names in the address.
-var shelfOrders = map[string]func(a, b shelfRow) int{
-	"substance": func(a, b shelfRow) int { return cmp.Compare(a.Substance.Name, b.Substance.Name) },
-	"bottle":    func(a, b shelfRow) int { return cmp.Compare(a.Code, b.Code) },
-	"place": func(a, b shelfRow) int {
-		return cmp.Or(cmp.Compare(a.Place.Walk, b.Place.Walk), cmp.Compare(a.PlaceID, b.PlaceID))
+var shelfOrders = map[string]func(a, b shelfEntry) int{
+	"substance": func(a, b shelfEntry) int { return cmp.Compare(a.substance, b.substance) },
+	"bottle":    func(a, b shelfEntry) int { return cmp.Compare(a.bottle.Code, b.bottle.Code) },
+	"place": func(a, b shelfEntry) int {
+		return cmp.Or(cmp.Compare(a.place.Walk, b.place.Walk), cmp.Compare(a.place.ID, b.place.ID))
 	},
-	"expiry": func(a, b shelfRow) int { return cmp.Compare(lastIfNone(a.Expiry), lastIfNone(b.Expiry)) },
-	"state":  func(a, b shelfRow) int { return cmp.Compare(a.State, b.State) },
+	"expiry": func(a, b shelfEntry) int {
+		return cmp.Compare(lastIfNone(a.bottle.Expiry), lastIfNone(b.bottle.Expiry))
+	},
+	"state": func(a, b shelfEntry) int { return cmp.Compare(a.bottle.State, b.bottle.State) },
 }
 
 func lastIfNone(d inventory.Date) inventory.Date {
@@ -89,12 +99,14 @@ func (s *Server) showShelf(c *gin.Context) error {
 		return err
 	}
 	q := readShelfQuery(c.Request.URL.Query())
-	if code, err := inventory.NormalCode(q.Find); err == nil {
-		if _, ok := shelf.BottleByCode(code); ok {
-			return s.goTo(c, "/shelf/bottles/"+code)
-		}
+	found, err := s.Lab.Search(c.Request.Context(), q.Find)
+	if err != nil {
+		return err
 	}
-	return s.render(c, http.StatusOK, "shelf", s.shelfPage(shelf, q))
+	if found.Bottle != nil {
+		return s.goTo(c, "/shelf/bottles/"+found.Bottle.Code)
+	}
+	return s.render(c, http.StatusOK, "shelf", s.shelfPage(shelf, q, newAnswering(q.Find, found, shelf)))
 }
 
 // goTo sends the browser to another page; htmx has to be told by a header of
@@ -144,40 +156,36 @@ func (q shelfQuery) address() string {
 	return "/shelf?" + v.Encode()
 }
 
-func (s *Server) shelfPage(shelf *inventory.Shelf, q shelfQuery) *shelfPage {
-	p := &shelfPage{Query: q, Bottles: len(shelf.Bottles)}
+func (s *Server) shelfPage(shelf *inventory.Shelf, q shelfQuery, answers answering) *shelfPage {
+	p := &shelfPage{Query: q, Bottles: len(shelf.Bottles), Near: answers.nearly}
 	p.Title, p.Section, p.Find = "Shelf", "/shelf", q.Find
 	p.Stores, p.Classes, p.States = shelfChoices(shelf)
-	rows := s.shelfRowsOf(shelf, q)
-	found := findRows(rows, q.Find, false)
-	if len(found) == 0 && q.Find != "" {
-		found, p.Near = findRows(rows, q.Find, true), true
-	}
+	entries := shelfEntries(shelf, q, answers)
 	order := shelfOrders[q.Sort]
-	slices.SortStableFunc(found, func(a, b shelfRow) int {
+	slices.SortFunc(entries, func(a, b shelfEntry) int {
 		if q.Down {
 			a, b = b, a
 		}
-		return cmp.Or(order(a, b), cmp.Compare(a.Substance.Name, b.Substance.Name), cmp.Compare(a.Code, b.Code))
+		return cmp.Or(order(a, b), cmp.Compare(a.substance, b.substance), cmp.Compare(a.bottle.Code, b.bottle.Code))
 	})
-	p.cut(found)
-	p.Columns = shelfColumns(q)
 	today := s.Today()
-	for i := range p.Rows {
-		p.Rows[i].dress(shelf, today)
+	for _, e := range p.cut(entries) {
+		p.Rows = append(p.Rows, newShelfRow(shelf, *e.bottle, today))
 	}
+	p.Columns = shelfColumns(q)
 	return p
 }
 
-// cut keeps the rows of the page asked for; a page beyond the last is the last.
-func (p *shelfPage) cut(rows []shelfRow) {
-	p.Total = len(rows)
+// cut gives the entries of the page asked for; a page beyond the last is the
+// last.
+func (p *shelfPage) cut(entries []shelfEntry) []shelfEntry {
+	p.Total = len(entries)
 	pages := max((p.Total+shelfRows-1)/shelfRows, 1)
 	q := p.Query
 	q.Page = min(q.Page, pages)
 	from := (q.Page - 1) * shelfRows
-	p.Rows = rows[from:min(from+shelfRows, p.Total)]
-	p.First, p.Last = from+1, from+len(p.Rows)
+	part := entries[from:min(from+shelfRows, p.Total)]
+	p.First, p.Last = from+1, from+len(part)
 	earlier, later := q, q
 	earlier.Page--
 	later.Page++
@@ -188,6 +196,7 @@ func (p *shelfPage) cut(rows []shelfRow) {
 		p.Later = later.address()
 	}
 	p.Query = q
+	return part
 }
 
 func shelfColumns(q shelfQuery) []shelfColumn {
@@ -212,34 +221,52 @@ func shelfColumns(q shelfQuery) []shelfColumn {
 	return columns
 }
 
-// shelfRowsOf joins the bottles with what they hold and leaves out what the
-// filters exclude. Without a filter on the state, empty and discarded bottles
-// are left out.
-func (s *Server) shelfRowsOf(shelf *inventory.Shelf, q shelfQuery) []shelfRow {
-	rows := make([]shelfRow, 0, len(shelf.Bottles))
-	for _, b := range shelf.Bottles {
-		r := shelfRow{Bottle: b}
-		r.Form, _ = shelf.Form(b.FormID)
-		r.Place, _ = shelf.Place(b.PlaceID)
-		gone := b.State == inventory.Empty || b.State == inventory.Discarded
-		if q.State == "" && gone || q.State != "" && string(b.State) != q.State ||
-			q.Store != "" && r.Place.Store != q.Store || q.Class != "" && r.Form.StorageClass != q.Class {
-			continue
-		}
-		r.Substance, _ = shelf.SubstanceByID(r.Form.SubstanceID)
-		rows = append(rows, r)
+// shelfEntries lists the bottles that answer and pass the filters. Without a
+// filter on the state, empty and discarded bottles are left out.
+func shelfEntries(shelf *inventory.Shelf, q shelfQuery, answers answering) []shelfEntry {
+	names, classes := make(map[int64]string, len(shelf.Forms)), make(map[int64]string, len(shelf.Forms))
+	for i := range shelf.Forms {
+		f := &shelf.Forms[i]
+		substance, _ := shelf.SubstanceByID(f.SubstanceID)
+		names[f.ID], classes[f.ID] = substance.Name, f.StorageClass
 	}
-	return rows
+	places := make(map[int64]*inventory.Place, len(shelf.Places))
+	for i := range shelf.Places {
+		places[shelf.Places[i].ID] = &shelf.Places[i]
+	}
+	var entries []shelfEntry
+	nowhere := &inventory.Place{}
+	for i := range shelf.Bottles {
+		b := &shelf.Bottles[i]
+		place := cmp.Or(places[b.PlaceID], nowhere)
+		if q.passes(b.State, place.Store, classes[b.FormID]) && answers.has(b) {
+			entries = append(entries, shelfEntry{b, names[b.FormID], place})
+		}
+	}
+	return entries
 }
 
-// dress works out what a row shows; only for the rows of one page.
-func (r *shelfRow) dress(shelf *inventory.Shelf, today inventory.Date) {
-	r.Picture = drawBottle(r.Bottle, r.Form, 27)
-	r.Holds = stored(r.Content, r.Form.Measure)
-	free := r.Content - promised(shelf, r.ID, today)
-	r.Promised = free != r.Content
+// passes reports whether a bottle's state, store and storage class are those
+// asked for.
+func (q shelfQuery) passes(state inventory.BottleState, store, class string) bool {
+	gone := state == inventory.Empty || state == inventory.Discarded
+	return (q.State == "" && !gone || q.State == string(state)) &&
+		(q.Store == "" || q.Store == store) && (q.Class == "" || q.Class == class)
+}
+
+// newShelfRow works out what a row shows.
+func newShelfRow(shelf *inventory.Shelf, b inventory.Bottle, today inventory.Date) shelfRow {
+	r := shelfRow{Bottle: b}
+	r.Form, _ = shelf.Form(b.FormID)
+	r.Place, _ = shelf.Place(b.PlaceID)
+	r.Substance, _ = shelf.SubstanceByID(r.Form.SubstanceID)
+	r.Picture = drawBottle(b, r.Form, 27)
+	r.Holds = stored(b.Content, r.Form.Measure)
+	free := b.Content - promised(shelf, b.ID, today)
+	r.Promised = free != b.Content
 	r.Free = stored(max(free, 0), r.Form.Measure)
-	r.Lapsed = r.Expiry.Set() && r.Expiry < today
+	r.Lapsed = b.Expiry.Set() && b.Expiry < today
+	return r
 }
 
 // promised sums the earmarks on a bottle that haven't lapsed.
@@ -263,11 +290,15 @@ func shelfChoices(shelf *inventory.Shelf) (stores, classes []string, states []in
 			classes = append(classes, f.StorageClass)
 		}
 	}
-	for _, b := range shelf.Bottles {
-		states = append(states, b.State)
+	seen := map[inventory.BottleState]bool{}
+	for i := range shelf.Bottles {
+		if state := shelf.Bottles[i].State; !seen[state] {
+			seen[state] = true
+			states = append(states, state)
+		}
 	}
 	slices.Sort(stores)
 	slices.Sort(classes)
 	slices.Sort(states)
-	return slices.Compact(stores), slices.Compact(classes), slices.Compact(states)
+	return slices.Compact(stores), slices.Compact(classes), states
 }
