@@ -26,6 +26,7 @@ type planning struct {
 
 	scale   Scale
 	batches int
+	tooBig  Finding // why fewer batches don't do
 	walk    *Walk
 	asks    []Ask // the walk's, and the water of make-ups
 	stocks  map[string]Stock
@@ -68,13 +69,44 @@ func (p *planning) plan() (*Plan, error) {
 	if err := p.chooseScale(); err != nil {
 		return nil, err
 	}
-	if err := p.chooseBatches(); err != nil {
-		return nil, err
-	}
-	if err := p.matchAndWalk(); err != nil {
+	if err := p.fitAndMatch(); err != nil {
 		return nil, err
 	}
 	return p.write()
+}
+
+// fitAndMatch chooses the batches with the stock as the recipe asks for it, and
+// looks again once it is known what is drawn: a weaker stock fills more.
+func (p *planning) fitAndMatch() error {
+	for p.batches = max(1, p.req.Batches); ; p.batches++ {
+		if err := p.chooseBatches(); err != nil {
+			return err
+		}
+		if err := p.matchAndWalk(); err != nil {
+			return err
+		}
+		tooBig, big := findingOf(p.walk, noVesselFits)
+		if !big {
+			p.saySplit()
+			return nil
+		}
+		if p.req.Batches > 0 || p.batches >= mostBatches {
+			return p.noVessel(tooBig)
+		}
+		p.tooBig = tooBig
+	}
+}
+
+// saySplit says why a run that wasn't asked for in batches is planned in some.
+func (p *planning) saySplit() {
+	if p.batches == max(1, p.req.Batches) {
+		return
+	}
+	p.found = append(p.found, Finding{
+		Kind: "split", Severity: Warning, Step: p.tooBig.Step,
+		Text:  fmt.Sprintf("planned as %d equal batches; with one fewer, %s", p.batches, p.tooBig.Text),
+		Would: firstOf(p.tooBig.Would, "a larger vessel would take it in fewer"),
+	})
 }
 
 func (p *planning) chooseScale() error {
@@ -103,37 +135,24 @@ const mostBatches = 4
 // doesn't own.
 const noVesselFits = "no-vessel-fits"
 
-// chooseBatches takes the number asked for, or the fewest that the ware can
-// hold.
+// chooseBatches takes the number asked for, or the fewest from p.batches on that
+// the ware can hold.
 func (p *planning) chooseBatches() error {
-	p.batches = max(1, p.req.Batches)
-	walk, err := p.program.Walk(p.conditions())
-	if err != nil {
-		return err
-	}
-	p.walk = walk
-	tooBig, big := findingOf(walk, noVesselFits)
-	if !big || p.req.Batches > 0 {
-		if big {
-			return p.noVessel(tooBig)
-		}
-		return nil
-	}
-	for p.batches = 2; p.batches <= mostBatches; p.batches++ {
-		if walk, err = p.program.Walk(p.conditions()); err != nil {
+	for ; ; p.batches++ {
+		walk, err := p.program.Walk(p.conditions())
+		if err != nil {
 			return err
 		}
-		if _, big := findingOf(walk, noVesselFits); !big {
+		tooBig, big := findingOf(walk, noVesselFits)
+		if !big {
 			p.walk = walk
-			p.found = append(p.found, Finding{
-				Kind: "split", Severity: Warning, Step: tooBig.Step,
-				Text:  fmt.Sprintf("planned as %d equal batches, because in one %s", p.batches, tooBig.Text),
-				Would: firstOf(tooBig.Would, "a larger vessel would take it in one"),
-			})
 			return nil
 		}
+		if p.req.Batches > 0 || p.batches >= mostBatches {
+			return p.noVessel(tooBig)
+		}
+		p.tooBig = tooBig
 	}
-	return p.noVessel(tooBig)
 }
 
 func findingOf(walk *Walk, kind string) (Finding, bool) {
@@ -269,7 +288,7 @@ func (p *planning) write() (*Plan, error) {
 	p.shortfalls(plan)
 	p.risk(plan)
 	p.states(plan)
-	plan.Findings = append(plan.Findings, p.scaleFindings(plan)...)
+	plan.Findings = append(plan.Findings, p.largeFindings(plan)...)
 	p.blends(plan)
 	sheets.finish(plan)
 	plan.Tools = measuringTools(p.shelf.Equipment)

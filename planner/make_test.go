@@ -18,16 +18,11 @@ type asked struct {
 	volume chem.Volume    // per mole, in the one vessel it has
 	most   chem.Volume    // of that vessel; 0 for no limit
 	seen   []map[string]Stock
-	proven float64 // mol
 }
 
 func (a *asked) ScaleFor(target chem.Mass, certainty chem.Fraction, _ inventory.Policy) (Scale, error) {
 	n := chem.Amount(float64(target) / float64(a.molar) / 0.6)
-	s := Scale{Limiting: "1-pentanol", Amount: n, ExpectedYield: 0.7, PlannedYield: 0.6, ExpectedMass: a.molar.Mass(n * 0.7), Percentile: certainty}
-	if a.proven > 0 {
-		s.Factor = float64(n) / a.proven
-	}
-	return s, nil
+	return Scale{Limiting: "1-pentanol", Amount: n, ExpectedYield: 0.7, PlannedYield: 0.6, ExpectedMass: a.molar.Mass(n * 0.7), Percentile: certainty}, nil
 }
 
 func (a *asked) Walk(in Conditions) (*Walk, error) {
@@ -299,17 +294,17 @@ func TestPlanRefusals(t *testing.T) {
 	}
 }
 
-// Univ. Illinois DRS (read as a stored copy): a scale-up beyond three times
-// needs care, more than 15 g of substrate is large.
-func TestPlanScaleFindings(t *testing.T) {
-	a := &asked{asks: []Ask{testAsk(t, "1-pentanol", "C5H12O", 1, Accept{})}, proven: 0.2}
+// Univ. Illinois DRS (read as a stored copy): more than 15 g of substrate or
+// 500 mL of solvent is large.
+func TestPlanLargeFindings(t *testing.T) {
+	a := &asked{asks: []Ask{testAsk(t, "1-pentanol", "C5H12O", 1, Accept{})}}
 	plan := planOf(t, a, inventory.NewShelf(dichromateLab()), grams(50)) // 0.816 mol, 71.9 g
 	kinds := map[string]bool{}
 	for _, f := range plan.Findings {
 		kinds[f.Kind] = true
 	}
-	if !kinds["scale-beyond-proven"] || !kinds["large-substrate"] || kinds["large-solvent"] {
-		t.Errorf("findings %v, want the scale and the substrate, not the solvent", kinds)
+	if !kinds["large-substrate"] || kinds["large-solvent"] {
+		t.Errorf("findings %v, want the substrate, not the solvent", kinds)
 	}
 }
 

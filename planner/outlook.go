@@ -1,6 +1,7 @@
 package planner
 
 import (
+	"errors"
 	"slices"
 
 	"stillroom/chem"
@@ -125,10 +126,10 @@ func (p *planning) suffices(target chem.Mass) (bool, string) {
 	if try.chooseScale() != nil {
 		return false, "the recipe"
 	}
-	if try.chooseBatches() != nil {
-		return false, "vessels"
-	}
-	if try.matchAndWalk() != nil {
+	if err := try.fitAndMatch(); err != nil {
+		if errors.Is(err, ErrNoVessel) {
+			return false, "vessels"
+		}
 		return false, "the recipe"
 	}
 	for i := range try.covers {

@@ -7,22 +7,10 @@ import (
 	"stillroom/inventory"
 )
 
-// scaleFindings warns of a scale that goes beyond what was done before, and of
-// what counts as large (practice §1, scale facts).
-func (p *planning) scaleFindings(plan *Plan) []Finding {
+// largeFindings notes what counts as large (practice §1, scale facts). How the
+// scale stands to what is proven comes from the walk-through.
+func (p *planning) largeFindings(plan *Plan) []Finding {
 	var found []Finding
-	factor := p.scale.Factor / float64(p.batches)
-	warn := p.policy.value("scale.warn")
-	switch {
-	case p.scale.Factor == 0:
-		found = append(found, Finding{Kind: "nothing-proven", Severity: Warning,
-			Text:  "the recipe has no proven scale: no run of it has been recorded",
-			Would: "a small run first, and a review"})
-	case factor > warn:
-		found = append(found, Finding{Kind: "scale-beyond-proven", Severity: Warning,
-			Text:  fmt.Sprintf("%.2g times the largest proven scale; from %.2g times on a scale-up needs a review", factor, warn),
-			Would: fmt.Sprintf("at most %s in one run, or smaller batches", massText(p.req.Target*chem.Mass(warn/factor)))})
-	}
 	limiting := p.limitingMass()
 	if most := p.policy.value("scale.large-substrate"); limiting.Grams() > most {
 		found = append(found, Finding{Kind: "large-substrate", Severity: Note,
