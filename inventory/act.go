@@ -1,6 +1,7 @@
 package inventory
 
 import (
+	"context"
 	"crypto/sha256"
 	"encoding/hex"
 	"fmt"
@@ -89,4 +90,16 @@ func (AuditRow) TableName() string { return "audit" }
 func (s *Store) audit(tx *gorm.DB, storeID int64, act Act, what, record, was, now string) error {
 	return tx.Create(&AuditRow{StoreID: storeID, At: s.stamp(), ByWhom: act.By, What: what, Record: record,
 		Was: was, IsNow: now, Why: act.Why}).Error
+}
+
+// Audit returns what was done to a record, such as "run 12" or "bottle B7K2QM",
+// or to all records for "", the newest first, at most limit rows.
+func (s *Store) Audit(ctx context.Context, record string, limit int) (rows []AuditRow, err error) {
+	err = s.read(ctx, "read the audit", func(tx *gorm.DB) error {
+		if record != "" {
+			tx = tx.Where("record = ? OR record LIKE ?", record, record+",%")
+		}
+		return tx.Order("id DESC").Limit(limit).Find(&rows).Error
+	})
+	return rows, err
 }

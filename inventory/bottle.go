@@ -107,14 +107,30 @@ func (s *Store) setState(tx *gorm.DB, b *Bottle, state BottleState, act Act) err
 	return tx.Exec("UPDATE bottles SET state = ?, version = ? WHERE id = ?", state, b.Version, b.ID).Error
 }
 
-// States returns the life of a bottle, the newest change first.
+// States returns the life of a bottle, the newest change first. A bottle that
+// came with an import begins with its receipt in the ledger.
 func (s *Store) States(ctx context.Context, code string) (changes []StateChange, err error) {
 	err = s.read(ctx, "look up", func(tx *gorm.DB) error {
 		b, err := bottleByCode(tx, "look up", code)
 		if err != nil {
 			return err
 		}
-		return tx.Where("bottle_id = ?", b.ID).Order("id DESC").Find(&changes).Error
+		if err := tx.Where("bottle_id = ?", b.ID).Order("id DESC").Find(&changes).Error; err != nil {
+			return err
+		}
+		if n := len(changes); n > 0 && changes[n-1].Was == "" {
+			return nil
+		}
+		var receipt Entry
+		if err := tx.Where("bottle_id = ? AND kind = ?", b.ID, Receipt).Take(&receipt).Error; err != nil {
+			return err
+		}
+		first := b.State
+		if n := len(changes); n > 0 {
+			first = changes[n-1].Was
+		}
+		changes = append(changes, StateChange{StoreID: b.StoreID, BottleID: b.ID, State: first, ByWhom: receipt.ByWhom, At: receipt.At, Why: receipt.Why})
+		return nil
 	})
 	return changes, err
 }

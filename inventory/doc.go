@@ -2,4 +2,38 @@
 // their places, the ledger of draws, earmarks, offers, orders, waste carboys
 // and equipment. It is the only package that knows the database; what leaves
 // it are plain values.
+//
+// # Values and the store
+//
+// A [Lab] is everything a lab has as values, a [Shelf] the same indexed for the
+// planner; neither changes once made. A [Store] is an open database, on SQLite
+// or PostgreSQL. Load makes a Shelf of one moment of it. Every call that changes
+// something takes an [Act], which says who and why, and whose key makes a repeat
+// of the call harmless.
+//
+// # The ledger
+//
+// A bottle's content is the sum of its ledger entries at all times. Entries are
+// whole numbers of micrograms, microlitres or pieces and are only ever added: a
+// mistake is corrected by a reversal. Within a store each entry carries a hash
+// over itself and the entry before it, so that Check finds what was changed or
+// taken out behind the program's back. The content kept beside the ledger is
+// changed in the same transaction, under the same lock.
+//
+// # Earmarks
+//
+// What a bottle's earmarks promise is never more than it holds: the rule is
+// checked in the transaction that promises, with the bottle's row locked, and
+// the schema repeats it. An earmark that has lapsed gives way as soon as
+// somebody else wants the amount. A count that finds less than was promised is
+// the truth; the youngest promises are cut and named.
+//
+// # Two engines
+//
+// SQLite has one writer, whose transactions take the lock at once; readers see
+// one moment each and never wait. PostgreSQL locks the rows it decides on,
+// bottles in order of their IDs and then the head of the store's chain, so that
+// no two transactions wait for each other in a circle; several servers may
+// share one database. The same tests run on both. Every table of the daily work
+// carries its store, and no transaction of the daily work touches two.
 package inventory

@@ -161,8 +161,16 @@ func TestImportPreviewAndUndo(t *testing.T) {
 		if err != nil || report.Import == 0 {
 			t.Fatalf("import: %+v, %v", report, err)
 		}
+		var first string
+		s.reader.Raw("SELECT min(code) FROM bottles WHERE import_id = ?", report.Import).Row().Scan(&first)
+		if states, err := s.States(ctx, first); err != nil || len(states) != 1 || states[0].State != Sealed || states[0].ByWhom != clerk.By {
+			t.Errorf("states of an imported bottle: %+v, %v", states, err)
+		}
 		if err := s.UndoImport(ctx, report.Import, clerk); err != nil {
 			t.Fatal(err)
+		}
+		if states, err := s.States(ctx, first); err != nil || len(states) != 2 || states[1].State != Sealed || states[0].State != Discarded {
+			t.Errorf("states after the undo: %+v, %v", states, err)
 		}
 		after, _ := s.Load(ctx)
 		for _, b := range after.Bottles[len(before.Bottles):] {

@@ -514,6 +514,9 @@ func TestRuns(t *testing.T) {
 		if err != nil || got != r {
 			t.Errorf("Run: %+v, %v, want %+v", got, err, r)
 		}
+		if rows, err := s.Audit(ctx, "run 9", 10); err != nil || len(rows) != 3 || rows[0].What != "change" || rows[0].ByWhom != clerk.By {
+			t.Errorf("audit of the run: %+v, %v", rows, err)
+		}
 		runs, err := s.Runs(ctx)
 		if err != nil || len(runs) != 9 || runs[0].On > runs[1].On {
 			t.Errorf("Runs: %v, %v", runs, err)
