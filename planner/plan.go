@@ -230,6 +230,8 @@ type StepReport struct {
 	HoldPoint     bool
 	HoldNote      string
 	Cautions      []string
+	// Balance is the worst relative error of mass, elements and charge after the step.
+	Balance float64
 	// Says are the numbers the step is about, in words: "98.2 % of the acid".
 	Says        []string
 	Derivations []chem.Derivation

@@ -60,11 +60,24 @@ func (w *Workspace) run() error {
 		if w.report != nil {
 			w.report.end(w)
 		}
-		if err := w.checkStep(); err != nil {
+		if err := w.balanceStep(); err != nil {
 			return err
 		}
 	}
 	return w.checkRun()
+}
+
+// balanceStep checks the step just done and keeps the worst error of the run in
+// w.balance.
+func (w *Workspace) balanceStep() error {
+	worst := w.balance
+	w.balance = 0
+	err := w.checkStep()
+	if w.report != nil {
+		w.report.step.Balance = w.balance
+	}
+	w.balance = math.Max(worst, w.balance)
+	return err
 }
 
 // finish puts the walk together.

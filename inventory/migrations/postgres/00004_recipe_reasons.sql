@@ -1,0 +1,2 @@
+-- +goose Up
+ALTER TABLE recipe_texts ADD COLUMN why TEXT NOT NULL DEFAULT '';
