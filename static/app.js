@@ -44,6 +44,22 @@
     if (event.target.closest("[data-print]")) window.print();
   });
 
+  // A place in a text that is being written is shown there; without a field to
+  // write in, the link leads to the numbered lines.
+  document.addEventListener("click", function (event) {
+    var link = event.target.closest("[data-line]");
+    var field = document.querySelector("form.edit textarea");
+    if (!link || !field || event.ctrlKey || event.metaKey) return;
+    event.preventDefault();
+    var lines = field.value.split("\n");
+    var line = Math.min(Number(link.dataset.line), lines.length) - 1;
+    var start = lines.slice(0, line).join("\n").length + (line > 0 ? 1 : 0);
+    var column = Math.min(Number(link.dataset.column) - 1, lines[line].length);
+    field.focus();
+    field.setSelectionRange(start + column, start + lines[line].length);
+    field.scrollTop = Math.max(0, line * parseFloat(getComputedStyle(field).lineHeight) - field.clientHeight / 3);
+  });
+
   // A list of faults on a page that came whole gets the focus as well.
   document.addEventListener("DOMContentLoaded", function () {
     focusOn(document.querySelector("[data-faults]"));

@@ -13,7 +13,8 @@ type Lab interface {
 	Ledger(ctx context.Context, code string, limit int) ([]inventory.Entry, error)
 
 	RecipeTexts(ctx context.Context) ([]inventory.RecipeText, error)
-	SaveRecipe(ctx context.Context, name, text string, act inventory.Act) error
+	RecipeVersions(ctx context.Context, name string) ([]inventory.RecipeText, error)
+	SaveRecipeAfter(ctx context.Context, from int64, name, text string, act inventory.Act) error
 
 	Import(ctx context.Context, t inventory.Table, m inventory.Mapping, o inventory.ImportOptions) (inventory.ImportReport, error)
 	Imports(ctx context.Context) ([]inventory.StockImport, error)

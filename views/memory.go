@@ -21,6 +21,8 @@ type memory struct {
 	state labState
 	plans map[planKey]*planner.Plan
 	slate []planner.SlateLine
+	// written is the fingerprint of the recipes that the slate was planned with.
+	written uint64
 }
 
 // labState is the stock on a day, by its fingerprint.
@@ -83,16 +85,17 @@ func (s *Server) slateLines(runs []planner.SlateRun, shelf *inventory.Shelf) []p
 	state := s.memory.stateOf(shelf, s.Today())
 	s.memory.mu.Lock()
 	s.memory.at(state)
-	lines := s.memory.slate
+	lines, as := s.memory.slate, s.memory.written
 	s.memory.mu.Unlock()
-	if lines != nil {
+	written := s.memory.recipes(runs)
+	if lines != nil && as == written {
 		return lines
 	}
 	lines = planner.SlateOf(runs, shelf, state.today).Lines
 	s.memory.mu.Lock()
 	defer s.memory.mu.Unlock()
 	if s.memory.state == state {
-		s.memory.slate = lines
+		s.memory.slate, s.memory.written = lines, written
 	}
 	return lines
 }
@@ -106,6 +109,19 @@ func (m *memory) stateOf(shelf *inventory.Shelf, today inventory.Date) labState 
 		m.last, m.sum = shelf, m.fingerprint(shelf)
 	}
 	return labState{m.sum, today}
+}
+
+// recipes sums up which recipe text every run has.
+func (m *memory) recipes(runs []planner.SlateRun) uint64 {
+	var h maphash.Hash
+	h.SetSeed(m.seed)
+	for _, r := range runs {
+		maphash.WriteComparable(&h, r.Run.ID)
+		if r.Recipe != nil {
+			maphash.WriteComparable(&h, r.Recipe.Text)
+		}
+	}
+	return h.Sum64()
 }
 
 // fingerprint sums up everything on a shelf. Rows have a fixed order, so that

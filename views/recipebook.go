@@ -18,34 +18,37 @@ type recipeBook struct {
 
 // recipes returns the recipes that come with the program and those saved in the
 // lab, by name. A saved one takes the place of one that came with the program. A
-// saved text that this version of the program can't read is left out, and the
-// log says so.
+// saved text that this version of the program can't read is left out.
 func (s *Server) recipes(ctx context.Context) ([]*planner.Recipe, error) {
+	all, _, err := s.readRecipes(ctx)
+	return all, err
+}
+
+// readRecipes returns the recipes, and the names of those whose saved text can't
+// be read: what came with the program isn't put in their place.
+func (s *Server) readRecipes(ctx context.Context) (all []*planner.Recipe, unread []string, err error) {
 	texts, err := s.Lab.RecipeTexts(ctx)
-	if err != nil {
-		return nil, err
-	}
-	if len(texts) == 0 {
-		return s.Recipes, nil
+	if err != nil || len(texts) == 0 {
+		return s.Recipes, nil, err
 	}
 	byName := map[string]*planner.Recipe{}
 	for _, r := range s.Recipes {
 		byName[r.Name] = r
 	}
 	for _, t := range texts {
-		r, err := s.book.recipe(t.Name, t.Text)
+		r, err := s.book.recipe(fileOf(t.Name), t.Text)
 		if err != nil {
-			s.Log.Warn("a saved recipe can't be read", "recipe", t.Name, "cause", err)
+			delete(byName, t.Name)
+			unread = append(unread, t.Name)
 			continue
 		}
 		byName[r.Name] = r
 	}
-	all := make([]*planner.Recipe, 0, len(byName))
 	for _, r := range byName {
 		all = append(all, r)
 	}
 	slices.SortFunc(all, func(a, b *planner.Recipe) int { return cmp.Compare(a.Name, b.Name) })
-	return all, nil
+	return all, unread, nil
 }
 
 func (b *recipeBook) recipe(name, text string) (*planner.Recipe, error) {
@@ -67,7 +70,7 @@ func (b *recipeBook) recipe(name, text string) (*planner.Recipe, error) {
 
 // recipeNamed returns a recipe by its name, or a *missing.
 func (s *Server) recipeNamed(ctx context.Context, name string) (*planner.Recipe, error) {
-	all, err := s.recipes(ctx)
+	all, unread, err := s.readRecipes(ctx)
 	if err != nil {
 		return nil, err
 	}
@@ -75,6 +78,9 @@ func (s *Server) recipeNamed(ctx context.Context, name string) (*planner.Recipe,
 		if r.Name == name {
 			return r, nil
 		}
+	}
+	if slices.Contains(unread, name) {
+		return nil, &missing{"readable recipe", name, "A text is saved under that name, but this version of the program can’t read it. Mend it at /recipes/" + name + "/edit."}
 	}
 	return nil, &missing{"recipe", name, "All recipes are listed on their own page."}
 }

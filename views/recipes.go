@@ -2,11 +2,9 @@ package views
 
 import (
 	"net/http"
-	"strings"
 
 	"github.com/gin-gonic/gin"
 
-	"stillroom/chem"
 	"stillroom/inventory"
 	"stillroom/planner"
 )
@@ -14,36 +12,33 @@ import (
 // recipesPage lists the written procedures.
 type recipesPage struct {
 	frame
-	Recipes []*planner.Recipe
+	Recipes []recipeRow
+	Unread  []string // names of those whose saved text can't be read
 }
+
+// recipeRow is a recipe in the list with the runs of it.
+type recipeRow struct {
+	*planner.Recipe
+	runCount
+}
+
+// runCount is how many runs of a recipe there are.
+type runCount struct{ Closed, Ahead int }
 
 // recipePage is one written procedure, walked through at its proven scale.
 type recipePage struct {
 	frame
-	Recipe *planner.Recipe
-	Lines  []string // of its text
-	Scale  chem.Amount
-	Proven bool // the scale is the largest proven one
-	Walk   *planner.Walk
-	Fault  string // why it can't be walked through
-	Steps  []stepRow
-	Vague  []planner.RecipeFault
+	Recipe   *planner.Recipe
+	Check    *recipeCheck
+	Steps    []stepRow
+	Runs     runCount
+	Shown    recipeVersion
+	Versions []recipeVersion
 }
 
 // showRecipes answers /recipes.
 func (s *Server) showRecipes(c *gin.Context) error {
-	recipes, err := s.recipes(c.Request.Context())
-	if err != nil {
-		return err
-	}
-	p := &recipesPage{Recipes: recipes}
-	p.Title, p.Section = "Recipes", "/recipes"
-	return s.render(c, http.StatusOK, "recipes", p)
-}
-
-// showRecipe answers /recipes/:name.
-func (s *Server) showRecipe(c *gin.Context) error {
-	recipe, err := s.recipeNamed(c.Request.Context(), c.Param("name"))
+	recipes, unread, err := s.readRecipes(c.Request.Context())
 	if err != nil {
 		return err
 	}
@@ -51,31 +46,52 @@ func (s *Server) showRecipe(c *gin.Context) error {
 	if err != nil {
 		return err
 	}
-	p := &recipePage{Recipe: recipe, Lines: strings.Split(strings.TrimRight(recipe.Text, "\n"), "\n")}
-	p.Title, p.Section = recipe.Title, "/recipes"
-	p.walk(shelf)
-	p.Vague = planner.Lint(recipe.Name, recipe.Text)
-	return s.render(c, http.StatusOK, "recipe", p)
+	p := &recipesPage{Unread: unread}
+	for _, r := range recipes {
+		p.Recipes = append(p.Recipes, recipeRow{r, runsOf(r.Name, shelf)})
+	}
+	p.Title, p.Section = "Recipes", "/recipes"
+	return s.render(c, http.StatusOK, "recipes", p)
 }
 
-// walk takes the recipe through once, at its proven scale or else at one mole,
-// with the stock the recipe asks for and the ware of the lab. A recipe that
-// can't be walked through is still shown, with the reason.
-func (p *recipePage) walk(shelf *inventory.Shelf) {
-	p.Scale, p.Proven = 1*chem.Mole, false
-	if p.Recipe.ProvenScale > 0 {
-		p.Scale, p.Proven = p.Recipe.ProvenScale, true
+// runsOf counts the runs of a recipe that are closed and those to come.
+func runsOf(name string, shelf *inventory.Shelf) runCount {
+	var n runCount
+	for _, run := range shelf.Runs {
+		switch {
+		case run.Recipe != name || run.State == inventory.Dropped:
+		case run.State == inventory.Closed:
+			n.Closed++
+		default:
+			n.Ahead++
+		}
 	}
-	program, err := planner.Compile(p.Recipe)
+	return n
+}
+
+// showRecipe answers /recipes/:name, with saved=… an earlier version of it. A
+// text that can't be read is shown in the editor, beside what is wrong with it.
+func (s *Server) showRecipe(c *gin.Context) error {
+	versions, err := s.versions(c.Request.Context(), c.Param("name"))
 	if err != nil {
-		p.Fault = sentence(err.Error())
-		return
+		return err
 	}
-	walk, err := program.Walk(planner.Conditions{Limiting: p.Scale, Equipment: shelf.Equipment, Policy: shelf.Policy})
+	shown, ok := versions.asked(c.Query("saved"))
+	if !ok {
+		return &missing{"version", c.Query("saved"), "The versions stand on the page of the recipe."}
+	}
+	if shown.recipe == nil {
+		return s.goTo(c, "/recipes/"+versions.name+"/edit?saved="+shown.Address())
+	}
+	shelf, err := s.Lab.Load(c.Request.Context())
 	if err != nil {
-		p.Fault = sentence(err.Error())
-		return
+		return err
 	}
-	p.Walk = walk
-	p.Steps = stepRows(walk.Steps, nowhere)
+	p := &recipePage{Recipe: shown.recipe, Shown: shown, Versions: versions.all, Runs: runsOf(versions.name, shelf)}
+	p.Title, p.Section = shown.recipe.Title, "/recipes"
+	p.Check = checkRecipe(fileOf(versions.name), shown.text, shelf)
+	if p.Check.Walk != nil {
+		p.Steps = stepRows(p.Check.Walk.Steps, nowhere)
+	}
+	return s.render(c, http.StatusOK, "recipe", p)
 }

@@ -172,7 +172,11 @@ func TestRoutes(t *testing.T) {
 		{"/recipes/pentanoic-acid-dichromate/edit", 200, "Change pentanoic-acid-dichromate"},
 		{"/recipes/lead-into-gold/edit", 404, "No recipe “lead-into-gold”"},
 		{"/runs/1/chance", 200, "Chance, drawn through the whole run"},
+		{"/recipes/pentanoic-acid-dichromate/difference", 200, "What changed"},
+		{"/recipes/new", 200, "Write a recipe"},
+		{"/recipes/new?from=pentyl-pentanoate", 200, "Write a recipe"},
 		{"/recipes/lead-into-gold", 404, "No recipe “lead-into-gold”"},
+		{"/recipes/lead-into-gold/edit", 404, "No recipe “lead-into-gold”"},
 		{"/shortfalls", 200, "Shortfalls"},
 		{"/buying", 200, "Buying"},
 		{"/waste", 200, "Waste"},
@@ -235,7 +239,7 @@ func (s *Server) firstBottle(t testing.TB) string {
 func TestPagesAreWellFormed(t *testing.T) {
 	s := newSampleServer(t)
 	for _, address := range []string{"/slate", "/runs/new", "/runs/1", "/runs/1?wanted=x", "/runs/1/promise", "/runs/1/hazards", "/runs/1/answers", "/runs/1/steps/1", "/runs/1/explain/need-2",
-		"/shelf", "/shelf?find=zzzz", "/shelf/import", "/shelf/bottles/" + s.firstBottle(t), "/recipes", "/recipes/pentanoic-acid-dichromate", "/recipes/pentanoic-acid-dichromate/edit", "/runs/1/chance",
+		"/shelf", "/shelf?find=zzzz", "/shelf/import", "/shelf/bottles/" + s.firstBottle(t), "/recipes", "/recipes/pentanoic-acid-dichromate", "/recipes/pentanoic-acid-dichromate/edit", "/recipes/pentanoic-acid-dichromate/difference", "/recipes/new", "/runs/1/chance",
 		"/shortfalls", "/buying", "/waste", "/reckoner", "/reckoner/amount?mass=50+g", "/reckoner/amount?mass=x", "/nowhere"} {
 		doc := parse(t, get(t, s, address))
 		if lang, _ := attribute(one(t, doc, "html"), "lang"); lang != "en" {
@@ -287,7 +291,7 @@ func TestPagesAreWellFormed(t *testing.T) {
 // place.
 func TestNothingInline(t *testing.T) {
 	s := newSampleServer(t)
-	for _, address := range []string{"/slate", "/runs/1", "/shelf", "/waste", "/reckoner/amount"} {
+	for _, address := range []string{"/slate", "/runs/1", "/shelf", "/waste", "/recipes/new", "/reckoner/amount"} {
 		w := get(t, s, address)
 		if csp := w.Header().Get("Content-Security-Policy"); !strings.HasPrefix(csp, "default-src 'none'") || strings.Contains(csp, "unsafe") {
 			t.Errorf("%s: policy %q", address, csp)
