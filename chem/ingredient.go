@@ -66,7 +66,7 @@ func (s *Substance) NotClassified() bool {
 // chromateShare is the part of a chromium(VI) compound's mass that note 3 of
 // CLP Annex VI counts: chromate ion. 0 for everything else.
 func chromateShare(s *Substance) Fraction {
-	if !strings.Contains(s.Hazard.Notes, "3") || !isChromateVI(Reactant{Name: s.Name}) {
+	if !isChromateVI(Reactant{Name: s.Name}) || !hasNote3(s.Hazard.Notes) {
 		return 0
 	}
 	f, err := ParseFormula(s.Formula)
@@ -77,8 +77,20 @@ func chromateShare(s *Substance) Fraction {
 	if err != nil {
 		return 0
 	}
-	// CrO3 binds water to become chromate, so its share may exceed its mass.
 	return Fraction(f.Count("Cr") * float64(ion.MolarMass()) / float64(f.MolarMass()))
+}
+
+// hasNote3 finds note 3 in the notes of a record, "Notes 3 G; …" or "Annex VI
+// notes 3: …".
+func hasNote3(text string) bool {
+	_, after, ok := strings.Cut(strings.ToLower(text), "notes ")
+	if !ok {
+		return false
+	}
+	if end := strings.IndexAny(after, ";:"); end >= 0 {
+		after = after[:end]
+	}
+	return slices.Contains(strings.Fields(after), "3")
 }
 
 // HazardClasses returns the classes of a record with category and code apart.

@@ -31,6 +31,20 @@ func TestSubstanceTableHazards(t *testing.T) {
 	}
 }
 
+// Only entries with note 3 count chromate ion; that of chromium(VI) oxide and of
+// lead chromate have other notes (CLP Annex VI Table 3).
+func TestChromateShareOnlyByNote3(t *testing.T) {
+	for name, want := range map[string]bool{"chromium(VI) oxide": false, "lead(II) chromate": false, "ammonium dichromate": true, "sodium dichromate": true, "water": false} {
+		s, ok := LookupSubstance(name)
+		if !ok {
+			t.Fatalf("no %s", name)
+		}
+		if got := IngredientOf(name, s, .1).LimitShare > 0; got != want {
+			t.Errorf("%s counts chromate ion: %v, want %v", name, got, want)
+		}
+	}
+}
+
 // The chromate share of sodium dichromate dihydrate: 2 CrO4 in one formula
 // unit, 2 × 115.99 / 298.00 (row MX-13 of mixture_examples.csv).
 func TestChromateShare(t *testing.T) {
