@@ -45,7 +45,7 @@ type archiveEnd struct {
 // isn't here can be made again out of these: search indexes, schema versions.
 var archiveTables = []string{"stores", "substances", "stock_forms", "places", "bottles", "runs", "earmarks", "ledger",
 	"chains", "bottle_states", "weighings", "offers", "orders", "carboys", "equipment", "policy_rows", "recipe_texts",
-	"acts", "audit", "imports"}
+	"acts", "audit", "imports", "loans"}
 
 // WriteArchive writes the archive of one moment of the database.
 func (s *Store) WriteArchive(ctx context.Context, w io.Writer) error {

@@ -134,7 +134,7 @@ func (s *Store) fillRest(tx *gorm.DB, lab Lab, _ Act) error {
 
 // identityTables are those whose numbers PostgreSQL hands out.
 var identityTables = []string{"stores", "substances", "stock_forms", "places", "bottles", "runs", "earmarks", "ledger",
-	"bottle_states", "offers", "orders", "carboys", "equipment", "recipe_texts", "audit", "imports"}
+	"bottle_states", "offers", "orders", "carboys", "equipment", "recipe_texts", "audit", "imports", "loans"}
 
 // setSequences lets PostgreSQL go on counting after rows that came with their
 // numbers.

@@ -43,11 +43,12 @@ func TestRandomOperations(t *testing.T) {
 			t.Fatal(err)
 		}
 		random := rand.New(rand.NewPCG(3, 5))
-		r := &randomRun{t: t, s: s, random: random, models: map[string]*model{}}
+		r := &randomRun{t: t, s: s, random: random, models: map[string]*model{}, byID: map[int64]*model{}}
 		for _, b := range shelf.Bottles {
 			if b.State == Opened && b.Promised == 0 && len(r.codes) < 8 {
 				r.codes = append(r.codes, b.Code)
 				r.models[b.Code] = &model{b.Content, b.Size, map[int64]int64{}, nil}
+				r.byID[b.ID] = r.models[b.Code]
 			}
 		}
 		for i := range steps {
@@ -66,6 +67,7 @@ type randomRun struct {
 	codes   []string
 	models  map[string]*model
 	entries []Entry // draws that may be corrected
+	byID    map[int64]*model
 }
 
 func (r *randomRun) step(ctx context.Context, i int) {
@@ -134,11 +136,7 @@ func (r *randomRun) correct(ctx context.Context, act Act) {
 	if _, _, err := r.s.Correct(ctx, e.ID, act); err != nil {
 		r.t.Errorf("correct %+v: %v", e, err)
 	}
-	for code, m := range r.models {
-		if b, err := r.s.Bottle(ctx, code); err == nil && b.ID == e.BottleID {
-			m.content -= e.Amount
-		}
-	}
+	r.byID[e.BottleID].content -= e.Amount
 }
 
 // mark promises, keeping the place in the order if the run had an earmark.
