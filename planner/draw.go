@@ -202,7 +202,7 @@ func (m *matcher) draw(c *coverage, x *fit, amount, units float64) Draw {
 		d.Pieces, d.LeavesPieces = amount, left
 	} else {
 		d.Mass = chem.Mass(units * x.content)
-		d.Pure = chem.Mass(units * x.content * float64(x.share))
+		d.Pure = chem.Mass(amount)
 		d.Leaves = chem.Mass(left * x.content)
 	}
 	if x.form.Measure == inventory.ByVolume {

@@ -360,3 +360,47 @@ func TestPlanBlendsWeakStock(t *testing.T) {
 		t.Errorf("short %.3f g, want 112.5 g", got)
 	}
 }
+
+// A substitute does the work of the substance by its factor: 1.3 g of it for
+// 1 g, at 95 % in the bottle. Where the recipe doesn't name it, it isn't taken.
+func TestPlanSubstitute(t *testing.T) {
+	lab := dichromateLab()
+	lab.Substances = append(lab.Substances,
+		inventory.Substance{ID: 3, Name: "magnesium sulfate", Formula: "MgSO4"},
+		inventory.Substance{ID: 4, Name: "calcium chloride", Formula: "CaCl2"})
+	lab.Forms = append(lab.Forms, inventory.StockForm{ID: 3, SubstanceID: 4, Name: "calcium chloride 95 %", AssayLow: .95, AssayHigh: .95, Measure: inventory.ByMass})
+	lab.Bottles = append(lab.Bottles, inventory.Bottle{ID: 3, StoreID: 1, Code: "C1", FormID: 3, PlaceID: 1, State: inventory.Opened, Content: 500e6, Size: 500e6, MeasuredBy: inventory.ByWeighing, MeasuredOn: onDay - 10})
+	ask := testAsk(t, "magnesium sulfate", "MgSO4", 0.2, Accept{Substitutes: []Substitute{{Substance: "calcium chloride", Factor: 1.3}}})
+	n := needOf(t, planOf(t, &asked{asks: []Ask{ask}}, inventory.NewShelf(lab), grams(50)), "magnesium sulfate")
+	if len(n.Draws) != 1 || n.Short > 0 {
+		t.Fatalf("draws %d, short %v: %s", len(n.Draws), n.Short, n.Because)
+	}
+	if got, want := n.Draws[0].Mass.Grams(), n.Mass.Grams()*1.3/.95; math.Abs(got-want) > 1e-6*want {
+		t.Errorf("draws %.4f g of the substitute, want %.4f g", got, want)
+	}
+	ask.Accept.Substitutes = nil
+	if n := needOf(t, planOf(t, &asked{asks: []Ask{ask}}, inventory.NewShelf(lab), grams(50)), "magnesium sulfate"); n.State != Short {
+		t.Errorf("state %v without a substitute, want short", n.State)
+	}
+}
+
+// What brings the chance under the limit is what the draws lack: a bottle of
+// 300 g ± 1 % and a need of 300 g ± 1 % fall short half the time; 1.645 standard
+// deviations of √2 · 3 g more, 7.0 g, make it 5 %.
+func TestPlanCoverWith(t *testing.T) {
+	a := &assessor{n: 100_000, seed: 3, limit: 0.05}
+	x := fit{pure: 1, bottle: &inventory.Bottle{Code: "B"}}
+	r := needRisk{
+		cover: &coverage{}, charges: []float64{300}, short: make([]bool, a.n),
+		losses:  []quantity{{stream: chem.NewStream(3, "need"), mean: 1, sd: .01, most: math.Inf(1)}},
+		bottles: []bottleRisk{{fit: &x, content: quantity{stream: chem.NewStream(3, "content"), mean: 300, sd: 3, most: 400}, strength: quantity{mean: 1, most: 1}}},
+	}
+	r.bound()
+	r.draw(r.bottles)
+	if math.Abs(r.chance-0.5) > 0.01 {
+		t.Errorf("chance %.4f, want one half", r.chance)
+	}
+	if got, want := r.lacking(1-a.limit), 1.645*math.Sqrt2*3; math.Abs(got-want) > 0.15 {
+		t.Errorf("lacking %.3f g, want %.3f g", got, want)
+	}
+}

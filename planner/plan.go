@@ -179,7 +179,7 @@ type Draw struct {
 	Volume    chem.Volume // of the same; 0 if the density is not known
 	HasVolume bool
 	Pieces    float64
-	Pure      chem.Mass // pure, anhydrous substance in it
+	Pure      chem.Mass // pure, anhydrous substance in it; of a substitute what it stands in for
 	// Leaves is the heel; LeavesVolume and LeavesPieces likewise.
 	Leaves       chem.Mass
 	LeavesVolume chem.Volume
