@@ -15,6 +15,8 @@ import (
 // surely. The typed text is kept, so that a fault can be mended where it stands.
 type askForm struct {
 	Wanted, On, Certainty string
+	// Off are the hidden needs left out, by their keys.
+	Off []string
 
 	target    chem.Mass
 	on        inventory.Date
@@ -110,20 +112,10 @@ func (f askForm) query() string {
 	if f.Certainty != "" {
 		v.Set("certainty", f.Certainty)
 	}
+	if len(f.Off) > 0 {
+		v["off"] = f.Off
+	}
 	return v.Encode()
-}
-
-// sentence makes a sentence of an error text.
-func sentence(text string) string {
-	if text == "" {
-		return ""
-	}
-	first := []rune(text)
-	head := strings.ToUpper(string(first[0])) + string(first[1:])
-	if strings.HasSuffix(head, ".") || strings.HasSuffix(head, "?") {
-		return head
-	}
-	return head + "."
 }
 
 // askFault says which field an error of the planner is about, in the planner's

@@ -3,6 +3,7 @@ package views
 import (
 	"fmt"
 	"net/http"
+	"slices"
 	"strconv"
 	"strings"
 
@@ -53,7 +54,7 @@ func explanation(plan *planner.Plan, what string) (*explainPage, bool) {
 		return &explainPage{Heading: "the scale", Derivations: []chem.Derivation{plan.Scale.Derivation}}, true
 	case "need":
 		if i >= 1 && i <= len(plan.Needs) {
-			return explainNeed(plan.Needs[i-1]), true
+			return explainNeed(plan.Needs[i-1], plan.Steps), true
 		}
 	case "draw":
 		if i >= 1 && i <= len(plan.Needs) && j >= 1 && j <= len(plan.Needs[i-1].Draws) {
@@ -69,7 +70,8 @@ func explanation(plan *planner.Plan, what string) (*explainPage, bool) {
 	return nil, false
 }
 
-func explainNeed(n planner.Need) *explainPage {
+// explainNeed tells the sum of a need, then how each of its charges came about.
+func explainNeed(n planner.Need, steps []planner.StepReport) *explainPage {
 	p := &explainPage{Heading: neededText(n) + " " + n.Substance, Derivations: told(n.Derivation)}
 	if n.Why != "" {
 		p.Words = append(p.Words, sentence(n.Why))
@@ -79,6 +81,13 @@ func explainNeed(n planner.Need) *explainPage {
 	}
 	if n.Because != "" {
 		p.Words = append(p.Words, sentence(n.State.String()+": "+n.Because))
+	}
+	for _, s := range steps {
+		for _, a := range s.Adds {
+			if a.Substance == n.Substance && slices.Contains(n.For, s.Name) {
+				p.Derivations = append(p.Derivations, told(a.Derivation)...)
+			}
+		}
 	}
 	for _, b := range n.Barred {
 		p.Words = append(p.Words, "Not bottle "+b.Bottle.Code+": "+b.Why+".")

@@ -2,6 +2,7 @@ package views
 
 import (
 	"hash/maphash"
+	"strings"
 	"sync"
 
 	"stillroom/chem"
@@ -40,6 +41,7 @@ type planKey struct {
 	store     int64
 	certainty chem.Fraction
 	drawn     bool
+	off       string
 }
 
 // mostPlans bounds the memory; a plan takes some hundred kilobytes.
@@ -60,7 +62,7 @@ func (m *memory) at(state labState) {
 // plan makes a plan, or gives the one made before.
 func (s *Server) plan(req planner.Request, shelf *inventory.Shelf) (*planner.Plan, error) {
 	state := s.memory.stateOf(shelf, req.Today)
-	key := planKey{req.Recipe.Name + "\n" + req.Recipe.Text, req.Target, req.On, req.Run, req.Store, req.Certainty, req.Drawn}
+	key := planKey{req.Recipe.Name + "\n" + req.Recipe.Text, req.Target, req.On, req.Run, req.Store, req.Certainty, req.Drawn, strings.Join(req.Off, "\n")}
 	s.memory.mu.Lock()
 	s.memory.at(state)
 	plan, ok := s.memory.plans[key]

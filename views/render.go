@@ -131,6 +131,7 @@ var templateFuncs = template.FuncMap{
 	"number":   numberText,
 	"formula":  formulaHTML,
 	"sentence": sentence,
+	"bound":    bound,
 	"state":    stateMark,
 	"severity": severityWord,
 	"pair":     pairText,

@@ -5,6 +5,7 @@ import (
 	"html/template"
 	"net/http"
 	"net/url"
+	"slices"
 	"strconv"
 	"strings"
 
@@ -94,9 +95,33 @@ func (s *Server) askedRun(c *gin.Context) (*runPage, error) {
 
 // readQuery tries what the query of an address asks, if it asks anything.
 func (p *runPage) readQuery(typed url.Values, today inventory.Date) {
-	if typed.Has("wanted") || typed.Has("on") || typed.Has("certainty") {
+	off := offKeys(typed["off"])
+	if typed.Has("wanted") || typed.Has("on") || typed.Has("certainty") || len(off) > 0 {
 		p.tryAsk(typed.Get("wanted"), typed.Get("on"), typed.Get("certainty"), today)
+		p.Ask.Off = off
+		p.Kept = p.Kept && len(off) == 0
 	}
+}
+
+// offKeys sorts the keys of what is left out, each once.
+func offKeys(typed []string) []string {
+	off := slices.DeleteFunc(slices.Clone(typed), func(k string) bool { return k == "" })
+	slices.Sort(off)
+	return slices.Compact(off)
+}
+
+// With gives the address of the run with one more hidden need left out.
+func (p *runPage) With(key string) string { return p.offAddress(append(slices.Clone(p.Ask.Off), key)) }
+
+// Without gives the address of the run with a hidden need put back.
+func (p *runPage) Without(key string) string {
+	return p.offAddress(slices.DeleteFunc(slices.Clone(p.Ask.Off), func(k string) bool { return k == key }))
+}
+
+func (p *runPage) offAddress(off []string) string {
+	ask := p.Ask
+	ask.Off = off
+	return runAddress(p.Run.ID) + "?" + ask.query()
 }
 
 // answerFaults shows a page with what was typed and what is wrong with it.
@@ -145,7 +170,7 @@ func (s *Server) planRun(p *runPage, shelf *inventory.Shelf) error {
 	}
 	plan, err := s.plan(planner.Request{
 		Recipe: p.Recipe, Target: p.Ask.target, On: p.Ask.on, Today: s.Today(),
-		Run: p.Run.ID, Store: p.Run.StoreID, Certainty: p.Ask.certainty, Drawn: p.drawn,
+		Run: p.Run.ID, Store: p.Run.StoreID, Certainty: p.Ask.certainty, Drawn: p.drawn, Off: p.Ask.Off,
 	}, shelf)
 	if err != nil {
 		return p.refused(err)
@@ -161,7 +186,7 @@ func (p *runPage) dress(printed string) {
 	if plan == nil {
 		return
 	}
-	p.Lead, p.Rest = leadOf(plan.Sentence)
+	p.Lead, p.Rest = leadOf(bound(plan.Sentence))
 	p.Needs = p.needRows()
 	p.Steps = stepRows(plan.Steps, func(about string, n int) string {
 		part := "/steps/"

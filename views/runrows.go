@@ -98,7 +98,7 @@ func noteOf(n planner.Need) string {
 	if n.Because != "" && n.State != planner.Covered {
 		parts = append(parts, n.Because)
 	}
-	return strings.Join(parts, " · ")
+	return bound(strings.Join(parts, " · "))
 }
 
 // wasteRow is a waste lot with the carboy that takes it, drawn as it would

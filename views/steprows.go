@@ -110,6 +110,7 @@ const mostSays = 2
 // assessed is never hidden.
 func tellingSays(s planner.StepReport) (told, more []string) {
 	for _, say := range s.Says {
+		say = bound(say)
 		switch {
 		case repeats(say, s):
 		case strings.Contains(say, "not assessed") || strings.Contains(say, "no data") || len(told) < mostSays:
@@ -125,7 +126,7 @@ func tellingSays(s planner.StepReport) (told, more []string) {
 func repeats(say string, s planner.StepReport) bool {
 	return s.Heat != 0 && strings.HasPrefix(say, "gives off ") ||
 		s.Shortest > 0 && strings.HasPrefix(say, "not faster than ") ||
-		s.Gas > 0 && strings.HasPrefix(say, trimmed(s.Gas.Litres(), 3)+" L of "+s.GasOf)
+		s.Gas > 0 && strings.HasPrefix(say, with(trimmed(s.Gas.Litres(), 3), "L")+" of "+s.GasOf)
 }
 
 // stepLines are the numbers of a step in words.
@@ -149,7 +150,7 @@ func stepLines(s planner.StepReport) []string {
 		lines = append(lines, when)
 	}
 	if s.HoldPoint {
-		lines = append(lines, strings.TrimSpace("may stand here "+s.HoldNote))
+		lines = append(lines, strings.TrimSpace("may stand here "+bound(s.HoldNote)))
 	}
 	return lines
 }
