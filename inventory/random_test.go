@@ -31,7 +31,7 @@ func TestRandomOperations(t *testing.T) {
 	onEngines(t, func(t *testing.T, s *Store) {
 		steps := 2000
 		switch {
-		case os.Getenv("STILLROOM_CI") == "1":
+		case os.Getenv("STILLROOM_CI") == "1" && !raced:
 			steps = 10000
 		case testing.Short() || s.engine == onPostgres:
 			steps = 300

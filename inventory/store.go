@@ -134,7 +134,7 @@ func (s *Store) write(ctx context.Context, doing string, f func(tx *gorm.DB) err
 }
 
 func givenUp(err error) bool {
-	kind, _ := kindOf(err)
+	_, kind := kindOf(err)
 	return kind == ErrBusy
 }
 

@@ -1,0 +1,6 @@
+//go:build !race
+
+package inventory
+
+// raced is set in the tests of the race detector.
+const raced = false
