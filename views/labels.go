@@ -52,14 +52,24 @@ func BottleLabels(labels []BottleLabel, o PaperOptions) ([]byte, error) {
 	if err := s.fonts(); err != nil {
 		return nil, err
 	}
-	const columns, rows = 2, 4
-	for i, l := range labels {
-		if i%(columns*rows) == 0 {
-			pdf.AddPage()
-			s.cutMarks(columns, rows)
+	cell := 0 // the next free one
+	for _, l := range labels {
+		b := box{w: s.width / labelColumns, h: s.height / labelRows}
+		wide := s.needsTwo(l, b.w)
+		if wide && cell%labelColumns > 0 {
+			cell++
 		}
-		cell := i % (columns * rows)
-		b := box{float64(cell%columns) * s.width / columns, float64(cell/columns) * s.height / rows, s.width / columns, s.height / rows}
+		if cell%(labelColumns*labelRows) == 0 {
+			pdf.AddPage()
+			s.cutMarks(labelColumns, labelRows)
+			cell = 0
+		}
+		b.x, b.y = float64(cell%labelColumns)*b.w, float64(cell/labelColumns)*b.h
+		cell++
+		if wide {
+			b.w = s.width
+			cell++
+		}
 		if err := s.label(l, b); err != nil {
 			return nil, err
 		}
@@ -69,6 +79,31 @@ func BottleLabels(labels []BottleLabel, o PaperOptions) ([]byte, error) {
 		return nil, fmt.Errorf("labels: %w", err)
 	}
 	return out.Bytes(), nil
+}
+
+// A sheet has so many labels.
+const labelColumns, labelRows = 2, 4
+
+// needsTwo reports that the hazard statements don't fit beside everything else
+// on one label, which then is two wide.
+func (s *sheet) needsTwo(l BottleLabel, width float64) bool {
+	if isSmall(l) {
+		return false
+	}
+	const room, nameCost = 5, 2 // lines of statements under a name of one line; lines that each further line of it costs
+	inside := width - 2*labelInset
+	note := planner.HazardOf(l.Substance, l.Form, l.Bottle)
+	names := len(s.split(family, "B", 12, l.Form.Name, inside)) + len(s.split(family, "", labelText, identity(l), inside)) - 2
+	return len(s.split(family, "", labelText, labelStatementText(note), inside)) > room-nameCost*names
+}
+
+// labelStatementText is what a full label must say.
+func labelStatementText(note planner.HazardNote) string {
+	text := statementsText(note)
+	if strings.Contains(note.Basis, "from memory") {
+		text += " Classification unverified: read the supplier's sheet."
+	}
+	return text
 }
 
 // box is a rectangle on the page in millimetres.
@@ -115,8 +150,11 @@ func (s *sheet) label(l BottleLabel, b box) error {
 		s.put(family, "B", 12, left, y, line)
 		y += 5
 	}
-	s.put(family, "", labelText, left, y, identity(l))
-	y += labelLine + 1
+	for _, line := range s.split(family, "", labelText, identity(l), right-left) {
+		s.put(family, "", labelText, left, y, line)
+		y += labelLine
+	}
+	y++
 	// The signal word keeps its room beside the pictograms: five of them shrink.
 	side := min(labelSign, (right-left-22)/float64(max(len(note.Pictograms), 1))-1)
 	for i, code := range note.Pictograms {
@@ -162,15 +200,12 @@ func identity(l BottleLabel) string {
 // precautionary ones as fit. What doesn't fit is said to be missing, never cut
 // off in silence.
 func (s *sheet) labelStatements(l BottleLabel, note planner.HazardNote, b box) {
-	text := statementsText(note)
+	text := labelStatementText(note)
 	if isSmall(l) {
 		text = "Small container: the full label is on the outer pack or the bottle's page."
 		if strings.HasPrefix(note.Basis, "no data") {
 			text = "NO DATA: not assessed. " + text
 		}
-	}
-	if strings.Contains(note.Basis, "from memory") {
-		text += " Classification unverified: read the supplier's sheet."
 	}
 	most := max(int(b.h/labelLine), 1)
 	lines := s.split(family, "", labelText, text, b.w)

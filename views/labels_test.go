@@ -47,6 +47,26 @@ func TestBottleLabelsReadBack(t *testing.T) {
 	}
 }
 
+// A label that must say much is two wide and says all of it.
+func TestBottleLabelsSayEverything(t *testing.T) {
+	var labels []BottleLabel
+	for _, l := range demoLabels(t, 200) {
+		if !isSmall(l) {
+			labels = append(labels, l)
+		}
+	}
+	text := paperText(t, writePaper(t, printLabels(labels), nil, paperOptions()))
+	for _, l := range labels {
+		for _, s := range planner.HazardOf(l.Substance, l.Form, l.Bottle).Statements {
+			code, _, _ := strings.Cut(s, " ")
+			wantText(t, text, code)
+		}
+	}
+	if strings.Contains(text, "more on the bottle's page") {
+		t.Error("a full label leaves statements out")
+	}
+}
+
 func TestBottleLabelsScan(t *testing.T) {
 	zbar, pdftoppm := paperTool(t, "zbarimg"), paperTool(t, "pdftoppm")
 	labels := demoLabels(t, 8)

@@ -21,7 +21,7 @@ func (l *pickList) consumables() {
 	if len(rows) == 0 {
 		return
 	}
-	l.heading("Consumables", 10)
+	l.heading("Consumables", 14)
 	for _, n := range rows {
 		place := "not on the shelf"
 		if len(n.Draws) > 0 {
@@ -89,7 +89,7 @@ func (l *pickList) glassware() {
 	if len(wares) == 0 && len(l.used) == 0 {
 		return
 	}
-	l.heading("Glassware and tools", 10)
+	l.heading("Glassware and tools", 14)
 	for _, w := range wares {
 		size := ""
 		if w.size > 0 {
@@ -117,7 +117,7 @@ func (l *pickList) wasteContainers() {
 	if len(l.plan.Waste) == 0 {
 		return
 	}
-	l.heading("Waste containers to bring", 10)
+	l.heading("Waste containers to bring", 22)
 	for _, w := range l.plan.Waste {
 		remark := w.Stream
 		if w.Note != "" {
