@@ -2,7 +2,6 @@ package planner
 
 import (
 	"cmp"
-	"math"
 	"slices"
 
 	"stillroom/chem"
@@ -151,9 +150,9 @@ func (c *compiler) pKaFor(acid string, z int) (float64, bool) {
 func anionCharge(pKa []float64, pH float64) float64 {
 	ratio, sum, weighted := 1.0, 1.0, 0.0
 	for i, k := range pKa {
-		ratio *= math.Pow(10, pH-k)
+		ratio = float64(ratio * chem.Exp10(pH-k))
 		sum += ratio
-		weighted += float64(i+1) * ratio
+		weighted += float64(float64(i+1) * ratio)
 	}
 	return weighted / sum
 }

@@ -235,6 +235,6 @@ func (w *Workspace) exchangeAll(v int) {
 			continue
 		}
 		w.react(&x.reactionOf, v, extent)
-		w.heat += extent * x.protonHeat
+		w.heat += float64(extent * x.protonHeat)
 	}
 }

@@ -56,7 +56,7 @@ func dilutionFor(component int, cas string) (dilutionOf, bool) {
 			d.heat[i] = d.heat[i+1]
 			continue
 		}
-		d.heat[i] = float64(q)
+		d.heat[i] = steady(float64(q))
 	}
 	d.heat[0] = d.heat[1]
 	return d, top > 0
@@ -75,16 +75,16 @@ func (w *Workspace) dilutionHeat(v int) float64 {
 			continue
 		}
 		mass := n * w.p.matter[d.component].molar
-		sum += n * d.at(mass/(mass+water))
+		sum += float64(n * d.at(mass/(float64(mass)+float64(water))))
 	}
 	return sum
 }
 
 // at reads the table between its strengths.
 func (d *dilutionOf) at(w float64) float64 {
-	x := w * dilutionSteps
+	x := float64(w * dilutionSteps)
 	i := min(int(x), dilutionSteps-1)
-	return d.heat[i] + (x-float64(i))*(d.heat[i+1]-d.heat[i])
+	return d.heat[i] + float64((x-float64(i))*(d.heat[i+1]-d.heat[i]))
 }
 
 // stockDilution returns dilutionHeat of n mol of a component at the strength of
@@ -111,7 +111,7 @@ func (w *Workspace) heatCapacity(v int) float64 {
 	for phase := range gas {
 		for c, n := range w.in(v, phase) {
 			if n > 0 {
-				sum += n * w.p.matter[c].molar * w.p.matter[c].cp
+				sum += float64(n * w.p.matter[c].molar * w.p.matter[c].cp)
 			}
 		}
 	}
@@ -138,7 +138,7 @@ func (w *Workspace) deriveRise(cp float64) chem.Derivation {
 func (w *Workspace) mixTemperature(from, v int) {
 	a, b := w.heatCapacity(from), w.heatCapacity(v)
 	if a+b > 0 {
-		w.celsius[v] = (a*w.celsius[from] + b*w.celsius[v]) / (a + b)
+		w.celsius[v] = (float64(a*w.celsius[from]) + float64(b*w.celsius[v])) / (a + b)
 	}
 }
 

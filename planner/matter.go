@@ -5,6 +5,7 @@ import (
 	"fmt"
 	"math"
 	"slices"
+	"strconv"
 	"strings"
 
 	"stillroom/chem"
@@ -145,7 +146,7 @@ func (m matter) finish() (matter, error) {
 		return m, fmt.Errorf("the formula of %s: %w", m.name, err)
 	}
 	m.formula = f.Anhydrous()
-	m.molar, m.charge = float64(f.Anhydrous().MolarMass()), float64(f.Charge())
+	m.molar, m.charge = steady(float64(f.Anhydrous().MolarMass())), float64(f.Charge())
 	if !(m.molar > 0) {
 		return m, fmt.Errorf("%s has no molar mass", m.name)
 	}
@@ -251,7 +252,7 @@ func apparentDensities(m matter) []float64 {
 		if err == nil {
 			v := 1/float64(rho) - (1-w)/float64(water)
 			if v > 0 {
-				last = w / v
+				last = steady(w / v)
 			}
 		}
 		list[i] = last
@@ -267,6 +268,17 @@ func apparentDensities(m matter) []float64 {
 	return list
 }
 
+// steady rounds a figure that was looked up to twelve digits, so that the last
+// bit, which differs between processors, doesn't reach what is drawn with a
+// stored seed.
+func steady(x float64) float64 {
+	y, err := strconv.ParseFloat(strconv.FormatFloat(x, 'e', 11, 64), 64)
+	if err != nil {
+		return x
+	}
+	return y
+}
+
 // volumeOf returns the volume in m3 that mass of the substance takes up beside
 // water kg of water. Without any density it counts as that of as much water,
 // which the program's notes say.
@@ -275,9 +287,9 @@ func (m *matter) volumeOf(mass, water float64) float64 {
 		return 0
 	}
 	if m.inWater != nil {
-		x := mass / (mass + water) * densitySteps
+		x := float64(float64(mass) / (float64(mass) + float64(water)) * densitySteps)
 		i := min(int(x), densitySteps-1)
-		a := m.inWater[i] + (x-float64(i))*(m.inWater[i+1]-m.inWater[i])
+		a := m.inWater[i] + float64((x-float64(i))*(m.inWater[i+1]-m.inWater[i]))
 		return mass / a
 	}
 	if m.density > 0 {

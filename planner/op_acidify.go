@@ -72,7 +72,7 @@ func (o *acidifyOp) run(w *Workspace) error {
 	}
 	before := w.dilutionHeat(v) + w.stockDilution(o.dose.component, o.dose.ask, n)
 	w.pour(&o.dose, v, n)
-	w.used[o.dose.ask] += (w.value(o.factor) - 1) * n * w.p.matter[o.dose.component].molar
+	w.used[o.dose.ask] += float64((w.value(o.factor) - 1) * n * w.p.matter[o.dose.component].molar)
 	w.heat += w.dilutionHeat(v) - before
 	w.settle(v)
 	w.fullest(v)

@@ -75,7 +75,7 @@ func (o *coDistilOp) volatility(c *compiler, m *matter) error {
 	if err != nil {
 		return c.refuse(ErrNoData, err.Error(), "")
 	}
-	o.alpha = trial.Alpha
+	o.alpha = steady(trial.Alpha)
 	o.soluble = o.perWater / o.alpha // at saturation vapour and solution are in balance
 	if m.soluble >= 0 && !math.IsInf(m.soluble, 1) {
 		o.soluble = m.soluble
@@ -117,12 +117,12 @@ func (o *coDistilOp) run(w *Workspace) error {
 
 // waterFor is the mass of water that carries a share of mass over.
 func (o *coDistilOp) waterFor(mass, recovery, pot float64) float64 {
-	left := mass * (1 - recovery)
+	left := float64(mass * (1 - recovery))
 	dissolved := math.Min(mass, o.soluble*pot)
 	if left >= dissolved {
 		return (mass - left) / o.perWater
 	}
-	return (mass-dissolved)/o.perWater + pot/o.alpha*math.Log(dissolved/left)
+	return (mass-dissolved)/o.perWater + float64(pot/o.alpha*chem.Ln(dissolved/left))
 }
 
 // carryOver moves what is carried, and with it the other free organic liquids

@@ -102,7 +102,7 @@ func (w *Workspace) isolate(v, phase int) error {
 	yield := w.value(w.p.yieldFactor)
 	n := math.Min(arrives, yield*theory)
 	w.arriving += arrives
-	n = math.Min(n, math.Max(0, yield*theory-w.isolated))
+	n = math.Min(n, math.Max(0, float64(yield*theory)-w.isolated))
 	w.isolated += n
 	w.move(v, phase, w.p.productPlace(), phase, w.p.product, n)
 	if w.report != nil {

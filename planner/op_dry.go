@@ -93,7 +93,7 @@ func (o *dryOp) run(w *Workspace) error {
 		return nil
 	}
 	w.pour(&o.dose, v, planned/agent.molar)
-	w.used[o.dose.ask] += (w.value(o.factor) - 1) * planned
+	w.used[o.dose.ask] += float64((w.value(o.factor) - 1) * planned)
 	w.shift(v, organic, solid, w.p.water, w.amounts[w.at(v, organic, w.p.water)])
 	for c := range w.p.matter {
 		if !w.p.matter[c].distributes() { // the agent, the water and the salts of its droplets

@@ -49,10 +49,10 @@ func (o *makeUpOp) run(w *Workspace) error {
 		}
 		n := w.amountOf(d, v)
 		stock := w.pour(d, v, n)
-		solutes += n * w.p.matter[d.component].molar
-		stocks += stock * w.stocks[d.ask].water
+		solutes += float64(n * w.p.matter[d.component].molar)
+		stocks += float64(stock * w.stocks[d.ask].water)
 	}
-	planned := solutes * float64((1-o.to)/o.to)
+	planned := float64(solutes * float64((1-o.to)/o.to))
 	water := planned - stocks
 	w.brought[v] = 0
 	if water < 0 {

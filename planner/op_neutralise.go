@@ -77,9 +77,9 @@ func (o *neutraliseOp) run(w *Workspace) error {
 }
 
 func (o *neutraliseOp) add(w *Workspace, v int, n float64) error {
-	taken := n * w.value(o.factor)
+	taken := float64(n * w.value(o.factor))
 	w.pour(&o.dose, v, n)
-	w.used[o.dose.ask] += (taken - n) * w.p.matter[o.dose.component].molar
+	w.used[o.dose.ask] += float64((taken - n) * w.p.matter[o.dose.component].molar)
 	w.fullest(v)
 	w.settle(v)
 	w.fullest(v)

@@ -87,7 +87,7 @@ func (o *quenchOp) run(w *Workspace) error {
 	heat := w.dilutionHeat(v)
 	acid := o.addAcid(w, x, v, extent)
 	w.pour(&o.dose, v, needed*(1+o.excess))
-	w.used[o.dose.ask] += (w.value(o.factor) - 1 - o.excess) * needed * w.p.matter[o.dose.component].molar
+	w.used[o.dose.ask] += float64((w.value(o.factor) - 1 - o.excess) * needed * w.p.matter[o.dose.component].molar)
 	w.heat += w.dilutionHeat(v) - heat
 	w.fullest(v)
 	most, _ := w.mostExtent(x, v)
@@ -106,7 +106,7 @@ func (o *quenchOp) addAcid(w *Workspace, x *reactionOf, v int, extent float64) f
 		return 0
 	}
 	c := o.acidDose.component
-	short := extent*-x.numberOf(c) - w.total(v, c)
+	short := float64(extent*-x.numberOf(c)) - w.total(v, c)
 	if short <= 0 {
 		return 0
 	}

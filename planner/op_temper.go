@@ -71,7 +71,7 @@ func (w *Workspace) useIce(ask int, heat float64) {
 	}
 	melted := float64(chem.IceFor(chem.Energy(heat)))
 	spare := math.Max(w.policy.iceSpare, 1)
-	w.used[ask] += melted * spare
+	w.used[ask] += float64(melted * spare)
 	if w.report == nil {
 		return
 	}

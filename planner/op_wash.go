@@ -90,7 +90,7 @@ func (w *Workspace) spare(ask, component, chance int, portion float64) {
 	if w.u != nil && w.value(chance) == 0 {
 		return
 	}
-	portion *= w.policy.emulsionExtra
+	portion = float64(portion * w.policy.emulsionExtra)
 	w.used[ask] += portion
 	if w.report == nil {
 		return

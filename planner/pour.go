@@ -85,7 +85,7 @@ func (c *compiler) pieces(name, key, why string) int {
 func (p *Program) stockFor(a *Ask, stocks map[string]Stock) stockOf {
 	nominal := stockOf{pure: 1, form: a.Substance}
 	if a.Accept.Most > 0 {
-		nominal.pure = float64(a.Accept.Least+a.Accept.Most) / 2
+		nominal.pure = float64(float64(a.Accept.Least+a.Accept.Most) / 2)
 		nominal.water = 1 - nominal.pure
 		nominal.planned = nominal.water / nominal.pure
 	}
@@ -103,7 +103,7 @@ func (w *Workspace) amountOf(d *dose, v int) float64 {
 	case byMole:
 		factor = w.limiting
 	case bySurface:
-		factor = math.Pow(w.limiting/float64(d.at), 2.0/3)
+		factor = chem.Raised(w.limiting/float64(d.at), 2.0/3)
 	case fixedRule:
 		factor = 1 / w.batches
 	case byPhaseVolume:
@@ -161,8 +161,8 @@ func (w *Workspace) pour(d *dose, v int, n float64) float64 {
 	}
 	before := w.brought[v]
 	total := w.draw(d.ask, d.component, v, n)
-	pure := n * w.p.matter[d.component].molar
-	water := pure/float64(d.madeUp) - pure - total*w.stocks[d.ask].water
+	pure := float64(n * w.p.matter[d.component].molar)
+	water := pure/float64(d.madeUp) - pure - float64(total*w.stocks[d.ask].water)
 	w.draw(d.waterAsk, w.p.water, v, water/w.p.matter[w.p.water].molar)
 	w.brought[v] = before - math.Min(water, 0)
 	return total
@@ -177,15 +177,15 @@ func (w *Workspace) draw(ask, component, v int, n float64) float64 {
 	}
 	m := &w.p.matter[component]
 	s := &w.stocks[ask]
-	pure := n * m.molar
+	pure := float64(n * m.molar)
 	stock := pure / s.pure
 	water := stock * s.water / w.p.matter[w.p.water].molar
 	w.amounts[w.at(v, m.home, component)] += n
 	w.amounts[w.at(v, aqueous, w.p.water)] += water
 	w.came[component] += n
 	w.came[w.p.water] += water
-	w.brought[v] += stock*s.water - pure*s.planned
-	w.used[ask] += pure
+	w.brought[v] += float64(stock*s.water) - float64(pure*s.planned)
+	w.used[ask] += float64(pure)
 	w.dirty[v] = true
 	if w.report != nil {
 		w.report.drawn(w, ask, component, v, n, stock, water)
@@ -208,7 +208,7 @@ func (w *Workspace) countPieces(ask int, pieces, pH float64) {
 // water puts the water a step plans into place v, less what the stocks have
 // brought there, and returns what was taken off.
 func (w *Workspace) waterCharge(d *dose, v int, n float64) (takenOff float64) {
-	planned := n * w.p.matter[w.p.water].molar
+	planned := float64(n * w.p.matter[w.p.water].molar)
 	takenOff = math.Min(planned, w.brought[v])
 	if takenOff < 0 {
 		takenOff = math.Max(takenOff, -planned)

@@ -144,7 +144,7 @@ func (w *Workspace) react(x *reactionOf, v int, extent float64) float64 {
 	}
 	w.dirty[v] = true
 	for _, t := range x.terms {
-		n := t.number * extent
+		n := float64(t.number * extent)
 		if n < 0 {
 			w.consume(v, t.component, -n)
 			continue

@@ -122,6 +122,10 @@ func (r *reporter) counted(w *Workspace, ask int, pieces, pH float64) {
 	r.step.Adds = append(r.step.Adds, Add{Substance: a.Substance, Pieces: pieces, Rule: a.Rule})
 }
 
+// sameFill is the relative difference of two volumes that counts as none: what
+// rounding makes of it must not decide which contents are shown.
+const sameFill = 1e-9
+
 // fullest notes the contents of a vessel if it has never been so full in this
 // step.
 func (w *Workspace) fullest(v int) {
@@ -131,7 +135,7 @@ func (w *Workspace) fullest(v int) {
 	}
 	volume := w.filled(v)
 	r.peaks = append(r.peaks, peak{w.step.N, v, volume, r.limitKey(w.step, v)})
-	if v != w.step.vessel && r.most > 0 || volume < r.most {
+	if r.most > 0 && (v != w.step.vessel || volume <= r.most*(1+sameFill)) {
 		return
 	}
 	r.most = volume

@@ -79,7 +79,7 @@ func saltingFor(m *matter) float64 {
 	if err != nil || p.P < 1 {
 		return 0.114
 	}
-	return 0.114 + 0.040*math.Log10(p.P)
+	return steady(0.114 + 0.040*math.Log10(p.P))
 }
 
 // mostSalt is the amount concentration of sodium chloride in its saturated
@@ -98,18 +98,18 @@ func (w *Workspace) saltedOut(v, component int) float64 {
 	charges := 0.0
 	for c, n := range w.in(v, aqueous) {
 		if n > 0 {
-			charges += n * w.p.matter[c].protons.cationCharge
+			charges += float64(n * w.p.matter[c].protons.cationCharge)
 		}
 	}
 	if charges == 0 {
 		return 1
 	}
 	litres := w.volume(v, aqueous) * 1e3
-	return math.Pow(10, -k*math.Min(charges/litres, mostSalt))
+	return chem.Exp10(-k * math.Min(charges/litres, mostSalt))
 }
 
 // overRest turns a mass fraction into mass over the mass of the rest.
-func overRest(w chem.Fraction) float64 { return float64(w / (1 - w)) }
+func overRest(w chem.Fraction) float64 { return steady(float64(w / (1 - w))) }
 
 // partitionFor is the measured or computed partition coefficient, else the
 // ratio of solubilities (METHODS e): a liquid solute mixes with the solvent, so
@@ -117,10 +117,10 @@ func overRest(w chem.Fraction) float64 { return float64(w / (1 - w)) }
 func partitionFor(solute, solvent *matter) float64 {
 	p, err := chem.PartitionOf(solute.cas, solvent.cas)
 	if err == nil {
-		return p.P
+		return steady(p.P)
 	}
 	if solute.soluble > 0 && !math.IsInf(solute.soluble, 1) && solute.density > 0 {
-		return solute.density / (solute.soluble * waterDensity)
+		return steady(solute.density / (solute.soluble * waterDensity))
 	}
 	return math.NaN()
 }
@@ -203,8 +203,8 @@ func (w *Workspace) intoOrganic(v int) {
 func (w *Workspace) mixMains(v, main int, water float64) bool {
 	s := w.p.mutual[main]
 	m := &w.p.matter[main]
-	liquid := w.amounts[w.at(v, organic, main)] * m.molar
-	into := s.inWater * water * w.saltedOut(v, main)
+	liquid := float64(w.amounts[w.at(v, organic, main)] * m.molar)
+	into := float64(s.inWater * water * w.saltedOut(v, main))
 	if into >= liquid {
 		w.dissolveAll(v)
 		return false
@@ -263,9 +263,9 @@ func (w *Workspace) distribute(v, main int) {
 			continue // stays where it belongs; noted when the program was made
 		}
 		p *= w.spread / w.saltedOut(v, c)
-		share := p * orgVolume / (p*orgVolume + aqVolume)
-		org[c] = n * share
-		aq[c] = n - org[c]
+		share := float64(p*orgVolume) / (float64(p*orgVolume) + aqVolume)
+		org[c] = float64(n * share)
+		aq[c] = n - float64(org[c])
 	}
 }
 

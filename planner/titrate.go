@@ -37,16 +37,16 @@ func (w *Workspace) charges(v int, pH float64) (cations, anions, carbonic float6
 		}
 		if pKa, ok := metalProtons[m.protons.cation]; ok {
 			ions := n * m.protons.cationCharge / 3
-			cations += ions * (3 - anionCharge(pKa, pH))
+			cations += float64(ions * (3 - anionCharge(pKa, pH)))
 		} else {
-			cations += n * m.protons.cationCharge
+			cations += float64(n * m.protons.cationCharge)
 		}
 		if k := w.p.acidIndex[c]; k >= 0 {
 			if w.p.acids[k].number == carbonicAcid {
-				carbonic += n * m.protons.acids
+				carbonic += float64(n * m.protons.acids)
 				continue
 			}
-			anions += n * m.protons.acids * anionCharge(w.p.acids[k].pKa, pH)
+			anions += float64(n * m.protons.acids * anionCharge(w.p.acids[k].pKa, pH))
 		}
 	}
 	return cations, anions, carbonic
@@ -57,7 +57,7 @@ const ionProduct = 13.995
 
 // freeCharge is [OH⁻] − [H⁺] at a pH in mol/m3.
 func freeCharge(pH float64) float64 {
-	return 1e3 * (math.Pow(10, pH-ionProduct) - math.Pow(10, -pH))
+	return 1e3 * (chem.Exp10(pH-ionProduct) - chem.Exp10(-pH))
 }
 
 // carbonDioxideInWater is what water holds of carbon dioxide under its own gas at
@@ -73,9 +73,9 @@ const carbonDioxideInWater = 34
 // place is below that pH already.
 func (w *Workspace) acidFor(t titration, v int, pH, waterPerMole float64) float64 {
 	cations, anions, _ := w.charges(v, pH)
-	z := t.acids * anionCharge(w.p.acids[t.acid].pKa, pH)
+	z := float64(t.acids * anionCharge(w.p.acids[t.acid].pKa, pH))
 	volume, free := w.volume(v, aqueous), freeCharge(pH)
-	return (cations - anions - volume*free) / (z + waterPerMole*free/waterDensity)
+	return (cations - anions - float64(volume*free)) / (z + float64(waterPerMole*free)/waterDensity)
 }
 
 // baseFor returns the amount of base that brings place v to pH. Carbonate gives
@@ -85,19 +85,19 @@ func (w *Workspace) acidFor(t titration, v int, pH, waterPerMole float64) float6
 func (w *Workspace) baseFor(t titration, v int, pH, stays float64) float64 {
 	cations, anions, carbonic := w.charges(v, pH)
 	volume := w.volume(v, aqueous)
-	short := anions + volume*freeCharge(pH) - cations
+	short := anions + float64(volume*freeCharge(pH)) - cations
 	if t.acid < 0 {
 		return short/t.cations + w.carbonicCharge(carbonic, volume, pH, stays)/t.cations
 	}
-	perMole := t.acids * anionCharge(w.p.acids[t.acid].pKa, pH)
-	if all := (short + carbonic*anionCharge(w.p.acids[t.acid].pKa, pH)) / (t.cations - perMole); t.cations > perMole && (carbonic+all*t.acids) <= w.carbonicKept(volume, pH, stays) {
+	perMole := float64(t.acids * anionCharge(w.p.acids[t.acid].pKa, pH))
+	if all := (short + float64(carbonic*anionCharge(w.p.acids[t.acid].pKa, pH))) / (t.cations - perMole); t.cations > perMole && (carbonic+float64(all*t.acids)) <= w.carbonicKept(volume, pH, stays) {
 		return all // so little carbonate that all of it stays dissolved
 	}
 	if perMole >= t.cations {
 		return math.Inf(1)
 	}
 	kept := w.carbonicKept(volume, pH, stays)
-	return (short + kept*anionCharge(w.p.acids[t.acid].pKa, pH)) / t.cations
+	return (short + float64(kept*anionCharge(w.p.acids[t.acid].pKa, pH))) / t.cations
 }
 
 // carbonicKept is the carbonic acid in all its forms that stays in the water.
@@ -107,7 +107,7 @@ func (w *Workspace) carbonicKept(volume, pH, stays float64) float64 {
 		return 0
 	}
 	pKa := w.p.acids[k].pKa
-	free := 1 + math.Pow(10, pH-pKa[0]) + math.Pow(10, 2*pH-pKa[0]-pKa[1])
+	free := 1 + chem.Exp10(pH-pKa[0]) + chem.Exp10(float64(2*pH)-pKa[0]-pKa[1])
 	return carbonDioxideInWater * stays * volume * free
 }
 

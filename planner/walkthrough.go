@@ -207,13 +207,13 @@ func (w *Workspace) compare() error {
 			continue
 		}
 		for _, e := range m.elements {
-			off[e.index] += d * e.count
-			size[e.index] += s * e.count
+			off[e.index] += float64(d * e.count)
+			size[e.index] += float64(s * e.count)
 		}
-		off[mass] += d * m.molar
-		size[mass] += s * m.molar
-		off[charge] += d * m.charge
-		size[charge] += s * math.Abs(m.charge)
+		off[mass] += float64(d * m.molar)
+		size[mass] += float64(s * m.molar)
+		off[charge] += float64(d * m.charge)
+		size[charge] += float64(s * math.Abs(m.charge))
 	}
 	for k := range off {
 		if size[k] == 0 {

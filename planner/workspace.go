@@ -185,7 +185,7 @@ func (w *Workspace) moveAll(from, to int) {
 func (w *Workspace) mass(v, phase int) float64 {
 	sum := 0.0
 	for c, n := range w.in(v, phase) {
-		sum += n * w.p.matter[c].molar
+		sum += float64(n * w.p.matter[c].molar)
 	}
 	return sum
 }
