@@ -1,14 +1,11 @@
 package planner
 
 import (
-	"cmp"
 	"fmt"
 	"math"
 	"slices"
-	"sync"
 
 	"stillroom/chem"
-	"stillroom/inventory"
 )
 
 // The chance of running short. For each draw of the run
@@ -22,90 +19,6 @@ import (
 // two plans that share a bottle share its luck, and a question asked twice gets
 // the same draws (common random numbers). With normal need and have the chance
 // is Φ((need − have)/√(sd²+sd²)).
-
-// quantity is something uncertain: a name for its stream and a distribution.
-type quantity struct {
-	stream chem.Stream
-	mean   float64
-	sd     float64 // of a normal distribution around mean, cut at least and most
-	least  float64
-	most   float64
-	flat   bool      // uniform between least and most
-	dist   chem.Dist // any other; nil for none
-}
-
-// at returns draw i.
-func (q *quantity) at(i int) float64 {
-	switch {
-	case q.dist != nil:
-		return q.stream.Draw(q.dist, i)
-	case q.flat:
-		return q.least + float64((q.most-q.least)*q.stream.Uniform(i))
-	case q.sd == 0:
-		return q.mean
-	}
-	return min(max(q.mean+float64(q.sd*standardNormal(q.stream.Uniform(i))), q.least), q.most)
-}
-
-// extreme returns a value that isn't passed, downwards or upwards: for other
-// than normal and uniform distributions less than once in 10¹² draws.
-func (q *quantity) extreme(up bool) float64 {
-	p, z := 1e-12, standardNormal(0)
-	if up {
-		p, z = 1-1e-12, -z
-	}
-	switch {
-	case q.dist != nil:
-		return q.dist.Quantile(p)
-	case q.flat && up:
-		return q.most
-	case q.flat:
-		return q.least
-	}
-	return min(max(q.mean+q.sd*z, q.least), q.most)
-}
-
-// normalSteps is how finely the standard normal distribution is tabulated: the
-// outermost step lies at 4.3 standard deviations.
-const normalSteps = 1 << 16
-
-var normalTable = sync.OnceValue(func() []float64 {
-	standard, err := chem.NewNormal(0, 1)
-	if err != nil {
-		panic(err) // 0 and 1 are a mean and a standard deviation
-	}
-	table := make([]float64, normalSteps)
-	for i := range table {
-		table[i] = standard.Quantile((float64(i) + 0.5) / normalSteps)
-	}
-	return table
-})
-
-// standardNormal is the quantile of p by the table.
-func standardNormal(p float64) float64 { return normalTable()[int(p*normalSteps)] }
-
-// bottleRisk is a bottle's part in a need.
-type bottleRisk struct {
-	fit      *fit
-	missing  float64 // chance that it isn't found
-	found    chem.Stream
-	content  quantity // ledger units
-	strength quantity // against the low end that was planned with
-	off      float64  // ledger units that aren't for this need
-	doubtful bool     // weighing would tell more
-}
-
-// have is what the bottle gives in draw i, in the unit of the need.
-func (b *bottleRisk) have(i int) float64 {
-	if b.found.Uniform(i) < b.missing {
-		return 0
-	}
-	return max(0, b.content.at(i)-b.off) * b.strength.at(i) * b.fit.pure
-}
-
-func (b *bottleRisk) least() float64 {
-	return max(0, b.content.extreme(false)-b.off) * b.strength.extreme(false) * b.fit.pure
-}
 
 // needRisk is a need's part in the run.
 type needRisk struct {
@@ -132,9 +45,13 @@ type assessor struct {
 	run   []uint8 // how many needs are short in each draw, up to 255
 }
 
+// mostDraws bounds what a policy row can ask for: a million draws have a
+// standard error of a twentieth of a point at the worst.
+const mostDraws = 1_000_000
+
 func newAssessor(m *matcher) *assessor {
 	return &assessor{
-		m: m, n: max(2, int(m.policy.value("risk.draws"))), seed: uint64(m.policy.value("risk.seed")),
+		m: m, n: int(min(max(2, m.policy.value("risk.draws")), mostDraws)), seed: uint64(m.policy.value("risk.seed")),
 		limit: m.policy.value("risk.limit"),
 	}
 }
@@ -208,113 +125,6 @@ func (a *assessor) loss(ask Ask, do, name string) quantity {
 	return q
 }
 
-// shiftedLogNormal is base plus a log-normal part.
-type shiftedLogNormal struct {
-	base float64
-	chem.LogNormal
-}
-
-// Quantile returns the value that a share p lies below.
-func (s shiftedLogNormal) Quantile(p float64) float64 { return s.base + s.LogNormal.Quantile(p) }
-
-// shifted returns base plus a log-normal part, or nil, which is no loss at all,
-// if the prior isn't one.
-func shifted(base, mean, sd float64) chem.Dist {
-	l, err := chem.NewLogNormal(mean, sd)
-	if err != nil {
-		return nil
-	}
-	return shiftedLogNormal{base, l}
-}
-
-// bottleRisk sets up a bottle of which a need takes own ledger units.
-func (a *assessor) bottleRisk(x *fit, own float64) bottleRisk {
-	b := x.bottle
-	r := bottleRisk{
-		fit: x, missing: a.missing(x), found: chem.NewStream(a.seed, "found "+b.Code),
-	}
-	// What isn't for this need: promised, taken by other needs, dead.
-	r.off = float64(x.promised+a.m.used[b.ID]+a.m.dead(x)) - own
-	r.content, r.doubtful = a.content(x)
-	r.strength = quantity{stream: chem.NewStream(a.seed, "assay "+b.Code), mean: 1, least: 1, most: 1}
-	if x.top > x.strength && b.LotAssay == 0 && x.form.Measure != inventory.ByCount && !x.aged {
-		r.strength.flat, r.strength.most = true, float64(x.top/x.strength)
-	}
-	return r
-}
-
-// missing is the chance that a bottle isn't found, by when it was last seen.
-func (a *assessor) missing(x *fit) float64 {
-	if standsStill(x.bottle, x.form, a.m.policy.value("prior.missing.most-size")) {
-		return 0
-	}
-	seen := max(x.bottle.MeasuredOn, x.bottle.Received, x.bottle.Opened)
-	switch age := a.m.req.Today - seen; {
-	case seen.Set() && age <= 30:
-		return a.m.policy.value("prior.missing.recent")
-	case seen.Set() && age <= 365:
-		return a.m.policy.value("prior.missing.year")
-	}
-	return a.m.policy.value("prior.missing.older")
-}
-
-// standsStill reports whether a container is so large, in litres or kilograms,
-// that it is neither mislaid nor carried.
-func standsStill(b *inventory.Bottle, form *inventory.StockForm, most float64) bool {
-	switch form.Measure {
-	case inventory.ByMass:
-		return float64(inventory.MassUnits(b.Size)) >= most
-	case inventory.ByVolume:
-		return inventory.VolumeUnits(b.Size).Litres() >= most
-	}
-	return false
-}
-
-// content is the distribution of what is in a bottle, by how that was found
-// out, and whether weighing it would tell more.
-func (a *assessor) content(x *fit) (quantity, bool) {
-	b := x.bottle
-	has, size := float64(b.Content), max(float64(b.Size), float64(b.Content))
-	q := quantity{stream: chem.NewStream(a.seed, "content "+b.Code), mean: has, least: 0, most: size * 1.05}
-	prior := func(key string) float64 { return a.m.policy.value("prior.content." + key) }
-	switch b.MeasuredBy {
-	case inventory.ByUnopened:
-		q.flat, q.least, q.most = true, has*(1+prior("unopened-low")), has*(1+prior("unopened-high"))
-		return q, false
-	case inventory.ByWeighing:
-		q.sd = has * prior("weighed")
-		return q, false
-	case inventory.ByLedger:
-		q.sd = has * prior("ledger")
-		if x.form.StorageClass == flammable && b.MeasuredOn.Set() {
-			months := max(0, float64(a.m.req.On-b.MeasuredOn)/30)
-			q.sd = math.Hypot(q.sd, has*prior("ledger-month")*months)
-		}
-	case inventory.ByLevel:
-		q.sd = size * prior(levelKey(x.form))
-	default: // guessed, or nobody said how
-		q.sd = size * prior("guessed")
-	}
-	return q, x.form.Measure != inventory.ByCount
-}
-
-// levelKey takes a liquid's bottle for amber, because its glass isn't recorded
-// and a level is read less surely through amber.
-func levelKey(form *inventory.StockForm) string {
-	if form.Measure == inventory.ByVolume {
-		return "level-amber"
-	}
-	return "level-powder"
-}
-
-// weighed is the content once the bottle has been weighed, if what is thought
-// to be in it is right.
-func (a *assessor) weighed(b *bottleRisk) quantity {
-	q := b.content
-	q.sd = q.mean * a.m.policy.value("prior.content.weighed")
-	return q
-}
-
 // assessNeed draws one need, naming spares until its chance is within share.
 func (a *assessor) assessNeed(r *needRisk, share float64) {
 	n := &r.cover.need
@@ -375,28 +185,6 @@ func (r *needRisk) bound() {
 	if len(r.bottles) == 1 && !r.certain {
 		r.safe = r.bottles[0].enoughAbove(r.most)
 	}
-}
-
-// enoughAbove is the random number above which the content, at the weakest the
-// bottle may be, is more than an amount; 1 if there is none.
-func (b *bottleRisk) enoughAbove(amount float64) float64 {
-	units := amount/(b.strength.extreme(false)*b.fit.pure) + b.off
-	q := &b.content
-	switch {
-	case q.dist != nil || q.sd == 0 || q.flat || units >= q.most:
-		return 1
-	case units < q.least:
-		return 0
-	}
-	low, high := 0.0, 1.0
-	for range 30 {
-		if mid := (low + high) / 2; q.mean+float64(q.sd*standardNormal(mid)) > units {
-			high = mid
-		} else {
-			low = mid
-		}
-	}
-	return high
 }
 
 // draw finds the draws in which the bottles don't suffice.
@@ -467,72 +255,6 @@ func (r *needRisk) lacking(p float64) float64 {
 	}
 	slices.Sort(lack)
 	return max(0, lack[min(len(lack)-1, int(math.Ceil(p*float64(len(lack)))))])
-}
-
-// mostSpares bounds the bottles named beside those drawn on.
-const mostSpares = 2
-
-// nameSpares adds fit bottles that aren't drawn on, the least trouble first,
-// until the chance is within share.
-func (a *assessor) nameSpares(r *needRisk, share float64) {
-	before := r.chance
-	for len(r.cover.need.Spares) < mostSpares && r.chance > share {
-		x := a.nextSpare(r)
-		if x == nil {
-			break
-		}
-		spare := a.bottleRisk(x, 0)
-		was := r.chance
-		bottles := append(slices.Clone(r.bottles), spare)
-		r.drawSpare(bottles)
-		if r.chance >= was {
-			break
-		}
-		r.bottles = bottles
-		place, _ := a.m.shelf.Place(x.bottle.PlaceID)
-		r.cover.need.Spares = append(r.cover.need.Spares, Spare{Bottle: *x.bottle, Form: *x.form, Place: place})
-	}
-	for k := range r.cover.need.Spares {
-		s := &r.cover.need.Spares[k]
-		s.Why = fmt.Sprintf("%s at hand as a spare takes the chance of running short from %.2g %% to %.2g %%", s.Bottle.Code, before*100, r.chance*100)
-	}
-}
-
-// drawSpare looks again at the draws that are short: a further bottle can only
-// help. What is certain of the bottles drawn on doesn't hold for the spares.
-func (r *needRisk) drawSpare(bottles []bottleRisk) {
-	bad := 0
-	for i := range r.short {
-		if r.short[i] {
-			r.short[i] = r.shortOf(bottles, i)
-			bad += b2i(r.short[i])
-		}
-	}
-	r.chance = float64(bad) / float64(len(r.short))
-}
-
-// nextSpare is the fit bottle, neither drawn on nor a spare yet, that is the
-// least trouble: opened, then the first to expire, then by code.
-func (a *assessor) nextSpare(r *needRisk) *fit {
-	var best *fit
-	for i := range r.cover.found.fits {
-		x := &r.cover.found.fits[i]
-		if x.free <= a.m.used[x.bottle.ID] || slices.ContainsFunc(r.bottles, func(b bottleRisk) bool { return b.fit.bottle.ID == x.bottle.ID }) {
-			continue
-		}
-		if best == nil || lessTrouble(x, best) < 0 {
-			best = x
-		}
-	}
-	return best
-}
-
-func lessTrouble(x, y *fit) int {
-	return cmp.Or(
-		cmp.Compare(b2i(x.sealed), b2i(y.sealed)),
-		cmp.Compare(endOfLife(x.life), endOfLife(y.life)),
-		cmp.Compare(x.bottle.Code, y.bottle.Code),
-	)
 }
 
 // decides names the need most likely to run short.
