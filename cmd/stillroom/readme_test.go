@@ -36,8 +36,10 @@ func TestReadmeRecipe(t *testing.T) {
 	if err != nil {
 		t.Fatal(err)
 	}
-	if len(plan.Findings) > 0 {
-		t.Errorf("the README's recipe has something to know: %v", plan.Findings)
+	for _, f := range plan.Findings {
+		if f.Severity > planner.Note {
+			t.Errorf("the README's recipe isn't a good example: %s: %s", f.Kind, f.Text)
+		}
 	}
 }
 
