@@ -7,7 +7,6 @@ import (
 	"slices"
 
 	"gorm.io/gorm"
-	"gorm.io/gorm/clause"
 )
 
 // Want is an amount of a bottle that a run is to be promised.
@@ -357,33 +356,33 @@ func (s *Store) ReleaseBottle(ctx context.Context, run int64, code string, act A
 }
 
 func (s *Store) releaseRun(tx *gorm.DB, run int64, act Act) error {
-	var marks []Earmark
-	if err := tx.Clauses(clause.Locking{Strength: "UPDATE"}).Where("run_id = ?", run).Order("bottle_id").Find(&marks).Error; err != nil {
-		return err
-	}
-	return s.releaseAll(tx, marks, act)
+	_, err := s.releaseWhere(tx, act, "run_id = ?", run)
+	return err
 }
 
-func (s *Store) releaseAll(tx *gorm.DB, marks []Earmark, act Act) error {
-	if len(marks) == 0 {
-		return nil
-	}
-	ids := make([]int64, len(marks))
-	for i, m := range marks {
-		ids[i] = m.BottleID
+// releaseWhere deletes the earmarks that fit a condition. Their bottles are
+// locked first, as in every change of an earmark, and only then are the earmarks
+// read for good.
+func (s *Store) releaseWhere(tx *gorm.DB, act Act, condition string, arg any) (marks []Earmark, err error) {
+	var ids []int64
+	if err := tx.Model(&Earmark{}).Where(condition, arg).Distinct().Pluck("bottle_id", &ids).Error; err != nil || len(ids) == 0 {
+		return nil, err
 	}
 	bottles, err := lockBottles(tx, ids)
 	if err != nil {
-		return err
+		return nil, err
+	}
+	if err := tx.Where(condition, arg).Where("bottle_id IN ?", ids).Order("bottle_id, id").Find(&marks).Error; err != nil {
+		return nil, err
 	}
 	for _, m := range marks {
 		b := bottles[m.BottleID]
 		if err := s.release(tx, &b, m, act); err != nil {
-			return err
+			return nil, err
 		}
 		bottles[m.BottleID] = b
 	}
-	return nil
+	return marks, nil
 }
 
 // Lapse releases every earmark that has lapsed and returns them.
@@ -393,10 +392,8 @@ func (s *Store) Lapse(ctx context.Context, act Act) (marks []Earmark, err error)
 		return nil, err
 	}
 	err = s.write(ctx, doing, func(tx *gorm.DB) error {
-		if err := tx.Where("ends < ?", s.today()).Order("bottle_id, id").Find(&marks).Error; err != nil {
-			return err
-		}
-		return s.releaseAll(tx, marks, act)
+		marks, err = s.releaseWhere(tx, act, "ends < ?", s.today())
+		return err
 	})
 	return marks, err
 }

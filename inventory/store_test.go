@@ -327,7 +327,19 @@ func TestEarmark(t *testing.T) {
 		if got, _ := s.Bottle(ctx, b.Code); got.Promised != mL(160) {
 			t.Errorf("promised %d, want %d", got.Promised, mL(160))
 		}
-		// Lapsed earmarks give way: run 5 has 300 of 480 mL, but no longer.
+		if lapsed, err := s.Lapse(ctx, clerk); err != nil || len(lapsed) != 1 || lapsed[0].RunID != 5 {
+			t.Errorf("Lapse: %+v, %v", lapsed, err)
+		}
+		if err := s.Reconfirm(ctx, 3, demoDay.AddDays(60), clerk); err != nil {
+			t.Error(err)
+		}
+		if err := s.Reconfirm(ctx, 3, demoDay.AddDays(-1), clerk); !errors.Is(err, ErrInvalid) {
+			t.Errorf("reconfirmed until yesterday: %v", err)
+		}
+		// Lapsed earmarks give way: run 5 has 300 of 480 mL, but not for long.
+		if _, err := s.Earmark(ctx, 5, Want{Bottle: open1(t, s, "ethyl acetate litre").Code, Amount: mL(300), Ends: demoDay.AddDays(-1)}, clerk); err != nil {
+			t.Error(err)
+		}
 		lapsed := open1(t, s, "ethyl acetate litre")
 		if _, err := s.Earmark(ctx, 1, Want{Bottle: lapsed.Code, Amount: mL(480)}, clerk); err != nil {
 			t.Errorf("over a lapsed earmark: %v", err)
