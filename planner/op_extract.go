@@ -36,6 +36,9 @@ func (o *extractOp) read(f *fields) {
 	o.what = f.text("of", false)
 	o.portions, _ = take(f, "portions", false, readCount, "how many portions, such as 5")
 	o.recovery, _ = take(f, "recovery", false, chem.ParseFraction, "the share to be taken out, such as 98 %")
+	if o.portions > mostPortions {
+		f.faultAt(f.values["portions"], fmt.Sprintf("%d portions", o.portions), fmt.Sprintf("1 to %d", mostPortions))
+	}
 	if o.portions == 0 && o.recovery == 0 && f.values["portions"] == nil && f.values["recovery"] == nil {
 		f.fault(f.at, f.what+" says neither portions nor recovery", "portions: 5 or recovery: 98 %")
 	}

@@ -59,14 +59,17 @@ func readPH(text string) (float64, error) {
 	return x, nil
 }
 
-// readCount reads a whole number from 1.
+// mostTimes is more often than anybody washes or rinses by hand.
+const mostTimes = 50
+
+// readCount reads a whole number from 1 to mostTimes.
 func readCount(text string) (int, error) {
 	n, err := strconv.Atoi(text)
 	if err != nil {
 		return 0, fmt.Errorf("no whole number")
 	}
-	if n < 1 {
-		return 0, errRange
+	if n < 1 || n > mostTimes {
+		return 0, fmt.Errorf("%w, 1 to %d", errRange, mostTimes)
 	}
 	return n, nil
 }

@@ -2,8 +2,11 @@ package planner
 
 import (
 	"errors"
+	"math/rand/v2"
 	"strings"
 	"testing"
+
+	"stillroom/chem"
 )
 
 const smallRecipe = `recipe: small
@@ -127,6 +130,39 @@ func TestEveryStepKindIsKnown(t *testing.T) {
 	}
 }
 
+// Recipes with bytes changed at random are refused or walked, never a panic, a
+// balance that is off, or a walk without end.
+func TestDamagedRecipes(t *testing.T) {
+	alphabet := []byte("0123456789 :{}[]-%,abcxyz\n\"°")
+	r := rand.New(rand.NewPCG(1, 2))
+	walked := 0
+	for range 300 {
+		text := []byte(Recipes()[r.IntN(len(Recipes()))].Text)
+		for range 1 + r.IntN(4) {
+			text[r.IntN(len(text))] = alphabet[r.IntN(len(alphabet))]
+		}
+		recipe, err := ParseRecipe("x.yaml", text)
+		if err != nil {
+			continue
+		}
+		p, err := Compile(recipe)
+		if err != nil {
+			continue
+		}
+		w, err := p.Walk(labConditions(0.5))
+		if err != nil {
+			continue
+		}
+		walked++
+		if !(w.Balance <= balanceTolerance) || !chem.Finite(w.Product.Mass) {
+			t.Errorf("balance off by %v, product %v", w.Balance, w.Product.Mass)
+		}
+	}
+	if walked < 20 {
+		t.Errorf("only %d of 300 damaged recipes could be walked: the test has lost its meaning", walked)
+	}
+}
+
 func FuzzParseRecipe(f *testing.F) {
 	for _, r := range Recipes() {
 		f.Add(r.Text)
@@ -135,6 +171,16 @@ func FuzzParseRecipe(f *testing.F) {
 		r, err := ParseRecipe("x.yaml", []byte(text))
 		if (r == nil) == (err == nil) {
 			t.Errorf("ParseRecipe gave %v, %v", r, err)
+		}
+		if err != nil {
+			return
+		}
+		p, err := Compile(r)
+		if err != nil {
+			return
+		}
+		if w, err := p.Walk(labConditions(0.5)); err == nil && !(w.Balance <= balanceTolerance) {
+			t.Errorf("a walk that balances to %v only was let through", w.Balance)
 		}
 	})
 }
