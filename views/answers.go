@@ -38,6 +38,9 @@ func (s *Server) showAnswers(c *gin.Context) error {
 	if err != nil {
 		return err
 	}
+	if isOver(run) {
+		return noPlan(run)
+	}
 	req := planner.Request{Recipe: recipe, Target: chem.Mass(run.TargetUG) * chem.Microgram, On: run.On,
 		Today: s.Today(), Run: run.ID, Store: run.StoreID}
 	rungs, err := planner.LadderOf(req, shelf)

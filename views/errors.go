@@ -93,6 +93,9 @@ func (s *Server) describe(err error) *errorPage {
 	case errors.Is(err, errNoMethod):
 		return &errorPage{Status: http.StatusMethodNotAllowed, Heading: "Not in this way", Text: "This address can't be asked for in that way."}
 	}
+	if f, ok := askFault(err); ok {
+		return &errorPage{Status: http.StatusUnprocessableEntity, Heading: refusalHeading(http.StatusUnprocessableEntity), Text: f.Text}
+	}
 	if status := refusalStatus(err); status != http.StatusInternalServerError {
 		return &errorPage{Status: status, Heading: refusalHeading(status), Text: sentence(err.Error())}
 	}

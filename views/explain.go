@@ -25,7 +25,7 @@ type explainPage struct {
 
 // explain answers /runs/:id/explain/:what.
 func (s *Server) explain(c *gin.Context) error {
-	p, err := s.askedRun(c)
+	p, err := s.plannedRun(c)
 	if err != nil {
 		return err
 	}

@@ -52,7 +52,7 @@ type hazardsPage struct {
 
 // showHazards answers /runs/:id/hazards.
 func (s *Server) showHazards(c *gin.Context) error {
-	run, err := s.askedRun(c)
+	run, err := s.plannedRun(c)
 	if err != nil {
 		return err
 	}

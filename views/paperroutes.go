@@ -23,7 +23,7 @@ var paperRoutes = map[string]func(*planner.Plan, PaperOptions) ([]byte, error){
 // like the page of the run; ?paper=letter takes the paper of North America.
 func (s *Server) showPaper(file string) func(*gin.Context) error {
 	return func(c *gin.Context) error {
-		run, err := s.askedRun(c)
+		run, err := s.plannedRun(c)
 		if err != nil {
 			return err
 		}

@@ -9,7 +9,7 @@ import (
 
 // unitWords are the units that stand after numbers in the planner's sentences.
 var unitWords = []string{"%", "°C", "K", "kg", "g", "mg", "µg", "L", "mL", "µL", "mol", "mmol", "kJ", "kJ/mol", "W", "kPa",
-	"min", "h", "days", "g/mL", "g/g", "mol/L", "mL/g", "ppm"}
+	"min", "h", "days", "g/mol", "g/mL", "g/g", "mol/L", "mL/g", "ppm"}
 
 // bound keeps numbers and their units on one line: the space between them
 // becomes the narrow one that doesn't break.

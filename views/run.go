@@ -90,7 +90,30 @@ func (s *Server) askedRun(c *gin.Context) (*runPage, error) {
 	}
 	p := s.runPageFor(run, recipe)
 	p.readQuery(c.Request.URL.Query(), s.Today())
+	if p.Over() && p.Kept {
+		return p, nil
+	}
 	return p, s.planRun(p, shelf)
+}
+
+// plannedRun is askedRun for what needs a plan: a run that is over has none.
+func (s *Server) plannedRun(c *gin.Context) (*runPage, error) {
+	p, err := s.askedRun(c)
+	if err == nil && p.Plan == nil && len(p.Faults) == 0 {
+		err = noPlan(p.Run)
+	}
+	return p, err
+}
+
+// Over says that the run is closed or dropped.
+func (p *runPage) Over() bool { return isOver(p.Run) }
+
+func isOver(r inventory.Run) bool {
+	return r.State == inventory.Closed || r.State == inventory.Dropped
+}
+
+func noPlan(r inventory.Run) error {
+	return &missing{"plan", "run " + strconv.FormatInt(r.ID, 10), "The run is " + string(r.State) + ", and what is over isn’t planned again."}
 }
 
 // readQuery tries what the query of an address asks, if it asks anything.

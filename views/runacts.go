@@ -117,6 +117,9 @@ func (s *Server) promisePage(c *gin.Context) (*promisePage, error) {
 	if err != nil {
 		return nil, err
 	}
+	if isOver(run) {
+		return nil, noPlan(run)
+	}
 	plan, err := s.planKept(run, recipe, shelf)
 	if err != nil {
 		return nil, err

@@ -8,6 +8,8 @@ import (
 	"testing"
 
 	"golang.org/x/net/html"
+
+	"stillroom/inventory"
 )
 
 // get asks a server for an address as a browser does.
@@ -156,6 +158,11 @@ func TestRoutes(t *testing.T) {
 		{"/runs/1/requisition.pdf", 200, ""},
 		{"/runs/1/pick-list.pdf?wanted=1,234+g", 422, "1,234 g pentanoic acid"},
 		{"/runs/1/laundry-list.pdf", 404, "No such page"},
+		{"/runs/6", 200, "25 g pentanoic acid"},
+		{"/runs/6/pick-list.pdf", 404, "No plan “run 6”"},
+		{"/runs/6/promise", 404, "No plan “run 6”"},
+		{"/runs/6/answers", 404, "No plan “run 6”"},
+		{"/runs/6/explain/need-1", 404, "No plan “run 6”"},
 		{"/runs/77", 404, "No run “77”"},
 		{"/runs/x", 404, "No run “x”"},
 		{"/shelf", 200, "The shelf"},
@@ -287,6 +294,39 @@ func TestPagesAreWellFormed(t *testing.T) {
 	}
 }
 
+// Every run and every recipe of the demonstration lab has a page, planned by the
+// planner itself.
+func TestDemonstrationLabIsShown(t *testing.T) {
+	s := newDemoServer(t)
+	shelf, err := s.Lab.Load(t.Context())
+	if err != nil {
+		t.Fatal(err)
+	}
+	for _, run := range shelf.Runs {
+		doc := parse(t, get(t, s, runAddress(run.ID)))
+		if run.State == inventory.Closed || run.State == inventory.Dropped {
+			if got := text(one(t, doc, "#verdict b")); got != "This run is "+string(run.State)+"." {
+				t.Errorf("run %d says %q", run.ID, got)
+			}
+			continue
+		}
+		if len(all(doc, "#verdict")) != 1 || len(all(doc, "#needs tbody tr")) == 0 || len(all(doc, ".strip li.v svg")) == 0 {
+			t.Errorf("run %d has no verdict, no needs or no walk-through", run.ID)
+		}
+		for _, n := range all(doc, "#needs tbody tr") {
+			if word, _ := attribute(n, "data-state"); stateShapes[word] == "" {
+				t.Errorf("run %d: a need is %q", run.ID, word)
+			}
+		}
+	}
+	for _, r := range s.Recipes {
+		doc := parse(t, get(t, s, "/recipes/"+r.Name))
+		if len(all(doc, ".strip li.v svg")) == 0 {
+			t.Errorf("recipe %s isn't walked through", r.Name)
+		}
+	}
+}
+
 // The content security policy forbids what a page must not hold in the first
 // place.
 func TestNothingInline(t *testing.T) {
@@ -396,82 +436,5 @@ func TestUserTextIsEscaped(t *testing.T) {
 	}
 	if body := get(t, s, w.Header().Get("Location")).Body.String(); strings.Contains(body, "<script>alert") {
 		t.Error("an owner's markup came through")
-	}
-}
-
-// The papers carry what the address asks and say what they are.
-func TestPapers(t *testing.T) {
-	s := newSampleServer(t)
-	for _, file := range []string{"pick-list.pdf", "hazard-sheet.pdf", "requisition.pdf"} {
-		w := get(t, s, "/runs/1/"+file)
-		if kind := w.Header().Get("Content-Type"); w.Code != 200 || kind != "application/pdf" || !strings.HasPrefix(w.Body.String(), "%PDF-") {
-			t.Errorf("%s = %d, %s", file, w.Code, kind)
-		}
-		if name := w.Header().Get("Content-Disposition"); !strings.Contains(name, `"run 1 `+file+`"`) {
-			t.Errorf("%s is called %q", file, name)
-		}
-	}
-}
-
-// A sheet that was printed asks whether it still holds.
-func TestPrintedSheet(t *testing.T) {
-	s := newSampleServer(t)
-	current := parse(t, get(t, s, "/runs/1?printed=7f3a12bc"))
-	if got := text(one(t, current, "p[role=status]")); !strings.HasSuffix(got, "is current.") {
-		t.Errorf("the page says %q", got)
-	}
-	old := parse(t, get(t, s, "/runs/1?printed=00000000"))
-	if got := text(one(t, old, "p[role=status]")); !strings.Contains(got, "no longer current") {
-		t.Errorf("the page says %q", got)
-	}
-}
-
-func TestChangingARun(t *testing.T) {
-	s := newSampleServer(t)
-	tests := []struct {
-		name, address string
-		fields        []string
-		status        int
-		says          string
-	}{
-		{"nobody named", "/runs/1", []string{"wanted", "60 g", "on", "14 Jan 2027"}, 422, "Say who does this."},
-		{"kept", "/runs/1", []string{"wanted", "60 g", "on", "14 Jan 2027", "who", "Ines", "version", "1", "key", "a"}, 303, ""},
-		{"from an old page", "/runs/1", []string{"wanted", "70 g", "on", "14 Jan 2027", "who", "Ines", "version", "1", "key", "b"}, 409, "changed by somebody else"},
-		{"cleared", "/runs/1/stand", []string{"to", "cleared", "who", "Ines", "key", "c"}, 303, ""},
-		{"not a step", "/runs/1/stand", []string{"to", "closed", "who", "Ines", "key", "d"}, 422, "step by step"},
-		{"promised", "/runs/1/promise", []string{"who", "Ines", "key", "e"}, 303, ""},
-		{"freed", "/runs/1/release", []string{"who", "Ines", "key", "f"}, 303, ""},
-		{"no recipe", "/runs/new", []string{"recipe", "alchemy", "wanted", "1 g", "on", "14 Jan 2027", "who", "Ines"}, 422, "Choose one of the recipes."},
-		{"no such run", "/runs/99", []string{"wanted", "60 g"}, 404, "no run"},
-	}
-	for _, tt := range tests {
-		w := post(t, s, tt.address, tt.fields...)
-		if w.Code != tt.status || !strings.Contains(w.Body.String(), tt.says) {
-			t.Errorf("%s: %d, want %d saying %q", tt.name, w.Code, tt.status, tt.says)
-		}
-	}
-	if got := text(one(t, parse(t, get(t, s, "/runs/1")), "h1")); got != "60 g pentanoic acid" {
-		t.Errorf("the run is %q", got)
-	}
-}
-
-func TestCountingABottle(t *testing.T) {
-	s := newSampleServer(t)
-	at := "/shelf/bottles/" + s.firstBottle(t)
-	holds := func() string { return text(one(t, parse(t, get(t, s, at)), "dd b")) }
-	before := holds()
-	for _, amount := range []string{"", "a handful", "-3 mL", "900 L"} {
-		if w := post(t, s, at+"/count", "amount", amount, "by", "weighed", "who", "Ines", "key", "k"+amount); w.Code != 422 {
-			t.Errorf("counting %q = %d, want 422", amount, w.Code)
-		}
-	}
-	if after := holds(); after != before {
-		t.Errorf("a refused count changed %s to %s", before, after)
-	}
-	if w := post(t, s, at+"/count", "amount", "300 mL", "by", "level", "who", "Ines", "key", "k"); w.Code != 303 {
-		t.Fatalf("counting = %d", w.Code)
-	}
-	if after := holds(); after != "300 mL" {
-		t.Errorf("it holds %s, want 300 mL", after)
 	}
 }

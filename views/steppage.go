@@ -33,7 +33,7 @@ type stepTake struct {
 
 // showStep answers /runs/:id/steps/:n.
 func (s *Server) showStep(c *gin.Context) error {
-	run, err := s.askedRun(c)
+	run, err := s.plannedRun(c)
 	if err != nil {
 		return err
 	}
