@@ -61,7 +61,8 @@ func refuses(t *testing.T, b tab) {
 
 // pages are all that a person can open in the demonstration lab.
 var pages = []string{"/slate", "/runs/new", "/runs/1", "/runs/1/answers", "/runs/1/promise", "/runs/1/explain/scale",
-	"/shelf", "/shelf?find=acid", "/recipes", "/recipes/pentanoic-acid-dichromate", "/shortfalls", "/buying", "/waste",
+	"/shelf", "/shelf?find=acid", "/recipes", "/recipes/pentanoic-acid-dichromate", "/recipes/pentanoic-acid-dichromate/edit",
+	"/recipes/pentanoic-acid-dichromate/difference", "/recipes/new", "/shortfalls", "/buying", "/waste",
 	"/reckoner", "/reckoner/dilute", "/nowhere", "/shelf?find=zzzz"}
 
 // TestPagesAreAccessible runs axe over every page, wide and narrow, light and
