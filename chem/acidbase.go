@@ -61,16 +61,16 @@ const mostConcentrated = 1e6
 // no acid in water has.
 func checkMix(mix []Protolyte, strong Concentration) error {
 	if !(math.Abs(float64(strong)) <= mostConcentrated) {
-		return &RangeError{"pH", "charge of the strong ions", strong.MolesPerLitre(), -mostConcentrated / 1e3, mostConcentrated / 1e3, "mol/L", ""}
+		return outOfRange("pH", "charge of the strong ions", strong.MolesPerLitre(), -mostConcentrated/1e3, mostConcentrated/1e3, "mol/L", "")
 	}
 	for i := range mix {
 		p := &mix[i]
 		if !(p.C >= 0 && p.C <= mostConcentrated) {
-			return &RangeError{"pH", "concentration of " + p.Name, p.C.MolesPerLitre(), 0, mostConcentrated / 1e3, "mol/L", ""}
+			return outOfRange("pH", "concentration of "+p.Name, p.C.MolesPerLitre(), 0, mostConcentrated/1e3, "mol/L", "")
 		}
 		for _, pKa := range p.PKa {
 			if !(pKa >= -20 && pKa <= 50) {
-				return &RangeError{"acid dissociation of " + p.Name, "pKa", pKa, -20, 50, "", ""}
+				return outOfRange("acid dissociation of "+p.Name, "pKa", pKa, -20, 50, "", "")
 			}
 		}
 	}

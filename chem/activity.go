@@ -25,7 +25,7 @@ type ActivePH struct {
 // where I is the ionic strength and A = 0.509 at 25 °C. ions is the
 // concentration of strong ions counted as ½ Σ c·z² (for a salt of singly charged
 // ions, its concentration); strong is their net charge, as in PH. It holds to
-// I = 0.5 mol/L; beyond, it is refused with a *RangeError. pKa are those at
+// I = 0.5 mol/L; beyond, it is refused with a *DataError. pKa are those at
 // infinite dilution.
 func PHDavies(mix []Protolyte, strong, ions Concentration, t Temperature) (ActivePH, error) {
 	pKw, err := PKw(t)
@@ -54,8 +54,7 @@ func PHDavies(mix []Protolyte, strong, ions Concentration, t Temperature) (Activ
 		return ActivePH{}, err
 	}
 	if over > 0 {
-		return ActivePH{}, &RangeError{"activity correction of a pH", "ionic strength",
-			over + highestIonicStrength, 0, highestIonicStrength, "mol/L", "take the uncorrected pH; it may be 0.2 off"}
+		return ActivePH{}, outOfRange("activity correction of a pH", "ionic strength", over+highestIonicStrength, 0, highestIonicStrength, "mol/L", "take the uncorrected pH; it may be 0.2 off")
 	}
 	low, high := 0.0, highestIonicStrength
 	var pH float64

@@ -67,14 +67,14 @@ func AgedFraction(law string, w0 Fraction, days float64, t Temperature) (Fractio
 		return 0, err
 	}
 	if !(days >= 0) || math.IsInf(days, 0) {
-		return 0, &RangeError{"ageing of " + law, "time", days, 0, math.MaxFloat64, "days", "give 0 or more"}
+		return 0, outOfRange("ageing of "+law, "time", days, 0, math.MaxFloat64, "days", "give 0 or more")
 	}
 	for _, l := range ageingLaws {
 		if l.name != law {
 			continue
 		}
 		if !(t >= l.low && t <= l.high) {
-			return 0, &RangeError{"ageing of " + law, "temperature", t.Celsius(), l.low.Celsius(), l.high.Celsius(), "°C", "titrate it"}
+			return 0, outOfRange("ageing of "+law, "temperature", t.Celsius(), l.low.Celsius(), l.high.Celsius(), "°C", "titrate it")
 		}
 		k := l.rate * math.Pow(l.factor, (t.Celsius()-25)/10)
 		if l.order == 2 {

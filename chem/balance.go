@@ -69,7 +69,7 @@ func Balance(e Equation) (Equation, error) {
 
 // with returns the equation with the coefficients given in the order of species.
 func (e Equation) with(coefficients []int64) Equation {
-	b := Equation{append([]Term(nil), e.Left...), append([]Term(nil), e.Right...)}
+	b := Equation{Left: append([]Term(nil), e.Left...), Right: append([]Term(nil), e.Right...)}
 	for j := range b.Left {
 		b.Left[j].Coefficient = coefficients[j]
 	}

@@ -13,7 +13,7 @@ type Dilution struct {
 //
 //	m(stock) = m · w / w(stock)
 //
-// A target above the stock's strength is refused with a *RangeError.
+// A target above the stock's strength is refused with a *DataError.
 func Dilute(stock, target Fraction, make Mass) (Dilution, error) {
 	b, err := BlendTo(stock, 0, target, make)
 	if err != nil {
@@ -32,7 +32,7 @@ type Blend struct {
 //
 //	m(strong)/m(weak) = (w − w(weak)) / (w(strong) − w)
 //
-// A target outside the two has no answer and is refused with a *RangeError.
+// A target outside the two has no answer and is refused with a *DataError.
 func BlendTo(strong, weak, target Fraction, make Mass) (Blend, error) {
 	for _, f := range []Fraction{strong, weak, target} {
 		if err := checkFraction("strength", f); err != nil {
@@ -46,8 +46,7 @@ func BlendTo(strong, weak, target Fraction, make Mass) (Blend, error) {
 		strong, weak = weak, strong
 	}
 	if !(target >= weak && target <= strong) {
-		return Blend{}, &RangeError{"blend", "strength", target.Percent(), weak.Percent(), strong.Percent(), "% w/w",
-			"take a stock on the other side of the target"}
+		return Blend{}, outOfRange("blend", "strength", target.Percent(), weak.Percent(), strong.Percent(), "% w/w", "take a stock on the other side of the target")
 	}
 	if strong == weak {
 		return Blend{Strong: make}, nil
@@ -104,7 +103,7 @@ func Contraction(cas string, t Temperature, portions ...Portion) (Volume, error)
 // where L is the heat that one mole still gives off on endless dilution.
 func BlendHeat(cas string, molarMass MolarMass, strong, weak Portion) (Energy, error) {
 	if !(molarMass > 0) {
-		return 0, &NoDataError{"molar mass", cas, "give molar_mass="}
+		return 0, noData("molar mass", cas, "give molar_mass=")
 	}
 	if strong.Strength < weak.Strength {
 		strong, weak = weak, strong
@@ -148,7 +147,7 @@ func DiluteWarm(cas string, molarMass MolarMass, stock, target Fraction, make Ma
 		return WarmDilution{}, err
 	}
 	if !(molarMass > 0) {
-		return WarmDilution{}, &NoDataError{"molar mass", cas, "give molar_mass="}
+		return WarmDilution{}, noData("molar mass", cas, "give molar_mass=")
 	}
 	heat, err := DilutionHeat(cas, molarMass.Of(d.Stock*Mass(stock)), stock, target)
 	if err != nil {

@@ -18,7 +18,7 @@ var carbonPKa = [2]float64{6.35, 10.33}
 // 0.03 to 0.04), from 0 to 80 °C. Salt lowers it.
 func CarbonDioxideSolubility(p Pressure, t Temperature) (Concentration, error) {
 	if !(t >= ZeroCelsius && t <= ZeroCelsius+80) {
-		return 0, &RangeError{"solubility of carbon dioxide", "temperature", t.Celsius(), 0, 80, "°C", ""}
+		return 0, outOfRange("solubility of carbon dioxide", "temperature", t.Celsius(), 0, 80, "°C", "")
 	}
 	if !(p >= 0) || !Finite(p) {
 		return 0, fmt.Errorf("solubility of carbon dioxide: pressure %v Pa must be 0 or more", float64(p))

@@ -93,8 +93,8 @@ func loadDensities() map[string]*densityTable {
 
 // SolutionDensity returns the density of an aqueous solution of the solute
 // with this CAS number at mass fraction w and temperature t. A strength or a
-// temperature outside the tables is refused with a *RangeError that names what
-// is covered, an unknown solute with a *NoDataError. Rows of different sources
+// temperature outside the tables is refused with a *DataError that names what
+// is covered, an unknown solute with a *DataError. Rows of different sources
 // disagree by up to 0.0015 g/mL; those of sodium hypochlorite, which are
 // makers' products with salt and alkali in them, by 0.006 g/mL.
 func SolutionDensity(cas string, w Fraction, t Temperature) (Density, error) {
@@ -106,7 +106,7 @@ func SolutionDensity(cas string, w Fraction, t Temperature) (Density, error) {
 	}
 	table := densityTables()[cas]
 	if table == nil {
-		return 0, &NoDataError{"density", strings.TrimSpace("solutions of the solute " + cas), "give density="}
+		return 0, noData("density", strings.TrimSpace("solutions of the solute "+cas), "give density=")
 	}
 	if !Finite(t) {
 		return 0, fmt.Errorf("density of %s: temperature is no number", table.name)
@@ -219,11 +219,10 @@ func (d *densityTable) nearest(w float64, t Temperature) *densityCurve {
 func (d *densityTable) refuse(w Fraction, t Temperature) error {
 	what := "density of " + d.name + " in water"
 	if low, high, ok := d.temperatures(float64(w)); ok {
-		return &RangeError{what + " at " + number(w.Percent()) + " % w/w", "temperature",
-			t.Celsius(), low.Celsius(), high.Celsius(), "°C", "give density= at this temperature"}
+		return outOfRange(what+" at "+number(w.Percent())+" % w/w", "temperature", t.Celsius(), low.Celsius(), high.Celsius(), "°C", "give density= at this temperature")
 	}
 	low, high := d.strengths()
-	return &RangeError{what, "strength", w.Percent(), low * 100, high * 100, "% w/w", "give density="}
+	return outOfRange(what, "strength", w.Percent(), low*100, high*100, "% w/w", "give density=")
 }
 
 // temperatures returns the range that is covered at mass fraction w.

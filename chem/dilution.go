@@ -114,22 +114,21 @@ func (d *dilutionTable) left(w Fraction) (float64, error) {
 		return d.curve.at(math.Log1p(max(r, d.low))), nil
 	}
 	strength := func(r float64) float64 { return 100 / (1 + r*waterMolarMass/d.molarMass) }
-	return 0, &RangeError{"heat of diluting " + d.name, "strength", w.Percent(),
-		strength(d.high), strength(d.low), "% w/w", "measure it"}
+	return 0, outOfRange("heat of diluting "+d.name, "strength", w.Percent(), strength(d.high), strength(d.low), "% w/w", "measure it")
 }
 
 // DilutionHeat returns the heat given off at 25 °C when a solution holding n of
 // the solute is diluted with water from one mass fraction to another; it is
 // negative where heat is taken up. Sulfuric, hydrochloric, nitric, phosphoric
 // and acetic acid and sodium hydroxide are known, each over the strengths of
-// its table; outside it the error is a *RangeError, for other solutes a
-// *NoDataError. A strength that rises is refused: water doesn't leave by
+// its table; outside it the error is a *DataError, for other solutes a
+// *DataError. A strength that rises is refused: water doesn't leave by
 // itself. Hydrochloric and nitric acid are good to 1 %, sulfuric acid and
 // sodium hydroxide to 3 %, phosphoric acid is an estimate to 30 %.
 func DilutionHeat(cas string, n Amount, from, to Fraction) (Energy, error) {
 	d := dilutionTables()[cas]
 	if d == nil {
-		return 0, &NoDataError{"heat of dilution", cas, "measure it"}
+		return 0, noData("heat of dilution", cas, "measure it")
 	}
 	if err := errors.Join(checkFraction("strength before", from), checkFraction("strength after", to)); err != nil {
 		return 0, err

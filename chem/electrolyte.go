@@ -37,7 +37,7 @@ var strongCations = map[string]float64{
 // acid, an anhydride as dichromate or metabisulfite with the water that it takes up;
 // isomers of an organic anion are taken for the one in the table. So Na2CO3 is two Na⁺ and carbonic acid, NaOH one Na⁺ and water, CaCl2 one
 // Ca²⁺ and two hydrochloric acids, and an ion written by itself is what it brings.
-// A *NoDataError says what couldn't be found; metals that take part in acid–base
+// A *DataError says what couldn't be found; metals that take part in acid–base
 // equilibria themselves, such as iron, are refused so too.
 func ElectrolyteOf(name, cas string, f Formula) (Electrolyte, error) {
 	if a, ok := AcidByCAS(cas); ok {
@@ -98,7 +98,7 @@ func StrongIonsOf(f Formula) (charge, ions float64) {
 
 // noAcid refuses a substance for want of constants.
 func noAcid(name, why string) error {
-	return &NoDataError{"acid dissociation", name, why + "; give pka=, or leave out what neither gives nor takes protons"}
+	return noData("acid dissociation", name, why+"; give pka=, or leave out what neither gives nor takes protons")
 }
 
 // isOrganic reports whether other molecules than this acid may have its

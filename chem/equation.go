@@ -18,6 +18,9 @@ type Term struct {
 // right, in the order written.
 type Equation struct {
 	Left, Right []Term
+	// Written is by how much the coefficients exceed those of the text, where that
+	// had fractions: 2 for "H2 + 1/2 O2 -> H2O". Nought counts as one.
+	Written int64
 }
 
 // EquationError says what is wrong with an equation and what would do.
@@ -147,6 +150,9 @@ func (e *Equation) scaleTo(text string, factors []ratio) error {
 			return &EquationError{text, "", "the fractions have no common denominator of a sensible size", "use whole coefficients", ErrSyntax}
 		}
 	}
+	if scale > 1 {
+		e.Written = scale
+	}
 	i := 0
 	for _, side := range [][]Term{e.Left, e.Right} {
 		for j := range side {
@@ -208,21 +214,29 @@ func beginsWithState(text string) bool {
 }
 
 // String returns the equation with coefficients of 1 left out.
-func (e Equation) String() string {
+func (e Equation) String() string { return e.over(1) }
+
+// AsWritten is String with the coefficients of the text, fractions as decimals.
+func (e Equation) AsWritten() string { return e.over(max(e.Written, 1)) }
+
+func (e Equation) over(divisor int64) string {
 	var b strings.Builder
-	writeSide(&b, e.Left)
+	writeSide(&b, e.Left, divisor)
 	b.WriteString(" -> ")
-	writeSide(&b, e.Right)
+	writeSide(&b, e.Right, divisor)
 	return b.String()
 }
 
-func writeSide(b *strings.Builder, terms []Term) {
+func writeSide(b *strings.Builder, terms []Term, divisor int64) {
 	for i, t := range terms {
 		if i > 0 {
 			b.WriteString(" + ")
 		}
-		if t.Coefficient != 1 {
-			b.WriteString(decimalText(t.Coefficient))
+		if t.Coefficient%divisor != 0 {
+			b.WriteString(number(float64(t.Coefficient) / float64(divisor)))
+			b.WriteByte(' ')
+		} else if n := t.Coefficient / divisor; n != 1 {
+			b.WriteString(decimalText(n))
 			b.WriteByte(' ')
 		}
 		b.WriteString(t.Species)

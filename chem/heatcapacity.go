@@ -52,8 +52,8 @@ func loadHeatCapacities() map[string]*heatTable {
 // solute with this CAS number at mass fraction w, near room temperature. Where
 // both a model and handbook rows cover the strength the model is taken; where
 // a strength lies between the two it is read off in proportion. Strengths
-// beyond both are refused with a *RangeError, unknown solutes with a
-// *NoDataError.
+// beyond both are refused with a *DataError, unknown solutes with a
+// *DataError.
 func SolutionHeatCapacity(cas string, w Fraction) (SpecificHeat, error) {
 	if err := checkFraction("strength of a solution", w); err != nil {
 		return 0, err
@@ -63,7 +63,7 @@ func SolutionHeatCapacity(cas string, w Fraction) (SpecificHeat, error) {
 	}
 	table := heatTables()[cas]
 	if table == nil {
-		return 0, &NoDataError{"heat capacity", "solutions of " + cas, "give heat_capacity="}
+		return 0, noData("heat capacity", "solutions of "+cas, "give heat_capacity=")
 	}
 	x := float64(w)
 	switch {
@@ -76,8 +76,7 @@ func SolutionHeatCapacity(cas string, w Fraction) (SpecificHeat, error) {
 		from, to := table.modelled(low), SpecificHeat(table.curve.at(high))
 		return from + (to-from)*SpecificHeat((x-low)/(high-low)), nil
 	}
-	return 0, &RangeError{"heat capacity of " + table.name + " in water", "strength", w.Percent(),
-		0, table.most() * 100, "% w/w", "give heat_capacity="}
+	return 0, outOfRange("heat capacity of "+table.name+" in water", "strength", w.Percent(), 0, table.most()*100, "% w/w", "give heat_capacity=")
 }
 
 // modelled reads the model at the temperature of its data nearest to 25 °C.

@@ -5,13 +5,13 @@ import "fmt"
 // FractionsOfDensity returns the mass fractions whose aqueous solution has a density
 // at temperature t, in rising order: what a hydrometer says. There are two near a
 // maximum of density, as of sulfuric acid above 94 %. A density that no covered
-// strength has is refused with a *RangeError, an unknown solute with a *NoDataError.
+// strength has is refused with a *DataError, an unknown solute with a *DataError.
 func FractionsOfDensity(cas string, rho Density, t Temperature) ([]Fraction, error) {
 	low, high, ok := DensityRange(cas, t)
 	if !ok {
 		_, err := SolutionDensity(cas, 0.1, t)
 		if err == nil {
-			err = &NoDataError{"density", "solutions of " + cas, "give the strength"}
+			err = noData("density", "solutions of "+cas, "give the strength")
 		}
 		return nil, err
 	}
@@ -38,8 +38,7 @@ func FractionsOfDensity(cas string, rho Density, t Temperature) ([]Fraction, err
 		}
 	}
 	if len(found) == 0 {
-		return nil, &RangeError{fmt.Sprintf("strength of %s by its density", densityTables()[cas].name), "density",
-			rho.GramsPerMillilitre(), least / 1e3, most / 1e3, "g/mL", "measure the strength otherwise"}
+		return nil, outOfRange(fmt.Sprintf("strength of %s by its density", densityTables()[cas].name), "density", rho.GramsPerMillilitre(), least/1e3, most/1e3, "g/mL", "measure the strength otherwise")
 	}
 	return found, nil
 }

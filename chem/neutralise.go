@@ -27,7 +27,7 @@ func AcidProtons(name, cas string, f Formula) (protons float64, assumed string, 
 		if protons -= e.Strong; protons > 0 {
 			return protons, "", nil
 		}
-		return 0, "", &NoDataError{"acid proton", name, "it is no acid that a base neutralises; give protons= if it is"}
+		return 0, "", noData("acid proton", name, "it is no acid that a base neutralises; give protons= if it is")
 	}
 	switch {
 	case strings.HasSuffix(name, "dioic acid"):
@@ -35,7 +35,7 @@ func AcidProtons(name, cas string, f Formula) (protons float64, assumed string, 
 	case strings.HasSuffix(name, "oic acid"):
 		return 1, "one acid proton taken from the name", nil
 	}
-	return 0, "", &NoDataError{"number of acid protons", name, "give protons="}
+	return 0, "", noData("number of acid protons", name, "give protons=")
 }
 
 // A Base is what one formula of a base does to an acid.
@@ -67,11 +67,11 @@ func BaseOf(name, cas string, f Formula) (Base, error) {
 			b.Carbonate = a.Count - b.Hydrogen
 			b.Water = a.Count
 		default:
-			return Base{}, &NoDataError{"base", name, "known are hydroxides, oxides, carbonates, hydrogencarbonates, ammonia and amines"}
+			return Base{}, noData("base", name, "known are hydroxides, oxides, carbonates, hydrogencarbonates, ammonia and amines")
 		}
 	}
 	if !(b.Protons > 0) || b.Hydrogen < 0 || b.Carbonate < 0 {
-		return Base{}, &NoDataError{"base", name, "it takes up no protons; known are hydroxides, oxides, carbonates, hydrogencarbonates, ammonia and amines"}
+		return Base{}, noData("base", name, "it takes up no protons; known are hydroxides, oxides, carbonates, hydrogencarbonates, ammonia and amines")
 	}
 	return b, nil
 }

@@ -147,11 +147,11 @@ func AcidByCAS(cas string) (*Acid, bool) {
 // with their source; for a base those of its acid. Where the table has several
 // values of a step a handbook value goes before one computed from Gibbs energies,
 // and that before an approximate one. What isn't in the tables is refused with a
-// *NoDataError. The slice must not be changed.
+// *DataError. The slice must not be changed.
 func PKaOf(cas string) (pKa []float64, source string, err error) {
 	a, ok := AcidByCAS(cas)
 	if !ok {
-		return nil, "", &NoDataError{"pKa", cas, "give pka="}
+		return nil, "", noData("pKa", cas, "give pka=")
 	}
 	return a.PKa, strings.Join(unique(a.Sources), "; "), nil
 }

@@ -8,14 +8,14 @@ import (
 // A ReactionHeat is the standard enthalpy of a reaction at 25 °C and where each
 // part of it came from.
 type ReactionHeat struct {
-	Equation Equation // as balanced, with the coefficients the enthalpy belongs to
+	Equation Equation // its coefficients AsWritten are those the enthalpy belongs to
 	Enthalpy MolarEnergy
 	Parts    []HeatTerm
 }
 
 // A HeatTerm is the share of one species.
 type HeatTerm struct {
-	Coefficient int64 // below zero on the left
+	Coefficient float64 // below zero on the left
 	Species     string
 	Formation   Formation
 }
@@ -44,7 +44,7 @@ func ReactionEnthalpy(e Equation, given map[string]FormationGiven) (ReactionHeat
 			if err != nil {
 				return ReactionHeat{}, err
 			}
-			coefficient := term.Coefficient
+			coefficient := float64(term.Coefficient) / float64(max(balanced.Written, 1))
 			if i == 0 {
 				coefficient = -coefficient
 			}
@@ -95,7 +95,7 @@ func (r ReactionHeat) Inserted() string {
 		if n < 0 {
 			i, n = 1, -n
 		}
-		sides[i] = append(sides[i], fmt.Sprintf("%d·(%.5g)", n, float64(part.Formation.Enthalpy)/1e3))
+		sides[i] = append(sides[i], fmt.Sprintf("%g·(%.5g)", n, float64(part.Formation.Enthalpy)/1e3))
 	}
 	return fmt.Sprintf("[%s] − [%s] = %.5g kJ/mol", strings.Join(sides[0], " + "), strings.Join(sides[1], " + "), float64(r.Enthalpy)/1e3)
 }

@@ -23,7 +23,7 @@ func ExampleDilute() {
 func ExampleSolutionDensity() {
 	_, err := chem.SolutionDensity("7664-93-9", 96*chem.Percent, chem.Celsius(60))
 	fmt.Println(err)
-	// Output: density of sulfuric acid in water at 96 % w/w: temperature 60 °C is outside the range; covered: 20 to 25 °C; give density= at this temperature
+	// Output: density of sulfuric acid in water at 96 % w/w, temperature 60 °C: outside the range (covered: 20 to 25 °C); give density= at this temperature
 }
 
 func ExampleFirstOrder() {

@@ -58,7 +58,7 @@ const waterDensityHigh = ZeroCelsius + 150
 // J. Chem. Eng. Data 20 (1975) 97, to 0.001 %.
 func WaterDensity(t Temperature) (Density, error) {
 	if !(t >= ZeroCelsius && t <= waterDensityHigh) {
-		return 0, &RangeError{"density of water", "temperature", t.Celsius(), 0, waterDensityHigh.Celsius(), "°C", ""}
+		return 0, outOfRange("density of water", "temperature", t.Celsius(), 0, waterDensityHigh.Celsius(), "°C", "")
 	}
 	return Density(kell(t.Celsius())), nil
 }

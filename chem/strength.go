@@ -90,19 +90,18 @@ type Strengths struct {
 }
 
 // MassFraction returns the mass fraction of a solution of this strength. It
-// fails with a *RangeError where there can be no such solution or the density
-// tables don't reach it, and with a *NoDataError where a property is missing.
+// fails with a *DataError where there can be no such solution or the density
+// tables don't reach it, and with a *DataError where a property is missing.
 func (s Solute) MassFraction(from Strength) (Fraction, error) {
 	if !Finite(from.Value) || from.Value < 0 {
-		return 0, &RangeError{"strength of " + s.Name, "value", from.Value, 0, math.MaxFloat64, "", "give 0 or more"}
+		return 0, outOfRange("strength of "+s.Name, "value", from.Value, 0, math.MaxFloat64, "", "give 0 or more")
 	}
 	w, err := s.massFraction(from)
 	if err != nil {
 		return 0, err
 	}
 	if w > 1 {
-		return 0, &RangeError{What: "strength of " + s.Name, Quantity: "mass fraction",
-			Value: w * 100, High: 100, Unit: "%", Advice: "no solution holds more than itself"}
+		return 0, outOfRange("strength of "+s.Name, "mass fraction", w*100, 0, 100, "%", "no solution holds more than itself")
 	}
 	return Fraction(w), nil
 }
@@ -119,7 +118,7 @@ func (s Solute) massFraction(from Strength) (float64, error) {
 		return v, nil
 	case ByMoleFraction:
 		if v > 1 {
-			return 0, &RangeError{What: "strength of " + s.Name, Quantity: "amount fraction", Value: v * 100, High: 100, Unit: "%"}
+			return 0, outOfRange("strength of "+s.Name, "amount fraction", v*100, 0, 100, "%", "")
 		}
 		return v * m / (v*m + (1-v)*s.solvent()), nil
 	case ByMolality:
@@ -138,7 +137,7 @@ func (s Solute) massFraction(from Strength) (float64, error) {
 		return s.fromVolume(v / normalGasVolume / s.Oxygen * m)
 	case ByVolumeFraction:
 		if v > 1 {
-			return 0, &RangeError{What: "strength of " + s.Name, Quantity: "volume fraction", Value: v * 100, High: 100, Unit: "%"}
+			return 0, outOfRange("strength of "+s.Name, "volume fraction", v*100, 0, 100, "%", "")
 		}
 		pure, err := s.pureDensity()
 		if err != nil {
@@ -151,7 +150,7 @@ func (s Solute) massFraction(from Strength) (float64, error) {
 
 // needs refuses a kind of strength whose property is missing.
 func (s Solute) needs(kind StrengthKind) error {
-	missing := func(what, advice string) error { return &NoDataError{what, s.Name, advice} }
+	missing := func(what, advice string) error { return noData(what, s.Name, advice) }
 	switch kind {
 	case ByMolarity, ByMolality, ByMoleFraction, ByNormality, ByAvailableChlorine, ByAvailableChlorineVolume, ByPeroxideVolume:
 		if !(s.MolarMass > 0) {
@@ -180,7 +179,7 @@ func (s Solute) fromVolume(gamma float64) (float64, error) {
 	if !ok {
 		_, err := SolutionDensity(s.CAS, 0.1, s.Temperature)
 		if err == nil {
-			err = &NoDataError{"density", s.Name, "give density="}
+			err = noData("density", s.Name, "give density=")
 		}
 		return 0, err
 	}
@@ -192,8 +191,7 @@ func (s Solute) fromVolume(gamma float64) (float64, error) {
 		return float64(w) * float64(rho)
 	}
 	if most := at(high); !(gamma <= most*(1+1e-12)) {
-		return 0, &RangeError{"strength of " + s.Name, "mass concentration", gamma, 0, most, "g/L",
-			fmt.Sprintf("the density table ends at %.4g %% w/w; give density=", high.Percent())}
+		return 0, outOfRange("strength of "+s.Name, "mass concentration", gamma, 0, most, "g/L", fmt.Sprintf("the density table ends at %.4g %% w/w; give density=", high.Percent()))
 	}
 	for range 60 {
 		middle := (low + high) / 2
@@ -255,7 +253,7 @@ func (s Solute) pureDensity() (Density, error) {
 	}
 	rho, err := SolutionDensity(s.CAS, 1, s.Temperature)
 	if err != nil {
-		return 0, &NoDataError{"density of the pure liquid", s.Name, "give pure_density="}
+		return 0, noData("density of the pure liquid", s.Name, "give pure_density=")
 	}
 	return rho, nil
 }

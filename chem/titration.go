@@ -62,7 +62,7 @@ func (s Solution) AmountToPH(add Titrant, pH float64) (Amount, error) {
 		return 0, err
 	}
 	if !(pH >= lowestPH && pH <= highestPH) {
-		return 0, &RangeError{"amount to a pH", "pH", pH, lowestPH, highestPH, "", ""}
+		return 0, outOfRange("amount to a pH", "pH", pH, lowestPH, highestPH, "", "")
 	}
 	b := balance{mix: s.Mix, strong: float64(s.Strong), pKw: pKw}
 	lack := -float64(s.Volume) * b.at(pH)
@@ -108,7 +108,7 @@ func BufferCapacity(mix []Protolyte, pH float64, t Temperature) (Concentration, 
 		return 0, err
 	}
 	if !(pH >= lowestPH && pH <= highestPH) {
-		return 0, &RangeError{"buffer capacity", "pH", pH, lowestPH, highestPH, "", ""}
+		return 0, outOfRange("buffer capacity", "pH", pH, lowestPH, highestPH, "", "")
 	}
 	sum := 1e3 * (pow10(-pH) + pow10(pH-pKw))
 	for _, p := range mix {

@@ -15,8 +15,7 @@ import "math"
 func PKw(t Temperature) (float64, error) {
 	const hottest = ZeroCelsius + 100
 	if !(t >= ZeroCelsius && t <= hottest) {
-		return 0, &RangeError{"ion product of water", "temperature", t.Celsius(), 0, 100, "°C",
-			"give a temperature inside it"}
+		return 0, outOfRange("ion product of water", "temperature", t.Celsius(), 0, 100, "°C", "give a temperature inside it")
 	}
 	k := float64(t)
 	log := -4.098 - 3245.2/k + 2.2362e5/(k*k) - 3.984e7/(k*k*k) +

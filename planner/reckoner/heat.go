@@ -54,7 +54,7 @@ func runHeat(_ context.Context, args Args) (Answer, error) {
 	heat := reaction.Of(extent)
 	answer := Answer{
 		Results: []Result{Number("enthalpy", float64(reaction.Enthalpy/chem.KilojoulePerMole), "kJ/mol"), Number("heat", heat.Kilojoules(), "kJ")},
-		Notes:   []string{"per mole of " + reaction.Equation.String(), "heat is above nought where the reaction warms its surroundings"},
+		Notes:   []string{"per mole of " + reaction.Equation.AsWritten(), "heat is above nought where the reaction warms its surroundings"},
 	}
 	s := heatSum()
 	answer.Derivation = chem.Derivation{

@@ -220,7 +220,7 @@ func electrolyteOf(name string) (chem.Electrolyte, error) {
 	}
 	f, err := chem.ParseFormula(name)
 	if err != nil {
-		return chem.Electrolyte{}, &chem.NoDataError{What: "acid dissociation", Of: name, Advice: fmt.Sprintf("check the spelling, or give pka=%q", name+": 4.76")}
+		return chem.Electrolyte{}, &chem.DataError{Of: "acid dissociation of " + name, Err: chem.ErrNoData, Remedy: fmt.Sprintf("check the spelling, or give pka=%q", name+": 4.76")}
 	}
 	return chem.ElectrolyteOf(name, "", f)
 }
