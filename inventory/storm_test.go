@@ -27,6 +27,13 @@ func TestMain(m *testing.M) {
 		storm(dir)
 		os.Exit(0)
 	}
+	if dir := os.Getenv(weighDir); dir != "" {
+		if err := serveForWeighing(dir); err != nil {
+			fmt.Fprintln(os.Stderr, err)
+			os.Exit(1)
+		}
+		os.Exit(0)
+	}
 	status := m.Run()
 	for _, s := range benchStores {
 		s.Close()
