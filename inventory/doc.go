@@ -34,6 +34,32 @@
 // one moment each and never wait. PostgreSQL locks the rows it decides on,
 // bottles in order of their IDs and then the head of the store's chain, so that
 // no two transactions wait for each other in a circle; several servers may
-// share one database. The same tests run on both. Every table of the daily work
-// carries its store, and no transaction of the daily work touches two.
+// share one database. The same tests run on both.
+//
+// # Spread over several databases
+//
+// Stores can be spread over a distributed PostgreSQL by their store_id. Small
+// tables that all stores read and few write are copied everywhere: substances,
+// stock_forms, offers, policy_rows, recipe_texts, stores. The rest carries its
+// store: places, bottles, ledger, chains, bottle_states, weighings, earmarks,
+// runs, carboys, equipment, acts, audit, loans. These are the queries of the
+// daily work, each with the key it goes by:
+//
+//	a bottle              bottles by code (unique), or by id
+//	its ledger, states    ledger and bottle_states by (bottle_id, id), newest first
+//	a draw, count, weighing, receipt
+//	                      the bottle's row, the chain's row by store_id, one row into
+//	                      ledger; acts by (store_id, key)
+//	an earmark            the run's row, bottles by id in order, earmarks by
+//	                      (bottle_id, run_id)
+//	the slate             runs by (store_id, on_date); earmarks by run_id
+//	the shelf of a plan   bottles by form_id, earmarks by bottle_id
+//	search                names in memory, bottles by the plain spelling of number or
+//	                      lot, by code from a beginning on, by words of notes, by
+//	                      form_id and place_id
+//	check                 ledger by (store_id, seq) from one end to the other
+//
+// None touches two stores. A run's earmarks are on bottles of its own store, and
+// a bottle of another store is lent first: a loan is two transactions, one in
+// each store, of which the second may be repeated.
 package inventory

@@ -20,7 +20,8 @@ type Want struct {
 
 // Earmark promises an amount of a bottle to a run; a run's earlier earmark on
 // the same bottle is replaced. Lapsed earmarks of other runs give way. The
-// error is a *PromiseError that names the runs in the way.
+// error is a *PromiseError that names the runs in the way. A bottle of another
+// store has to be lent first.
 func (s *Store) Earmark(ctx context.Context, run int64, want Want, act Act) (Earmark, error) {
 	marks, err := s.earmarks(ctx, run, []Want{want}, false, act)
 	if err != nil || len(marks) == 0 {
@@ -115,6 +116,9 @@ func (s *Store) earmark(tx *gorm.DB, run Run, want Want, act Act) (mark Earmark,
 	case Sealed, Opened, OnLoan:
 	default:
 		return mark, invalid(doing, "bottle "+b.Code, "it is "+string(b.State), "choose another bottle")
+	}
+	if b.StoreID != run.StoreID {
+		return mark, invalid(doing, "bottle "+b.Code, "it belongs to another store than the run", "have it lent first")
 	}
 	marks, err := s.liveEarmarks(tx, &b, run.ID)
 	if err != nil {

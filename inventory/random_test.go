@@ -45,7 +45,7 @@ func TestRandomOperations(t *testing.T) {
 		random := rand.New(rand.NewPCG(3, 5))
 		r := &randomRun{t: t, s: s, random: random, models: map[string]*model{}, byID: map[int64]*model{}}
 		for _, b := range shelf.Bottles {
-			if b.State == Opened && b.Promised == 0 && len(r.codes) < 8 {
+			if b.State == Opened && b.Promised == 0 && b.StoreID == demoMain && len(r.codes) < 8 {
 				r.codes = append(r.codes, b.Code)
 				r.models[b.Code] = &model{b.Content, b.Size, map[int64]int64{}, nil}
 				r.byID[b.ID] = r.models[b.Code]

@@ -349,6 +349,14 @@ func TestEarmark(t *testing.T) {
 		if err != nil || len(cut) != 1 || cut[0].Run != 1 || cut[0].Amount != mL(60) {
 			t.Errorf("StockTake: cut %+v, %v", cut, err)
 		}
+		for _, other := range DemoLab(demoDay).Bottles {
+			if other.StoreID == demoAnnex && other.State == Sealed {
+				if _, err := s.Earmark(ctx, 1, Want{Bottle: other.Code, Amount: 1}, clerk); !errors.Is(err, ErrInvalid) {
+					t.Errorf("a bottle of another store: %v", err)
+				}
+				break
+			}
+		}
 		if _, err := s.SetState(ctx, 1, Dropped, 0, clerk); err != nil {
 			t.Fatal(err)
 		}
