@@ -48,6 +48,21 @@ func (q *quantity) extreme(up bool) float64 {
 	return min(max(q.mean+q.sd*z, q.least), q.most)
 }
 
+// constant reports whether every draw is the same.
+func (q *quantity) constant() bool { return q.dist == nil && !q.flat && q.sd == 0 }
+
+// usual is a value that isn't passed in draws whose random number is at most
+// usualShare.
+func (q *quantity) usual() float64 {
+	switch {
+	case q.dist != nil:
+		return q.dist.Quantile(usualShare)
+	case q.flat:
+		return q.least + (q.most-q.least)*usualShare
+	}
+	return min(max(q.mean+q.sd*standardNormal(usualShare), q.least), q.most)
+}
+
 // normalSteps is how finely the standard normal distribution is tabulated: the
 // outermost step lies at 4.3 standard deviations.
 const normalSteps = 1 << 16

@@ -29,6 +29,7 @@ type needRisk struct {
 	certain bool      // it suffices whatever happens, if the bottles drawn on are found
 	drawn   []float64 // draws of the need, where the walk-through was drawn
 	most    float64   // more than the need comes to in any draw
+	usual   float64   // more than it comes to if every charge keeps to what is usual
 	safe    float64   // of a single bottle: if its content's random number is above this, it suffices
 	short   []bool
 	chance  float64
@@ -167,23 +168,28 @@ func (a *assessor) waitFor(r *needRisk) {
 	n.ChanceShort, n.ChanceError = late, 0
 }
 
-// bound finds the most the need can be, whether the bottles drawn on suffice
-// whatever the draw, as long as each is found, and for a single bottle the
-// random number above which its content is enough, so that most draws are
-// decided by two comparisons.
+// usualShare is the share of the draws in which a charge keeps to what is usual.
+const usualShare = 0.999
+
+// bound finds the most the need can be and usually is, whether the bottles
+// drawn on suffice whatever the draw, as long as each is found, and for a single
+// bottle the random number above which its content is enough for what is usual,
+// so that most draws are decided by a few comparisons.
 func (r *needRisk) bound() {
-	r.most, r.safe = 0, 1
+	r.most, r.usual, r.safe = 0, 0, 1
 	if r.drawn != nil {
 		r.most = slices.Max(r.drawn)
+		r.usual = r.most
 	} else {
 		for k := range r.charges {
 			r.most += r.charges[k] * r.losses[k].extreme(true)
+			r.usual += r.charges[k] * r.losses[k].usual()
 		}
 	}
 	r.certain = r.sureWith(r.bottles)
 	r.cover.onlyFinding = r.certain
 	if len(r.bottles) == 1 && !r.certain {
-		r.safe = r.bottles[0].enoughAbove(r.most)
+		r.safe = r.bottles[0].enoughAbove(r.usual)
 	}
 }
 
@@ -200,7 +206,7 @@ func (r *needRisk) draw(bottles []bottleRisk) {
 func (r *needRisk) shortAt(bottles []bottleRisk, i int) bool {
 	if r.safe < 1 && len(bottles) == 1 {
 		b := &bottles[0]
-		if b.content.stream.Uniform(i) > r.safe {
+		if b.content.stream.Uniform(i) > r.safe && r.usually(i) {
 			return b.found.Uniform(i) < b.missing
 		}
 	}
@@ -218,7 +224,20 @@ func (r *needRisk) shortOf(bottles []bottleRisk, i int) bool {
 			return false
 		}
 	}
-	return have < r.needAt(i)
+	return (have <= r.usual || !r.usually(i)) && have < r.needAt(i)
+}
+
+// usually reports whether no charge goes beyond what is usual in draw i.
+func (r *needRisk) usually(i int) bool {
+	if r.drawn != nil {
+		return true
+	}
+	for k := range r.losses {
+		if !r.losses[k].constant() && r.losses[k].stream.Uniform(i) > usualShare {
+			return false
+		}
+	}
+	return true
 }
 
 func allFound(bottles []bottleRisk, i int) bool {
@@ -272,13 +291,17 @@ func (a *assessor) decides(risk *Risk) {
 func (a *assessor) weighFirst(risk *Risk) {
 	risk.WeighBefore = 1 - risk.RunEnough
 	best := risk.WeighBefore
+	bad := 0
+	for _, k := range a.run {
+		bad += b2i(k > 0)
+	}
 	for k := range a.needs {
 		r := &a.needs[k]
 		if r.short == nil || r.chance == 0 {
 			continue
 		}
 		for b := range r.bottles {
-			if after := a.afterWeighing(r, b); after < best {
+			if after := a.afterWeighing(r, b, bad, best); after < best {
 				best, risk.WeighFirst = after, r.bottles[b].fit.bottle.Code
 				risk.LookOnly = !r.bottles[b].doubtful || r.certain
 			}
@@ -288,21 +311,26 @@ func (a *assessor) weighFirst(risk *Risk) {
 }
 
 // afterWeighing is the run's chance of being short once a bottle's content is
-// known to the spread of a weighing.
-func (a *assessor) afterWeighing(r *needRisk, b int) float64 {
+// known to the spread of a weighing, bad being the draws that are short before.
+// If it can't be below best it may return early with any chance that isn't.
+func (a *assessor) afterWeighing(r *needRisk, b, bad int, best float64) float64 {
 	bottles := slices.Clone(r.bottles)
 	bottles[b].missing = 0 // what is weighed has been found
 	if bottles[b].doubtful {
 		bottles[b].content = a.weighed(&bottles[b])
 	}
 	onlyBetter := !bottles[b].doubtful || r.sureWith(bottles)
-	bad := 0
 	for i := range r.short {
-		switch others := int(a.run[i]) - b2i(r.short[i]); {
-		case others > 0:
+		if r.short[i] && a.run[i] == 1 && !r.shortOf(bottles, i) {
+			bad--
+		}
+	}
+	if onlyBetter || float64(bad)/float64(a.n) >= best {
+		return float64(bad) / float64(a.n)
+	}
+	for i := range r.short {
+		if a.run[i] == 0 && r.shortOf(bottles, i) {
 			bad++
-		case r.short[i] || !onlyBetter:
-			bad += b2i(r.shortOf(bottles, i))
 		}
 	}
 	return float64(bad) / float64(a.n)
