@@ -341,3 +341,20 @@ func writePlan(b *strings.Builder, p *Plan) {
 	}
 	fmt.Fprintf(b, "  metrics %.4g %.4g %.4g\n\n", float64(p.Metrics.AtomEconomy), p.Metrics.EFactor, p.Metrics.ProcessMassIntensity)
 }
+
+// A changed copy of a recipe isn't planned with the program of the original.
+func TestPlanOfChangedCopy(t *testing.T) {
+	req := demoRequest(t, "pentanoic-acid-dichromate", 50, 9)
+	shelf := inventory.NewShelf(inventory.DemoLab(demoToday))
+	before, err := MakePlan(req, shelf)
+	if err != nil {
+		t.Fatal(err)
+	}
+	changed := *req.Recipe
+	changed.Yield.Mean /= 2
+	req.Recipe = &changed
+	after, err := MakePlan(req, shelf)
+	if err != nil || !(after.Scale.Amount > 1.5*before.Scale.Amount) {
+		t.Errorf("half the yield takes %v mol instead of %v mol, %v", after.Scale.Amount, before.Scale.Amount, err)
+	}
+}

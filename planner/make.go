@@ -48,7 +48,7 @@ func newPlanning(req Request, shelf *inventory.Shelf) (*planning, error) {
 	if err := req.check(); err != nil {
 		return nil, err
 	}
-	program, err := Compile(req.Recipe)
+	program, err := req.Recipe.compiled()
 	if err != nil {
 		return nil, err
 	}

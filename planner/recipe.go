@@ -31,6 +31,8 @@ type Recipe struct {
 	Vessels    []VesselNote
 	Reactions  []Reaction
 	Steps      []Step
+
+	once *compiledOnce // nil for a recipe that wasn't read from a file
 }
 
 // SubstanceNote is what a recipe says of a substance itself, because the

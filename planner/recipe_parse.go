@@ -30,6 +30,7 @@ func ParseRecipe(file string, text []byte) (*Recipe, error) {
 	if err := errs.sorted(); err != nil {
 		return nil, err
 	}
+	r.once = &compiledOnce{}
 	return r, nil
 }
 
