@@ -143,7 +143,7 @@ func (m *matcher) candidates(c *coverage) []candidate {
 			if pure <= 0 {
 				continue
 			}
-			days := o.LeadDays90 + receiving
+			days := max(o.LeadDays, o.LeadDays90) + receiving
 			all = append(all, candidate{
 				offer: o, form: *f.form, pure: pure, conversion: f.conversion(),
 				arrives: m.req.Today.AddDays(days), orderBy: m.req.On.AddDays(-days),

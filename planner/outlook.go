@@ -90,7 +90,7 @@ func (m *matcher) arrivals(c *coverage) []inventory.Date {
 			}
 		}
 		for _, o := range m.shelf.OffersOf(f.form.ID) {
-			days = append(days, m.req.Today.AddDays(o.LeadDays90+receiving))
+			days = append(days, m.req.Today.AddDays(max(o.LeadDays, o.LeadDays90)+receiving))
 		}
 	})
 	return days

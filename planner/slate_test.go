@@ -209,3 +209,35 @@ func TestLadderOfCoveredRun(t *testing.T) {
 		t.Errorf("ladder of a covered run: %+v, %v", rungs, err)
 	}
 }
+
+// Short of dichromate with offers of two suppliers: the cheapest that arrives in
+// time is taken, the dearer one if only that does; the hydrate is converted.
+func TestPlanBuys(t *testing.T) {
+	lab := dichromateLab()
+	lab.Offers = []inventory.Offer{
+		{ID: 1, FormID: 1, Supplier: "Slow", Item: "S1", Currency: "EUR", PriceMinor: 1000, OrderFee: 100, PackSize: 500e6, LeadDays: 8, LeadDays90: 20},
+		{ID: 2, FormID: 1, Supplier: "Quick", Item: "Q1", Currency: "EUR", PriceMinor: 3000, OrderFee: 200, Surcharge: 50, PackSize: 250e6, LeadDays: 1, LeadDays90: 2},
+	}
+	for _, tc := range []struct {
+		days int
+		item string
+		cost int64
+	}{{30, "S1", 1100}, {5, "Q1", 3250}} {
+		plan, err := testPlanning(t, lab, 120, tc.days).plan()
+		if err != nil {
+			t.Fatal(err)
+		}
+		if len(plan.Buy) != 1 || plan.Buy[0].Offer.Item != tc.item || plan.Buy[0].Cost != tc.cost || !plan.Buy[0].InTime {
+			t.Fatalf("in %d days: %+v, want %s for %d in time", tc.days, plan.Buy, tc.item, tc.cost)
+		}
+		// What is left over is the pack's anhydrous content less what was short.
+		n, b := needOf(t, plan, "sodium dichromate"), plan.Buy[0]
+		want := float64(b.Offer.PackSize)*1e-6*.995*261.965/297.995 - n.Short.Grams()
+		if math.Abs(b.Leftover.Grams()-want) > 0.01 {
+			t.Errorf("left over %.3f g, want %.3f g", b.Leftover.Grams(), want)
+		}
+		if want := onDay.AddDays(tc.days).AddDays(-b.Offer.LeadDays90 - 1); b.OrderBy != want {
+			t.Errorf("order by %v, want %v: the lead time and a day for receiving before the run", b.OrderBy, want)
+		}
+	}
+}
