@@ -178,6 +178,9 @@ func restoreArchive(ctx context.Context, r io.Reader, into Options) (rows int64,
 		if there > 0 {
 			return &Error{Doing: doing, What: s.name(), Kind: ErrDuplicate, Why: "it holds a stock already", Would: "restore into an empty folder or database"}
 		}
+		if err := tx.Exec("DELETE FROM policy_rows").Error; err != nil { // as delivered, by Open
+			return err
+		}
 		if rows, err = a.load(s, tx); err != nil {
 			return err
 		}

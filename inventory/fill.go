@@ -123,6 +123,9 @@ func (s *Store) fillEarmarks(tx *gorm.DB, lab Lab, _ Act) error {
 }
 
 func (s *Store) fillRest(tx *gorm.DB, lab Lab, _ Act) error {
+	if err := tx.Exec("DELETE FROM policy_rows").Error; err != nil { // as delivered, by Open
+		return err
+	}
 	for _, step := range []error{createAll(tx, lab.Offers), createAll(tx, lab.Orders), createAll(tx, lab.Carboys),
 		createAll(tx, lab.Equipment), createAll(tx, lab.Policy.Rows())} {
 		if step != nil {

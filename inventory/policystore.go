@@ -6,6 +6,7 @@ import (
 	"math"
 
 	"gorm.io/gorm"
+	"gorm.io/gorm/clause"
 )
 
 // SetPolicy changes or adds a row. Its source must say where the value comes
@@ -38,5 +39,38 @@ func (s *Store) SetPolicy(ctx context.Context, row PolicyRow, act Act) error {
 			return err
 		}
 		return s.audit(tx, 0, act, doing, row.Key, before, fmt.Sprintf("%v %s, %s", row.Value, row.Unit, row.Source))
+	})
+}
+
+// seedPolicy puts in the rows of the policy as delivered that the table doesn't
+// have: all of them into a new store, and what a newer program asks for besides.
+// Rows that are there are never touched.
+func (s *Store) seedPolicy(ctx context.Context) error {
+	if s.options.ReadOnly {
+		return nil
+	}
+	var keys []string
+	err := s.read(ctx, "open", func(tx *gorm.DB) error {
+		return tx.Model(&PolicyRow{}).Pluck("key", &keys).Error
+	})
+	if err != nil {
+		return err
+	}
+	there := make(map[string]bool, len(keys))
+	for _, key := range keys {
+		there[key] = true
+	}
+	var missing []PolicyRow
+	for _, row := range PolicyDefaults(s.today()) {
+		if !there[row.Key] {
+			missing = append(missing, row)
+		}
+	}
+	if len(missing) == 0 {
+		return nil
+	}
+	return s.write(ctx, "open", func(tx *gorm.DB) error {
+		// Another server may be doing the same.
+		return createAll(tx.Clauses(clause.OnConflict{DoNothing: true}), missing)
 	})
 }

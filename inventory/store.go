@@ -73,6 +73,10 @@ func Open(ctx context.Context, o Options) (*Store, error) {
 		s.Close()
 		return nil, translate("open", err)
 	}
+	if err := s.seedPolicy(ctx); err != nil {
+		s.Close()
+		return nil, err
+	}
 	return s, nil
 }
 

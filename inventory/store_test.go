@@ -119,6 +119,43 @@ func TestFillAndLoad(t *testing.T) {
 	})
 }
 
+// A new store has the policy as delivered; what a site sets is kept, what is
+// missing is put in again.
+func TestPolicyOfANewStore(t *testing.T) {
+	onEngines(t, func(t *testing.T, s *Store) {
+		ctx := context.Background()
+		want := len(PolicyDefaults(demoDay))
+		shelf, err := s.Load(ctx)
+		if err != nil || len(shelf.Policy) != want {
+			t.Fatalf("%d rows of policy, %v, want %d", len(shelf.Policy), err, want)
+		}
+		if err := s.SetPolicy(ctx, PolicyRow{Key: "fill.waste", Value: .9, Unit: "1", Source: "house rule"}, clerk); err != nil {
+			t.Fatal(err)
+		}
+		if err := s.writer.Exec("DELETE FROM policy_rows WHERE key = 'heel.share'").Error; err != nil {
+			t.Fatal(err)
+		}
+		again, err := Open(ctx, Options{Dir: s.options.Dir, Database: s.options.Database, Now: noon})
+		if err != nil {
+			t.Fatal(err)
+		}
+		defer again.Close()
+		if shelf, err = again.Load(ctx); err != nil || len(shelf.Policy) != want || shelf.Policy["fill.waste"].Value != .9 {
+			t.Errorf("%d rows of policy, waste fill %+v, %v", len(shelf.Policy), shelf.Policy["fill.waste"], err)
+		}
+		// A backup also goes into a store that was opened once.
+		path := t.TempDir() + "/p.archive"
+		if err := s.Backup(ctx, path); err != nil {
+			t.Fatal(err)
+		}
+		into := Options{Dir: t.TempDir(), Now: noon}
+		openIn(t, into.Dir).Close()
+		if _, err := Restore(ctx, path, into); err != nil {
+			t.Error(err)
+		}
+	})
+}
+
 func TestMemory(t *testing.T) {
 	s, err := Open(context.Background(), Options{Memory: true, Now: noon})
 	if err != nil {
