@@ -17,6 +17,8 @@ type stepRow struct {
 	Picture template.HTML
 	Ware    string
 	Into    []string
+	Inside  string   // how much of each phase at the fullest moment
+	Holds   []string // the same with the largest parts of each phase
 	Lines   []string // what everybody has to know
 	More    []string // the rest
 	Explain string   // address of how its numbers came about, or ""
@@ -30,7 +32,7 @@ func stepRows(steps []planner.StepReport, where func(about string, n int) string
 	largest := largestVessel(steps)
 	rows := make([]stepRow, len(steps))
 	for i, s := range steps {
-		rows[i] = stepRow{StepReport: s, Picture: drawStep(s, largest), Ware: wareText(s.Vessel), Into: intoLines(s.Adds)}
+		rows[i] = stepRow{StepReport: s, Picture: drawStep(s, largest), Ware: wareText(s.Vessel), Into: intoLines(s.Adds), Inside: insideText(s.Contents), Holds: phaseLines(s.Contents)}
 		told, more := tellingSays(s)
 		rows[i].Lines, rows[i].More = append(told, stepLines(s)...), more
 		rows[i].At = where("step", s.N)
@@ -124,7 +126,7 @@ func tellingSays(s planner.StepReport) (told, more []string) {
 
 // repeats reports whether a remark gives a number that stepLines gives too.
 func repeats(say string, s planner.StepReport) bool {
-	return s.Heat != 0 && strings.HasPrefix(say, "gives off ") ||
+	return s.Heat != 0 && (strings.HasPrefix(say, "gives off ") || strings.HasPrefix(say, "takes up ")) ||
 		s.Shortest > 0 && strings.HasPrefix(say, "not faster than ") ||
 		s.Gas > 0 && strings.HasPrefix(say, with(trimmed(s.Gas.Litres(), 3), "L")+" of "+s.GasOf)
 }
@@ -194,4 +196,67 @@ func contentRows(steps []planner.StepReport) []contentRow {
 		}
 	}
 	return rows
+}
+
+// insideText is how much of each phase a vessel holds: liquids by volume, solids
+// and gases by mass.
+func insideText(contents []planner.Content) string {
+	var parts []string
+	for _, phase := range []string{"aqueous", "organic", "solid", "gas"} {
+		var volume chem.Volume
+		var mass chem.Mass
+		for _, c := range contents {
+			if c.Phase == phase {
+				volume, mass = volume+c.Volume, mass+c.Mass
+			}
+		}
+		switch {
+		case mass <= 0:
+		case volume > 0 && (phase == "aqueous" || phase == "organic"):
+			parts = append(parts, volumeText(volume)+" "+phase)
+		default:
+			parts = append(parts, massText(mass)+" "+phase)
+		}
+	}
+	return strings.Join(parts, ", ")
+}
+
+// WarmText is how warm a step is, or "–".
+func (r stepRow) WarmText() string {
+	if r.Temperature <= 0 {
+		return "–"
+	}
+	return celsiusText(r.Temperature)
+}
+
+// LongText is how long a step takes; what isn't known is said to be.
+func (r stepRow) LongText() string {
+	if r.TimeNotAssessed {
+		return "not assessed"
+	}
+	return timeText(r.Time)
+}
+
+// FullText is how full the vessel of a step is and may be.
+func (r stepRow) FullText() string {
+	if r.Vessel.Size <= 0 {
+		return "not assessed"
+	}
+	text := fillText(r.Vessel.Fill)
+	if r.Vessel.Limit > 0 {
+		text += " of at most " + fillText(r.Vessel.Limit)
+	}
+	return text
+}
+
+// LostText is how warm the step gets without cooling; it is only asked of a
+// step that gives heat off.
+func (r stepRow) LostText() string {
+	switch {
+	case r.IfCoolingLost > 0:
+		return celsiusText(r.IfCoolingLost)
+	case r.Heat.Kilojoules() >= 0.5 && r.Do != "cool":
+		return "not assessed"
+	}
+	return "–"
 }
