@@ -207,9 +207,9 @@ func (b tab) attribute(selector, name string) string {
 	return read[string](b, fmt.Sprintf(`document.querySelector(%q)?.getAttribute(%q) ?? ""`, selector, name))
 }
 
-// photograph writes a picture of the whole page into the folder that
-// STILLROOM_SCREENSHOTS names, for people to look at; without it, it does
-// nothing.
+// photograph writes pictures of the page that is open into the folder that
+// STILLROOM_SCREENSHOTS names, for people to look at: all of it, and what fits
+// the window. Without the folder it does nothing.
 func (b tab) photograph(page string, l look) {
 	b.Helper()
 	dir := os.Getenv("STILLROOM_SCREENSHOTS")
@@ -217,10 +217,15 @@ func (b tab) photograph(page string, l look) {
 		return
 	}
 	const lossless = 100
-	png, err := chromedp.Run(b.ctx, chromedp.FullScreenshot(lossless))
-	if err != nil {
-		b.Fatal(err)
+	name := strings.Trim(strings.NewReplacer("/", "-", "?", "-", "=", "-").Replace(page), "-") + "-" + l.name
+	for ending, take := range map[string]chromedp.Action[[]byte]{
+		"":        chromedp.FullScreenshot(lossless),
+		"-window": chromedp.CaptureScreenshot(),
+	} {
+		png, err := chromedp.Run(b.ctx, take)
+		if err != nil {
+			b.Fatal(err)
+		}
+		b.call(func() error { return os.WriteFile(filepath.Join(dir, name+ending+".png"), png, 0o644) })
 	}
-	name := strings.Trim(strings.NewReplacer("/", "-", "?", "-", "=", "-").Replace(page), "-")
-	b.call(func() error { return os.WriteFile(filepath.Join(dir, name+"-"+l.name+".png"), png, 0o644) })
 }
