@@ -27,6 +27,7 @@ func (m *mixtures) vesselNotes(s StepReport) []HazardNote {
 			continue
 		}
 		if note, ok := m.note(s.Name, phaseName(phase, len(phases)), byPhase[phase], 0); ok {
+			note.Step = s.N
 			notes = append(notes, note)
 		}
 	}

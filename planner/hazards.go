@@ -137,7 +137,7 @@ func (m *mixtures) formedNotes(steps []StepReport, stored map[string]bool) []Haz
 		seen[name] = true
 	}
 	var notes []HazardNote
-	add := func(step, name string) {
+	add := func(step StepReport, name string) {
 		key := name
 		if s := m.record(name); s != nil {
 			key = s.Name
@@ -146,7 +146,9 @@ func (m *mixtures) formedNotes(steps []StepReport, stored map[string]bool) []Haz
 			return
 		}
 		seen[key] = true
-		notes = append(notes, formedNote(step, name))
+		note := formedNote(step.Name, name)
+		note.Step = step.N
+		notes = append(notes, note)
 	}
 	for _, s := range steps {
 		for _, a := range s.Adds {
@@ -156,9 +158,9 @@ func (m *mixtures) formedNotes(steps []StepReport, stored map[string]bool) []Haz
 			seen[a.Substance] = true
 		}
 		for _, c := range s.Contents {
-			add(s.Name, c.Substance)
+			add(s, c.Substance)
 		}
-		add(s.Name, s.GasOf)
+		add(s, s.GasOf)
 	}
 	return notes
 }

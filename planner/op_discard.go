@@ -38,6 +38,7 @@ func (o *discardOp) run(w *Workspace) error {
 		o.empty(w, v)
 		return nil
 	}
+	w.report.step.Stream = o.stream
 	w.fullest(v)
 	d := Discard{Stream: o.stream, Step: w.step.N, StepName: w.step.Name}
 	for _, content := range w.contents(v) {

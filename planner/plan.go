@@ -229,7 +229,9 @@ type StepReport struct {
 	IfCoolingLost chem.Temperature
 	HoldPoint     bool
 	HoldNote      string
-	Cautions      []string
+	// Stream is where a step that discards puts what is in its vessel; "" for others.
+	Stream   string
+	Cautions []string
 	// Balance is the worst relative error of mass, elements and charge after the step.
 	Balance float64
 	// Says are the numbers the step is about, in words: "98.2 % of the acid".
@@ -312,6 +314,7 @@ type WasteLot struct {
 // HazardNote is one hazard of the hazard sheet.
 type HazardNote struct {
 	At         string // a step name, "as stored" or "waste"
+	Step       int    // number of the step; 0 for what is not of a step
 	What       string // substance or mixture
 	Classes    []string
 	Statements []string // "H314 Causes severe skin burns and eye damage"
