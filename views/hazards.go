@@ -27,9 +27,22 @@ func hazardRows(notes []planner.HazardNote) []hazardRow {
 			continue
 		}
 		seen[n.What] = true
-		rows = append(rows, hazardRow{n, statementCodes(n.Statements)})
+		rows = append(rows, hazardRow{n, codesText(n)})
 	}
 	return rows
+}
+
+// codesText is the codes of a note; without any, what is known of it instead.
+func codesText(n planner.HazardNote) string {
+	switch {
+	case len(n.Statements) > 0:
+		return statementCodes(n.Statements)
+	case strings.HasPrefix(n.Basis, "not classified"):
+		return "not classified"
+	case n.Basis == "", strings.HasPrefix(n.Basis, "no data"):
+		return "no data"
+	}
+	return "no statement on record"
 }
 
 // statementCodes takes the codes off the statements: "H314 Causes severe skin

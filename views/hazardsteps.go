@@ -5,68 +5,53 @@ import (
 	"slices"
 	"strings"
 
-	"stillroom/chem"
 	"stillroom/planner"
 )
 
-// assess goes through the run step by step.
+// assess goes through the run step by step; what only goes to waste is a table.
 func (h *hazardSheet) assess() {
 	h.heading("Assess: step by step", 50)
-	h.paragraph("", textLeft, h.right-textLeft, "Codes are those of the mixture in the vessel at its fullest moment, each layer by itself. Physical hazards of mixtures need a test that nobody made: they are taken from the worst ingredient. A step without the line “what if” was not assessed beyond the stop order on page 1.")
+	h.paragraph("", textLeft, h.right-textLeft, "Codes are those of the mixture in the vessel at its fullest moment, each layer by itself. Physical hazards of mixtures need a test that nobody made: “untested” ones are taken from the ingredient named. “As in step n” holds for the controls too. A step without “what if” was not assessed beyond the stop order on page 1.")
 	h.y += 2
-	said := map[string]int{}
-	for i, s := range h.plan.Steps {
-		if i > 0 {
-			h.rule(hairline)
-			h.y += 2.5
+	said := said{}
+	var discards []planner.StepReport
+	for _, s := range h.plan.Steps {
+		if s.Do == "discard" && len(s.Cautions) == 0 {
+			discards = append(discards, s)
+			continue
 		}
 		h.step(s, said)
 	}
 	if len(h.plan.Steps) == 0 {
 		h.paragraph("", textLeft, h.right-textLeft, "No steps: not assessed.")
 	}
+	h.discards(discards)
 }
 
 // step writes one step: its numbers, what is in the vessel at the worst moment,
-// cautions, and what if.
-// said remembers in which step something was said, so that it isn't said again.
-func (h *hazardSheet) step(s planner.StepReport, said map[string]int) {
-	pictograms := h.stepPictograms(s)
-	obstacle := float64(len(pictograms)) * (pictogramSide + 1)
-	texts := []styledText{{"B", s.Name}, {"", stepNumbers(s)}}
-	var vessel []string
-	for _, n := range h.plan.Hazards {
-		if n.At == s.Name && !n.Formed && s.Do != "discard" {
-			vessel = append(vessel, vesselText(n))
-		}
-	}
-	contents := once(said, s.N, "contents", vessel)
-	if s.Do == "discard" {
-		contents = []string{"Goes to waste: see “Prepare: waste”."}
-	}
+// cautions, and what if. A step that brings nothing new is short.
+func (h *hazardSheet) step(s planner.StepReport, said said) {
+	contents, again := h.contents(s, said)
+	failures, failed := said.once("what if", s.N, whatIf(s))
+	brief := len(contents) == 0 && len(failures) == 0 && len(s.Cautions) == 0
+	lead := styledText{lead: s.Name, text: stepNumbers(s) + references(again, failed)}
+	texts := []styledText{lead}
 	for _, text := range contents {
-		texts = append(texts, styledText{"", text})
+		texts = append(texts, styledText{text: text})
 	}
-	failures := once(said, s.N, "", whatIf(s))
-	// A step that brings nothing new is short: no signs, no line for controls.
-	brief := len(s.Cautions) == 0 && len(failures) == 0 && !slices.Equal(contents, vessel)
-	if brief {
-		pictograms, obstacle = nil, 0
-	}
-	lines := h.flow(texts, obstacle, pictogramSide+1)
-	height := float64(len(lines)) * lineHeight
+	var pictograms []string
+	least := 0.0
 	if !brief {
-		height = max(height, pictogramSide) + float64(len(s.Cautions)+len(failures))*lineHeight + 15
+		pictograms, least = h.stepPictograms(s), 2*lineHeight
 	}
-	h.room(min(height, h.bottom-60))
+	const side = 2*lineHeight - 0.5
+	obstacle := float64(len(pictograms)) * (side + 1)
+	lines := h.flow(texts, obstacle, least)
+	h.room(max(least, float64(min(len(lines), 4))*lineHeight))
 	for i, code := range pictograms {
-		h.drawPictogram(code, h.right-float64(len(pictograms)-i)*(pictogramSide+1), h.y, pictogramSide)
+		h.drawPictogram(code, h.right-float64(len(pictograms)-i)*(side+1), h.y, side)
 	}
 	h.putRight(family, "B", 13, textLeft-4, h.y-0.5, fmt.Sprint(s.N))
-	least := pictogramSide
-	if len(pictograms) == 0 {
-		least = 0
-	}
 	h.writeLines(lines, least)
 	for _, c := range s.Cautions {
 		h.labelledIn("caution", sentence(c), "B")
@@ -77,27 +62,139 @@ func (h *hazardSheet) step(s planner.StepReport, said map[string]int) {
 	if s.HoldPoint {
 		h.labelledIn("hold", "may stop here: "+orNotAssessed(s.HoldNote), "")
 	}
-	if brief {
-		h.y += 1.5
-		return
+	if !brief {
+		h.controls()
 	}
-	h.room(8)
-	h.y++
-	h.blank(textLeft, h.y, h.right-textLeft-h.measure(family, "", textSize, "control, gloves and their change")-1.5, "control, gloves and their change")
-	h.y += 8
+	h.y += 0.7
+	h.rule(hairline)
+	h.y += 1.3
 }
 
-// once returns texts, or a reference to the step that had the same ones.
-func once(said map[string]int, step int, what string, texts []string) []string {
-	if len(texts) == 0 {
-		return nil
+// controls is the blank for what protects in a step: after the last line if
+// there is room to write, else on a line of its own.
+func (h *hazardSheet) controls() {
+	const label, gap, least = "controls, gloves", 4.0, 34.0
+	width := h.measure(family, "", textSize, label) + 1.5
+	x, y := h.end+gap, h.y-lineHeight
+	if h.right-x < width+least {
+		h.room(lineHeight + 1)
+		x, y = textLeft, h.y+0.5
+		h.y += lineHeight + 0.5
 	}
-	key := strings.Join(texts, "\x00")
-	if before, ok := said[key]; ok {
-		return []string{sentence(strings.TrimSpace(fmt.Sprintf("%s as in step %d", what, before)))}
+	x = max(x, h.right-width-90)
+	h.blank(x, y, h.right-x-width, label)
+	h.y++
+}
+
+// contents are the layers in the vessel of a step that no step before had, and
+// the steps that had the others.
+func (h *hazardSheet) contents(s planner.StepReport, said said) (fresh []string, again []string) {
+	layers := 0
+	for _, n := range h.plan.Hazards {
+		if n.Step != s.N || n.Formed {
+			continue
+		}
+		layers++
+		key := n.What + "\x00" + strings.Join(n.Statements, "\x00")
+		before, ok := said[key]
+		if !ok {
+			said[key] = s.N
+		}
+		if !ok || before == s.N {
+			fresh = append(fresh, vesselText(n))
+			continue
+		}
+		layer, _, _ := strings.Cut(n.What, ":")
+		again = appendOnce(again, fmt.Sprintf("%s as in step\u00a0%d", layer, before))
 	}
-	said[key] = step
-	return texts
+	if len(fresh) == 0 && len(again) > 0 && sameStep(again) {
+		_, step, _ := strings.Cut(again[0], " as in ")
+		again = []string{"contents as in " + step}
+	}
+	if layers == 0 {
+		again = []string{"contents not assessed"}
+	}
+	return fresh, again
+}
+
+// sameStep reports that all references lead to one step.
+func sameStep(again []string) bool {
+	_, first, _ := strings.Cut(again[0], " as in ")
+	return !slices.ContainsFunc(again, func(text string) bool { return !strings.HasSuffix(text, " as in "+first) })
+}
+
+// references are what a step has in common with steps before, in a sentence.
+func references(lists ...[]string) string {
+	all := slices.Concat(lists...)
+	if len(all) == 0 {
+		return ""
+	}
+	return " " + sentence(strings.Join(all, "; "))
+}
+
+// said remembers in which step something was said, so that it isn't said again.
+type said map[string]int
+
+// once returns those of the texts that no step said before, and the steps that
+// said the others.
+func (s said) once(what string, step int, texts []string) (fresh, again []string) {
+	for _, text := range texts {
+		before, ok := s[text]
+		if !ok {
+			s[text] = step
+			fresh = append(fresh, text)
+			continue
+		}
+		again = appendOnce(again, fmt.Sprintf("%s as in step\u00a0%d", what, before))
+	}
+	return fresh, again
+}
+
+// discards is the table of where what is thrown away goes.
+func (h *hazardSheet) discards(steps []planner.StepReport) {
+	if len(steps) == 0 {
+		return
+	}
+	h.room(4 * lineHeight)
+	h.put(family, "B", textSize, textLeft, h.y, "Where it goes: steps that only discard, see “Prepare: waste”")
+	h.y += lineHeight
+	what, vessel := textLeft, textLeft+44
+	stream := vessel + 50
+	for _, s := range steps {
+		to := s.Stream
+		if to == "" {
+			to = "stream not assessed"
+		}
+		columns := [][]string{
+			h.split(family, "B", textSize, s.Name, vessel-what-2),
+			h.split(family, "", textSize, wareName(s.Vessel)+atText(s), stream-vessel-2),
+			h.split(family, "", textSize, to, h.right-stream),
+		}
+		rows := max(len(columns[0]), len(columns[1]), len(columns[2]))
+		h.room(float64(rows) * lineHeight)
+		h.putRight(family, "B", textSize, textLeft-4, h.y, fmt.Sprint(s.N))
+		for c, x := range []float64{what, vessel, stream} {
+			style := ""
+			if c == 0 {
+				style = "B"
+			}
+			for i, line := range columns[c] {
+				h.put(family, style, textSize, x, h.y+float64(i)*lineHeight, line)
+			}
+		}
+		h.y += float64(rows) * lineHeight
+	}
+}
+
+// atText names the temperature of what is thrown away hot or cold.
+func atText(s planner.StepReport) string {
+	switch t := s.Temperature.Celsius(); {
+	case s.Temperature <= 0:
+		return ", temperature not assessed"
+	case t > 40 || t < 0:
+		return ", at " + celsiusText(s.Temperature)
+	}
+	return ""
 }
 
 func orNotAssessed(s string) string {
@@ -115,6 +212,7 @@ func (s *sheet) labelledIn(label, text, style string) {
 	for _, line := range lines {
 		s.room(lineHeight)
 		s.put(family, style, textSize, textLeft, s.y, line)
+		s.end = textLeft + s.measure(family, style, textSize, line)
 		s.y += lineHeight
 	}
 }
@@ -123,7 +221,7 @@ func (s *sheet) labelledIn(label, text, style string) {
 func (h *hazardSheet) stepPictograms(s planner.StepReport) []string {
 	var codes []string
 	for _, n := range h.plan.Hazards {
-		if n.At != s.Name {
+		if n.Step != s.N {
 			continue
 		}
 		for _, code := range n.Pictograms {
@@ -174,6 +272,9 @@ func stepNumbers(s planner.StepReport) string {
 	default:
 		words = append(words, "time not assessed")
 	}
+	if s.IfCoolingLost > 0 {
+		words = append(words, "up to "+celsiusText(s.IfCoolingLost)+" if cooling is lost")
+	}
 	return sentence(strings.Trim(strings.Join(words, "; "), "; ,"))
 }
 
@@ -196,7 +297,7 @@ func vesselText(n planner.HazardNote) string {
 	}
 	for _, note := range n.Notes {
 		if _, worst, ok := strings.Cut(note, "treat as the worst ingredient: "); ok {
-			text += "; untested, as the worst ingredient: " + worst
+			text += "; untested: " + codesOnly(worst)
 		}
 		if strings.Contains(note, "no hazard data") {
 			text += "; " + note
@@ -205,17 +306,26 @@ func vesselText(n planner.HazardNote) string {
 	return text + "."
 }
 
+// codesOnly leaves the classes off: "Flam. Liq. 2 H225 (ethyl acetate)" gives
+// "H225 (ethyl acetate)".
+func codesOnly(worst string) string {
+	parts := strings.Split(worst, "), ")
+	for i, part := range parts {
+		class, ingredient, ok := strings.Cut(part, " (")
+		if at := strings.LastIndex(class, " H"); ok && at >= 0 {
+			parts[i] = class[at+1:] + " (" + ingredient
+		}
+	}
+	return strings.Join(parts, "), ")
+}
+
 // whatIf lists failures of a kind of step with what to do (common practice),
 // with the plan's own numbers where it has them.
 func whatIf(s planner.StepReport) []string {
 	var list []string
 	switch s.Do {
 	case "add", "make-up", "react":
-		reached := "the temperature reached was not assessed"
-		if s.IfCoolingLost > 0 {
-			reached = "up to " + celsiusText(s.IfCoolingLost)
-		}
-		list = append(list, "Cooling lost: "+reached+". Stop the addition, keep stirring, ice into the bath.",
+		list = append(list, "Cooling lost: the step gives the temperature reached, or it was not assessed. Stop the addition, keep stirring, ice into the bath.",
 			"Stirrer stops: stop the addition. What was added lies unreacted: restart slowly, watch the thermometer.",
 			"Added too fast: temperature runs ahead. Stop, cool, wait until it falls.")
 	case "heat", "co-distil", "boil-down", "distil", "strip":
@@ -235,100 +345,6 @@ func whatIf(s planner.StepReport) []string {
 	}
 	if s.Gas > 0 && s.Do != "neutralise" && s.Do != "acidify" {
 		list = append(list, "Outlet blocked: pressure. Never close the vessel while gas is given off.")
-	}
-	return list
-}
-
-// minimise has the blanks for controls and the precautionary statements.
-func (h *hazardSheet) minimise() {
-	h.heading("Minimise: controls", 40)
-	for _, label := range []string{"less hazardous way considered", "hood or containment", "gloves: material, thickness, change every", "eyes and face, body", "monitoring or health surveillance"} {
-		h.room(8)
-		h.blank(marginLeft, h.y, h.right-marginLeft-h.measure(family, "", textSize, label)-1.5, label)
-		h.y += 8
-	}
-	var codes []string
-	for _, n := range h.plan.Hazards {
-		if n.At != planner.AsStored && !n.Formed {
-			continue
-		}
-		for _, p := range n.P {
-			if !slices.Contains(codes, p) {
-				codes = append(codes, p)
-			}
-		}
-	}
-	slices.SortStableFunc(codes, strings.Compare)
-	var lines []string
-	for _, code := range codes {
-		lines = append(lines, chem.StatementLine(code))
-	}
-	if len(lines) == 0 {
-		lines = []string{"No precautionary statements on record: no data"}
-	}
-	for i := range lines {
-		lines[i] = sentence(lines[i])
-	}
-	h.room(3 * lineHeight)
-	h.put(family, "B", textSize, textLeft, h.y, "Precautionary statements of the substances used and formed")
-	h.y += lineHeight
-	h.paragraph("", textLeft, h.right-textLeft, strings.Join(lines, " "))
-}
-
-// prepare has waste, people and signatures.
-func (h *hazardSheet) prepare() {
-	h.heading("Prepare: waste", 35)
-	if len(h.plan.Waste) == 0 {
-		h.paragraph("", textLeft, h.right-textLeft, "No waste computed: not assessed.")
-	}
-	for _, w := range h.plan.Waste {
-		h.wasteLot(w)
-	}
-	h.heading("Prepare: people and signatures", 70)
-	for _, row := range [][2]string{{"done by", "trained on"}, {"second person nearby", "lone or unattended work"}, {"people exposed, and how long", "designated area"},
-		{"assessed by", "date"}, {"reviewed by", "date"}, {"next review", "changed since the last approval"}} {
-		h.room(9)
-		half := (h.right - marginLeft) / 2
-		h.blank(marginLeft, h.y, half-h.measure(family, "", textSize, row[0])-5, row[0])
-		h.blank(marginLeft+half, h.y, half-h.measure(family, "", textSize, row[1])-1.5, row[1])
-		h.y += 9
-	}
-}
-
-func (h *hazardSheet) wasteLot(w planner.WasteLot) {
-	where := w.Carboy
-	if where == "" {
-		where = "no carboy"
-	} else if !w.Fits {
-		where += ", DOES NOT FIT"
-	}
-	texts := []styledText{{"B", fmt.Sprintf("%s: %s, %s", w.Stream, volumeText(w.Volume), where)}}
-	stream, known := chem.WasteStreamNamed(w.Stream)
-	if known {
-		texts = append(texts, styledText{"", sentence(strings.Join(nonEmpty(stream.How, stream.Never, "codes that often apply: "+strings.ReplaceAll(strings.Join(nonEmpty(stream.CodeUS, stream.CodeEU), ", "), "<=", "≤ ")), "; ") + "; defer to local law and the contractor")})
-	} else {
-		texts = append(texts, styledText{"", "No rule on record for this stream: not assessed."})
-	}
-	if w.Note != "" {
-		texts = append(texts, styledText{"B", sentence(w.Note)})
-	}
-	for _, n := range h.plan.Hazards {
-		if n.At == planner.InWaste && strings.HasPrefix(n.What, w.Stream+":") {
-			texts = append(texts, styledText{"", vesselText(n)})
-		}
-	}
-	lines := h.flow(texts, 0, 0)
-	h.room(min(float64(len(lines))*lineHeight, 40))
-	h.writeLines(lines, 0)
-	h.y += 1.5
-}
-
-func nonEmpty(texts ...string) []string {
-	var list []string
-	for _, t := range texts {
-		if t != "" {
-			list = append(list, t)
-		}
 	}
 	return list
 }

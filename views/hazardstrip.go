@@ -151,7 +151,7 @@ func (h *hazardSheet) scale() {
 		if f.Severity >= planner.Warning {
 			text := f.Text
 			if f.Would != "" {
-				text += " " + f.Would
+				text += "; " + f.Would
 			}
 			h.labelled("Warning", text)
 		}

@@ -38,10 +38,11 @@ const (
 	textSize   = 11.0
 	amountSize = 15.0 // amounts are read at arm's length
 	titleSize  = 24.0
-	lineHeight = 5.0 // of text
+	lineHeight = 4.6 // of text
 	marginLeft = 12.0
-	textLeft   = 30.0 // the margin column holds ticks, numbers and codes
-	qrSide     = 21.0
+	textLeft   = 27.0 // the margin column holds ticks, numbers and codes
+	qrSide     = 21.0 // of the code on the first page
+	qrSmall    = 16.0 // on the others
 	tickSide   = 7.0
 	hairline   = 0.2
 	ruleWidth  = 0.5
@@ -57,7 +58,8 @@ type sheet struct {
 	width, height float64
 	right, bottom float64
 	y             float64
-	continued     string // heading repeated on the next page
+	end           float64 // where the last line written ended
+	continued     string  // heading repeated on the next page
 	qr            codeMatrix
 	widths        map[typeface]map[rune]float64
 }
@@ -146,9 +148,15 @@ func (s *sheet) backAddress() string {
 func (s *sheet) page() {
 	s.pdf.AddPage()
 	s.pdf.SetTextColor(0, 0, 0)
-	s.drawMatrix(s.qr, s.right-qrSide, 10, qrSide)
-	s.y = 12
 	first := s.pdf.PageNo() == 1
+	side := qrSmall
+	s.y = 9
+	if first {
+		side = qrSide
+		s.y = 12
+	}
+	s.drawMatrix(s.qr, s.right-side, s.y-2, side)
+	below := s.y + side
 	if first {
 		s.put(familyLight, "", titleSize, marginLeft, s.y, s.kind)
 		s.y += 12
@@ -163,7 +171,7 @@ func (s *sheet) page() {
 			s.y += lineHeight
 		}
 	}
-	s.y = max(s.y, 10+qrSide) + 2
+	s.y = max(s.y, below-1) + 1
 	s.rule(ruleWidth)
 	s.y += 3
 	if !first && s.continued != "" {

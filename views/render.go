@@ -134,7 +134,7 @@ var templateFuncs = template.FuncMap{
 	"bound":    bound,
 	"state":    stateMark,
 	"severity": severityWord,
-	"pair":     pairText,
+	"unstated": codesText,
 	"packSize": packSize,
 	"bar":      func() []barEntry { return barEntries },
 	"add":      func(a, b int) int { return a + b },

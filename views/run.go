@@ -40,6 +40,7 @@ type runPage struct {
 	Risk     []string
 	Hazards  []hazardRow // as stored, and what is formed
 	Noted    int         // hazards noted altogether
+	Pairs    pairGroups
 	Waste    []wasteRow
 	Paper    *paperCheck // set when the address came from a printed sheet
 
@@ -229,7 +230,7 @@ func (p *runPage) dress(printed string) {
 	p.Flow = drawFlow(plan.Flow)
 	p.Budget = budgetOf(plan.Budget)
 	p.Risk = riskWords(plan.Risk)
-	p.Hazards, p.Noted = hazardRows(plan.Hazards), len(plan.Hazards)
+	p.Hazards, p.Noted, p.Pairs = hazardRows(plan.Hazards), len(plan.Hazards), groupPairs(plan)
 	p.Waste = wasteRows(plan.Waste, p.carboys)
 	p.Paper = checkPaper(printed, plan)
 }

@@ -1,7 +1,6 @@
 package views
 
 import (
-	"stillroom/chem"
 	"stillroom/inventory"
 	"stillroom/planner"
 )
@@ -15,18 +14,6 @@ func severityWord(s planner.Severity) string {
 		return "refusal"
 	}
 	return "note"
-}
-
-// pairText says which two must never meet and what would come of it.
-func pairText(p chem.Incompatibility) string {
-	text := p.A + " and " + p.B
-	if p.Consequences != "" {
-		text += ": " + p.Consequences
-	}
-	if p.Note != "" {
-		text += " (" + p.Note + ")"
-	}
-	return text
 }
 
 // packSize writes the size of an offered pack.
