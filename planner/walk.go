@@ -32,8 +32,8 @@ type Conditions struct {
 	Stocks map[string]Stock
 	// Off lists hidden needs switched off, by their key.
 	Off []string
-	// Equipment is the ware the lab owns; nil means that it isn't known, and
-	// then no vessel is picked.
+	// Equipment is the ware the lab owns; with none it isn't known, and then no
+	// vessel is picked. A lab that has entered none is told so; nil says nothing.
 	Equipment []inventory.Equipment
 	// Policy holds the fill limits, heat figures and priors.
 	Policy inventory.Policy

@@ -71,9 +71,14 @@ func (r *reporter) chooseWare(w *Workspace) {
 	list := r.uses(w.conditions.Policy)
 	for i := range list {
 		r.pick(&list[i], list[:i], w.conditions.Equipment)
-		if list[i].piece < 0 && w.conditions.Equipment != nil {
+		if list[i].piece < 0 && len(w.conditions.Equipment) > 0 {
 			r.walk.Findings = append(r.walk.Findings, r.tooSmall(&list[i], w.conditions.Equipment))
 		}
+	}
+	if w.conditions.Equipment != nil && len(w.conditions.Equipment) == 0 {
+		r.walk.Findings = append(r.walk.Findings, Finding{Kind: "no-ware-known", Severity: Warning,
+			Text:  "no glassware is on record, so that no vessel is picked; whether the lab's own hold each step, and cool it, is not assessed",
+			Would: "enter the lab's ware, or compare the volumes of the steps with it by hand"})
 	}
 	byVessel := map[int]use{}
 	for _, u := range list {
