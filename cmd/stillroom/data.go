@@ -40,15 +40,21 @@ func (o *dataOptions) openExisting(ctx context.Context, command string) (*invent
 	return o.open(ctx, command)
 }
 
-// shelf reads the stock, or takes the demonstration lab when no data is named.
-func (o *dataOptions) shelf(ctx context.Context, today inventory.Date) (*inventory.Shelf, error) {
+// stock reads the shelf and the recipes saved beside it, or takes the
+// demonstration lab when no data is named.
+func (o *dataOptions) stock(ctx context.Context, today inventory.Date) (*inventory.Shelf, []inventory.RecipeText, error) {
 	if !o.given() {
-		return inventory.NewShelf(inventory.DemoLab(today)), nil
+		return inventory.NewShelf(inventory.DemoLab(today)), nil, nil
 	}
 	store, err := o.openExisting(ctx, "plan")
 	if err != nil {
-		return nil, err
+		return nil, nil, err
 	}
 	defer store.Close()
-	return store.Load(ctx)
+	saved, err := store.RecipeTexts(ctx)
+	if err != nil {
+		return nil, nil, err
+	}
+	shelf, err := store.Load(ctx)
+	return shelf, saved, err
 }

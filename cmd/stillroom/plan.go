@@ -7,6 +7,7 @@ import (
 	"io"
 	"os"
 	"path/filepath"
+	"slices"
 	"strings"
 	"time"
 
@@ -39,7 +40,7 @@ bottles it is drawn from, what is short and what to buy.
 RECIPE is the name of a recipe or a recipe file. Without --data the plan is made
 against the demonstration lab.
 
-Recipes that come with the program: ` + strings.Join(recipeNames(), ", ") + ".",
+Recipes that come with the program: ` + strings.Join(recipeNames(nil), ", ") + ".",
 		Args: exactly(1, "a recipe"),
 		RunE: func(cmd *cobra.Command, args []string) error {
 			return o.run(cmd.Context(), args[0], today(), cmd.OutOrStdout())
@@ -64,8 +65,11 @@ func (o *planOptions) run(ctx context.Context, recipe string, today inventory.Da
 	if err != nil {
 		return err
 	}
-	shelf, err := o.data.shelf(ctx, today)
+	shelf, saved, err := o.data.stock(ctx, today)
 	if err != nil {
+		return err
+	}
+	if request.Recipe, err = findRecipe(recipe, saved); err != nil {
 		return err
 	}
 	plan, err := planner.MakePlan(request, shelf)
@@ -81,12 +85,8 @@ func (o *planOptions) run(ctx context.Context, recipe string, today inventory.Da
 	return nil
 }
 
-// request reads the command line into a planner's request.
+// request reads the command line into a planner's request that has no recipe yet.
 func (o *planOptions) request(recipe string, today inventory.Date) (planner.Request, error) {
-	r, err := findRecipe(recipe)
-	if err != nil {
-		return planner.Request{}, err
-	}
 	if o.target == "" {
 		return planner.Request{}, usagef("plan %s: --target is missing; give the mass of product wanted, such as --target 50g", recipe)
 	}
@@ -100,34 +100,49 @@ func (o *planOptions) request(recipe string, today inventory.Date) (planner.Requ
 			return planner.Request{}, usagef("--on: %w", err)
 		}
 	}
-	return planner.Request{Recipe: r, Target: target, On: on, Today: today, Batches: o.batches}, nil
+	return planner.Request{Target: target, On: on, Today: today, Batches: o.batches}, nil
 }
 
-// findRecipe takes a recipe that comes with the program, by name, or reads a file.
-func findRecipe(name string) (*planner.Recipe, error) {
+// findRecipe takes a recipe by its name, the saved one before the one that comes
+// with the program, or reads a file.
+func findRecipe(name string, saved []inventory.RecipeText) (*planner.Recipe, error) {
+	for _, s := range saved {
+		if s.Name == name {
+			return readRecipe(name+".yaml", []byte(s.Text))
+		}
+	}
 	if r, ok := planner.RecipeByName(name); ok {
 		return r, nil
 	}
 	text, err := os.ReadFile(name)
 	if errors.Is(err, os.ErrNotExist) {
-		return nil, usagef("no recipe %q and no file of that name: want one of %s, or a recipe file", name, strings.Join(recipeNames(), ", "))
+		return nil, usagef("no recipe %q and no file of that name: want one of %s, or a recipe file", name, strings.Join(recipeNames(saved), ", "))
 	}
 	if err != nil {
 		return nil, usagef("recipe: %w", err)
 	}
-	r, err := planner.ParseRecipe(name, text)
+	return readRecipe(name, text)
+}
+
+func readRecipe(file string, text []byte) (*planner.Recipe, error) {
+	r, err := planner.ParseRecipe(file, text)
 	if err != nil {
 		return nil, usageError{err}
 	}
 	return r, nil
 }
 
-func recipeNames() []string {
+// recipeNames lists the recipes there are, by name.
+func recipeNames(saved []inventory.RecipeText) []string {
 	var names []string
 	for _, r := range planner.Recipes() {
 		names = append(names, r.Name)
 	}
-	return names
+	for _, s := range saved {
+		names = append(names, s.Name)
+	}
+	slices.Sort(names)
+	return slices.Compact(names)
 }
 
 // show prints the plan and writes the papers.
