@@ -43,11 +43,16 @@ func (s *Server) showAnswers(c *gin.Context) error {
 	}
 	req := planner.Request{Recipe: recipe, Target: chem.Mass(run.TargetUG) * chem.Microgram, On: run.On,
 		Today: s.Today(), Run: run.ID, Store: run.StoreID}
-	rungs, err := planner.LadderOf(req, shelf)
+	runs, _, err := s.slateRuns(c.Request.Context(), shelf)
 	if err != nil {
 		return err
 	}
-	outlook, err := planner.OutlookOf(req, shelf)
+	slate := s.slateFor(s.memory.stateOf(shelf, runs, req.Today), runs, shelf)
+	rungs, err := planner.LadderAmong(req, slate, shelf)
+	if err != nil {
+		return err
+	}
+	outlook, err := planner.OutlookAmong(req, slate, shelf)
 	if err != nil {
 		return err
 	}

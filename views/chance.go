@@ -27,7 +27,7 @@ func (s *Server) showChance(c *gin.Context) error {
 	r := s.runPageFor(run, recipe)
 	r.readQuery(c.Request.URL.Query(), s.Today())
 	r.drawn = true
-	if err := s.planRun(r, shelf); err != nil {
+	if err := s.planRun(c.Request.Context(), r, shelf); err != nil {
 		return err
 	}
 	if len(r.Faults) > 0 {

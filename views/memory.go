@@ -1,6 +1,7 @@
 package views
 
 import (
+	"context"
 	"hash/maphash"
 	"strings"
 	"sync"
@@ -21,15 +22,13 @@ type memory struct {
 	sum   uint64
 	state labState
 	plans map[planKey]*planner.Plan
-	slate []planner.SlateLine
-	// written is the fingerprint of the recipes that the slate was planned with.
-	written uint64
+	slate *planner.Slate
 }
 
-// labState is the stock on a day, by its fingerprint.
+// labState is the stock on a day and the recipes of the runs, by fingerprints.
 type labState struct {
-	shelf uint64
-	today inventory.Date
+	shelf, recipes uint64
+	today          inventory.Date
 }
 
 // planKey is everything in a request that the pages set.
@@ -59,9 +58,14 @@ func (m *memory) at(state labState) {
 	}
 }
 
-// plan makes a plan, or gives the one made before.
-func (s *Server) plan(req planner.Request, shelf *inventory.Shelf) (*planner.Plan, error) {
-	state := s.memory.stateOf(shelf, req.Today)
+// plan makes the plan of a run among the others of the slate, or gives the one
+// made before.
+func (s *Server) plan(ctx context.Context, req planner.Request, shelf *inventory.Shelf) (*planner.Plan, error) {
+	runs, _, err := s.slateRuns(ctx, shelf)
+	if err != nil {
+		return nil, err
+	}
+	state := s.memory.stateOf(shelf, runs, req.Today)
 	key := planKey{req.Recipe.Name + "\n" + req.Recipe.Text, req.Target, req.On, req.Run, req.Store, req.Certainty, req.Drawn, strings.Join(req.Off, "\n")}
 	s.memory.mu.Lock()
 	s.memory.at(state)
@@ -70,7 +74,11 @@ func (s *Server) plan(req planner.Request, shelf *inventory.Shelf) (*planner.Pla
 	if ok {
 		return plan, nil
 	}
-	plan, err := s.Plan(req, shelf)
+	if s.Plan != nil {
+		plan, err = s.Plan(req, shelf)
+	} else {
+		plan, err = planner.PlanAmong(req, s.slateFor(state, runs, shelf), shelf)
+	}
 	if err != nil {
 		return nil, err
 	}
@@ -82,35 +90,34 @@ func (s *Server) plan(req planner.Request, shelf *inventory.Shelf) (*planner.Pla
 	return plan, nil
 }
 
-// slateLines plans the slate, or gives the lines worked out before.
-func (s *Server) slateLines(runs []planner.SlateRun, shelf *inventory.Shelf) []planner.SlateLine {
-	state := s.memory.stateOf(shelf, s.Today())
+// slateFor plans the slate, or gives the one worked out before.
+func (s *Server) slateFor(state labState, runs []planner.SlateRun, shelf *inventory.Shelf) *planner.Slate {
 	s.memory.mu.Lock()
 	s.memory.at(state)
-	lines, as := s.memory.slate, s.memory.written
+	slate := s.memory.slate
 	s.memory.mu.Unlock()
-	written := s.memory.recipes(runs)
-	if lines != nil && as == written {
-		return lines
+	if slate != nil {
+		return slate
 	}
-	lines = planner.SlateOf(runs, shelf, state.today).Lines
+	slate = planner.SlateOf(runs, shelf, state.today)
 	s.memory.mu.Lock()
 	defer s.memory.mu.Unlock()
 	if s.memory.state == state {
-		s.memory.slate, s.memory.written = lines, written
+		s.memory.slate = slate
 	}
-	return lines
+	return slate
 }
 
 // stateOf returns the state of the lab. A shelf never changes, so that the same
 // one isn't summed up twice.
-func (m *memory) stateOf(shelf *inventory.Shelf, today inventory.Date) labState {
+func (m *memory) stateOf(shelf *inventory.Shelf, runs []planner.SlateRun, today inventory.Date) labState {
+	recipes := m.recipes(runs)
 	m.mu.Lock()
 	defer m.mu.Unlock()
 	if m.last != shelf {
 		m.last, m.sum = shelf, m.fingerprint(shelf)
 	}
-	return labState{m.sum, today}
+	return labState{m.sum, recipes, today}
 }
 
 // recipes sums up which recipe text every run has.

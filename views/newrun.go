@@ -77,6 +77,6 @@ func (s *Server) tryPlan(ctx context.Context, recipe *planner.Recipe, ask askFor
 	if err != nil {
 		return err
 	}
-	_, err = s.Plan(planner.Request{Recipe: recipe, Target: ask.target, On: ask.on, Today: s.Today()}, shelf)
+	_, err = s.plan(ctx, planner.Request{Recipe: recipe, Target: ask.target, On: ask.on, Today: s.Today()}, shelf)
 	return err
 }

@@ -74,6 +74,11 @@ func (s *Server) recipeNamed(ctx context.Context, name string) (*planner.Recipe,
 	if err != nil {
 		return nil, err
 	}
+	return named(all, unread, name)
+}
+
+// named looks a recipe up among those read, or says why it isn't there.
+func named(all []*planner.Recipe, unread []string, name string) (*planner.Recipe, error) {
 	for _, r := range all {
 		if r.Name == name {
 			return r, nil

@@ -94,7 +94,7 @@ func (s *Server) askedRun(c *gin.Context) (*runPage, error) {
 	if p.Over() && p.Kept {
 		return p, nil
 	}
-	return p, s.planRun(p, shelf)
+	return p, s.planRun(c.Request.Context(), p, shelf)
 }
 
 // plannedRun is askedRun for what needs a plan: a run that is over has none.
@@ -188,11 +188,11 @@ func (p *runPage) tryAsk(wanted, on, certainty string, today inventory.Date) {
 
 // planRun makes the plan of what the page asks, unless that has faults. What the
 // planner refuses becomes a fault of the field it is about.
-func (s *Server) planRun(p *runPage, shelf *inventory.Shelf) error {
+func (s *Server) planRun(ctx context.Context, p *runPage, shelf *inventory.Shelf) error {
 	if len(p.Faults) > 0 {
 		return nil
 	}
-	plan, err := s.plan(planner.Request{
+	plan, err := s.plan(ctx, planner.Request{
 		Recipe: p.Recipe, Target: p.Ask.target, On: p.Ask.on, Today: s.Today(),
 		Run: p.Run.ID, Store: p.Run.StoreID, Certainty: p.Ask.certainty, Drawn: p.drawn, Off: p.Ask.Off,
 	}, shelf)
@@ -265,10 +265,15 @@ func (s *Server) findRun(c *gin.Context) (*inventory.Shelf, inventory.Run, *plan
 // run, so that a later version of the recipe changes nothing in it. A run
 // without a text goes by the recipe of its name.
 func (s *Server) recipeOf(ctx context.Context, run inventory.Run) (*planner.Recipe, error) {
+	return s.recipeAs(run, func() (*planner.Recipe, error) { return s.recipeNamed(ctx, run.Recipe) })
+}
+
+// recipeAs is the recipe by the text kept with the run, or else by its name.
+func (s *Server) recipeAs(run inventory.Run, byName func() (*planner.Recipe, error)) (*planner.Recipe, error) {
 	if run.RecipeText != "" {
 		return s.book.recipe(run.Recipe, run.RecipeText)
 	}
-	return s.recipeNamed(ctx, run.Recipe)
+	return byName()
 }
 
 // leadOf cuts the verdict after what it says first, at a semicolon or a full

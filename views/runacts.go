@@ -40,7 +40,7 @@ func (s *Server) keepRun(c *gin.Context) error {
 	p := s.runPageFor(run, recipe)
 	p.tryAsk(c.PostForm("wanted"), c.PostForm("on"), "", s.Today())
 	act := actOf(c, "another target or day", &p.Faults)
-	if err := s.planRun(p, shelf); err != nil {
+	if err := s.planRun(c.Request.Context(), p, shelf); err != nil {
 		return err
 	}
 	if len(p.Faults) > 0 {
@@ -120,7 +120,7 @@ func (s *Server) promisePage(c *gin.Context) (*promisePage, error) {
 	if isOver(run) {
 		return nil, noPlan(run)
 	}
-	plan, err := s.planKept(run, recipe, shelf)
+	plan, err := s.planKept(c.Request.Context(), run, recipe, shelf)
 	if err != nil {
 		return nil, err
 	}

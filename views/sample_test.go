@@ -2,6 +2,7 @@ package views
 
 import (
 	"context"
+	"slices"
 	"testing"
 	"time"
 
@@ -33,8 +34,13 @@ func newSampleLab(t testing.TB) *inventory.Store {
 // samplePlan is a plan with every need state, made up to look at; the amounts
 // in it are nobody's.
 func samplePlan(req planner.Request, shelf *inventory.Shelf) (*planner.Plan, error) {
+	main := slices.DeleteFunc(slices.Clone(shelf.Bottles), func(b inventory.Bottle) bool {
+		f, _ := shelf.Form(b.FormID)
+		least := map[inventory.Measure]int64{inventory.ByMass: 200e6, inventory.ByVolume: 200e3}[f.Measure]
+		return b.StoreID != 1 || least == 0 || b.Content < least || len(shelf.EarmarksOn(b.ID)) > 0 || b.State != inventory.Sealed
+	})
 	bottle := func(i int) planner.Draw {
-		b := shelf.Bottles[i%len(shelf.Bottles)]
+		b := main[i%len(main)]
 		f, _ := shelf.Form(b.FormID)
 		p, _ := shelf.Place(b.PlaceID)
 		return planner.Draw{Bottle: b, Form: f, Place: p, Mass: 63.5 * chem.Gram, Volume: 78 * chem.Millilitre, HasVolume: f.Measure == inventory.ByVolume, Why: "expires first"}
@@ -116,7 +122,7 @@ func sampleSums() []reckoner.Sum {
 // newDemoServer is the demonstration lab as the program serves it.
 func newDemoServer(t testing.TB) *Server {
 	t.Helper()
-	s, err := New(Config{Lab: newSampleLab(t), Plan: planner.MakePlan, Recipes: planner.Recipes(), Sums: reckoner.Sums(), Today: func() inventory.Date { return sampleToday }})
+	s, err := New(Config{Lab: newSampleLab(t), Recipes: planner.Recipes(), Sums: reckoner.Sums(), Today: func() inventory.Date { return sampleToday }})
 	if err != nil {
 		t.Fatal(err)
 	}

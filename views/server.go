@@ -30,7 +30,8 @@ import (
 // Config is what a Server needs. Lab and Today must be set.
 type Config struct {
 	Lab Lab
-	// Plan makes a plan for a request; nil means planner.MakePlan.
+	// Plan makes a plan for a request; nil means that a run is planned among the
+	// others of the slate, which is what the program does.
 	Plan func(planner.Request, *inventory.Shelf) (*planner.Plan, error)
 	// Recipes are those that come with the program; what the lab saved is added.
 	Recipes []*planner.Recipe
@@ -61,9 +62,6 @@ type Server struct {
 func New(c Config) (*Server, error) {
 	if c.Lab == nil || c.Today == nil {
 		return nil, errors.New("views: Lab and Today have to be set")
-	}
-	if c.Plan == nil {
-		c.Plan = planner.MakePlan
 	}
 	if c.Now == nil {
 		c.Now = time.Now

@@ -327,6 +327,23 @@ func TestDemonstrationLabIsShown(t *testing.T) {
 	}
 }
 
+// The page of a run says what the slate says of it, whatever earlier runs were
+// promised.
+func TestRunPageAgreesWithTheSlate(t *testing.T) {
+	s := newDemoServer(t)
+	rows := all(parse(t, get(t, s, "/slate")), "tbody tr")
+	if len(rows) == 0 {
+		t.Fatal("the slate is empty")
+	}
+	for _, row := range rows {
+		address, _ := attribute(all(row, "th a")[0], "href")
+		page, _ := attribute(one(t, parse(t, get(t, s, address)), "#verdict"), "data-state")
+		if slate := text(all(row, ".state")[0]); slate != page {
+			t.Errorf("%s is %s on the slate and %s on its page", address, slate, page)
+		}
+	}
+}
+
 // The content security policy forbids what a page must not hold in the first
 // place.
 func TestNothingInline(t *testing.T) {

@@ -2,6 +2,7 @@ package views
 
 import (
 	"cmp"
+	"context"
 	"net/http"
 	"slices"
 
@@ -53,22 +54,35 @@ func (s *Server) slate(c *gin.Context) (*inventory.Shelf, []planner.SlateLine, e
 	if err != nil {
 		return nil, nil, err
 	}
-	var runs []planner.SlateRun
-	unread := map[int64]error{}
-	for _, run := range shelf.Runs {
-		recipe, err := s.recipeOf(c.Request.Context(), run)
-		if err != nil {
-			unread[run.ID] = err
-		}
-		runs = append(runs, planner.SlateRun{Run: run, Recipe: recipe})
+	runs, unread, err := s.slateRuns(c.Request.Context(), shelf)
+	if err != nil {
+		return nil, nil, err
 	}
-	lines := slices.Clone(s.slateLines(runs, shelf))
+	lines := slices.Clone(s.slateFor(s.memory.stateOf(shelf, runs, s.Today()), runs, shelf).Lines)
 	for i := range lines {
 		if err := unread[lines[i].Run.ID]; err != nil {
 			lines[i].Err = err
 		}
 	}
 	return shelf, lines, nil
+}
+
+// slateRuns gives every run its recipe, and the reasons of those that have none.
+func (s *Server) slateRuns(ctx context.Context, shelf *inventory.Shelf) ([]planner.SlateRun, map[int64]error, error) {
+	recipes, unreadable, err := s.readRecipes(ctx)
+	if err != nil {
+		return nil, nil, err
+	}
+	runs := make([]planner.SlateRun, len(shelf.Runs))
+	unread := map[int64]error{}
+	for i, run := range shelf.Runs {
+		recipe, err := s.recipeAs(run, func() (*planner.Recipe, error) { return named(recipes, unreadable, run.Recipe) })
+		if err != nil {
+			unread[run.ID] = err
+		}
+		runs[i] = planner.SlateRun{Run: run, Recipe: recipe}
+	}
+	return runs, unread, nil
 }
 
 // newSlateRow says what a plan found. What can't be planned stays on the slate
@@ -90,8 +104,8 @@ func newSlateRow(l planner.SlateLine) slateRow {
 func wantedText(r inventory.Run) string { return massPlain(chem.Mass(r.TargetUG) * chem.Microgram) }
 
 // planKept plans a run as it stands on the slate.
-func (s *Server) planKept(run inventory.Run, recipe *planner.Recipe, shelf *inventory.Shelf) (*planner.Plan, error) {
-	return s.plan(planner.Request{
+func (s *Server) planKept(ctx context.Context, run inventory.Run, recipe *planner.Recipe, shelf *inventory.Shelf) (*planner.Plan, error) {
+	return s.plan(ctx, planner.Request{
 		Recipe: recipe, Target: chem.Mass(run.TargetUG) * chem.Microgram,
 		On: run.On, Today: s.Today(), Run: run.ID, Store: run.StoreID,
 	}, shelf)

@@ -24,7 +24,7 @@ func TestStepsInNumbers(t *testing.T) {
 	}
 	run, _ := shelf.Run(1)
 	recipe, _ := planner.RecipeByName(run.Recipe)
-	plan, err := s.planKept(run, recipe, shelf)
+	plan, err := s.planKept(t.Context(), run, recipe, shelf)
 	if err != nil {
 		t.Fatal(err)
 	}

@@ -71,7 +71,6 @@ func onlyLoopback(listen string) error {
 func serve(ctx context.Context, store *inventory.Store, listen string, today func() inventory.Date, out io.Writer) error {
 	handler, err := views.New(views.Config{
 		Lab:     store,
-		Plan:    planner.MakePlan,
 		Recipes: planner.Recipes(),
 		Sums:    reckoner.Sums(),
 		Today:   today,
