@@ -16,6 +16,8 @@ type Electrolyte struct {
 	Strong float64
 	// Ions is half the sum of the squares of their charges.
 	Ions float64
+	// Water is what one formula of an anhydride takes up: 1 for sulfur dioxide.
+	Water float64
 }
 
 // AcidCount is how often an acid is in one formula, in whatever form.
@@ -41,7 +43,11 @@ var strongCations = map[string]float64{
 // equilibria themselves, such as iron, are refused so too.
 func ElectrolyteOf(name, cas string, f Formula) (Electrolyte, error) {
 	if a, ok := AcidByCAS(cas); ok {
-		return Electrolyte{Acids: []AcidCount{{a, 1}}}, nil
+		whole := Electrolyte{Acids: []AcidCount{{a, 1}}}
+		if dry := f.Anhydrous(); len(dry.Elements()) > 0 && dry.Count("H") == 0 {
+			whole.Water = a.Formula.Count("H") / 2
+		}
+		return whole, nil
 	}
 	counts := make(map[string]float64)
 	for _, e := range f.Anhydrous().Elements() {
@@ -76,6 +82,7 @@ func ElectrolyteOf(name, cas string, f Formula) (Electrolyte, error) {
 	for waters := 1; acid == nil && waters <= 3; waters++ { // an anhydride takes up water
 		counts["H"], counts["O"] = counts["H"]+2, counts["O"]+1
 		acid, n = acidIn(counts)
+		parts.Water = float64(waters)
 	}
 	isSalt := parts.Strong > 0 || len(parts.Acids) > 0 || f.Charge() != 0
 	if acid == nil || (!isSalt && acid.isOrganic() && !acid.toldApart(name, f.String())) {
@@ -103,7 +110,7 @@ func noAcid(name, why string) error {
 
 // isOrganic reports whether other molecules than this acid may have its
 // composition, as methyl formate has that of acetic acid.
-func (a *Acid) isOrganic() bool { return a.Formula.Count("C") > 0 && a.CAS != "463-79-6" }
+func (a *Acid) isOrganic() bool { return a.Formula.Count("C") > 1 }
 
 // toldApart reports whether an organic acid is told from its isomers by the name, as that
 // of its hydrate, or by a formula written with its carboxyl group.
@@ -115,28 +122,50 @@ func (a *Acid) toldApart(name, formula string) bool {
 // saltCations are the ions that the name of a salt may begin with.
 var saltCations = map[string]string{"lithium": "Li", "sodium": "Na", "potassium": "K", "rubidium": "Rb", "caesium": "Cs", "ammonium": "NH4"}
 
-// ElectrolyteOfSalt takes a salt apart by its name, such as "sodium pentanoate": one
-// cation of charge one and the anion of an acid with one proton that the table has.
+// ElectrolyteOfSalt takes a salt apart by its name: "sodium pentanoate" into one
+// cation of charge one and the anion of an acid with one proton that the table has,
+// "aniline hydrochloride", "anilinium chloride" and "methylammonium chloride" into
+// the amine and hydrogen chloride.
 func ElectrolyteOfSalt(name string) (Electrolyte, bool) {
-	first, rest, _ := strings.Cut(strings.ToLower(strings.TrimSpace(name)), " ")
+	name = strings.ToLower(strings.TrimSpace(name))
+	if salt, ok := amineSalt(name); ok {
+		return salt, true
+	}
+	first, rest, _ := strings.Cut(name, " ")
 	cation := saltCations[first]
 	stem, isAnion := strings.CutSuffix(rest, "ate")
 	if cation == "" || !isAnion {
 		return Electrolyte{}, false
 	}
-	for _, a := range acids().byCAS {
-		if a.Name != stem+"ic acid" || a.Charge != 0 || len(a.PKa) != 1 {
-			continue
-		}
-		salt := Electrolyte{Acids: []AcidCount{{a, 1}}}
-		if ammonia, _ := AcidByCAS("7664-41-7"); cation == "NH4" {
-			salt.Acids = append(salt.Acids, AcidCount{ammonia, 1})
-		} else {
-			salt.Strong, salt.Ions = 1, 0.5
-		}
-		return salt, true
+	a, ok := AcidByName(stem + "ic acid")
+	if !ok || a.Charge != 0 || len(a.PKa) != 1 {
+		return Electrolyte{}, false
 	}
-	return Electrolyte{}, false
+	salt := Electrolyte{Acids: []AcidCount{{a, 1}}}
+	if ammonia, _ := AcidByCAS("7664-41-7"); cation == "NH4" {
+		salt.Acids = append(salt.Acids, AcidCount{ammonia, 1})
+	} else {
+		salt.Strong, salt.Ions = 1, 0.5
+	}
+	return salt, true
+}
+
+// amineSalt takes the salt of an amine and hydrogen chloride apart.
+func amineSalt(name string) (Electrolyte, bool) {
+	var amine string
+	if stem, ok := strings.CutSuffix(name, " hydrochloride"); ok {
+		amine = stem
+	} else if stem, ok := strings.CutSuffix(name, "ammonium chloride"); ok && stem != "" {
+		amine = stem + "amine"
+	} else if stem, ok := strings.CutSuffix(name, "ium chloride"); ok {
+		amine = stem + "e"
+	}
+	base, ok := AcidByName(amine)
+	if amine == "" || !ok || base.Charge != 1 || len(base.PKa) != 1 {
+		return Electrolyte{}, false
+	}
+	hydrogenChloride, ok := AcidByCAS("7647-01-0")
+	return Electrolyte{Acids: []AcidCount{{base, 1}, {hydrogenChloride, 1}}}, ok
 }
 
 // ammoniumIn counts the ammonium ions that a formula is written with.

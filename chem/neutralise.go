@@ -3,6 +3,7 @@ package chem
 import (
 	"fmt"
 	"math"
+	"slices"
 	"strings"
 )
 
@@ -19,10 +20,11 @@ func AcidProtons(name, cas string, f Formula) (protons float64, assumed string, 
 	if err == nil {
 		for _, a := range e.Acids {
 			for _, pKa := range a.Acid.PKa {
-				if a.Acid.Charge == 0 && pKa <= neutralised {
+				if pKa <= neutralised {
 					protons += a.Count
 				}
 			}
+			protons -= a.Count * float64(a.Acid.Charge) // a base brings none of its own
 		}
 		if protons -= e.Strong; protons > 0 {
 			return protons, "", nil
@@ -50,9 +52,12 @@ type Base struct {
 // hydrogencarbonates of the metals of groups 1 and 2, ammonia and amines. Others are
 // refused with an error that wraps ErrNoData.
 func BaseOf(name, cas string, f Formula) (Base, error) {
+	if f.Hill() == mustFormula("NH4OH").Hill() {
+		return Base{Protons: 1, Water: 1}, nil // ammonia in water, written as the hydroxide
+	}
 	e, err := ElectrolyteOf(name, cas, f)
 	if err != nil {
-		return Base{}, err
+		return hydroxideBase(name, f)
 	}
 	b := Base{Protons: e.Strong, Water: e.Strong}
 	if f.Count("O") > 0 && e.Strong > 0 && f.Anhydrous().Count("H") == 0 && f.Count("C") == 0 {
@@ -76,6 +81,39 @@ func BaseOf(name, cas string, f Formula) (Base, error) {
 	return b, nil
 }
 
+// amphoteric are metals whose hydroxides and oxides take up acid, with their charge;
+// alkali dissolves most of them again.
+var amphoteric = map[string]float64{"Al": 3, "Zn": 2}
+
+// hydroxideBase is BaseOf for the hydroxides and oxides of aluminium and zinc.
+func hydroxideBase(name string, f Formula) (Base, error) {
+	dry := f.Anhydrous()
+	for symbol, charge := range amphoteric {
+		protons := charge * dry.Count(symbol)
+		oxygen, hydrogen := dry.Count("O"), dry.Count("H")
+		if protons > 0 && 2*oxygen-hydrogen == protons && nothingElse(dry, symbol, "O", "H") {
+			return Base{Protons: protons, Water: (protons + hydrogen) / 2}, nil
+		}
+	}
+	return Base{}, noData("base", name, "known are hydroxides, oxides, carbonates, hydrogencarbonates, ammonia and amines")
+}
+
+// nothingElse reports whether a formula holds no other elements.
+func nothingElse(f Formula, symbols ...string) bool {
+	return !slices.ContainsFunc(f.Elements(), func(e ElementCount) bool { return !slices.Contains(symbols, e.Symbol) })
+}
+
+// AcidWaters returns the waters that one formula of an acid brings along and that its
+// salt hasn't: those of hydration, less those that an anhydride such as sulfur dioxide
+// takes up first.
+func AcidWaters(name, cas string, f Formula) float64 {
+	e, err := ElectrolyteOf(name, cas, f)
+	if err != nil {
+		return f.Waters()
+	}
+	return f.Waters() - e.Water
+}
+
 // Neutralised is the outcome of neutralising an acid.
 type Neutralised struct {
 	Base          Mass   // to weigh in, excess included
@@ -89,7 +127,7 @@ type Neutralised struct {
 //
 //	n(base) = n(acid) · protons(acid) / protons(base) · (1 + excess)
 //
-// and what comes of it. The salt is the acid and the base (anhydrous) less the water
+// and what comes of it. acidMass is that of the acid without water (AcidWaters). The salt is the acid and the base (anhydrous) less the water
 // and the carbon dioxide. Excess carbonate keeps carbon dioxide back as
 // hydrogencarbonate; excess hydrogencarbonate doesn't.
 func Neutralise(acid Amount, acidMass MolarMass, protons float64, base Base, baseMass, anhydrous MolarMass, excess Fraction) (Neutralised, error) {

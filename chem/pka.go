@@ -52,6 +52,7 @@ var gradeRank = map[string]int{
 // acidTable finds acids by CAS number and by the composition of the molecule.
 type acidTable struct {
 	byCAS         map[string]*Acid
+	byName        map[string]*Acid
 	byComposition map[string]*Acid // the first of a composition
 }
 
@@ -61,7 +62,7 @@ var acids = sync.OnceValue(loadAcids)
 // of data/pka.csv, which go first where they give every step.
 func loadAcids() *acidTable {
 	best := bestConstants()
-	table := &acidTable{make(map[string]*Acid), make(map[string]*Acid)}
+	table := &acidTable{make(map[string]*Acid), make(map[string]*Acid), make(map[string]*Acid)}
 	for _, r := range readTable("acids.csv") {
 		formula, err := ParseFormula(r.text("formula"))
 		if err != nil {
@@ -77,7 +78,7 @@ func loadAcids() *acidTable {
 		for _, enthalpy := range r.numbers("dissociation_enthalpy_kJ_mol") {
 			a.Enthalpy = append(a.Enthalpy, enthalpy*1e3)
 		}
-		table.byCAS[a.CAS] = a
+		table.byCAS[a.CAS], table.byName[a.Name] = a, a
 		if key := formula.Hill(); table.byComposition[key] == nil {
 			table.byComposition[key] = a
 		}
@@ -141,6 +142,20 @@ func steps(best map[acidStep]row, cas string) (pKa []float64, sources []string) 
 func AcidByCAS(cas string) (*Acid, bool) {
 	a, ok := acids().byCAS[cas]
 	return a, ok
+}
+
+// AcidByName returns an acid, or the acid of a base, by its name or a synonym, also
+// one that is only met in water, such as carbonic acid.
+func AcidByName(name string) (*Acid, bool) {
+	name = strings.ToLower(strings.TrimSpace(name))
+	if a, ok := acids().byName[name]; ok {
+		return a, true
+	}
+	s, ok := LookupSubstance(name)
+	if !ok {
+		return nil, false
+	}
+	return AcidByCAS(s.CAS)
 }
 
 // PKaOf returns the acid dissociation constants in water at 25 °C by step, as pKa,

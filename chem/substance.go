@@ -124,6 +124,9 @@ func LookupSubstance(key string) (*Substance, bool) {
 	if s := index.formula[key]; s != nil {
 		return s, true
 	}
+	if rest, ok := cutStrength(key); ok {
+		return LookupSubstance(rest)
+	}
 	f, err := ParseFormula(cutAnhydrous(key))
 	if err != nil {
 		return nil, false
@@ -190,7 +193,7 @@ func (s *Substance) nearness(plain, hill string) int {
 		var room [96]byte
 		own := string(plainName(room[:0], name))
 		switch {
-		case own == plain:
+		case own == plain, i == 0 && string(plainName(nil, withoutCharges(name))) == plain:
 			better(1)
 		case strings.HasPrefix(own, plain):
 			better(3)
@@ -253,9 +256,18 @@ func indexSubstances(all []*Substance) *substanceIndex {
 		for _, synonym := range s.Synonyms {
 			if plain := string(plainName(nil, synonym)); !own[plain] {
 				index.add(index.plain, plain, s)
+				own[plain+"\n"] = true
 			}
 		}
 		index.addFormula(s)
+	}
+	for _, s := range all {
+		// "copper sulfate" is copper(II) sulfate as long as no other charge has it
+		if short := withoutCharges(s.Name); short != s.Name {
+			if plain := string(plainName(nil, short)); !own[plain] && !own[plain+"\n"] {
+				index.add(index.plain, plain, s)
+			}
+		}
 	}
 	return index
 }

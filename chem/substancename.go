@@ -109,6 +109,26 @@ func mayRespell(name []byte) bool {
 	return false
 }
 
+// cutStrength takes a word on the strength off a name: "conc. sulfuric acid". It
+// doesn't take off fuming, which is another thing.
+func cutStrength(key string) (string, bool) {
+	for _, word := range []string{"concentrated ", "conc. ", "conc ", "dilute ", "dil. ", "dil "} {
+		if len(key) > len(word) && strings.EqualFold(key[:len(word)], word) {
+			return strings.TrimSpace(key[len(word):]), true
+		}
+	}
+	return key, false
+}
+
+// withoutCharges takes the oxidation numbers out of a name: "copper(II) sulfate" is
+// "copper sulfate".
+func withoutCharges(name string) string {
+	for _, charge := range []string{"(I)", "(II)", "(III)", "(IV)", "(V)", "(VI)", "(VII)"} {
+		name = strings.ReplaceAll(name, charge, "")
+	}
+	return name
+}
+
 // cutAnhydrous takes the word off a formula: "MgSO4, anhydrous".
 func cutAnhydrous(key string) string {
 	const word = "anhydrous"

@@ -16,6 +16,7 @@ func neutraliseSum() Sum {
 			{"base", "Base", "NaHCO3", false},
 			{"amount", "Amount of acid", "0.5 mol", true},
 			{"mass", "Mass of acid, in place of the amount", "88.1 g", true},
+			{"purity", "Strength of the acid, where its mass isn't that of the pure one", "37 %", true},
 			{"excess", "Excess of base; none if not given", "10 %", true},
 			{"protons", "Acid protons of one molecule, in place of the table's", "2", true},
 			{"acid_molar_mass", "Molar mass of the acid, in place of the table's", "88.106 g/mol", true},
@@ -36,22 +37,31 @@ func runNeutralise(_ context.Context, args Args) (Answer, error) {
 	if err != nil {
 		return Answer{}, err
 	}
+	strength, more, err := acidStrength(args, acid)
+	if err != nil {
+		return Answer{}, err
+	}
+	notes = append(notes, more...)
 	base, base1, baseFormula, err := baseToAdd(args)
 	if err != nil {
 		return Answer{}, err
 	}
-	n, err := amountOfAcid(args, acid)
+	n, err := amountOfAcid(args, acid, strength)
 	if err != nil {
 		return Answer{}, err
 	}
 	var excess chem.Fraction
 	if args.Has("excess") {
-		if excess, err = args.Excess("excess"); err != nil {
+		var note string
+		if excess, note, err = excessOf(args, "base"); err != nil {
 			return Answer{}, err
 		}
+		notes = append(notes, note)
 	}
+	acidFormula, _ := chem.ParseFormula(acid.Formula)
+	acidMass := acid.MolarMass - chem.MolarMass(chem.AcidWaters(acid.Name, acid.CAS, acidFormula))*waterMolarMass()
 	anhydrous := base.MolarMass - chem.MolarMass(baseFormula.Waters())*waterMolarMass()
-	out, err := chem.Neutralise(n, acid.MolarMass, protons, base1, base.MolarMass, anhydrous, excess)
+	out, err := chem.Neutralise(n, acidMass, protons, base1, base.MolarMass, anhydrous, excess)
 	if err != nil {
 		return Answer{}, err
 	}
@@ -124,8 +134,21 @@ func baseToAdd(args Args) (chem.Substance, chem.Base, chem.Formula, error) {
 	return base, b, f, nil
 }
 
+// acidStrength reads the purity; without one a mass is that of the pure acid, and the
+// note says so.
+func acidStrength(args Args, acid chem.Substance) (chem.Fraction, []string, error) {
+	if !args.Has("purity") {
+		if args.Has("mass") {
+			return 1, []string{"the mass is taken as that of pure " + acid.Name + "; for a solution give its strength, such as purity=\"37 %\""}, nil
+		}
+		return 1, nil, nil
+	}
+	purity, err := args.Fraction("purity")
+	return purity, nil, err
+}
+
 // amountOfAcid reads the amount, or the mass over the molar mass; exactly one of them.
-func amountOfAcid(args Args, acid chem.Substance) (chem.Amount, error) {
+func amountOfAcid(args Args, acid chem.Substance, strength chem.Fraction) (chem.Amount, error) {
 	switch {
 	case args.Has("amount") && args.Has("mass"):
 		return 0, &KeyError{Key: "amount", Text: args["amount"], What: "given beside mass", Wanted: "give one of the two", Cause: chem.ErrAmbiguous}
@@ -138,7 +161,7 @@ func amountOfAcid(args Args, acid chem.Substance) (chem.Amount, error) {
 		return args.Amount("amount")
 	}
 	m, err := args.Mass("mass")
-	return acid.MolarMass.Of(m), err
+	return acid.MolarMass.Of(m * chem.Mass(strength)), err
 }
 
 // gasVolume gives the volume of a gas at the temperature and pressure given, or at

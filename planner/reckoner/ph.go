@@ -133,6 +133,9 @@ func chargeText(z int) string {
 	return "0"
 }
 
+// mostConcentrated is more than pure water, of which most molecules fit in a litre.
+const mostConcentrated = 60 * chem.MolePerLitre
+
 // readMixture reads the key mix; forms of one acid are put together.
 func readMixture(args Args, t chem.Temperature) (mixture, error) {
 	pairs, err := args.Pairs("mix")
@@ -148,6 +151,9 @@ func readMixture(args Args, t chem.Temperature) (mixture, error) {
 		c, err := ReadPair("mix", pair, chem.ParseConcentration)
 		if err != nil {
 			return mixture{}, err
+		}
+		if c > mostConcentrated {
+			return mixture{}, &KeyError{Key: "mix", Text: pair.Name + ": " + pair.Value, What: "more than a litre holds", Wanted: "give at most 60 mol/L", Cause: chem.ErrOutOfRange}
 		}
 		if p, ok := own[strings.ToLower(pair.Name)]; ok {
 			mix.addOwn(p, c)
@@ -213,7 +219,17 @@ func (m *mixture) dissolve(name string, c chem.Concentration, t chem.Temperature
 func electrolyteOf(name string) (chem.Electrolyte, error) {
 	if s, ok := chem.LookupSubstance(name); ok {
 		f, _ := chem.ParseFormula(s.Formula)
-		return chem.ElectrolyteOf(s.Name, s.CAS, f)
+		e, err := chem.ElectrolyteOf(s.Name, s.CAS, f)
+		if err == nil {
+			return e, nil
+		}
+		if salt, ok := chem.ElectrolyteOfSalt(s.Name); ok {
+			return salt, nil
+		}
+		return e, err
+	}
+	if a, ok := chem.AcidByName(name); ok {
+		return chem.Electrolyte{Acids: []chem.AcidCount{{Acid: a, Count: 1}}}, nil
 	}
 	if e, ok := chem.ElectrolyteOfSalt(name); ok {
 		return e, nil

@@ -37,7 +37,7 @@ func runQuench(_ context.Context, args Args) (Answer, error) {
 	if err != nil {
 		return Answer{}, err
 	}
-	excess, note, err := excessOf(args)
+	excess, note, err := excessOf(args, "reductant")
 	if err != nil {
 		return Answer{}, err
 	}
@@ -88,12 +88,12 @@ func oxidantAmount(args Args, oxidant chem.RedoxAgent) (chem.Amount, error) {
 
 // excessOf reads the excess. A bare number from one up is taken as the factor on
 // theory that it plainly is, and the note says so.
-func excessOf(args Args) (chem.Fraction, string, error) {
+func excessOf(args Args, of string) (chem.Fraction, string, error) {
 	if x, err := chem.ParseNumber(args["excess"]); err == nil && x >= 1 {
 		return chem.Fraction(x - 1), fmt.Sprintf("excess %g is read as %g times theory, %.4g %% more", x, x, 100*(x-1)), nil
 	}
 	excess, err := args.Excess("excess")
-	return excess, fmt.Sprintf("%.4g %% more reductant than theory", excess.Percent()), err
+	return excess, fmt.Sprintf("%.4g %% more %s than theory", excess.Percent(), of), err
 }
 
 func quenchDerivation(q chem.Quench, w chem.Quenching) chem.Derivation {
