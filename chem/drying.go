@@ -56,18 +56,42 @@ func DryingAgentOf(nameOrCAS string) (DryingAgent, error) {
 		}
 		names = append(names, agent.Name)
 	}
+	if of, ok := hydrateOfAgent(nameOrCAS); ok {
+		return DryingAgent{}, &DataError{
+			Of: fmt.Sprintf("drying agent %q", nameOrCAS), Err: ErrImpossible,
+			Limit: "it holds its water already", Remedy: "take anhydrous " + of.Name,
+		}
+	}
 	return DryingAgent{}, &DataError{
 		Of: fmt.Sprintf("drying agent %q", nameOrCAS), Err: ErrNoData,
 		Limit: "there are " + strings.Join(names, ", "), Remedy: "name one of them or give its capacity in g water per g",
 	}
 }
 
+// hydrateOfAgent finds the agent that a substance is a hydrate of.
+func hydrateOfAgent(name string) (DryingAgent, bool) {
+	text := name
+	if s, ok := LookupSubstance(name); ok {
+		text = s.Formula
+	}
+	f, err := ParseFormula(text)
+	if err != nil || f.Waters() == 0 {
+		return DryingAgent{}, false
+	}
+	for _, agent := range dryingAgents() {
+		if dry, err := ParseFormula(agent.Formula); err == nil && dry.Hill() == f.Anhydrous().Hill() {
+			return agent, true
+		}
+	}
+	return DryingAgent{}, false
+}
+
 // agentWords brings spellings of an agent's name together: "Molecular sieves 3 Å"
 // is "molecular sieve 3a", "MgSO4, anhydrous" loses its last word.
 func agentWords(name string) string {
-	name = strings.NewReplacer("sieves", "sieve", "å", "a", ",", "").Replace(strings.ToLower(name))
+	name = strings.NewReplacer("sieves", "sieve", "å", "a", ",", "", "copper sulfate", "copper(ii) sulfate").Replace(strings.ToLower(name))
 	words := strings.Fields(name)
-	words = slices.DeleteFunc(words, func(word string) bool { return word == "anhydrous" })
+	words = slices.DeleteFunc(words, func(word string) bool { return word == "anhydrous" || word == "molecular" })
 	slices.Sort(words)
 	return strings.ReplaceAll(strings.Join(words, " "), "3 a", "3a")
 }

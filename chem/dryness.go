@@ -106,6 +106,43 @@ func (a DryingAgent) Unsuitable(class string) (reason string, bad bool) {
 	return "", false
 }
 
+// classOfGroup names the reactivity groups of the compatibility chart
+// (EPA-600/2-80-076) in the words of the table of drying agents.
+var classOfGroup = map[int]string{
+	1: "strong acids", 2: "strong acids", 3: "carboxylic acids", 4: "alcohols", 5: "aldehydes", 6: "amides",
+	7: "amines", 13: "esters", 14: "ethers", 19: "ketones", 31: "phenols", 34: "epoxides",
+}
+
+// DryingClasses names the classes of a product, as the drying agents know them, by its
+// reactivity groups.
+func DryingClasses(groups []int) []string {
+	var classes []string
+	for _, g := range groups {
+		if class, ok := classOfGroup[g]; ok {
+			classes = append(classes, class)
+		}
+	}
+	return classes
+}
+
+// UnsuitableFor is Unsuitable for a product by name: the name itself, then the classes
+// of a substance that the table knows.
+func (a DryingAgent) UnsuitableFor(product string) (reason string, bad bool) {
+	if reason, bad = a.Unsuitable(product); bad {
+		return reason, bad
+	}
+	s, ok := LookupSubstance(product)
+	if !ok {
+		return "", false
+	}
+	for _, class := range DryingClasses(s.ReactiveGroups) {
+		if reason, bad = a.Unsuitable(class); bad {
+			return fmt.Sprintf("%s is of the %s: %s", s.Name, class, reason), true
+		}
+	}
+	return "", false
+}
+
 // why says what an agent does to the classes it must not meet (METHODS of the
 // agents: Robertson, Laboratory Practice of Organic Chemistry, 3rd ed.,
 // pp. 147 to 152; common practice).

@@ -26,20 +26,12 @@ func (o *dryOp) names(visit func(kind, name string, at place)) {
 	visit("substance", o.agent.substance, o.agent.pos)
 }
 
-// classOfGroup names the reactivity groups of the compatibility chart
-// (EPA-600/2-80-076) in the words of the table of drying agents.
-var classOfGroup = map[int]string{3: "carboxylic acids", 4: "alcohols", 5: "aldehydes", 7: "amines", 13: "esters", 14: "ethers", 19: "ketones", 31: "phenols"}
-
 func (o dryOp) compile(c *compiler) (runner, error) {
 	var err error
 	if o.data, err = chem.DryingAgentOf(o.agent.substance); err != nil {
 		return nil, c.refuse(ErrNoData, err.Error(), "")
 	}
-	for _, group := range c.p.matter[c.p.product].groups {
-		class, ok := classOfGroup[group]
-		if !ok {
-			continue
-		}
+	for _, class := range chem.DryingClasses(c.p.matter[c.p.product].groups) {
 		if reason, bad := o.data.Unsuitable(class); bad {
 			return nil, c.refuse(ErrUnsuitable, fmt.Sprintf("%s is of the %s: %s", c.r.Product, class, reason), "take "+otherAgent(class))
 		}

@@ -267,7 +267,7 @@ func drySum() Sum {
 		Keys: []Key{
 			{"water", "Water to be bound, as a mass", "5 g", false},
 			{"agent", "Drying agent", "magnesium sulfate", false},
-			{"product", "Class of the product, to check the pair", "carboxylic acid", true},
+			{"product", "Product or its class, to check the pair", "carboxylic acid", true},
 			{"capacity", "Capacity in g water per g agent, in place of the table's", "0.4", true},
 		},
 		Gives:   []string{"agent_mass_low", "agent_mass_typical", "agent_mass_high"},
@@ -336,7 +336,7 @@ func agentOf(args Args) (chem.DryingAgent, error) {
 func dryingNotes(args Args, agent chem.DryingAgent) []string {
 	var notes []string
 	if args.Has("product") {
-		if reason, bad := agent.Unsuitable(args["product"]); bad {
+		if reason, bad := agent.UnsuitableFor(args["product"]); bad {
 			notes = append(notes, "don't use it: "+reason)
 		} else {
 			notes = append(notes, fmt.Sprintf("the table names no conflict between %s and %s; that is no proof that there is none", agent.Name, args["product"]))

@@ -61,7 +61,7 @@ func runQuench(_ context.Context, args Args) (Answer, error) {
 			Number("reductant_mass", w.ReductantMass.Grams(), "g"), Number("base_mass", w.BaseMass.Grams(), "g"), Number("sludge_mass", w.SludgeMass.Grams(), "g"),
 			Number("reductant_amount", float64(w.Reductants), "mol"), Number("acid_mass", w.SulfuricAcid.Grams(), "g"), Text("equation", w.Equation),
 		},
-		Notes:      append(append([]string{note, "base_mass is sodium hydroxide, acid_mass pure sulfuric acid to be added; sludge is dry"}, w.Cautions...), sulfurNote(w)...),
+		Notes:      append(append([]string{note, "reductant_mass is that of " + w.Reductant.Formula.String() + ", " + w.Reductant.Name, "base_mass is sodium hydroxide, acid_mass pure sulfuric acid to be added; sludge is dry"}, w.Cautions...), sulfurNote(w)...),
 		Derivation: quenchDerivation(q, w),
 	}, nil
 }
