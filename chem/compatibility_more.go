@@ -22,7 +22,8 @@ type supplementRow struct {
 
 var supplementRows = sync.OnceValue(func() []supplementRow {
 	var rows []supplementRow
-	for _, file := range []string{"incompatibility.csv", "incompatibility_more.csv"} {
+	sides := allSides()
+	for _, file := range []string{"incompatibility.csv", "incompatibility_more.csv", "incompatibility_acids.csv"} {
 		for _, row := range readTable(file) {
 			a, okA := sides[row.text("group_a_name")]
 			b, okB := sides[row.text("group_b_name")]

@@ -63,13 +63,14 @@ func TestIncompatibleReactantsUnknown(t *testing.T) {
 
 // Every wording of the supplementary rows has its predicate.
 func TestSupplementSides(t *testing.T) {
-	for _, file := range []string{"incompatibility.csv", "incompatibility_more.csv"} {
+	all := allSides()
+	for _, file := range []string{"incompatibility.csv", "incompatibility_more.csv", "incompatibility_acids.csv"} {
 		for _, row := range readTable(file) {
 			if row.text("chart") != "SUP" {
 				continue
 			}
 			for _, name := range []string{row.text("group_a_name"), row.text("group_b_name")} {
-				if sides[name] == nil {
+				if all[name] == nil {
 					t.Errorf("no predicate for %q", name)
 				}
 			}
