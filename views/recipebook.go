@@ -89,3 +89,18 @@ func named(all []*planner.Recipe, unread []string, name string) (*planner.Recipe
 	}
 	return nil, &missing{"recipe", name, "All recipes are listed on their own page."}
 }
+
+// newerVersion is the number of the latest version of a recipe, or "" if that is
+// the one given.
+func (s *Server) newerVersion(ctx context.Context, r *planner.Recipe) (string, error) {
+	all, err := s.recipes(ctx)
+	if err != nil {
+		return "", err
+	}
+	for _, latest := range all {
+		if latest.Name == r.Name && latest.Text != r.Text {
+			return latest.Version, nil
+		}
+	}
+	return "", nil
+}

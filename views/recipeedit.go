@@ -25,6 +25,7 @@ type editPage struct {
 	Check    *recipeCheck
 	Stale    bool              // somebody saved another version meanwhile
 	Begin    []*planner.Recipe // what a new recipe may begin from
+	Kinds    []string          // of steps
 }
 
 // Action is the address the form goes to.
@@ -143,6 +144,7 @@ func (s *Server) showChecked(c *gin.Context, status int, p *editPage) error {
 }
 
 func (s *Server) showEditor(c *gin.Context, status int, p *editPage) error {
+	p.Kinds = planner.StepKinds()
 	if p.Name == "" {
 		all, err := s.recipes(c.Request.Context())
 		if err != nil {

@@ -175,8 +175,12 @@ func TestSavingAVersion(t *testing.T) {
 			t.Errorf("the difference doesn't say %q: %.600s", want, difference)
 		}
 	}
-	if words := text(one(t, parse(t, get(t, s, run)), "p.sub")); strings.Contains(words, "Revised") {
+	kept := parse(t, get(t, s, run))
+	if words := text(one(t, kept, "p.sub")); strings.Contains(words, "Revised") {
 		t.Errorf("the run changed with the recipe: %s", words)
+	}
+	if words := text(one(t, kept, "main")); !strings.Contains(words, "Planned by version 4 of the recipe, which it keeps; the latest is version revised.") {
+		t.Error("the run doesn't say that its recipe has a later version")
 	}
 	if w := get(t, s, dichromate+"?saved=0"); w.Code != 200 || !strings.Contains(text(parse(t, w)), "earlier version") {
 		t.Errorf("the version from before = %d", w.Code)

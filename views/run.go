@@ -37,6 +37,7 @@ type runPage struct {
 	Contents []contentRow
 	Flow     template.HTML
 	Budget   *budgetView // nil where there is none
+	Newer    string      // version of the recipe that is the latest, if the run goes by another
 	Risk     []string
 	Hazards  []hazardRow // as stored, and what is formed
 	Noted    int         // hazards noted altogether
@@ -79,6 +80,9 @@ func (s *Server) showRun(c *gin.Context) error {
 		return err
 	}
 	p.dress(c.Query("printed"))
+	if p.Newer, err = s.newerVersion(c.Request.Context(), p.Recipe); err != nil {
+		return err
+	}
 	return s.render(c, p.status(), "run", p)
 }
 
