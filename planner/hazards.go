@@ -108,6 +108,17 @@ func formNote(n Need, d Draw) HazardNote {
 	return note
 }
 
+// HydrateOf is the record of the hydrate that a form is, with the CAS number of
+// its own; false where the form is no hydrate or the hydrate has no record.
+func HydrateOf(s inventory.Substance, f inventory.StockForm) (*chem.Substance, bool) {
+	name := hydrateName(Need{Substance: s.Name}, Draw{Form: f})
+	record := substance(name, "")
+	if name == s.Name || record == nil || record.CAS == "" || record.CAS == s.CAS {
+		return nil, false
+	}
+	return record, true
+}
+
 // hydrateName finds the record of the hydrate that a form is, if there is one.
 func hydrateName(n Need, d Draw) string {
 	if d.Form.HydrateWaters == 0 {

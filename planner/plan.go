@@ -148,7 +148,11 @@ type Need struct {
 	BarredMore  int // barred bottles beyond those listed
 	// Spares are bottles to have at hand, because without them the chance of
 	// running short would exceed the lab's limit. ChanceShort counts them.
-	Spares     []Spare
+	Spares []Spare
+	// Next is the fit bottle to fetch if one drawn on turns out not to serve: the
+	// least trouble of those that nothing in the run is drawn from, at a strength
+	// that needs no making up; nil for none. Revision doesn't depend on it.
+	Next       *Spare
 	Derivation chem.Derivation
 
 	buys []int // into the plan's purchases

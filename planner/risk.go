@@ -75,6 +75,7 @@ func (a *assessor) assess(covers []coverage, asks []Ask, do func(step int) strin
 			a.needs[i].drawn = a.walks.asked[i]
 		}
 		a.assessNeed(&a.needs[i], share)
+		a.nameNext(&a.needs[i])
 	}
 	risk := Risk{Draws: a.n, Seed: a.seed, RunEnough: a.enough()}
 	a.decides(&risk)

@@ -35,6 +35,26 @@ func (a *assessor) nameSpares(r *needRisk, share float64) {
 	}
 }
 
+// nameNext names the bottle to fetch if one drawn on turns out not to serve.
+func (a *assessor) nameNext(r *needRisk) {
+	var best *fit
+	for i := range r.cover.found.fits {
+		x := &r.cover.found.fits[i]
+		if x.dilute || x.blended || x.free <= 0 || a.m.used[x.bottle.ID] > 0 {
+			continue
+		}
+		if best == nil || lessTrouble(x, best) < 0 {
+			best = x
+		}
+	}
+	r.cover.need.Next = nil
+	if best == nil {
+		return
+	}
+	place, _ := a.m.shelf.Place(best.bottle.PlaceID)
+	r.cover.need.Next = &Spare{Bottle: *best.bottle, Form: *best.form, Place: place, Why: "fit, and nothing in the run is drawn from it"}
+}
+
 // drawSpare looks again at the draws that are short: a further bottle can only
 // help. What is certain of the bottles drawn on doesn't hold for the spares.
 func (r *needRisk) drawSpare(bottles []bottleRisk) {
