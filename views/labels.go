@@ -183,8 +183,8 @@ func (s *sheet) label(l BottleLabel, b box) error {
 
 func identity(l BottleLabel) string {
 	words := []string{}
-	if l.Substance.CAS != "" {
-		words = append(words, "CAS "+l.Substance.CAS)
+	if cas := casText(l); cas != "" {
+		words = append(words, cas)
 	}
 	words = append(words, storedPlain(l.Bottle.Size, l.Form.Measure))
 	if l.Bottle.Lot != "" {
@@ -194,6 +194,22 @@ func identity(l BottleLabel) string {
 		words = append(words, "stabilised with "+l.Form.Additive)
 	}
 	return strings.Join(words, "; ")
+}
+
+// casText is the CAS number of what is in the bottle: a hydrate has its own.
+// Where that isn't known, the number is said to be that of the anhydrous
+// substance.
+func casText(l BottleLabel) string {
+	if hydrate, ok := planner.HydrateOf(l.Substance, l.Form); ok {
+		return "CAS " + hydrate.CAS
+	}
+	switch {
+	case l.Substance.CAS == "":
+		return ""
+	case l.Form.HydrateWaters > 0:
+		return "CAS " + l.Substance.CAS + " (anhydrous)"
+	}
+	return "CAS " + l.Substance.CAS
 }
 
 // labelStatements writes the statements into a box, and as many of six

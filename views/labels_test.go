@@ -109,6 +109,40 @@ func TestBottleLabelNoData(t *testing.T) {
 	wantText(t, paperText(t, writePaper(t, printLabels([]BottleLabel{l}), nil, paperOptions())), "Small container", "NO DATA")
 }
 
+// A hydrate has its own CAS number: 7789-12-0 for sodium dichromate dihydrate
+// (CLP Annex VI names 7789-12-0 beside the anhydrous 10588-01-9). A hydrate
+// without a record keeps the anhydrous number, and the label says so.
+func TestBottleLabelCASOfHydrate(t *testing.T) {
+	dichromate := inventory.Substance{Name: "sodium dichromate", CAS: "10588-01-9"}
+	invented := inventory.Substance{Name: "an invented salt", CAS: "7647-14-5"}
+	for _, tc := range []struct {
+		substance inventory.Substance
+		form      inventory.StockForm
+		want      string
+	}{
+		{dichromate, inventory.StockForm{Name: "sodium dichromate dihydrate ≥ 99.5 %", HydrateWaters: 2}, "CAS 7789-12-0"},
+		{dichromate, inventory.StockForm{Name: "sodium dichromate ≥ 99 %"}, "CAS 10588-01-9"},
+		{invented, inventory.StockForm{Name: "an invented salt dihydrate", HydrateWaters: 2}, "CAS 7647-14-5 (anhydrous)"},
+		{inventory.Substance{Name: "an invented powder"}, inventory.StockForm{Name: "an invented powder"}, ""},
+	} {
+		if got := casText(BottleLabel{Form: tc.form, Substance: tc.substance}); got != tc.want {
+			t.Errorf("%s: %q, want %q", tc.form.Name, got, tc.want)
+		}
+	}
+}
+
+func TestBottleLabelsAreWhole(t *testing.T) {
+	qpdf := paperTool(t, "qpdf")
+	for _, letter := range []bool{false, true} {
+		o := paperOptions()
+		o.Letter = letter
+		out, err := exec.Command(qpdf, "--check", writePaper(t, printLabels(demoLabels(t, 20)), nil, o)).CombinedOutput()
+		if err != nil || !strings.Contains(string(out), "No syntax or stream encoding errors") {
+			t.Errorf("letter %v: qpdf --check: %v\n%s", letter, err, out)
+		}
+	}
+}
+
 func TestLabelPage(t *testing.T) {
 	s := newSampleServer(t)
 	l := demoLabels(t, 1)[0]
