@@ -11,6 +11,7 @@ import (
 	"testing"
 
 	"stillroom/chem"
+	"stillroom/inventory"
 	"stillroom/planner"
 )
 
@@ -223,6 +224,25 @@ func TestPickListOneBottleTwoNeeds(t *testing.T) {
 	wantText(t, text, "about 850 g", "for step 8", "leaves "+massText(50*chem.Gram))
 	if got := strings.Count(text, second.Draws[0].Bottle.Code); got != 1 {
 		t.Errorf("bottle listed %d times, want once", got)
+	}
+}
+
+// Every bottle says where it goes back to and which one to take instead; a
+// sealed one has a box for the date.
+func TestPickListSpareAndReturn(t *testing.T) {
+	p := paperPlan(t)
+	spare := p.Needs[0].Draws[0]
+	p.Needs[0].Next = &planner.Spare{Bottle: inventory.Bottle{Code: inventory.MakeCode(inventory.BottleCode, 77)}, Form: spare.Form, Place: p.Needs[1].Draws[0].Place}
+	text := paperText(t, writePaper(t, PickList, p, paperOptions()))
+	wantText(t, text, "spare: "+inventory.MakeCode(inventory.BottleCode, 77)+", "+p.Needs[1].Draws[0].Place.String(), "return to this place")
+	if got := strings.Count(text, "spare: none"); got != len(paperBottles)-1 {
+		t.Errorf("%d bottles without a spare, want %d", got, len(paperBottles)-1)
+	}
+	if got := strings.Count(text, "open new bottle: write date"); got != 1 {
+		t.Errorf("%d boxes for the date of opening, want one: one bottle is sealed", got)
+	}
+	if !strings.Contains(text, "empties the bottle, which does not go back") {
+		t.Error("the bottle that is used up goes back")
 	}
 }
 

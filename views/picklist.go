@@ -257,10 +257,15 @@ func (l *pickList) bottle(f fetch) error {
 
 // blanks are for what was really done.
 func (l *pickList) blanks(f fetch, y float64) {
-	x := l.blank(textLeft, y, 30, "actual")
-	x = l.blank(x, y, 26, "lot")
+	x := l.blank(textLeft, y, 24, "actual")
+	x = l.blank(x, y, 22, "lot")
 	if f.draw.Opens {
-		x = l.blank(x, y, 22, "opened on")
+		const label = "open new bottle: write date"
+		l.put(family, "", textSize, x, y, label)
+		x += l.measure(family, "", textSize, label) + 1.5
+		const width = 20.0
+		l.pdf.Rect(x, y-0.8, width, tickSide, "D")
+		x += width + 4
 	}
 	l.blank(x, y, l.right-x-l.measure(family, "", textSize, "initials")-1.5, "initials")
 }
@@ -312,14 +317,24 @@ func (l *pickList) details(f fetch) []string {
 	if d.HasVolume && d.LeavesVolume > 0 {
 		heel += " (" + volumeText(d.LeavesVolume) + ")"
 	}
+	heel += "; return to this place"
 	if d.Leaves <= 0 {
-		heel = "empties the bottle"
+		heel = "empties the bottle, which does not go back"
 	}
 	lines = append(lines, heel+"; "+expiryText(d.Bottle)+"; "+contentText(d.Bottle))
-	if d.Opens {
-		lines = append(lines, "sealed: open it and write the date on the bottle")
+	return append(lines, spareText(f.need), l.hazardWords(f))
+}
+
+// spareText names the bottle to take if this one turns out not to serve.
+func spareText(n planner.Need) string {
+	if n.Next == nil {
+		return "spare: none"
 	}
-	return append(lines, l.hazardWords(f))
+	text := "spare: " + n.Next.Bottle.Code + ", " + n.Next.Place.String()
+	if len(n.Draws) > 0 && n.Next.Form.Name != n.Draws[0].Form.Name {
+		text += ", " + n.Next.Form.Name
+	}
+	return text + "; plan again first"
 }
 
 func expiryText(b inventory.Bottle) string {
