@@ -215,8 +215,11 @@ func (w *Workspace) waterCharge(d *dose, v int, n float64) (takenOff float64) {
 	}
 	w.brought[v] -= takenOff
 	w.pour(d, v, (planned-takenOff)/w.p.matter[w.p.water].molar)
-	if w.report != nil && math.Abs(takenOff) > 1e-9*planned {
+	switch {
+	case takenOff > 1e-9*planned:
 		w.say("%.3g g of the water charge of %.3g g comes with the stocks", takenOff*1e3, planned*1e3)
+	case takenOff < -1e-9*planned:
+		w.say("%.3g g goes in beside the water charge of %.3g g, because the stocks bring less water than the recipe counts on", -takenOff*1e3, planned*1e3)
 	}
 	return takenOff
 }
