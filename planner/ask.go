@@ -30,8 +30,8 @@ type Ask struct {
 
 // Accept says which stock may stand for a substance in a charge.
 type Accept struct {
-	// Least and Most bound the mass fraction of pure, anhydrous substance in
-	// the stock; 0 means no bound.
+	// Least and Most bound the strength of the stock as its name has it, so that
+	// of a hydrate the share of hydrate counts; 0 means no bound.
 	Least, Most chem.Fraction
 	// Hydrate allows a hydrate of the substance, its water counted.
 	Hydrate bool

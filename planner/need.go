@@ -3,6 +3,7 @@ package planner
 import (
 	"fmt"
 	"slices"
+	"strconv"
 	"strings"
 
 	"stillroom/chem"
@@ -10,7 +11,7 @@ import (
 )
 
 // demand is a need before any bottle has been looked at: what the asks of one
-// substance and one acceptance come to.
+// substance come to.
 type demand struct {
 	name, cas, formula string
 	substance          inventory.Substance // as the shelf has it
@@ -18,44 +19,67 @@ type demand struct {
 	molar              chem.MolarMass      // of the pure, anhydrous substance; 0 for none
 	accept             Accept
 	count              bool
+	who                string // the substance, as the asks are told apart by it
+	apart              string // why it isn't one need with the substance's other asks; "" if it is
 	// amount is in kilograms of pure, anhydrous substance or in pieces.
 	amount float64
 	asks   []int // into the asks of the walk
 	// charges are the amounts of the asks.
 	charges []float64
-	key     string
-	alone   bool // no other demand shares its substance, and it has no substitutes
+	key     string // of its matches
+	alone   bool   // no other demand shares its substance, and it has no substitutes
 }
 
 // unknownMolar is for what has no formula, such as filter aid.
 const unknownMolar chem.MolarMass = 0
 
-// demandsOf sums asks by substance and acceptance, in the order in which the
-// substances are first asked for.
+// demandsOf sums asks by substance, in the order in which the substances are
+// first asked for. Only what all asks of a substance accept may be drawn for
+// it; asks that have nothing in common are demands of their own.
 func demandsOf(asks []Ask, shelf *inventory.Shelf) ([]demand, error) {
-	index := map[string]int{}
 	var demands []demand
-	for i, ask := range asks {
+	for i := range asks {
+		ask := &asks[i]
 		if !chem.Finite(ask.Pure) || ask.Pure < 0 || !(ask.Pieces >= 0) {
 			return nil, fmt.Errorf("step %d (%s): the charge of %s is %g g, %g pieces: not an amount",
 				ask.Step, ask.StepName, ask.Substance, ask.Pure.Grams(), ask.Pieces)
 		}
 		substance, known := lookUp(shelf, ask)
-		key := demandKey(ask, substance, known)
-		at, ok := index[key]
-		if !ok {
+		asked := newDemand(ask, substance, known)
+		at := together(demands, &asked)
+		if at < 0 {
 			at = len(demands)
-			index[key] = at
-			demands = append(demands, newDemand(ask, substance, known))
-			demands[at].key = key
+			demands = append(demands, asked)
 		}
 		d := &demands[at]
 		d.asks = append(d.asks, i)
 		d.charges = append(d.charges, amountOf(ask))
 		d.amount += amountOf(ask)
 	}
+	for i := range demands {
+		demands[i].key = demands[i].matchKey()
+	}
 	markAlone(demands)
 	return demands, nil
+}
+
+// together finds the first demand that asks for the same substance and shares
+// stock with what is asked now, and narrows it to that; -1 for none. Demands
+// that share none keep the reason.
+func together(demands []demand, asked *demand) int {
+	for i := range demands {
+		d := &demands[i]
+		if d.who != asked.who || d.count != asked.count {
+			continue
+		}
+		both, clash := inCommon(d.accept, asked.accept)
+		if clash == "" {
+			d.accept = both
+			return i
+		}
+		d.apart, asked.apart = firstOf(d.apart, clash), firstOf(asked.apart, clash)
+	}
+	return -1
 }
 
 // markAlone finds the demands whose bottles no other demand can want.
@@ -75,7 +99,7 @@ func markAlone(demands []demand) {
 	}
 }
 
-func amountOf(ask Ask) float64 {
+func amountOf(ask *Ask) float64 {
 	if ask.Pieces > 0 {
 		return ask.Pieces
 	}
@@ -83,7 +107,7 @@ func amountOf(ask Ask) float64 {
 }
 
 // lookUp finds an ask's substance on the shelf by its CAS number, else by name.
-func lookUp(shelf *inventory.Shelf, ask Ask) (inventory.Substance, bool) {
+func lookUp(shelf *inventory.Shelf, ask *Ask) (inventory.Substance, bool) {
 	if ask.CAS != "" {
 		if s, ok := shelf.Substance(ask.CAS); ok {
 			return s, true
@@ -92,12 +116,14 @@ func lookUp(shelf *inventory.Shelf, ask Ask) (inventory.Substance, bool) {
 	return shelf.Substance(ask.Substance)
 }
 
-func newDemand(ask Ask, substance inventory.Substance, known bool) demand {
+func newDemand(ask *Ask, substance inventory.Substance, known bool) demand {
 	d := demand{
 		name: ask.Substance, cas: ask.CAS, formula: ask.Formula, accept: ask.Accept,
 		count: ask.Pieces > 0, substance: substance, known: known, molar: molarOf(ask, substance),
+		who: strings.ToLower(firstOf(ask.CAS, ask.Substance)),
 	}
 	if known {
+		d.who = "#" + strconv.FormatInt(substance.ID, 10)
 		d.name = substance.Name
 		d.cas = firstOf(d.cas, substance.CAS)
 		d.formula = firstOf(d.formula, substance.Formula)
@@ -116,7 +142,7 @@ func firstOf(texts ...string) string {
 
 // molarOf takes the molar mass the walk-through used, so that mass and amount
 // of a need agree; else that of the formula.
-func molarOf(ask Ask, substance inventory.Substance) chem.MolarMass {
+func molarOf(ask *Ask, substance inventory.Substance) chem.MolarMass {
 	if ask.Amount > 0 && ask.Pure > 0 {
 		return chem.MolarMass(float64(ask.Pure) / float64(ask.Amount))
 	}
@@ -127,18 +153,12 @@ func molarOf(ask Ask, substance inventory.Substance) chem.MolarMass {
 	return f.MolarMass()
 }
 
-// demandKey tells demands apart: the substance, what may stand for it, and
-// whether it is counted.
-func demandKey(ask Ask, substance inventory.Substance, known bool) string {
-	who := strings.ToLower(firstOf(ask.CAS, ask.Substance))
-	if known {
-		who = fmt.Sprint("#", substance.ID)
-	}
-	a := ask.Accept
-	grades := slices.Clone(a.Grades)
-	slices.Sort(grades)
-	return fmt.Sprintf("%s|%t|%g|%g|%t|%t|%q|%t|%v", who, ask.Pieces > 0,
-		a.Least, a.Most, a.Hydrate, a.Solution, grades, a.WithAdditive, a.Substitutes)
+// matchKey is the same for demands that the same bottles fit: the substance,
+// what may stand for it, and whether it is counted.
+func (d *demand) matchKey() string {
+	a := &d.accept
+	return fmt.Sprintf("%s|%t|%g|%g|%t|%t|%q|%t|%v", d.who, d.count,
+		a.Least, a.Most, a.Hydrate, a.Solution, a.Grades, a.WithAdditive, a.Substitutes)
 }
 
 // need writes down what a demand asks, before it is matched.
@@ -156,7 +176,7 @@ func (d *demand) need(asks []Ask) Need {
 		}
 	}
 	for _, i := range d.asks {
-		ask := asks[i]
+		ask := &asks[i]
 		if !slices.Contains(n.For, ask.StepName) {
 			n.For = append(n.For, ask.StepName)
 		}
@@ -183,7 +203,7 @@ func (d *demand) derivation(asks []Ask) chem.Derivation {
 	}
 	terms := make([]string, len(d.asks))
 	for k, i := range d.asks {
-		v := amountOf(asks[i]) * scale
+		v := amountOf(&asks[i]) * scale
 		terms[k] = fmt.Sprintf("%.4g", v)
 		out.Inputs = append(out.Inputs, chem.Input{
 			Symbol: fmt.Sprint("charge ", k+1), Name: asks[i].StepName, Value: v, Unit: out.Unit,

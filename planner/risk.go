@@ -94,7 +94,7 @@ func (a *assessor) enough() float64 {
 func (a *assessor) needRisk(c *coverage, asks []Ask, do func(step int) string) needRisk {
 	r := needRisk{cover: c}
 	for k, i := range c.demand.asks {
-		r.charges = append(r.charges, amountOf(asks[i]))
+		r.charges = append(r.charges, amountOf(&asks[i]))
 		name := fmt.Sprintf("charge %s %d %d", c.demand.name, asks[i].Step, k)
 		r.losses = append(r.losses, a.loss(asks[i], do(asks[i].Step), name))
 	}

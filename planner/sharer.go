@@ -16,7 +16,7 @@ func newSharer(c *coverage, asks []Ask) *sharer {
 	s := &sharer{}
 	for _, i := range c.demand.asks {
 		s.steps = append(s.steps, asks[i].Step)
-		s.left = append(s.left, amountOf(asks[i]))
+		s.left = append(s.left, amountOf(&asks[i]))
 	}
 	return s
 }

@@ -36,6 +36,9 @@ func (m *matcher) decide(c *coverage, buys []Purchase, limit float64) {
 	default:
 		m.decideShort(c, buys)
 	}
+	if c.demand.apart != "" {
+		n.Because += "; it isn't one need with the other charges of " + n.Substance + ": " + c.demand.apart
+	}
 }
 
 func (m *matcher) decideCovered(c *coverage, limit float64) {

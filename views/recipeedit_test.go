@@ -170,7 +170,7 @@ func TestSavingAVersion(t *testing.T) {
 		t.Error("the list has the old recipe")
 	}
 	difference := text(one(t, parse(t, get(t, s, dichromate+"/difference")), "main"))
-	for _, want := range []string{"steps › reflux › time changed 2 h 3 h", "version changed 4 revised"} {
+	for _, want := range []string{"steps › reflux › time changed 2 h 3 h", "version changed 5 revised"} {
 		if !strings.Contains(difference, want) {
 			t.Errorf("the difference doesn't say %q: %.600s", want, difference)
 		}
