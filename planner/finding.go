@@ -23,6 +23,7 @@ const (
 //	large-substrate      the limiting reagent of a batch counts as large
 //	large-solvent        the organic solvents of a batch count as large
 //	no-vessel-fits       a step needs ware the lab doesn't own; alone it is a refusal
+//	no-ware-known        no ware is entered, so that vessel sizes are not assessed
 //	no-fill-limit        the policy has no fill limit for a kind of ware, so none was picked
 //	split                the run is planned in batches, because the ware holds no more
 //	reagent-runs-out     a reaction stops short for want of a reagent
