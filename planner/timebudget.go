@@ -4,6 +4,8 @@ import (
 	"errors"
 	"fmt"
 	"math"
+	"regexp"
+	"strconv"
 
 	"stillroom/chem"
 	"stillroom/inventory"
@@ -64,8 +66,15 @@ type Stretch struct {
 	// is too late by that unknown time.
 	AtEarliest bool
 	// Nights is how many nights it stands at the hold point until the next
-	// stretch begins.
+	// stretch begins, and Waits for how long.
 	Nights int
+	Waits  chem.Duration
+	// Longest is how long it may stand there, as the hold point says with
+	// "up to 16 h"; 0 where it says nothing. NotBefore is then the time of day
+	// before which the stretch must not begin, so that it stands no longer; 0
+	// where any time will do. TooLong says that no beginning on that day helps.
+	Longest, NotBefore chem.Duration
+	TooLong            bool
 }
 
 // TimeBudgetOf lays the steps of a run out over working days from on, one batch
@@ -166,8 +175,49 @@ func (b *TimeBudget) lay(on inventory.Date) {
 		if i > 0 {
 			before := &b.Stretches[i-1]
 			before.Nights = int(s.On - before.On)
+			before.Waits = chem.Duration(before.Nights)*24*chem.Hour + s.Begins - before.Done
+			b.Day.limitWait(before)
 		}
 	}
+}
+
+// limitWait compares how long a stretch leaves the run standing with how long it
+// may, and finds the time of day at which beginning it ends the wait in time.
+func (d WorkingDay) limitWait(s *Stretch) {
+	s.Longest = longestHold(s.Hold)
+	if s.Longest == 0 || s.Waits <= s.Longest {
+		return
+	}
+	begin := s.Done + s.Waits - s.Longest - s.Time
+	if begin < d.BreakFrom+d.Break {
+		begin -= d.Break
+	}
+	begin = chem.Duration(math.Ceil(begin.Minutes()-1e-6)) * chem.Minute
+	if s.TooLong = !s.Fits || begin > s.LastStart; !s.TooLong {
+		s.NotBefore = begin
+	}
+}
+
+var holdLimit = regexp.MustCompile(`\bup to ([0-9]+(?:\.[0-9]+)?) ?(min|h|d|days?)\b`)
+
+// longestHold reads how long a hold point allows: "up to 16 h, closed"; 0 where
+// it doesn't say.
+func longestHold(note string) chem.Duration {
+	found := holdLimit.FindStringSubmatch(note)
+	if found == nil {
+		return 0
+	}
+	x, err := strconv.ParseFloat(found[1], 64)
+	if err != nil {
+		return 0
+	}
+	switch found[2] {
+	case "min":
+		return chem.Duration(x) * chem.Minute
+	case "h":
+		return chem.Duration(x) * chem.Hour
+	}
+	return chem.Duration(x) * 24 * chem.Hour
 }
 
 // lastStart is the latest time of day, down to the minute, at which work of a
@@ -224,6 +274,11 @@ func (d WorkingDay) worked(day inventory.Date) bool {
 func (b TimeBudget) findings() []Finding {
 	var found []Finding
 	for _, s := range b.Stretches {
+		if s.TooLong && s.Batch == 1 {
+			found = append(found, Finding{Kind: "hold-too-long", Severity: Warning, Step: s.Last,
+				Text:  fmt.Sprintf("until the next working day the run stands at the hold point for %s, longer than the %s the recipe allows", hoursText(s.Waits), hoursText(s.Longest)),
+				Would: "choose a day on which the next steps follow in time"})
+		}
 		if s.Fits || s.Batch > 1 {
 			continue
 		}

@@ -131,3 +131,41 @@ func TestTimeBudgetRefusesDaysThatCantBe(t *testing.T) {
 		}
 	}
 }
+
+// A hold point with a limit bounds the beginning from below too: done at 16:30
+// is 16 h before 08:30. Worked out on paper.
+func TestTimeBudgetKeepsHoldLimits(t *testing.T) {
+	tests := []struct {
+		name      string
+		minutes   float64
+		hold      string
+		on        inventory.Date
+		waits     float64 // hours
+		notBefore string
+		tooLong   bool
+	}{
+		{"short morning", 120, "up to 16 h, closed", aThursday, 22, "14:30", false},
+		{"over the break", 305, "up to 16 h", aThursday, 18 + 25.0/60, "10:55", false},
+		{"long enough", 450, "up to 16 h", aThursday, 16, "", false},
+		{"over the weekend", 305, "up to 16 h", aThursday.AddDays(1), 66 + 25.0/60, "", true},
+		{"no limit", 120, "any time, closed", aThursday, 22, "", false},
+		{"days", 120, "up to 3 d", aThursday.AddDays(1), 70, "", false},
+	}
+	for _, tt := range tests {
+		b, err := TimeBudgetOf([]StepReport{lasting(1, tt.minutes, tt.hold), lasting(2, 400, "")}, 1, tt.on, dayPolicy)
+		if err != nil {
+			t.Fatal(err)
+		}
+		s := b.Stretches[0]
+		notBefore := ""
+		if s.NotBefore > 0 {
+			notBefore = ClockText(s.NotBefore)
+		}
+		if got := float64(s.Waits / chem.Hour); got < tt.waits-1e-9 || got > tt.waits+1e-9 || notBefore != tt.notBefore || s.TooLong != tt.tooLong {
+			t.Errorf("%s: waits %v h, not before %q, too long %v; want %v, %q, %v", tt.name, got, notBefore, s.TooLong, tt.waits, tt.notBefore, tt.tooLong)
+		}
+		if found := b.findings(); tt.tooLong != (len(found) == 1 && found[0].Kind == "hold-too-long") {
+			t.Errorf("%s: findings %+v", tt.name, found)
+		}
+	}
+}

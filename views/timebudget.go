@@ -53,7 +53,12 @@ func startText(b planner.TimeBudget) string {
 		return fmt.Sprintf("The last safe start is not assessed, because nobody has said how long %s. Without that it would be %s on %s for %s by %s: begin well before.",
 			takes(s.NotAssessed), planner.ClockText(s.LastStart), s.On.Long(), toReach(goal), ends)
 	}
-	return fmt.Sprintf("Begin by %s on %s, and %s by %s.", planner.ClockText(s.LastStart), s.On.Long(), goal, ends)
+	begin := "Begin by " + planner.ClockText(s.LastStart)
+	if s.NotBefore > 0 {
+		begin = fmt.Sprintf("Begin from %s to %s", planner.ClockText(s.NotBefore), planner.ClockText(s.LastStart))
+		ends += fmt.Sprintf(" and lasts no longer than %s until the next step", timeText(s.Longest))
+	}
+	return fmt.Sprintf("%s on %s, and %s by %s.", begin, s.On.Long(), goal, ends)
 }
 
 // toReach turns a goal that is reached into one to be reached.
@@ -107,6 +112,8 @@ func newStretchRow(s planner.Stretch, batches bool) stretchRow {
 		row.Start = "no day holds it"
 	case len(s.NotAssessed) > 0:
 		row.Start = "not assessed; before " + planner.ClockText(s.LastStart)
+	case s.NotBefore > 0:
+		row.Start = planner.ClockText(s.LastStart) + ", not before " + planner.ClockText(s.NotBefore)
 	default:
 		row.Start = planner.ClockText(s.LastStart)
 	}
@@ -134,6 +141,8 @@ func standsText(s planner.Stretch) string {
 		return "done"
 	case s.Hold == "":
 		return "–"
+	case s.TooLong:
+		return s.Hold + "; stands " + timeText(s.Waits) + ", too long"
 	case s.Nights == 1:
 		return s.Hold + "; stands one night"
 	case s.Nights > 1:

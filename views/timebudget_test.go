@@ -29,6 +29,8 @@ func TestStartText(t *testing.T) {
 	}{
 		{"to a hold point", []planner.StepReport{{N: 1, Name: "reflux", Time: 5 * chem.Hour, HoldPoint: true, HoldNote: "overnight"}, {N: 2, Name: "wash", Time: chem.Hour}},
 			"Begin by 11:30 on Thursday 14 January 2027, and the hold point after step 1, reflux, is reached by 17:00."},
+		{"to a hold point with a limit", []planner.StepReport{{N: 1, Name: "reflux", Time: 5 * chem.Hour, HoldPoint: true, HoldNote: "up to 16 h"}, {N: 2, Name: "wash", Time: 7 * chem.Hour}},
+			"Begin from 11:00 to 11:30 on Thursday 14 January 2027, and the hold point after step 1, reflux, is reached by 17:00 and lasts no longer than 16 h until the next step."},
 		{"to the end", []planner.StepReport{{N: 1, Name: "reflux", Time: chem.Hour}}, "Begin by 16:00 on Thursday 14 January 2027, and the last step is done by 17:00."},
 		{"too long", []planner.StepReport{{N: 1, Name: "reflux", Time: 10 * chem.Hour}},
 			"No start on Thursday 14 January 2027 is safe: step 1 takes 10 h in one go, and begun at 08:30 it is done at 19:00, after the day has ended at 17:00."},
@@ -48,7 +50,7 @@ func TestRunSaysWhenToBegin(t *testing.T) {
 	s := newDemoServer(t)
 	page := parse(t, get(t, s, "/runs/1"))
 	words := text(one(t, page, "section[aria-labelledby=h-budget]"))
-	for _, want := range []string{"Begin by", "hold point after step 5, reflux", "take: not assessed", "last safe start"} {
+	for _, want := range []string{"Begin from", "hold point after step 5, reflux", "take: not assessed", "last safe start"} {
 		if !strings.Contains(words, want) {
 			t.Errorf("the time budget doesn't say %q: %s", want, words)
 		}
