@@ -41,7 +41,7 @@ var errStrongIons = errors.New("no pH from -3 to 18 balances the charges")
 // corrects for it. The pKa are taken as they are given, whatever t; t decides
 // Kw, from 0 to 100 °C.
 //
-// Method: METHODS d; J. N. Butler, Ionic Equilibrium (Wiley, 1998), ch. 3.
+// Method: OpenStax Chemistry 2e, 14.4 to 14.6; J. N. Butler, Ionic Equilibrium (Wiley, 1998), ch. 3.
 func PH(mix []Protolyte, strong Concentration, t Temperature) (float64, error) {
 	pKw, err := PKw(t)
 	if err != nil {

@@ -14,7 +14,7 @@ var carbonPKa = [2]float64{6.35, 10.33}
 //
 //	c = 0.034 mol/(L atm) · p · exp(2400 K·(1/T − 1/298.15 K))
 //
-// (R. Sander, Atmos. Chem. Phys. 15 (2015) 4399, from memory; METHODS d gives
+// (R. Sander, Atmos. Chem. Phys. 15 (2015) 4399, from memory; others give
 // 0.03 to 0.04), from 0 to 80 °C. Salt lowers it.
 func CarbonDioxideSolubility(p Pressure, t Temperature) (Concentration, error) {
 	if !(t >= ZeroCelsius && t <= ZeroCelsius+80) {

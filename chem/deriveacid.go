@@ -40,7 +40,7 @@ func DerivePH(mix []Protolyte, strong Concentration, t Temperature, pH float64) 
 		},
 		Value:  pH,
 		Range:  "concentrations in place of activities: 0.1 to 0.2 off above 0.1 mol/L; pKa at 25 °C",
-		Source: "charge balance, solved in a bracket (METHODS d; OpenStax Chemistry 2e, 14.4 to 14.6)",
+		Source: "charge balance, solved in a bracket (OpenStax Chemistry 2e, 14.4 to 14.6)",
 	}
 	var sum strings.Builder
 	fmt.Fprintf(&sum, "%.4g + %.4g − %.4g", strong.MolesPerLitre(), pow10(-pH), pow10(pH-pKw))

@@ -143,7 +143,7 @@ func (a DryingAgent) UnsuitableFor(product string) (reason string, bad bool) {
 	return "", false
 }
 
-// why says what an agent does to the classes it must not meet (METHODS of the
+// why says what an agent does to the classes it must not meet (practice of the
 // agents: Robertson, Laboratory Practice of Organic Chemistry, 3rd ed.,
 // pp. 147 to 152; common practice).
 func (a DryingAgent) why() string {

@@ -55,7 +55,7 @@ type Reagent struct {
 // aren't listed are taken to be in excess; at least one has to be listed. Of two that
 // run out at once the first in the equation is named. The equation must balance.
 //
-//	ξ = min n/ν   (METHODS a; OpenStax Chemistry 2e, 4.4)
+//	ξ = min n/ν   (OpenStax Chemistry 2e, 4.4)
 func LimitingReagent(e Equation, have []SpeciesAmount) (Limiting, error) {
 	if err := e.Balanced(); err != nil {
 		return Limiting{}, err

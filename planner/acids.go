@@ -33,7 +33,7 @@ const waterPKa = 14
 // metalProtons are the steps by which chromium(III) lets go of protons in water:
 // the first is the hydrolysis constant of the hexaaqua ion (4.0, from memory),
 // the others stand for the fall of the hydroxide, which is over before pH 7
-// (METHODS j; it goes back into solution above 11, which isn't modelled).
+// (Beukes et al., Water SA 25 (1999) 363; it goes back into solution above 11, which isn't modelled).
 var metalProtons = map[string][]float64{"chromium(III)": {4.0, 4.5, 5.0}}
 
 // metalHydroxides are the hydroxides that metal salts fall as.

@@ -18,7 +18,7 @@ import (
 // where share is the part of the need that comes out of the bottle and the
 // points stand in the policy table as allocate.*. Within the bottles chosen the
 // draws go first-expired-first-out: by end of life, opened ones first, the
-// smaller remainder first, then by code (METHODS k), so that only the last one
+// smaller remainder first, then by code (Nahmias, Production and Operations Analysis), so that only the last one
 // is left with a heel. Equal points are decided by the least sum of places in
 // the order of codes, so that a plan is reproducible.
 

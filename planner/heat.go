@@ -129,7 +129,7 @@ func (w *Workspace) deriveRise(cp float64) chem.Derivation {
 			{Symbol: "q", Name: "heat of reactions, dilution and neutralisation", Value: w.heat / 1e3, Unit: "kJ", Source: "heat balance of the step"},
 			{Symbol: "Σ m·cp", Name: "heat capacity of the contents, dissolved salts as nothing beside their water", Value: cp / 1e3, Unit: "kJ/K", Source: "heat capacities of the table of substances"},
 		},
-		Value: start + w.heat/cp, Unit: "°C", Range: "no heat to the room, no boiling", Source: "METHODS h",
+		Value: start + w.heat/cp, Unit: "°C", Range: "no heat to the room, no boiling", Source: "Stoessel, Thermal Safety of Chemical Processes; OpenStax Chemistry 2e, 5.2",
 	}
 }
 

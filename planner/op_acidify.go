@@ -98,7 +98,7 @@ func (o *acidifyOp) tell(w *Workspace, v int, n float64) {
 			Inputs: []chem.Input{
 				{Symbol: "V", Name: "aqueous volume", Value: w.volume(v, aqueous) * 1e3, Unit: "L", Source: "contents of the vessel"},
 			},
-			Value: n, Unit: "mol", Range: "25 °C, activities taken as one: pH to 0.2 above 0.1 mol/L", Source: "METHODS d",
+			Value: n, Unit: "mol", Range: "25 °C, activities taken as one: pH to 0.2 above 0.1 mol/L", Source: "OpenStax Chemistry 2e, 14.4 to 14.7",
 		}
 	})
 }

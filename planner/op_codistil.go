@@ -168,7 +168,7 @@ func (o *coDistilOp) tell(w *Workspace, mass, recovery, pot, water float64) {
 				{Symbol: "m(pot)", Name: "water in the pot", Value: pot * 1e3, Unit: "g", Source: "contents of the vessel"},
 				{Symbol: "recovery", Name: "share carried over", Value: recovery, Source: "recipe"},
 			},
-			Value: water * 1e3, Unit: "g", Range: "at 101.325 kPa; salt and acid in the pot lower it", Source: "METHODS g",
+			Value: water * 1e3, Unit: "g", Range: "at 101.325 kPa; salt and acid in the pot lower it", Source: "OpenStax Chemistry 2e, 10.3 and 11.4; azeotropes of Lange and CRC",
 		}
 	})
 }

@@ -130,7 +130,7 @@ func (w *Workspace) tellIsolation(arrives, n, theory, yield float64) {
 				{Symbol: "n(theory)", Name: "product of the limiting reagent in theory", Value: theory, Unit: "mol", Source: "balanced reactions"},
 				{Symbol: "arriving", Name: "product that reaches this step", Value: arrives, Unit: "mol", Source: "walk-through"},
 			},
-			Value: n * m.molar * 1e3, Unit: "g", Source: "METHODS a",
+			Value: n * m.molar * 1e3, Unit: "g", Source: "OpenStax Chemistry 2e, 4.3 and 4.4",
 		}
 	})
 }

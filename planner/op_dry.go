@@ -58,7 +58,7 @@ func otherAgent(class string) string {
 
 // typical is the capacity in practice, in kg water per kg agent: the middle of
 // the range where there is one, half the theoretical capacity otherwise
-// (METHODS f).
+// (Robertson, Laboratory Practice of Organic Chemistry, pp. 147 to 152).
 func (o *dryOp) typical() float64 {
 	if o.data.High > 0 {
 		return (o.data.Low + o.data.High) / 2
@@ -110,6 +110,6 @@ func (o *dryOp) tell(w *Workspace, water, planned float64) {
 			{Symbol: "m(water)", Name: "water in the organic liquid", Value: water * 1e3, Unit: "g", Source: "mutual solubility, contents of the vessel"},
 			{Symbol: "capacity", Name: "capacity in practice", Value: o.typical(), Unit: "g/g", Source: o.data.Source},
 		},
-		Value: planned * 1e3, Unit: "g", Source: "METHODS f", Notes: []string{o.data.Notes},
+		Value: planned * 1e3, Unit: "g", Source: "Robertson, Laboratory Practice of Organic Chemistry, 3rd ed., pp. 147 to 152", Notes: []string{o.data.Notes},
 	}
 }

@@ -189,6 +189,6 @@ func (o *extractOp) derive(w *Workspace, v, done int, there, portion, left, p fl
 			{Symbol: "V(aq)", Name: "aqueous volume at the end", Value: w.volume(v, aqueous) * 1e6, Unit: "mL", Source: "contents of the vessel"},
 			{Symbol: "V(org)", Name: "one portion", Value: portion * solvent.molar / solvent.density * 1e6, Unit: "mL", Source: "recipe, " + ruleWords[o.dose.rule]},
 		},
-		Value: left, Range: "dilute; salting out by Setschenow's law; dimers of the acid would leave less", Source: "METHODS e",
+		Value: left, Range: "dilute; salting out by Setschenow's law; dimers of the acid would leave less", Source: "Harvey, Analytical Chemistry, 7.7; Nichols, Organic Chemistry Lab Techniques, 4.5",
 	}
 }

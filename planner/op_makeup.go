@@ -82,7 +82,7 @@ func (o *makeUpOp) tell(w *Workspace, planned, stocks, water float64) {
 				{Symbol: "w", Name: "strength", Value: float64(o.to), Source: "recipe"},
 				{Symbol: "m(water of the stocks)", Name: "water of hydration and solution", Value: stocks * 1e3, Unit: "g", Source: "stocks drawn"},
 			},
-			Value: water * 1e3, Unit: "g", Source: "METHODS c",
+			Value: water * 1e3, Unit: "g", Source: "OpenStax Chemistry 2e, 3.3, 3.4 and 11.4",
 		}
 	})
 	w.sayHeat()

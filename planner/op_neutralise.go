@@ -109,7 +109,7 @@ func (o *neutraliseOp) tell(w *Workspace, v int, n float64) {
 				{Symbol: "V", Name: "aqueous volume", Value: w.volume(v, aqueous) * 1e3, Unit: "L", Source: "contents of the vessel"},
 				{Symbol: "left", Name: "share of dissolved carbon dioxide left", Value: o.stays, Source: "recipe"},
 			},
-			Value: n, Unit: "mol", Range: "25 °C, activities taken as one: pH to 0.2 above 0.1 mol/L", Source: "METHODS d",
+			Value: n, Unit: "mol", Range: "25 °C, activities taken as one: pH to 0.2 above 0.1 mol/L", Source: "OpenStax Chemistry 2e, 14.4 to 14.7",
 		}
 	})
 	if w.report.gasFormed(w, v) {

@@ -140,7 +140,7 @@ func (o *quenchOp) tell(w *Workspace, x *reactionOf, left, needed, acid float64,
 				{Symbol: "ν", Name: "moles of reductant for one of oxidant", Value: needed / left, Source: "reaction " + x.name},
 				{Symbol: "excess", Name: "more than theory", Value: o.excess, Source: "recipe"},
 			},
-			Value: needed * (1 + o.excess) * m.molar * 1e3, Unit: "g", Source: "METHODS j",
+			Value: needed * (1 + o.excess) * m.molar * 1e3, Unit: "g", Source: "Beukes et al., Water SA 25 (1999) 363",
 		}
 	})
 }

@@ -141,7 +141,7 @@ func (w *Workspace) tellReaction(x *reactionOf, extent, heat float64) {
 				{Symbol: "ΔH", Name: "reaction enthalpy per mole of " + w.p.matter[x.key].name, Value: x.enthalpy / 1e3, Unit: "kJ/mol", Source: x.enthalpySource},
 				{Symbol: "n", Name: "amount that reacts", Value: n, Unit: "mol", Source: "balance of the step"},
 			},
-			Value: heat / 1e3, Unit: "kJ", Source: "METHODS h",
+			Value: heat / 1e3, Unit: "kJ", Source: "Stoessel, Thermal Safety of Chemical Processes; OpenStax Chemistry 2e, 5.2",
 		}
 	})
 }

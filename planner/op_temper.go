@@ -85,7 +85,7 @@ func (w *Workspace) useIce(ask int, heat float64) {
 			{Symbol: "q", Name: "heat to be taken up", Value: heat / 1e3, Unit: "kJ", Source: "heat balance of the step"},
 			{Symbol: "spare", Name: "ice taken against ice melted", Value: spare, Source: "policy heat.ice-spare"},
 		},
-		Value: float64(a.Pure) * 1e3, Unit: "g", Source: "METHODS h",
+		Value: float64(a.Pure) * 1e3, Unit: "g", Source: "Stoessel, Thermal Safety of Chemical Processes; OpenStax Chemistry 2e, 5.2",
 	}
 	w.report.step.Ice += chem.Mass(melted * spare)
 }

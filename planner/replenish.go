@@ -9,7 +9,7 @@ import (
 )
 
 // Replenishing stock that isn't bought for one planned run. The formulas are
-// the textbook ones (METHODS k; S. Nahmias, Production and Operations Analysis):
+// the textbook ones (S. Nahmias, Production and Operations Analysis):
 // they hold for steady, independent demand, which a preparative lab hardly has,
 // so that planned runs are netted one by one instead.
 

@@ -107,7 +107,7 @@ func deriveCharge(w *Workspace, a *Ask, c, ask int, n, stock float64) chem.Deriv
 			{Symbol: "M", Name: "molar mass of " + m.formula.String(), Value: m.molar * 1e3, Unit: "g/mol", Source: "standard atomic weights, IUPAC"},
 			{Symbol: "w", Name: "mass fraction of pure, anhydrous substance in the stock", Value: s.pure, Source: source},
 		},
-		Value: stock * 1e3, Unit: "g", Source: "METHODS a",
+		Value: stock * 1e3, Unit: "g", Source: "OpenStax Chemistry 2e, 4.3 and 4.4",
 	}
 }
 
@@ -233,6 +233,6 @@ func deriveGas(s *StepReport) chem.Derivation {
 		Inputs: []chem.Input{
 			{Symbol: "n", Name: s.GasOf, Value: n, Unit: "mol", Source: "balance of the step"},
 		},
-		Value: s.Gas.Litres(), Unit: "L", Range: "20 °C, 101.325 kPa, ideal; what stays dissolved isn't taken off", Source: "METHODS d",
+		Value: s.Gas.Litres(), Unit: "L", Range: "20 °C, 101.325 kPa, ideal; what stays dissolved isn't taken off", Source: "OpenStax Chemistry 2e, 14.4 to 14.7",
 	}
 }

@@ -71,7 +71,7 @@ func (p *Program) deriveScale(target chem.Mass, n, planned float64, certainty ch
 			{Symbol: "ν", Name: "moles of product for one of limiting reagent", Value: p.perLimiting, Source: "reactions of the recipe"},
 			{Symbol: "Y", Name: fmt.Sprintf("yield reached with %.3g %% certainty (mean %.3g %%, standard deviation %.3g points, %s)", certainty.Percent(), p.Recipe.Yield.Mean.Percent(), p.Recipe.Yield.SD.Percent(), p.Recipe.Yield.Basis), Value: planned, Source: "recipe, percentile of the policy"},
 		},
-		Value: n, Unit: "mol", Source: "METHODS a",
+		Value: n, Unit: "mol", Source: "OpenStax Chemistry 2e, 4.3 and 4.4",
 	}
 }
 

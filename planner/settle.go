@@ -112,7 +112,7 @@ func (w *Workspace) saltedOut(v, component int) float64 {
 func overRest(w chem.Fraction) float64 { return steady(float64(w / (1 - w))) }
 
 // partitionFor is the measured or computed partition coefficient, else the
-// ratio of solubilities (METHODS e): a liquid solute mixes with the solvent, so
+// ratio of solubilities (Harvey, Analytical Chemistry, 7.7): a liquid solute mixes with the solvent, so
 // that its own concentration stands for its solubility there.
 func partitionFor(solute, solvent *matter) float64 {
 	p, err := chem.PartitionOf(solute.cas, solvent.cas)

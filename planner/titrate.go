@@ -61,7 +61,7 @@ func freeCharge(pH float64) float64 {
 }
 
 // carbonDioxideInWater is what water holds of carbon dioxide under its own gas at
-// 101.325 kPa, in mol/m3: 0.03 to 0.04 mol/L (METHODS d, from memory).
+// 101.325 kPa, in mol/m3: 0.03 to 0.04 mol/L (from memory).
 const carbonDioxideInWater = 34
 
 // acidFor returns the amount of acid that brings place v to pH, from the charge

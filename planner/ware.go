@@ -178,7 +178,7 @@ func deriveFill(s *StepReport, volume float64) chem.Derivation {
 			{Symbol: "V(contents)", Name: "all that is in it at the fullest moment of the step, but gas", Value: volume * 1e6, Unit: "mL", Source: "contents of the vessel"},
 			{Symbol: "V(nominal)", Name: s.Vessel.Ware, Value: s.Vessel.Size.Millilitres(), Unit: "mL", Source: "equipment of the lab, the smallest that keeps the limits from its first step to its last"},
 		},
-		Value: float64(s.Vessel.Fill), Range: fmt.Sprintf("limit %.3g", float64(s.Vessel.Limit)), Source: "METHODS m",
+		Value: float64(s.Vessel.Fill), Range: fmt.Sprintf("limit %.3g", float64(s.Vessel.Limit)), Source: "fill limits: common practice",
 	}
 }
 
@@ -210,7 +210,7 @@ func (r *reporter) coolingOf(s *StepReport, w *Workspace) {
 			{Symbol: "ΔT", Name: "gap between contents and bath", Value: w.policy.heatGap, Unit: "K", Source: "policy heat.gap"},
 			{Symbol: "A", Name: "wetted wall of " + s.Vessel.Ware, Value: float64(power) / w.policy.heatU / w.policy.heatGap, Unit: "m2", Source: "sphere filled to this level"},
 		},
-		Value: s.Shortest.Minutes(), Unit: "min", Range: "valid while the reaction keeps up with the addition", Source: "METHODS h",
+		Value: s.Shortest.Minutes(), Unit: "min", Range: "valid while the reaction keeps up with the addition", Source: "Stoessel, Thermal Safety of Chemical Processes; OpenStax Chemistry 2e, 5.2",
 	})
 	if s.Time > 0 && s.Time < s.Shortest {
 		s.Time = s.Shortest

@@ -25,7 +25,7 @@ func phSum() Sum {
 		Gives:   []string{"pH", "one row for each species"},
 		Example: []string{"mix=acetic acid: 0.1 mol/L; sodium acetate: 0.05 mol/L"},
 		Range:   "0 to 100 °C; activities as concentrations, so 0.1 to 0.2 off above 0.1 mol/L; pKa moved from 25 °C where their enthalpies are known; pH_activity up to an ionic strength of 0.5 mol/L",
-		Source:  "charge balance (METHODS d; OpenStax Chemistry 2e, 14.4 to 14.6); Kw: Marshall and Franck 1981; activities: Davies 1962",
+		Source:  "charge balance (OpenStax Chemistry 2e, 14.4 to 14.6); Kw: Marshall and Franck 1981; activities: Davies 1962",
 		Run:     runPH,
 	}
 }

@@ -26,7 +26,7 @@ func packsSum() Sum {
 		Gives:   []string{"cost", "one row for each pack taken"},
 		Example: []string{"need=2600 mL", "offers=100 mL@12; 500 mL@38; 1 L@65; 2.5 L@130"},
 		Range:   "needs up to four million times the packs' common step; all prices in one currency, fees left out",
-		Source:  "minimum-cost covering by a table over amounts: S. Martello and P. Toth, Knapsack Problems, Wiley 1990; METHODS l",
+		Source:  "minimum-cost covering by a table over amounts: S. Martello and P. Toth, Knapsack Problems, Wiley 1990",
 		Run:     packs,
 	}
 }
@@ -65,7 +65,7 @@ func packsAnswer(order planner.PackOrder, offers []planner.PackOffer, decimals i
 	}
 	answer.Derivation = chem.Derivation{
 		Of: "cost", Formula: "least Σ cⱼ·xⱼ with Σ sⱼ·xⱼ ≥ need, xⱼ whole", Value: cost,
-		Source: "minimum-cost covering by a table over amounts (METHODS l)",
+		Source: "minimum-cost covering by a table over amounts (Martello and Toth, Knapsack Problems, 1990)",
 	}
 	return answer
 }
