@@ -52,9 +52,9 @@ func gradesInCommon(a, b []string) []string {
 func (a *Accept) strengthText() string {
 	switch {
 	case a.Most == 0:
-		return fmt.Sprintf("at least %.3g %%", a.Least.Percent())
+		return plainf("at least %.3g %%", a.Least.Percent())
 	case a.Least == 0:
-		return fmt.Sprintf("at most %.3g %%", a.Most.Percent())
+		return plainf("at most %.3g %%", a.Most.Percent())
 	}
-	return fmt.Sprintf("%.3g to %.3g %%", a.Least.Percent(), a.Most.Percent())
+	return plainf("%.3g to %.3g %%", a.Least.Percent(), a.Most.Percent())
 }

@@ -2,7 +2,6 @@ package planner
 
 import (
 	"cmp"
-	"fmt"
 	"slices"
 )
 
@@ -72,7 +71,7 @@ func (p *planning) blends(plan *Plan) {
 		}
 		plan.Findings = append(plan.Findings, Finding{
 			Kind: "blend", Severity: Warning, Step: c.need.Draws[0].Steps[0].Step,
-			Text: fmt.Sprintf("%s is too weak by itself; blended with the stronger %s it makes %.3g %%, within what the recipe allows. "+
+			Text: plainf("%s is too weak by itself; blended with the stronger %s it makes %.3g %%, within what the recipe allows. "+
 				"Pour the stronger into the weaker, slowly, stirred and cooled; the heat of blending is not assessed: treat it as large", joined(weak), c.demand.name, c.blendOf*100),
 			Would: "a fit bottle instead",
 		})

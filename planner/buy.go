@@ -156,10 +156,10 @@ func (m *matcher) candidates(c *coverage) []candidate {
 // conversion says how the form differs from the pure substance, for the buyer.
 func (f *formMatch) conversion() string {
 	if f.sub.Substance != "" {
-		return fmt.Sprintf("stands in for %s, %.4g g for 1 g", f.demand.name, f.sub.Factor)
+		return plainf("stands in for %s, %.4g g for 1 g", f.demand.name, f.sub.Factor)
 	}
 	if f.form.HydrateWaters > 0 {
-		return fmt.Sprintf("a hydrate: %.4g g hold 1 g of anhydrous %s", 1/float64(f.anhydrous), f.demand.name)
+		return plainf("a hydrate: %.4g g hold 1 g of anhydrous %s", 1/float64(f.anhydrous), f.demand.name)
 	}
 	return ""
 }
@@ -283,7 +283,7 @@ func whyBuy(c *coverage, cand *candidate, packs int64) string {
 	if c.demand.count {
 		unit, short, holds = "pieces", c.alloc.short, cand.pure*float64(packs)
 	}
-	why := fmt.Sprintf("%.3g %s are short; %d of these hold %.3g %s", short, unit, packs, holds, unit)
+	why := plainf("%.3g %s are short; %d of these hold %.3g %s", short, unit, packs, holds, unit)
 	if cand.conversion != "" {
 		why += "; " + cand.conversion
 	}

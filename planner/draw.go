@@ -240,13 +240,13 @@ func (m *matcher) whyDraw(c *coverage, x *fit, left float64) string {
 		why += "; stands in for " + c.demand.name
 	}
 	if x.dilute {
-		why += fmt.Sprintf("; stronger than asked (%.3g %%), so it is made up to %.3g %% first", x.top.Percent(), c.demand.accept.Most.Percent())
+		why += plainf("; stronger than asked (%.3g %%), so it is made up to %.3g %% first", x.top.Percent(), c.demand.accept.Most.Percent())
 	}
 	if x.blended {
-		why += fmt.Sprintf("; too weak alone (%.3g %%), only as part of a blend of %.3g %%", x.strength.Percent(), c.blendOf*100)
+		why += plainf("; too weak alone (%.3g %%), only as part of a blend of %.3g %%", x.strength.Percent(), c.blendOf*100)
 	}
 	if x.aged {
-		why += fmt.Sprintf("; counted at %.3g %%, its strength on the day at room temperature: titrate it before use", x.strength.Percent())
+		why += plainf("; counted at %.3g %%, its strength on the day at room temperature: titrate it before use", x.strength.Percent())
 	}
 	if c.alloc.mixed && x.form.PeroxideTestDays > 0 {
 		why += "; don't pour old and fresh together"
@@ -256,7 +256,7 @@ func (m *matcher) whyDraw(c *coverage, x *fit, left float64) string {
 
 func drawDerivation(c *coverage, x *fit, amount float64, d *Draw) chem.Derivation {
 	if c.demand.count {
-		return chem.Derivation{Of: x.form.Name, Formula: "N", Value: amount, Inserted: fmt.Sprintf("%.4g", amount), Source: "share of the need taken from this bottle"}
+		return chem.Derivation{Of: x.form.Name, Formula: "N", Value: amount, Inserted: plainf("%.4g", amount), Source: "share of the need taken from this bottle"}
 	}
 	out := chem.Derivation{
 		Of: x.form.Name + " out of " + x.bottle.Code, Formula: "m = mₚ / w", Unit: "g", Value: d.Mass.Grams(),
@@ -281,9 +281,9 @@ func drawDerivation(c *coverage, x *fit, amount float64, d *Draw) chem.Derivatio
 		out.Inputs = append(out.Inputs, chem.Input{Symbol: "a", Name: fmt.Sprintf("anhydrous share of the hydrate with %g H₂O", x.form.HydrateWaters), Value: a, Source: "molar masses"})
 	}
 	out.Inputs = append(out.Inputs, chem.Input{Symbol: "w", Name: "assay of " + x.form.Name, Value: float64(x.strength), Source: wSource})
-	out.Inserted = fmt.Sprintf("%.5g g / %.4g = %.5g g", pure*1e3, float64(x.share), d.Mass.Grams())
+	out.Inserted = plainf("%.5g g / %.4g = %.5g g", pure*1e3, float64(x.share), d.Mass.Grams())
 	if d.HasVolume {
-		out.Notes = append(out.Notes, fmt.Sprintf("%.4g mL at %.4g g/mL (%s)", d.Volume.Millilitres(), x.form.DensityGML, firstOf(x.form.DensitySource, "source of the density: no data")))
+		out.Notes = append(out.Notes, plainf("%.4g mL at %.4g g/mL (%s)", d.Volume.Millilitres(), x.form.DensityGML, firstOf(x.form.DensitySource, "source of the density: no data")))
 	}
 	return out
 }

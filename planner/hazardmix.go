@@ -90,7 +90,7 @@ func (m *mixtures) classified(contents []Content, total chem.Mass, pH float64) H
 	if err == nil {
 		note = noteOf("", ": "+shares(contents, total), got)
 		if note.Signal == "" && got.Unknown.Percent() >= 1 { // below, it is in the notes; the standard counts from 1 % on
-			note.Basis = basisNoData + fmt.Sprintf(" (%.3g %% of it)", got.Unknown.Percent())
+			note.Basis = basisNoData + plainf(" (%.3g %% of it)", got.Unknown.Percent())
 		}
 	}
 	m.seen = append(m.seen, seenMixture{contents, pH, note})

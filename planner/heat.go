@@ -1,8 +1,6 @@
 package planner
 
 import (
-	"fmt"
-
 	"stillroom/chem"
 )
 
@@ -123,7 +121,7 @@ func (w *Workspace) deriveRise(cp float64) chem.Derivation {
 	start := w.celsius[w.step.vessel]
 	return chem.Derivation{
 		Of: "temperature if cooling is lost", Formula: "T = T0 + q / Σ m·cp",
-		Inserted: fmt.Sprintf("%.3g °C + %.5g kJ / %.4g kJ/K = %.4g °C", start, w.heat/1e3, cp/1e3, start+w.heat/cp),
+		Inserted: plainf("%.3g °C + %.5g kJ / %.4g kJ/K = %.4g °C", start, w.heat/1e3, cp/1e3, start+w.heat/cp),
 		Inputs: []chem.Input{
 			{Symbol: "T0", Name: "temperature of the contents", Value: start, Unit: "°C", Source: "recipe"},
 			{Symbol: "q", Name: "heat of reactions, dilution and neutralisation", Value: w.heat / 1e3, Unit: "kJ", Source: "heat balance of the step"},

@@ -1,8 +1,6 @@
 package planner
 
 import (
-	"fmt"
-
 	"stillroom/chem"
 	"stillroom/inventory"
 )
@@ -14,12 +12,12 @@ func (p *planning) largeFindings(plan *Plan) []Finding {
 	limiting := p.limitingMass()
 	if most := p.policy.value("scale.large-substrate"); limiting.Grams() > most {
 		found = append(found, Finding{Kind: "large-substrate", Severity: Note,
-			Text: fmt.Sprintf("%s of %s a batch: above %.3g g a run counts as large", massText(limiting), p.scale.Limiting, most)})
+			Text: plainf("%s of %s a batch: above %.3g g a run counts as large", massText(limiting), p.scale.Limiting, most)})
 	}
 	solvent := p.solventVolume(plan)
 	if most := p.policy.value("scale.large-solvent"); solvent.Millilitres() > most {
 		found = append(found, Finding{Kind: "large-solvent", Severity: Note,
-			Text: fmt.Sprintf("%.2g L of organic solvents a batch: above %.3g mL a run counts as large", solvent.Litres(), most)})
+			Text: plainf("%.2g L of organic solvents a batch: above %.3g mL a run counts as large", solvent.Litres(), most)})
 	}
 	return found
 }

@@ -1,7 +1,6 @@
 package planner
 
 import (
-	"fmt"
 	"slices"
 
 	"stillroom/chem"
@@ -59,7 +58,7 @@ func makeUpAsks(made []makeUp) []Ask {
 		asks = append(asks, Ask{
 			Substance: "water", CAS: "7732-18-5", Formula: "H2O", Step: u.step, StepName: "dilute " + u.substance,
 			Pure: u.water, Amount: water.MolarMass().Of(u.water), Rule: "by mole", Hidden: true, Key: "make-up of " + u.substance,
-			Why: fmt.Sprintf("%s is stronger (%.3g %%) than the recipe allows (%.3g %%): %.4g g of it take %.4g g of water",
+			Why: plainf("%s is stronger (%.3g %%) than the recipe allows (%.3g %%): %.4g g of it take %.4g g of water",
 				u.form.Name, u.from.Percent(), u.to.Percent(), u.stock.Grams(), u.water.Grams()),
 		})
 	}
@@ -114,7 +113,7 @@ func (u *makeUp) report(n, batches int) StepReport {
 	share := 1 / float64(max(1, batches))
 	stock, water, pure := u.stock*chem.Mass(share), u.water*chem.Mass(share), u.pure*chem.Mass(share)
 	s := StepReport{
-		N: n, Do: "make-up", Name: fmt.Sprintf("dilute %s to %.3g %%", u.substance, u.to.Percent()),
+		N: n, Do: "make-up", Name: plainf("dilute %s to %.3g %%", u.substance, u.to.Percent()),
 		Vessel: VesselReport{Name: "made-up " + u.substance, Kind: "beaker"},
 		Adds: []Add{
 			{Substance: "water", Form: "water", Mass: water, Volume: waterVolume(water), HasVolume: true, Rule: "by mole"},
@@ -129,7 +128,7 @@ func (u *makeUp) report(n, batches int) StepReport {
 			"Put the water in first and pour " + u.substance + " into it slowly, with stirring; never pour water into it.",
 			"Cool from outside and let it come back to room temperature before use.",
 		},
-		Says: []string{fmt.Sprintf("%.4g g of %s into %.4g g of water", stock.Grams(), u.form.Name, water.Grams())},
+		Says: []string{plainf("%.4g g of %s into %.4g g of water", stock.Grams(), u.form.Name, water.Grams())},
 	}
 	if u.density > 0 {
 		s.Adds[1].Volume, s.Adds[1].HasVolume = u.density.Volume(stock), true
@@ -138,7 +137,7 @@ func (u *makeUp) report(n, batches int) StepReport {
 		s.Adds[1].Amount, s.Contents[0].Amount = u.molar.Of(pure), u.molar.Of(pure)
 		if q, err := chem.DilutionHeat(u.cas, u.molar.Of(pure), u.from, u.to); err == nil {
 			s.Heat = q
-			s.Says = append(s.Says, fmt.Sprintf("gives off %.3g kJ", q.Kilojoules()))
+			s.Says = append(s.Says, plainf("gives off %.3g kJ", q.Kilojoules()))
 		} else {
 			s.Says = append(s.Says, "heat of dilution: no data, not assessed")
 			s.Cautions = append(s.Cautions, "The heat of dilution is not known here: treat it as large.")

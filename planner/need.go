@@ -204,13 +204,13 @@ func (d *demand) derivation(asks []Ask) chem.Derivation {
 	terms := make([]string, len(d.asks))
 	for k, i := range d.asks {
 		v := amountOf(&asks[i]) * scale
-		terms[k] = fmt.Sprintf("%.4g", v)
+		terms[k] = plainf("%.4g", v)
 		out.Inputs = append(out.Inputs, chem.Input{
 			Symbol: fmt.Sprint("charge ", k+1), Name: asks[i].StepName, Value: v, Unit: out.Unit,
 			Source: fmt.Sprintf("step %d of the recipe, %s", asks[i].Step, firstOf(asks[i].Rule, "as written")),
 		})
 	}
 	out.Value = d.amount * scale
-	out.Inserted = fmt.Sprintf("%s = %.4g %s", strings.Join(terms, " + "), out.Value, out.Unit)
+	out.Inserted = plainf("%s = %.4g %s", strings.Join(terms, " + "), out.Value, out.Unit)
 	return out
 }

@@ -1,8 +1,6 @@
 package planner
 
 import (
-	"fmt"
-
 	"stillroom/chem"
 )
 
@@ -66,9 +64,9 @@ func (o *acidifyOp) run(w *Workspace) error {
 	if !(n > 0) {
 		pH, known := w.pH(v)
 		if known && pH <= o.pH {
-			return w.refuse(ErrPH, fmt.Sprintf("%s is at pH %.1f already, below pH %.3g", w.p.places[v], pH, o.pH), "leave the step out or name a lower pH")
+			return w.refuse(ErrPH, plainf("%s is at pH %.1f already, below pH %.3g", w.p.places[v], pH, o.pH), "leave the step out or name a lower pH")
 		}
-		return w.refuse(ErrPH, fmt.Sprintf("%s at this strength doesn't bring %s to pH %.3g", w.p.matter[o.dose.component].name, w.p.places[v], o.pH), "take a stronger acid")
+		return w.refuse(ErrPH, plainf("%s at this strength doesn't bring %s to pH %.3g", w.p.matter[o.dose.component].name, w.p.places[v], o.pH), "take a stronger acid")
 	}
 	before := w.dilutionHeat(v) + w.stockDilution(o.dose.component, o.dose.ask, n)
 	w.pour(&o.dose, v, n)
@@ -93,8 +91,8 @@ func (o *acidifyOp) tell(w *Workspace, v int, n float64) {
 	w.caution("add the acid in portions with cooling; gas may be given off from carbonate")
 	w.derive(func() chem.Derivation {
 		return chem.Derivation{
-			Of: m.name + " to pH " + fmt.Sprintf("%.3g", o.pH), Formula: "n = (cations − Σ n(acid)·z(pH) − V·([OH] − [H])) / z(acid)",
-			Inserted: fmt.Sprintf("n = %.5g mol", n),
+			Of: m.name + " to pH " + plainf("%.3g", o.pH), Formula: "n = (cations − Σ n(acid)·z(pH) − V·([OH] − [H])) / z(acid)",
+			Inserted: plainf("n = %.5g mol", n),
 			Inputs: []chem.Input{
 				{Symbol: "V", Name: "aqueous volume", Value: w.volume(v, aqueous) * 1e3, Unit: "L", Source: "contents of the vessel"},
 			},

@@ -155,12 +155,12 @@ func (o *coDistilOp) tell(w *Workspace, mass, recovery, pot, water float64) {
 	w.say("%.4g g of distillate water carry %.3g %% of the %s over; no oily drops follow when it is done", water*1e3, 100*recovery, o.carry)
 	w.say("the pot is kept up with the same amount of water")
 	if a := &w.report.asks[o.waterAsk]; a.Hidden {
-		a.Why = fmt.Sprintf("%.4g g of water leave with the distillate and are put back", water*1e3)
+		a.Why = plainf("%.4g g of water leave with the distillate and are put back", water*1e3)
 	}
 	w.derive(func() chem.Derivation {
 		return chem.Derivation{
 			Of: "water of the distillate", Formula: "m(water) = (m − m(dissolved))/r + m(pot)/α · ln(m(dissolved)/m(left))",
-			Inserted: fmt.Sprintf("%.5g g", water*1e3),
+			Inserted: plainf("%.5g g", water*1e3),
 			Inputs: []chem.Input{
 				{Symbol: "m", Name: o.carry + " in the pot", Value: mass * 1e3, Unit: "g", Source: "contents of the vessel"},
 				{Symbol: "r", Name: "mass carried by one mass of water over two layers", Value: o.perWater, Source: o.source},

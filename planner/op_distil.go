@@ -117,14 +117,14 @@ func (w *Workspace) tellIsolation(arrives, n, theory, yield float64) {
 	if arrives < yield*theory*(1-1e-9) {
 		w.report.walk.Findings = append(w.report.walk.Findings, Finding{
 			Kind: "yield-beyond-balance", Severity: Warning, Step: w.step.N,
-			Text:  fmt.Sprintf("the recipe's yield of %.3g %% is more than the %.3g %% that the steps let through", 100*yield, 100*arrives/theory),
+			Text:  plainf("the recipe's yield of %.3g %% is more than the %.3g %% that the steps let through", 100*yield, 100*arrives/theory),
 			Would: "lower the yield of the recipe, or mend the conversion or recovery that is too low",
 		})
 	}
 	w.derive(func() chem.Derivation {
 		return chem.Derivation{
 			Of: m.name + ", isolated", Formula: "m = min(arriving, Y · n(theory)) · M",
-			Inserted: fmt.Sprintf("min(%.5g mol, %.4g · %.5g mol) · %.6g g/mol = %.5g g", arrives, yield, theory, m.molar*1e3, n*m.molar*1e3),
+			Inserted: plainf("min(%.5g mol, %.4g · %.5g mol) · %.6g g/mol = %.5g g", arrives, yield, theory, m.molar*1e3, n*m.molar*1e3),
 			Inputs: []chem.Input{
 				{Symbol: "Y", Name: "isolated yield", Value: yield, Source: "recipe, " + w.p.Recipe.Yield.Basis},
 				{Symbol: "n(theory)", Name: "product of the limiting reagent in theory", Value: theory, Unit: "mol", Source: "balanced reactions"},

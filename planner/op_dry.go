@@ -75,7 +75,7 @@ func (o *dryOp) run(w *Workspace) error {
 	}
 	w.settle(v)
 	if aq := w.volume(v, aqueous); aq > w.volume(v, organic)/10 {
-		return w.refuse(ErrOnePhase, fmt.Sprintf("%s still holds %.3g mL of an aqueous layer", w.p.places[v], aq*1e6), "separate the layers before drying")
+		return w.refuse(ErrOnePhase, plainf("%s still holds %.3g mL of an aqueous layer", w.p.places[v], aq*1e6), "separate the layers before drying")
 	}
 	molar := w.p.matter[w.p.water].molar
 	water := w.total(v, w.p.water)
@@ -102,7 +102,7 @@ func (o *dryOp) run(w *Workspace) error {
 
 func (o *dryOp) tell(w *Workspace, water, planned float64) {
 	a := &w.report.asks[o.dose.ask]
-	a.Why = fmt.Sprintf("%.3g g of water to bind at %.3g g/g (practice %.3g to %.3g): %.3g g, then more until it flows freely", water*1e3, o.typical(), o.data.Low, o.data.High, planned*1e3)
+	a.Why = plainf("%.3g g of water to bind at %.3g g/g (practice %.3g to %.3g): %.3g g, then more until it flows freely", water*1e3, o.typical(), o.data.Low, o.data.High, planned*1e3)
 	w.say("%.3g g of water to bind takes %.3g g of %s; it is enough when it flows freely", water*1e3, planned*1e3, o.data.Name)
 	a.Derivation = chem.Derivation{
 		Of: o.data.Name, Formula: "m = m(water) / capacity", Inserted: a.Why,

@@ -139,15 +139,15 @@ func (o *extractOp) outOfReach(w *Workspace, v int, portion, there float64) erro
 		made = mostPortions
 	}
 	volume := portion * w.p.matter[o.dose.component].molar / w.p.matter[o.dose.component].density * 1e6
-	what := fmt.Sprintf("%.3g %% needs more than %d portions of %.3g mL; %d give %.3g %%", o.recovery.Percent(), mostPortions, volume, made, got)
-	would := fmt.Sprintf("ask for %.3g %% or take larger portions", math.Floor(got))
+	what := plainf("%.3g %% needs more than %d portions of %.3g mL; %d give %.3g %%", o.recovery.Percent(), mostPortions, volume, made, got)
+	would := plainf("ask for %.3g %% or take larger portions", math.Floor(got))
 	for n := made + 1; n <= mostPortions; n++ {
 		w.pour(&o.dose, v, portion)
 		w.settle(v)
 		w.movePhase(v, o.target, organic, 1)
 		if w.total(v, o.solute)/there <= float64(1-o.recovery) {
-			what = fmt.Sprintf("%.3g %% needs %d portions of %.3g mL; %d give %.3g %%", o.recovery.Percent(), n, volume, made, got)
-			would = fmt.Sprintf("take %d portions, or ask for %.3g %%", n, math.Floor(got))
+			what = plainf("%.3g %% needs %d portions of %.3g mL; %d give %.3g %%", o.recovery.Percent(), n, volume, made, got)
+			would = plainf("take %d portions, or ask for %.3g %%", n, math.Floor(got))
 			break
 		}
 	}
@@ -183,7 +183,7 @@ func (o *extractOp) derive(w *Workspace, v, done int, there, portion, left, p fl
 	}
 	return chem.Derivation{
 		Of: "share of " + solute.name + " left in the water", Formula: "q = V(aq) / (V(aq) + P·V(org)), n times",
-		Inserted: fmt.Sprintf("%.4g after %d portions, each layer taking up what it dissolves of the other", left, done),
+		Inserted: plainf("%.4g after %d portions, each layer taking up what it dissolves of the other", left, done),
 		Inputs: []chem.Input{
 			{Symbol: "P", Name: "partition coefficient, " + solvent.name + " over water", Value: p, Source: source},
 			{Symbol: "V(aq)", Name: "aqueous volume at the end", Value: w.volume(v, aqueous) * 1e6, Unit: "mL", Source: "contents of the vessel"},

@@ -81,7 +81,7 @@ func (o *filterOp) tell(w *Workspace, cake, held, share, product float64) {
 	}
 	w.derive(func() chem.Derivation {
 		return chem.Derivation{
-			Of: "liquid held by the cake", Formula: "V = m(cake) · h", Inserted: fmt.Sprintf("%.5g g · %.4g mL/g = %.5g mL", cake*1e3, o.holds*1e3, held*1e6),
+			Of: "liquid held by the cake", Formula: "V = m(cake) · h", Inserted: plainf("%.5g g · %.4g mL/g = %.5g mL", cake*1e3, o.holds*1e3, held*1e6),
 			Inputs: []chem.Input{
 				{Symbol: "m(cake)", Name: "solid", Value: cake * 1e3, Unit: "g", Source: "contents of the vessel"},
 				{Symbol: "h", Name: "liquid held", Value: o.holds * 1e3, Unit: "mL/g", Source: "recipe"},

@@ -1,8 +1,6 @@
 package planner
 
 import (
-	"fmt"
-
 	"stillroom/chem"
 )
 
@@ -56,8 +54,8 @@ func (o *makeUpOp) run(w *Workspace) error {
 	water := planned - stocks
 	w.brought[v] = 0
 	if water < 0 {
-		return w.refuse(ErrScale, fmt.Sprintf("the stocks bring %.4g g of water, more than the %.4g g of a %.3g %% solution", stocks*1e3, planned*1e3, o.to.Percent()),
-			fmt.Sprintf("use a stronger stock, or make up to %.3g %%", 100*solutes/(solutes+stocks)))
+		return w.refuse(ErrScale, plainf("the stocks bring %.4g g of water, more than the %.4g g of a %.3g %% solution", stocks*1e3, planned*1e3, o.to.Percent()),
+			plainf("use a stronger stock, or make up to %.3g %%", 100*solutes/(solutes+stocks)))
 	}
 	w.draw(o.waterAsk, w.p.water, v, water/w.p.matter[w.p.water].molar)
 	w.heat += w.dilutionHeat(v) - heat
@@ -77,7 +75,7 @@ func (o *makeUpOp) tell(w *Workspace, planned, stocks, water float64) {
 	w.derive(func() chem.Derivation {
 		return chem.Derivation{
 			Of: "water of the make-up", Formula: "m(water) = m(solutes) · (1 − w)/w − m(water of the stocks)",
-			Inserted: fmt.Sprintf("%.6g g − %.6g g = %.6g g", planned*1e3, stocks*1e3, water*1e3),
+			Inserted: plainf("%.6g g − %.6g g = %.6g g", planned*1e3, stocks*1e3, water*1e3),
 			Inputs: []chem.Input{
 				{Symbol: "w", Name: "strength", Value: float64(o.to), Source: "recipe"},
 				{Symbol: "m(water of the stocks)", Name: "water of hydration and solution", Value: stocks * 1e3, Unit: "g", Source: "stocks drawn"},

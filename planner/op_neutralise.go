@@ -66,12 +66,12 @@ func (o *neutraliseOp) run(w *Workspace) error {
 	w.settle(v)
 	n := w.baseFor(o.t, v, o.pH, o.stays)
 	if math.IsInf(n, 1) || math.IsNaN(n) {
-		return w.refuse(ErrPH, fmt.Sprintf("%s doesn't bring a solution to pH %.3g", w.p.matter[o.dose.component].name, o.pH),
+		return w.refuse(ErrPH, plainf("%s doesn't bring a solution to pH %.3g", w.p.matter[o.dose.component].name, o.pH),
 			fmt.Sprintf("it reaches pH %.1f at most; take a stronger base or a lower pH", o.highest(w)))
 	}
 	if n <= 0 {
 		pH, _ := w.pH(v)
-		return w.refuse(ErrPH, fmt.Sprintf("%s is at pH %.1f already, above pH %.3g", w.p.places[v], pH, o.pH), "leave the step out or name a higher pH")
+		return w.refuse(ErrPH, plainf("%s is at pH %.1f already, above pH %.3g", w.p.places[v], pH, o.pH), "leave the step out or name a higher pH")
 	}
 	return o.add(w, v, n)
 }
@@ -101,8 +101,8 @@ func (o *neutraliseOp) tell(w *Workspace, v int, n float64) {
 	w.derive(func() chem.Derivation {
 		cations, anions, _ := w.charges(v, o.pH)
 		return chem.Derivation{
-			Of: m.name + " to pH " + fmt.Sprintf("%.3g", o.pH), Formula: "n = (Σ n(acid)·z(pH) + V·([OH] − [H]) + HCO3 kept − cations) / z(base)",
-			Inserted: fmt.Sprintf("n = %.5g mol", n),
+			Of: m.name + " to pH " + plainf("%.3g", o.pH), Formula: "n = (Σ n(acid)·z(pH) + V·([OH] − [H]) + HCO3 kept − cations) / z(base)",
+			Inserted: plainf("n = %.5g mol", n),
 			Inputs: []chem.Input{
 				{Symbol: "Σ n·z", Name: "charge of the acids at this pH", Value: anions, Unit: "mol", Source: "contents of the vessel, pKa table"},
 				{Symbol: "cations", Name: "charge of the cations when it is reached", Value: cations, Unit: "mol", Source: "contents of the vessel"},

@@ -116,12 +116,12 @@ func (o *quenchOp) addAcid(w *Workspace, x *reactionOf, v int, extent float64) f
 
 func (o *quenchOp) tell(w *Workspace, x *reactionOf, left, needed, acid float64, v int) {
 	m, oxidant := &w.p.matter[o.dose.component], &w.p.matter[o.oxidant]
-	why := fmt.Sprintf("%.4g mol of %s left takes %.4g mol of %s; with %.0f %% excess %.4g g", left, oxidant.name, needed, m.name, 100*o.excess, needed*(1+o.excess)*m.molar*1e3)
+	why := plainf("%.4g mol of %s left takes %.4g mol of %s; with %.0f %% excess %.4g g", left, oxidant.name, needed, m.name, 100*o.excess, needed*(1+o.excess)*m.molar*1e3)
 	w.report.asks[o.dose.ask].Why = why
 	w.say("%s", why)
 	if o.acid.substance != "" {
 		acidName := w.p.matter[o.acidDose.component].name
-		w.report.asks[o.acidDose.ask].Why = fmt.Sprintf("the quench uses up %.4g mol of %s; %.4g mol are short of it", left/-x.numberOf(o.oxidant)*-x.numberOf(o.acidDose.component), acidName, acid)
+		w.report.asks[o.acidDose.ask].Why = plainf("the quench uses up %.4g mol of %s; %.4g mol are short of it", left/-x.numberOf(o.oxidant)*-x.numberOf(o.acidDose.component), acidName, acid)
 		if acid == 0 {
 			w.say("the %s left over suffices for the quench", acidName)
 		}

@@ -120,8 +120,8 @@ func (w *Workspace) progress(p *progress, v int) error {
 	if most < wanted*(1-1e-12) {
 		w.report.walk.Findings = append(w.report.walk.Findings, Finding{
 			Kind: "reagent-runs-out", Severity: Warning, Step: w.step.N,
-			Text:  fmt.Sprintf("%s runs out: %s stops at %.3g %% instead of %.3g %%", w.p.matter[scarce].name, x.name, 100*most*-x.numberOf(p.key)/there, 100*w.value(p.factor)),
-			Would: fmt.Sprintf("charge %.4g mol more of it", (wanted-most)*-x.numberOf(scarce)),
+			Text:  plainf("%s runs out: %s stops at %.3g %% instead of %.3g %%", w.p.matter[scarce].name, x.name, 100*most*-x.numberOf(p.key)/there, 100*w.value(p.factor)),
+			Would: plainf("charge %.4g mol more of it", (wanted-most)*-x.numberOf(scarce)),
 		})
 	}
 	w.tellReaction(x, extent, heat)
@@ -136,7 +136,7 @@ func (w *Workspace) tellReaction(x *reactionOf, extent, heat float64) {
 		n := extent * -x.numberOf(x.key)
 		return chem.Derivation{
 			Of: "heat of " + x.name, Formula: "q = −ΔH · n",
-			Inserted: fmt.Sprintf("%.5g kJ/mol · %.5g mol = %.5g kJ", -x.enthalpy/1e3, n, heat/1e3),
+			Inserted: plainf("%.5g kJ/mol · %.5g mol = %.5g kJ", -x.enthalpy/1e3, n, heat/1e3),
 			Inputs: []chem.Input{
 				{Symbol: "ΔH", Name: "reaction enthalpy per mole of " + w.p.matter[x.key].name, Value: x.enthalpy / 1e3, Unit: "kJ/mol", Source: x.enthalpySource},
 				{Symbol: "n", Name: "amount that reacts", Value: n, Unit: "mol", Source: "balance of the step"},

@@ -48,7 +48,7 @@ func (o stripOp) compile(c *compiler) (runner, error) {
 	o.caught = c.caughtFactor()
 	t, err := c.p.matter[o.component].boilsAt(o.pressure)
 	if err != nil {
-		return nil, c.refuse(ErrNoData, fmt.Sprintf("boiling point of %s at %.4g kPa: %v", o.solvent, o.pressure.Kilopascals(), err), "state boiling: under substances:")
+		return nil, c.refuse(ErrNoData, plainf("boiling point of %s at %.4g kPa: %v", o.solvent, o.pressure.Kilopascals(), err), "state boiling: under substances:")
 	}
 	o.boils = t.Celsius()
 	return &o, nil

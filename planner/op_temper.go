@@ -1,7 +1,6 @@
 package planner
 
 import (
-	"fmt"
 	"math"
 
 	"stillroom/chem"
@@ -49,7 +48,7 @@ func (o *temperOp) run(w *Workspace) error {
 	gap := w.celsius[v] - o.to.Celsius()
 	if o.kind == "heat" && gap > 0 || o.kind == "cool" && gap < 0 {
 		other := map[string]string{"heat": "cool", "cool": "heat"}[o.kind]
-		return w.refuse(ErrScale, fmt.Sprintf("%s is at %.3g °C already", w.p.places[v], w.celsius[v]), fmt.Sprintf("use %s, or leave the step out", other))
+		return w.refuse(ErrScale, plainf("%s is at %.3g °C already", w.p.places[v], w.celsius[v]), plainf("use %s, or leave the step out", other))
 	}
 	q := gap * w.heatCapacity(v)
 	w.celsius[v] = o.to.Celsius()
@@ -78,7 +77,7 @@ func (w *Workspace) useIce(ask int, heat float64) {
 	a := &w.report.asks[ask]
 	a.Pure += chem.Mass(melted * spare)
 	a.Amount = chem.Amount(float64(a.Pure) / w.p.matter[w.p.water].molar)
-	a.Why = fmt.Sprintf("%.3g kJ melt %.3g g of ice at 334 J/g; with %.3g times as much to spare %.3g g", heat/1e3, melted*1e3, spare, melted*spare*1e3)
+	a.Why = plainf("%.3g kJ melt %.3g g of ice at 334 J/g; with %.3g times as much to spare %.3g g", heat/1e3, melted*1e3, spare, melted*spare*1e3)
 	a.Derivation = chem.Derivation{
 		Of: "ice", Formula: "m = q / ΔH(fusion) · spare", Inserted: a.Why,
 		Inputs: []chem.Input{

@@ -1,7 +1,6 @@
 package planner
 
 import (
-	"fmt"
 	"slices"
 
 	"stillroom/chem"
@@ -98,5 +97,5 @@ func (w *Workspace) spare(ask, component, chance int, portion float64) {
 	a := &w.report.asks[ask]
 	a.Pure += chem.Mass(portion)
 	a.Amount += chem.Amount(portion / w.p.matter[component].molar)
-	a.Why = fmt.Sprintf("%.3g times a portion, %.3g g, ready for an emulsion, which %.3g %% of work-ups have (policy prior.emulsion); not part of the balance", w.policy.emulsionExtra, portion*1e3, 100*w.policy.emulsionChance)
+	a.Why = plainf("%.3g times a portion, %.3g g, ready for an emulsion, which %.3g %% of work-ups have (policy prior.emulsion); not part of the balance", w.policy.emulsionExtra, portion*1e3, 100*w.policy.emulsionChance)
 }

@@ -246,14 +246,14 @@ func (w *Workspace) pourAll(doses []dose, v int) {
 // say adds numbers in words to the report of the step.
 func (w *Workspace) say(format string, a ...any) {
 	if w.report != nil {
-		w.report.step.Says = append(w.report.step.Says, withoutPowers(fmt.Sprintf(format, a...)))
+		w.report.step.Says = append(w.report.step.Says, plainf(format, a...))
 	}
 }
 
 // caution adds a caution to the report of the step.
 func (w *Workspace) caution(format string, a ...any) {
 	if w.report != nil {
-		w.report.step.Cautions = append(w.report.step.Cautions, withoutPowers(fmt.Sprintf(format, a...)))
+		w.report.step.Cautions = append(w.report.step.Cautions, plainf(format, a...))
 	}
 }
 

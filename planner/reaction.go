@@ -183,7 +183,7 @@ func (c *compiler) reactionIndex(name string) (int, error) {
 // heatText says a heat in words.
 func heatText(q chem.Energy) string {
 	if q < 0 {
-		return fmt.Sprintf("takes up %.3g kJ", -q.Kilojoules())
+		return plainf("takes up %.3g kJ", -q.Kilojoules())
 	}
-	return fmt.Sprintf("gives off %.3g kJ", q.Kilojoules())
+	return plainf("gives off %.3g kJ", q.Kilojoules())
 }

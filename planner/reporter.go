@@ -101,7 +101,7 @@ func deriveCharge(w *Workspace, a *Ask, c, ask int, n, stock float64) chem.Deriv
 	}
 	return chem.Derivation{
 		Of: m.name, Formula: "m = n · M / w",
-		Inserted: fmt.Sprintf("%.6g mol · %.6g g/mol / %.6g = %.6g g", n, m.molar*1e3, s.pure, stock*1e3),
+		Inserted: plainf("%.6g mol · %.6g g/mol / %.6g = %.6g g", n, m.molar*1e3, s.pure, stock*1e3),
 		Inputs: []chem.Input{
 			{Symbol: "n", Name: "amount, " + a.Rule, Value: n, Unit: "mol", Source: fmt.Sprintf("step %d of the recipe at this scale", a.Step)},
 			{Symbol: "M", Name: "molar mass of " + m.formula.String(), Value: m.molar * 1e3, Unit: "g/mol", Source: "standard atomic weights, IUPAC"},
@@ -115,9 +115,9 @@ func deriveCharge(w *Workspace, a *Ask, c, ask int, n, stock float64) chem.Deriv
 func (r *reporter) counted(w *Workspace, ask int, pieces, pH float64) {
 	a := &r.asks[ask]
 	a.Pieces += pieces
-	a.Why = fmt.Sprintf("%.3g for each batch", pieces)
+	a.Why = plainf("%.3g for each batch", pieces)
 	if pH != 0 {
-		a.Why += fmt.Sprintf(", to read pH %.3g", pH)
+		a.Why += plainf(", to read pH %.3g", pH)
 	}
 	r.step.Adds = append(r.step.Adds, Add{Substance: a.Substance, Pieces: pieces, Rule: a.Rule})
 }
@@ -229,7 +229,7 @@ func deriveGas(s *StepReport) chem.Derivation {
 	n := float64(s.Gas) / gasVolume
 	return chem.Derivation{
 		Of: "gas given off", Formula: "V = n · R · T / p",
-		Inserted: fmt.Sprintf("%.5g mol · 8.314 J/(mol K) · 293.15 K / 101.325 kPa = %.5g L", n, s.Gas.Litres()),
+		Inserted: plainf("%.5g mol · 8.314 J/(mol K) · 293.15 K / 101.325 kPa = %.5g L", n, s.Gas.Litres()),
 		Inputs: []chem.Input{
 			{Symbol: "n", Name: s.GasOf, Value: n, Unit: "mol", Source: "balance of the step"},
 		},

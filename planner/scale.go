@@ -45,7 +45,7 @@ func (p *Program) ScaleFor(target chem.Mass, certainty chem.Fraction, _ inventor
 	}
 	planned := yield.Quantile(1 - float64(certainty))
 	if !(planned > 0) {
-		return Scale{}, &StepError{Recipe: p.Recipe.Name, What: fmt.Sprintf("no yield is reached with %.3g %% certainty", certainty.Percent()), Would: "lower the certainty", Err: ErrScale}
+		return Scale{}, &StepError{Recipe: p.Recipe.Name, What: plainf("no yield is reached with %.3g %% certainty", certainty.Percent()), Would: "lower the certainty", Err: ErrScale}
 	}
 	m := &p.matter[p.product]
 	n := float64(target) / (m.molar * p.perLimiting * planned)
@@ -64,12 +64,12 @@ func (p *Program) deriveScale(target chem.Mass, n, planned float64, certainty ch
 	m := &p.matter[p.product]
 	return chem.Derivation{
 		Of: p.matter[p.limiting].name + ", limiting", Formula: "n = m(target) / (M · ν · Y)",
-		Inserted: fmt.Sprintf("%.6g g / (%.6g g/mol · %.4g · %.4g) = %.6g mol", target.Grams(), m.molar*1e3, p.perLimiting, planned, n),
+		Inserted: plainf("%.6g g / (%.6g g/mol · %.4g · %.4g) = %.6g mol", target.Grams(), m.molar*1e3, p.perLimiting, planned, n),
 		Inputs: []chem.Input{
 			{Symbol: "m(target)", Name: "mass of " + m.name + " wanted", Value: target.Grams(), Unit: "g", Source: "request"},
 			{Symbol: "M", Name: "molar mass of " + m.formula.String(), Value: m.molar * 1e3, Unit: "g/mol", Source: "standard atomic weights, IUPAC"},
 			{Symbol: "ν", Name: "moles of product for one of limiting reagent", Value: p.perLimiting, Source: "reactions of the recipe"},
-			{Symbol: "Y", Name: fmt.Sprintf("yield reached with %.3g %% certainty (mean %.3g %%, standard deviation %.3g points, %s)", certainty.Percent(), p.Recipe.Yield.Mean.Percent(), p.Recipe.Yield.SD.Percent(), p.Recipe.Yield.Basis), Value: planned, Source: "recipe, percentile of the policy"},
+			{Symbol: "Y", Name: plainf("yield reached with %.3g %% certainty (mean %.3g %%, standard deviation %.3g points, %s)", certainty.Percent(), p.Recipe.Yield.Mean.Percent(), p.Recipe.Yield.SD.Percent(), p.Recipe.Yield.Basis), Value: planned, Source: "recipe, percentile of the policy"},
 		},
 		Value: n, Unit: "mol", Source: "OpenStax Chemistry 2e, 4.3 and 4.4",
 	}
@@ -90,7 +90,7 @@ func (r *reporter) scaleFindings(w *Workspace) {
 	}
 	r.walk.Findings = append(r.walk.Findings, Finding{
 		Kind: "scale-beyond-proven", Severity: Warning,
-		Text:  fmt.Sprintf("%.3g mol in a batch is %.2g times the proven scale of %.3g mol (%d runs); more than %.3g times asks for a review", w.limiting, factor, float64(recipe.ProvenScale), recipe.ProvenRuns, warn),
+		Text:  plainf("%.3g mol in a batch is %.2g times the proven scale of %.3g mol (%d runs); more than %.3g times asks for a review", w.limiting, factor, float64(recipe.ProvenScale), recipe.ProvenRuns, warn),
 		Would: fmt.Sprintf("%.0f batches stay within it", math.Ceil(w.limiting*w.batches/(warn*float64(recipe.ProvenScale)))),
 	})
 }

@@ -282,7 +282,7 @@ func (w *Workspace) needLayers(v int) error {
 	if aq == 0 && org == 0 {
 		return w.refuse(ErrEmptyVessel, fmt.Sprintf("%s is empty", w.p.places[v]), "fill it in an earlier step")
 	}
-	return w.refuse(ErrOnePhase, fmt.Sprintf("%s holds one layer only: %.3g mL, %s", w.p.places[v], (aq+org)*1e6, only),
+	return w.refuse(ErrOnePhase, plainf("%s holds one layer only: %.3g mL, %s", w.p.places[v], (aq+org)*1e6, only),
 		"add water or a solvent that doesn't mix with it before parting")
 }
 

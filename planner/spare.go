@@ -2,7 +2,6 @@ package planner
 
 import (
 	"cmp"
-	"fmt"
 	"slices"
 )
 
@@ -31,7 +30,7 @@ func (a *assessor) nameSpares(r *needRisk, share float64) {
 	}
 	for k := range r.cover.need.Spares {
 		s := &r.cover.need.Spares[k]
-		s.Why = fmt.Sprintf("%s at hand as a spare takes the chance of running short from %.2g %% to %.2g %%", s.Bottle.Code, before*100, r.chance*100)
+		s.Why = plainf("%s at hand as a spare takes the chance of running short from %.2g %% to %.2g %%", s.Bottle.Code, before*100, r.chance*100)
 	}
 }
 

@@ -26,7 +26,7 @@ func (m *matcher) decide(c *coverage, buys []Purchase, limit float64) {
 		if c.coming.late > limit {
 			n.State = Tight
 		}
-		n.Because = fmt.Sprintf("%s are not on the shelf; %s brings them before the run; it is late with a chance of %.2g %%", shortText(c), c.coming.text, 100*c.coming.late)
+		n.Because = plainf("%s are not on the shelf; %s brings them before the run; it is late with a chance of %.2g %%", shortText(c), c.coming.text, 100*c.coming.late)
 	case c.coming.covers:
 		n.State, n.CoveredOn = Late, c.coming.on
 		n.Because = fmt.Sprintf("%s are short; %s covers them only after the run", shortText(c), c.coming.text)
@@ -61,7 +61,7 @@ func (m *matcher) decideCovered(c *coverage, limit float64) {
 	// doesn't make a need tight that stands exactly at the limit.
 	if n.ChanceShort-2*n.ChanceError > limit {
 		n.State = Tight
-		n.Because = fmt.Sprintf("covered by %s, but the chance of running short is %.2g %%, above the limit of %.2g %%", drawCodes(n.Draws), n.ChanceShort*100, limit*100)
+		n.Because = plainf("covered by %s, but the chance of running short is %.2g %%, above the limit of %.2g %%", drawCodes(n.Draws), n.ChanceShort*100, limit*100)
 	}
 }
 
@@ -141,7 +141,7 @@ func (m *matcher) decideShort(c *coverage, buys []Purchase) {
 // shortText is the amount that is short, for a sentence.
 func shortText(c *coverage) string {
 	if c.demand.count {
-		return fmt.Sprintf("%.3g pieces of %s", c.alloc.short, c.demand.name)
+		return plainf("%.3g pieces of %s", c.alloc.short, c.demand.name)
 	}
 	return massText(chem.Mass(c.alloc.short)) + " of " + c.demand.name
 }
@@ -150,12 +150,12 @@ func shortText(c *coverage) string {
 func massText(m chem.Mass) string {
 	switch g := m.Grams(); {
 	case g >= 1000:
-		return fmt.Sprintf("%.3g kg", g/1000)
+		return plainf("%.3g kg", g/1000)
 	case g >= 100:
 		return fmt.Sprintf("%.0f g", g)
 	case g < 0.1:
-		return fmt.Sprintf("%.3g mg", g*1000)
+		return plainf("%.3g mg", g*1000)
 	default:
-		return fmt.Sprintf("%.3g g", g)
+		return plainf("%.3g g", g)
 	}
 }

@@ -1,7 +1,6 @@
 package planner
 
 import (
-	"fmt"
 	"strings"
 
 	"stillroom/chem"
@@ -72,9 +71,9 @@ func (f *formMatch) unfitStrength(x *fit) (barKind, string) {
 	}
 	accept := f.demand.accept
 	if x.strength < accept.Least*(1-enough) {
-		why := fmt.Sprintf("too weak: %.3g %%; the recipe asks for at least %.3g %%", x.strength.Percent(), accept.Least.Percent())
+		why := plainf("too weak: %.3g %%; the recipe asks for at least %.3g %%", x.strength.Percent(), accept.Least.Percent())
 		if x.aged {
-			why += fmt.Sprintf(" (label %.3g %%, less what it loses until %s)", float64(f.form.AssayLow)*100, f.req.On.Short())
+			why += plainf(" (label %.3g %%, less what it loses until %s)", float64(f.form.AssayLow)*100, f.req.On.Short())
 		}
 		return barWeak, why
 	}
@@ -83,7 +82,7 @@ func (f *formMatch) unfitStrength(x *fit) (barKind, string) {
 			x.dilute = true
 			return "", ""
 		}
-		return barStrong, fmt.Sprintf("too strong: %.3g %%; the recipe asks for at most %.3g %%", x.strength.Percent(), accept.Most.Percent())
+		return barStrong, plainf("too strong: %.3g %%; the recipe asks for at most %.3g %%", x.strength.Percent(), accept.Most.Percent())
 	}
 	return "", ""
 }

@@ -386,7 +386,7 @@ func TestRefusals(t *testing.T) {
 		words       string
 	}{
 		{"empty vessel", "  - {do: cool, name: x, vessel: b, time: 1 min, to: 5 °C}\n", ErrEmptyVessel, 1, "b is empty"},
-		{"one layer", water + "  - {do: separate, name: x, vessel: a, time: 1 min, move: organic, to: b}\n", ErrOnePhase, 2, "one layer only: 1e+03 mL, aqueous"},
+		{"one layer", water + "  - {do: separate, name: x, vessel: a, time: 1 min, move: organic, to: b}\n", ErrOnePhase, 2, "one layer only: 1000 mL, aqueous"},
 		{"no solid", water + "  - {do: filter, name: x, vessel: a, time: 1 min, cake-holds: 1, to: b}\n", ErrOnePhase, 2, "no solid"},
 		{"already below", water + "  - {do: acidify, name: x, vessel: a, time: 1 min, to-pH: 9, acid: {substance: sulfuric acid, strength: 96 %}}\n", ErrPH, 2, ""},
 		{"wrong way", water + "  - {do: heat, name: x, vessel: a, time: 1 min, to: 5 °C}\n", ErrScale, 2, "at 20 °C already; use cool"},

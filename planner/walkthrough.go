@@ -92,7 +92,7 @@ func (r *reporter) finish(w *Workspace) *Walk {
 		a.Pieces *= w.batches
 		a.Index = i
 		if a.Hidden && a.Pure > 0 && !hasNumber(a.Why) {
-			a.Why = fmt.Sprintf("%s: %.3g g, %s", a.Why, a.Pure.Grams(), a.Rule)
+			a.Why = plainf("%s: %.3g g, %s", a.Why, a.Pure.Grams(), a.Rule)
 		}
 		if a.Pure == 0 && a.Pieces == 0 {
 			continue
@@ -222,7 +222,7 @@ func (w *Workspace) compare() error {
 		share := math.Abs(off[k]) / size[k]
 		w.balance = math.Max(w.balance, share)
 		if !(share <= balanceTolerance) {
-			return w.refuse(ErrUnbalanced, fmt.Sprintf("%s doesn't balance: off by %.3g of what went in", w.elementName(k), share), "mend the reactions of the step")
+			return w.refuse(ErrUnbalanced, plainf("%s doesn't balance: off by %.3g of what went in", w.elementName(k), share), "mend the reactions of the step")
 		}
 	}
 	return nil

@@ -136,7 +136,7 @@ func (r *reporter) tooSmall(u *use, owned []inventory.Equipment) Finding {
 		}
 	}
 	need := u.need
-	f.Text = fmt.Sprintf("%s holds %.3g L in step %d and needs a %s of %.3g L at a fill limit of %.0f %%", vessel.Name, u.most*1e3, u.step, vessel.Ware, need*1e3, 100*u.limit)
+	f.Text = plainf("%s holds %.3g L in step %d and needs a %s of %.3g L at a fill limit of %.0f %%", vessel.Name, u.most*1e3, u.step, vessel.Ware, need*1e3, 100*u.limit)
 	switch {
 	case largest == 0:
 		f.Would = fmt.Sprintf("the lab owns no %s", vessel.Ware)
@@ -144,7 +144,7 @@ func (r *reporter) tooSmall(u *use, owned []inventory.Equipment) Finding {
 		f.Would = fmt.Sprintf("all %ss that are large enough are in use at that step", vessel.Ware)
 	default:
 		n := r.walk.Batches * int(math.Ceil(need/largest))
-		f.Would = fmt.Sprintf("%d equal batches fit the %.3g L one; strips, filter papers, rinses and the time come with every batch", n, largest*1e3)
+		f.Would = plainf("%d equal batches fit the %.3g L one; strips, filter papers, rinses and the time come with every batch", n, largest*1e3)
 	}
 	return f
 }
@@ -173,12 +173,12 @@ func (r *reporter) describeWare(s *StepReport, vessel int, byVessel map[int]use,
 func deriveFill(s *StepReport, volume float64) chem.Derivation {
 	return chem.Derivation{
 		Of: "fill of " + s.Vessel.Name, Formula: "φ = V(contents) / V(nominal)",
-		Inserted: fmt.Sprintf("%.5g mL / %.5g mL = %.3g", volume*1e6, s.Vessel.Size.Millilitres(), float64(s.Vessel.Fill)),
+		Inserted: plainf("%.5g mL / %.5g mL = %.3g", volume*1e6, s.Vessel.Size.Millilitres(), float64(s.Vessel.Fill)),
 		Inputs: []chem.Input{
 			{Symbol: "V(contents)", Name: "all that is in it at the fullest moment of the step, but gas", Value: volume * 1e6, Unit: "mL", Source: "contents of the vessel"},
 			{Symbol: "V(nominal)", Name: s.Vessel.Ware, Value: s.Vessel.Size.Millilitres(), Unit: "mL", Source: "equipment of the lab, the smallest that keeps the limits from its first step to its last"},
 		},
-		Value: float64(s.Vessel.Fill), Range: fmt.Sprintf("limit %.3g", float64(s.Vessel.Limit)), Source: "fill limits: common practice",
+		Value: float64(s.Vessel.Fill), Range: plainf("limit %.3g", float64(s.Vessel.Limit)), Source: "fill limits: common practice",
 	}
 }
 
@@ -200,10 +200,10 @@ func (r *reporter) coolingOf(s *StepReport, w *Workspace) {
 	if s.Shortest, err = chem.ShortestDose(s.Heat, power); err != nil {
 		return
 	}
-	s.Says = append(s.Says, fmt.Sprintf("not faster than in %.0f min: %.3g kJ over %.3g W", math.Ceil(s.Shortest.Minutes()), s.Heat.Kilojoules(), float64(power)))
+	s.Says = append(s.Says, plainf("not faster than in %.0f min: %.3g kJ over %.3g W", math.Ceil(s.Shortest.Minutes()), s.Heat.Kilojoules(), float64(power)))
 	s.Derivations = append(s.Derivations, chem.Derivation{
 		Of: "shortest time of the addition", Formula: "t = q / (U · A · ΔT)",
-		Inserted: fmt.Sprintf("%.5g kJ / %.5g W = %.4g min", s.Heat.Kilojoules(), float64(power), s.Shortest.Minutes()),
+		Inserted: plainf("%.5g kJ / %.5g W = %.4g min", s.Heat.Kilojoules(), float64(power), s.Shortest.Minutes()),
 		Inputs: []chem.Input{
 			{Symbol: "q", Name: "heat given off", Value: s.Heat.Kilojoules(), Unit: "kJ", Source: "heat balance of the step"},
 			{Symbol: "U", Name: "heat transfer", Value: w.policy.heatU, Unit: "W/(m2 K)", Source: "policy heat.u"},

@@ -138,7 +138,7 @@ func (w *WasteLot) findCarboy(carboys []inventory.Carboy, fillLimit float64) {
 		w.say(clash + ": use a carboy of its own")
 		return
 	}
-	w.say(fmt.Sprintf("needs %.3g L, %s has room for %.3g L: ask for a pick-up or set up another carboy",
+	w.say(plainf("needs %.3g L, %s has room for %.3g L: ask for a pick-up or set up another carboy",
 		w.Volume.Litres(), nearest.Code, max(carboyRoom(nearest, fillLimit), 0).Litres()))
 }
 
