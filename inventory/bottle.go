@@ -88,6 +88,20 @@ func (s *Store) SetBottleState(ctx context.Context, code string, state BottleSta
 	})
 }
 
+// NextStates lists the states that SetBottleState may bring a bottle to as it
+// is now. A loan and a discard have calls of their own and aren't among them.
+func (b Bottle) NextStates() []BottleState {
+	var next []BottleState
+	for _, state := range bottleMoves[b.State] {
+		switch {
+		case state == OnLoan, state == Sealed && b.Opened.Set(), state == Empty && b.Content > 0:
+		default:
+			next = append(next, state)
+		}
+	}
+	return next
+}
+
 func mayMove(from, to BottleState) bool {
 	for _, state := range bottleMoves[from] {
 		if state == to {
@@ -185,10 +199,14 @@ func (s *Store) MoveBottle(ctx context.Context, code string, placeID int64, act 
 		if place.StoreID != b.StoreID {
 			return invalid(doing, "bottle "+b.Code, place.String()+" is in another store", "lend it instead")
 		}
+		from, err := placeByID(tx, doing, b.PlaceID)
+		if err != nil {
+			return err
+		}
 		if err := tx.Exec("UPDATE bottles SET place_id = ?, version = version + 1 WHERE id = ?", placeID, b.ID).Error; err != nil {
 			return err
 		}
-		return s.audit(tx, b.StoreID, act, doing, "bottle "+b.Code, fmt.Sprint("place ", b.PlaceID), place.String())
+		return s.audit(tx, b.StoreID, act, doing, "bottle "+b.Code, from.String(), place.String())
 	})
 }
 

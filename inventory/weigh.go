@@ -128,6 +128,22 @@ func (s *Store) weighIn(tx *gorm.DB, code string, ug int64, act Act) (e Entry, e
 	return e, remember(tx, b.StoreID, act, doing, print, e.ID, e.At)
 }
 
+// WeighedOut returns the weigh-out of a bottle that hasn't been weighed in yet,
+// if there is one.
+func (s *Store) WeighedOut(ctx context.Context, code string) (w Weighing, out bool, err error) {
+	const doing = "look up the weigh-out of"
+	err = s.read(ctx, doing, func(tx *gorm.DB) error {
+		b, err := bottleByCode(tx, doing, code)
+		if err != nil {
+			return err
+		}
+		found := tx.Where("bottle_id = ?", b.ID).Limit(1).Find(&w)
+		out = found.RowsAffected > 0
+		return found.Error
+	})
+	return w, out, err
+}
+
 // CancelWeighOut forgets a weigh-out after which nothing was taken.
 func (s *Store) CancelWeighOut(ctx context.Context, code string, act Act) error {
 	const doing = "cancel the weigh-out of"

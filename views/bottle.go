@@ -28,6 +28,13 @@ type bottlePage struct {
 	Earmarks  []earmarkRow
 	Ledger    []ledgerRow
 	Count     countForm
+	Life      []lifeRow
+	Out       *inventory.Weighing // a weigh-out that hasn't been weighed in
+	Cut       []inventory.Run     // whose promises were cut just now
+	Runs      []option            // that something may be taken for
+	Places    []inventory.Place
+
+	peroxideLimit float64 // ppm from which a bottle is barred; 0 for none set
 }
 
 // earmarkRow is a promise on the bottle's page.
@@ -42,7 +49,7 @@ type earmarkRow struct {
 // after it.
 type ledgerRow struct {
 	On, Kind, Change, After, Why, Who string
-	RunID                             int64
+	RunID, ID, Amount                 int64
 }
 
 // showBottle answers /shelf/bottles/:code.
@@ -71,7 +78,15 @@ func (s *Server) findBottle(c *gin.Context) (*bottlePage, error) {
 		return nil, err
 	}
 	p.Ledger = ledgerRows(entries, p.Form.Measure)
-	return p, nil
+	p.Cut = cutRuns(c.Query("cut"), shelf)
+	if p.Life, err = s.life(c.Request.Context(), b.Code); err != nil {
+		return nil, err
+	}
+	out, is, err := s.Lab.WeighedOut(c.Request.Context(), b.Code)
+	if is {
+		p.Out = &out
+	}
+	return p, err
 }
 
 // ledgerLines is how many of the last entries of the ledger a page shows.
@@ -85,7 +100,7 @@ func ledgerRows(entries []inventory.Entry, measure inventory.Measure) []ledgerRo
 			change = "+" + change
 		}
 		rows[i] = ledgerRow{On: inventory.DateOf(e.At.Time).Short(), Kind: string(e.Kind), Change: change,
-			After: stored(e.Content, measure), Why: e.Why, Who: e.ByWhom, RunID: e.RunID}
+			After: stored(e.Content, measure), Why: e.Why, Who: e.ByWhom, RunID: e.RunID, ID: e.ID, Amount: e.Amount}
 	}
 	return rows
 }
@@ -116,6 +131,8 @@ func (s *Server) bottlePage(shelf *inventory.Shelf, b inventory.Bottle) *bottleP
 		density := chem.Density(p.Form.DensityGML) * chem.GramPerMillilitre
 		p.Mass = massText(density.Mass(chem.Volume(b.Content) * chem.Microlitre))
 	}
+	p.Runs, p.Places = runOptions(shelf), shelf.Places
+	p.peroxideLimit, _ = shelf.Policy.Value("peroxide.limit")
 	p.Lapsed = b.Expiry.Set() && b.Expiry < today
 	for _, e := range shelf.EarmarksOn(b.ID) {
 		run, _ := shelf.Run(e.RunID)

@@ -33,13 +33,14 @@ func (s *Server) countBottle(c *gin.Context) error {
 		return err
 	}
 	p.Count = countForm{c.PostForm("amount"), c.PostForm("by"), strings.TrimSpace(c.PostForm("who"))}
-	amount := readContent(p.Count.Amount, p.Form, &p.Faults)
+	amount := readContent("amount", p.Count.Amount, p.Form, &p.Faults)
 	act := actOf(c, "counted", &p.Faults)
 	if len(p.Faults) > 0 {
 		return s.render(c, http.StatusUnprocessableEntity, "bottle", p)
 	}
 	count := inventory.Count{Bottle: p.Code, Content: amount, By: inventory.MeasuredBy(p.Count.By)}
-	if _, _, err := s.Lab.StockTake(c.Request.Context(), count, act); err != nil {
+	_, cut, err := s.Lab.StockTake(c.Request.Context(), count, act)
+	if err != nil {
 		wrong, ok := refusalFault(err)
 		if !ok {
 			return err
@@ -48,46 +49,55 @@ func (s *Server) countBottle(c *gin.Context) error {
 		p.Faults = append(p.Faults, wrong)
 		return s.render(c, refusalStatus(err), "bottle", p)
 	}
-	return s.goTo(c, "/shelf/bottles/"+p.Code)
+	return s.goTo(c, bottleAddress(p.Code)+cutQuery(cut))
 }
 
-// readContent reads an amount of a bottle. What is measured by volume may be
-// typed as a mass if its density is known, and the other way round.
-func readContent(text string, form inventory.StockForm, wrong *faults) int64 {
+// readContent reads an amount of a bottle out of a field. What is measured by
+// volume may be typed as a mass if its density is known, and the other way
+// round.
+func readContent(field, text string, form inventory.StockForm, wrong *faults) int64 {
 	text = strings.TrimSpace(text)
 	if text == "" {
-		wrong.add("amount", "Say how much is in it, with its unit, like 250 "+exampleUnit(form)+".")
+		wrong.add(field, "Say how much, with its unit, like 250 "+exampleUnit(form)+".")
 		return 0
+	}
+	if form.Measure == inventory.ByCount {
+		return readPieces(field, text, wrong)
 	}
 	density := chem.Density(form.DensityGML) * chem.GramPerMillilitre
 	mass, massErr := chem.ParseMass(text)
 	volume, volumeErr := chem.ParseVolume(text)
+	var units int64
+	var fits bool
 	switch {
-	case form.Measure == inventory.ByCount:
-		return readPieces(text, wrong)
 	case massErr != nil && volumeErr != nil:
 		if form.Measure == inventory.ByVolume {
 			massErr = volumeErr
 		}
-		wrong.add("amount", sentence(massErr.Error()))
+		wrong.add(field, sentence(massErr.Error()))
 		return 0
 	case form.Measure == inventory.ByMass && massErr == nil:
-		return int64(mass/chem.Microgram + 0.5)
+		units, fits = inventory.UnitsNear(mass)
 	case form.Measure == inventory.ByVolume && volumeErr == nil:
-		return int64(volume/chem.Microlitre + 0.5)
+		units, fits = inventory.UnitsNear(volume)
 	case density <= 0:
-		wrong.add("amount", "This bottle is counted in "+exampleUnit(form)+", and without a density (no data) nothing else can be converted.")
+		wrong.add(field, "This bottle is counted in "+exampleUnit(form)+", and without a density (no data) nothing else can be converted.")
 		return 0
 	case form.Measure == inventory.ByMass:
-		return int64(density.Mass(volume)/chem.Microgram + 0.5)
+		units, fits = inventory.UnitsNear(density.Mass(volume))
+	default:
+		units, fits = inventory.UnitsNear(density.Volume(mass))
 	}
-	return int64(density.Volume(mass)/chem.Microlitre + 0.5)
+	if !fits {
+		wrong.add(field, "“"+text+"” can’t be in a bottle: give nothing or more, like 250 "+exampleUnit(form)+".")
+	}
+	return units
 }
 
-func readPieces(text string, wrong *faults) int64 {
+func readPieces(field, text string, wrong *faults) int64 {
 	n, err := chem.ParseNumber(text)
-	if err != nil || n < 0 || n != float64(int64(n)) {
-		wrong.add("amount", "“"+text+"” is no whole number of pieces.")
+	if err != nil || n < 0 || n > 1e9 || n != float64(int64(n)) {
+		wrong.add(field, "“"+text+"” is no whole number of pieces.")
 		return 0
 	}
 	return int64(n)

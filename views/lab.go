@@ -26,5 +26,6 @@ type Lab interface {
 
 	EarmarkRun(ctx context.Context, run int64, wants []inventory.Want, act inventory.Act) ([]inventory.Earmark, error)
 	Release(ctx context.Context, run int64, act inventory.Act) error
+	shelfWork
 	StockTake(ctx context.Context, c inventory.Count, act inventory.Act) (inventory.Entry, []inventory.Promise, error)
 }

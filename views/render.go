@@ -26,7 +26,7 @@ type templateSets map[string]*template.Template
 // "main" that the layout places.
 func parseTemplates() (templateSets, error) {
 	base, err := template.New("layout").Funcs(templateFuncs).
-		ParseFS(templateFiles, "templates/layout.html", "templates/parts.html")
+		ParseFS(templateFiles, "templates/layout.html", "templates/parts*.html")
 	if err != nil {
 		return nil, fmt.Errorf("reading the layout: %w", err)
 	}
@@ -37,7 +37,7 @@ func parseTemplates() (templateSets, error) {
 	sets := templateSets{}
 	for _, e := range entries {
 		name := strings.TrimSuffix(e.Name(), ".html")
-		if name == "layout" || name == "parts" {
+		if name == "layout" || strings.HasPrefix(name, "parts") {
 			continue
 		}
 		set := template.Must(base.Clone())
@@ -59,6 +59,7 @@ type frame struct {
 	Section string // address of the part of the program it belongs to
 	Find    string // what stands in the search field
 	Faults  faults
+	sent    sentForm
 }
 
 func (f *frame) top() *frame { return f }
