@@ -103,7 +103,7 @@ func Contraction(cas string, t Temperature, portions ...Portion) (Volume, error)
 // where L is the heat that one mole still gives off on endless dilution.
 func BlendHeat(cas string, molarMass MolarMass, strong, weak Portion) (Energy, error) {
 	if !(molarMass > 0) {
-		return 0, noData("molar mass", cas, "give molar_mass=")
+		return 0, noData("molar mass", soluteName(cas), "give molar_mass=")
 	}
 	if strong.Strength < weak.Strength {
 		strong, weak = weak, strong
@@ -147,7 +147,7 @@ func DiluteWarm(cas string, molarMass MolarMass, stock, target Fraction, make Ma
 		return WarmDilution{}, err
 	}
 	if !(molarMass > 0) {
-		return WarmDilution{}, noData("molar mass", cas, "give molar_mass=")
+		return WarmDilution{}, noData("molar mass", soluteName(cas), "give molar_mass=")
 	}
 	heat, err := DilutionHeat(cas, molarMass.Of(d.Stock*Mass(stock)), stock, target)
 	if err != nil {

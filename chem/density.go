@@ -4,7 +4,6 @@ import (
 	"fmt"
 	"math"
 	"sort"
-	"strings"
 	"sync"
 )
 
@@ -106,7 +105,7 @@ func SolutionDensity(cas string, w Fraction, t Temperature) (Density, error) {
 	}
 	table := densityTables()[cas]
 	if table == nil {
-		return 0, noData("density", strings.TrimSpace("solutions of the solute "+cas), "give density=")
+		return 0, noData("density", "solutions of "+soluteName(cas)+" in water", "give density=")
 	}
 	if !Finite(t) {
 		return 0, fmt.Errorf("density of %s: temperature is no number", table.name)
@@ -121,6 +120,14 @@ func SolutionDensity(cas string, w Fraction, t Temperature) (Density, error) {
 		return Density(c.rho(float64(w))), nil
 	}
 	return 0, table.refuse(w, t)
+}
+
+// soluteName names a solute for a message, also one that has no number.
+func soluteName(cas string) string {
+	if cas == "" {
+		return "the solute"
+	}
+	return nameOfCAS(cas)
 }
 
 // SolutionDensitySource says where the density that SolutionDensity gives comes from:

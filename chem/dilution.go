@@ -128,7 +128,7 @@ func (d *dilutionTable) left(w Fraction) (float64, error) {
 func DilutionHeat(cas string, n Amount, from, to Fraction) (Energy, error) {
 	d := dilutionTables()[cas]
 	if d == nil {
-		return 0, noData("heat of dilution", cas, "measure it")
+		return 0, noData("heat of dilution", soluteName(cas), "measure it")
 	}
 	if err := errors.Join(checkFraction("strength before", from), checkFraction("strength after", to)); err != nil {
 		return 0, err

@@ -58,7 +58,7 @@ func DryingAgentOf(nameOrCAS string) (DryingAgent, error) {
 	}
 	if of, ok := hydrateOfAgent(nameOrCAS); ok {
 		return DryingAgent{}, &DataError{
-			Of: fmt.Sprintf("drying agent %q", nameOrCAS), Err: ErrImpossible,
+			Of: fmt.Sprintf("drying with %q", nameOrCAS), Err: ErrImpossible,
 			Limit: "it holds its water already", Remedy: "take anhydrous " + of.Name,
 		}
 	}

@@ -63,7 +63,7 @@ func SolutionHeatCapacity(cas string, w Fraction) (SpecificHeat, error) {
 	}
 	table := heatTables()[cas]
 	if table == nil {
-		return 0, noData("heat capacity", "solutions of "+cas, "give heat_capacity=")
+		return 0, noData("heat capacity", "solutions of "+soluteName(cas), "give heat_capacity=")
 	}
 	x := float64(w)
 	switch {

@@ -93,9 +93,13 @@ func (e *VapourEquation) log(t Temperature) (ln, slope float64) {
 // rangeStated says whether the equation has a range.
 func (e *VapourEquation) rangeStated() bool { return e.To > e.From }
 
+// rangeSlack is how far beyond its range an equation is still used: ends are often
+// given to a tenth of a kelvin, or by the triple point of water for its melting point.
+const rangeSlack = 0.05
+
 // holds says whether a temperature lies in the equation's range.
 func (e *VapourEquation) holds(t Temperature) bool {
-	return !e.rangeStated() || (t >= e.From && t <= e.To)
+	return !e.rangeStated() || (t >= e.From-rangeSlack && t <= e.To+rangeSlack)
 }
 
 // Range returns the validity range in words.

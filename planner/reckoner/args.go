@@ -33,7 +33,7 @@ func (a Args) Has(key string) bool { return strings.TrimSpace(a[key]) != "" }
 // Text returns the text of a key; without it a *KeyError.
 func (a Args) Text(key string) (string, error) {
 	if !a.Has(key) {
-		return "", missing(key, "…")
+		return "", missing(key, hintOf(key))
 	}
 	return strings.TrimSpace(a[key]), nil
 }

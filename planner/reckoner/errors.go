@@ -56,6 +56,20 @@ func (e *SumError) Error() string { return fmt.Sprintf("sum %q: %s; %s", e.Sum, 
 // Unwrap returns the kind.
 func (e *SumError) Unwrap() error { return e.Cause }
 
+// hints are examples for keys that a sum asks for only beside others.
+var hints = map[string]string{
+	"substance": "1-pentanol", "formula": "C5H12O", "pka": "4.83", "ph": "2", "heat_capacity": "3.0 J/(g K)", "mass": "1.5 kg",
+	"rise": "25 K", "solvent": "ethyl acetate", "density": "1.05 g/mL",
+}
+
+// hintOf gives an example of a key's value.
+func hintOf(key string) string {
+	if hint, ok := hints[key]; ok {
+		return hint
+	}
+	return "…"
+}
+
 func unknownSum(name string) error {
 	var names []string
 	for _, s := range Sums() {

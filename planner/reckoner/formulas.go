@@ -51,13 +51,13 @@ func runMolarMass(_ context.Context, args Args) (Answer, error) {
 // formulaOf reads the key formula, or takes the formula of the substance it names.
 func formulaOf(args Args) (chem.Formula, error) {
 	f, err := args.Formula("formula")
-	if err == nil {
+	if err == nil && (f.Weighable() == nil || f.Variable()) {
 		return f, nil
 	}
 	if s, ok := chem.LookupSubstance(args["formula"]); ok && s.Formula != "" {
 		return chem.ParseFormula(s.Formula)
 	}
-	return chem.Formula{}, err
+	return f, err
 }
 
 func balanceSum() Sum {

@@ -77,6 +77,10 @@ func runHeat(_ context.Context, args Args) (Answer, error) {
 func speciesTaken(r chem.ReactionHeat) []string {
 	var taken []string
 	for _, part := range r.Parts {
+		if part.Formation.State == "" {
+			taken = append(taken, part.Species+" as given")
+			continue
+		}
 		taken = append(taken, fmt.Sprintf("%s as %s (%s)", part.Species, part.Formation.Species, part.Formation.State))
 	}
 	return []string{"taken: " + strings.Join(taken, ", ")}
@@ -198,7 +202,7 @@ func runDose(_ context.Context, args Args) (Answer, error) {
 
 // coolingOf reads the cooling as a power, or as a power per kelvin times rise.
 func coolingOf(args Args) (power chem.Power, perKelvin bool, err error) {
-	text, perKelvin := strings.CutSuffix(strings.ReplaceAll(args["cooling"], " ", ""), "/K")
+	text, perKelvin := cutPerKelvin(args["cooling"])
 	if !perKelvin {
 		power, err = positive(args, "cooling", args.Power)
 		return power, false, err
@@ -214,6 +218,17 @@ func coolingOf(args Args) (power chem.Power, perKelvin bool, err error) {
 		return 0, true, &KeyError{Key: "cooling", Text: args["cooling"], What: "not above nought", Wanted: "give a positive value", Cause: chem.ErrOutOfRange}
 	}
 	return power * chem.Power(gap), true, nil
+}
+
+// cutPerKelvin takes "per kelvin" off a unit.
+func cutPerKelvin(text string) (string, bool) {
+	text = strings.ReplaceAll(text, " ", "")
+	for _, per := range []string{"/K", "/°C", "·K^-1", "K^-1", "K⁻¹"} {
+		if rest, ok := strings.CutSuffix(text, per); ok {
+			return rest, true
+		}
+	}
+	return text, false
 }
 
 // storedHeat takes off the heat what warms the contents by an allowed rise.

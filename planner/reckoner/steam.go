@@ -37,13 +37,14 @@ func runSteam(_ context.Context, args Args) (Answer, error) {
 	if err != nil {
 		return Answer{}, err
 	}
+	if err := l.mustNotMix(); err != nil {
+		return Answer{}, err
+	}
 	d, e, err := l.steam(molar, p)
 	if err != nil {
 		return Answer{}, err
 	}
-	if a, ok := chem.AzeotropeWithWater(l.cas); ok && (!a.Forms || !a.Heterogeneous) {
-		notes = append(notes, "mixes with water: these figures for two separate liquids don't hold; use the azeotrope or the relative volatility")
-	} else if ok {
+	if a, ok := chem.AzeotropeWithWater(l.cas); ok {
 		notes = append(notes, fmt.Sprintf("tabulated azeotrope: %.1f °C, %.3g g per g water (%s)", a.Temperature.Celsius(), float64(a.PartnerCarried(1)), a.Source))
 	}
 	s := steamSum()
@@ -58,6 +59,27 @@ func runSteam(_ context.Context, args Args) (Answer, error) {
 			Value: d.MassPerMassWater, Unit: "g per g water", Range: s.Range, Source: e.Source + "; " + s.Source,
 		},
 	}, nil
+}
+
+// waterCAS is the number of water.
+const waterCAS = "7732-18-5"
+
+// mustNotMix refuses liquids that mix with water: then there are no two vapour
+// pressures to add up. It says what their azeotrope is.
+func (l liquid) mustNotMix() error {
+	a, known := chem.AzeotropeWithWater(l.cas)
+	wanted := "use its azeotrope or relative volatility with water"
+	switch {
+	case l.cas == waterCAS:
+		return &KeyError{Key: "substance", Text: l.name, What: "it is the water", Wanted: "name the other liquid", Cause: chem.ErrImpossible}
+	case known && a.Forms && !a.Heterogeneous:
+		wanted = fmt.Sprintf("it boils with water at %.1f °C at %.4g kPa as %.4g %% w/w %s (%s)", a.Temperature.Celsius(), a.Pressure.Kilopascals(), a.PartnerFraction.Percent(), l.name, a.Source)
+	case known && !a.Forms:
+		wanted = "it has no azeotrope with water: rectify it, or use its relative volatility"
+	case known || !l.substance.Miscible():
+		return nil
+	}
+	return &KeyError{Key: "substance", Text: l.name, What: "it mixes with water, so that the pressures of two separate liquids don't add up", Wanted: wanted, Cause: chem.ErrImpossible}
 }
 
 func (l liquid) steam(molar chem.MolarMass, p chem.Pressure) (chem.SteamDistillation, chem.VapourEquation, error) {

@@ -15,8 +15,6 @@ const given = "given"
 var (
 	molarMassKey = Key{"molar_mass", "Molar mass, in place of the table's", "98.072 g/mol", true}
 	densityKey   = Key{"density", "Density, in place of the table's", "1.83 g/mL", true}
-	pkaKey       = Key{"pka", "Acid dissociation constants (pKa), in place of the table's", "4.76", true}
-	antoineKey   = Key{"antoine", "Antoine coefficients A;B;C for log10(p/mmHg) and °C, in place of the table's", "8.07131;1730.63;233.426", true}
 )
 
 // Substance reads a key as a substance of the table, by name, synonym, CAS number or
@@ -80,14 +78,19 @@ func (a Args) lookup(text string) (chem.Substance, bool) {
 
 func unknownSubstance(key, text string) error {
 	wanted := "check the spelling, give a CAS number or a formula, or give molar_mass= and density= yourself"
+	if meant := candidates(text); meant != "" {
+		wanted = "is it one of " + meant + "? Or " + wanted
+	}
+	return &KeyError{Key: key, Text: text, What: "no such substance in the table, or several", Wanted: wanted, Cause: ErrUnknownSubstance}
+}
+
+// candidates lists what a name may mean.
+func candidates(text string) string {
 	var names []string
 	for _, c := range chem.Candidates(text) {
 		names = append(names, c.Name)
 	}
-	if len(names) > 0 {
-		wanted = "is it one of " + strings.Join(names, ", ") + "? Or " + wanted
-	}
-	return &KeyError{Key: key, Text: text, What: "no such substance in the table, or several", Wanted: wanted, Cause: ErrUnknownSubstance}
+	return strings.Join(names, ", ")
 }
 
 // NeedMolarMass returns the molar mass of a substance, or an error that asks for it.
@@ -95,8 +98,11 @@ func NeedMolarMass(s chem.Substance) (chem.MolarMass, error) {
 	if s.MolarMass > 0 {
 		return s.MolarMass, nil
 	}
-	return 0, &KeyError{Key: "molar_mass", What: "no molar mass of " + s.Name + " in the table",
-		Wanted: fmt.Sprintf("give molar_mass=%q", molarMassKey.Hint), Cause: chem.ErrNoData}
+	wanted := fmt.Sprintf("give molar_mass=%q", molarMassKey.Hint)
+	if meant := candidates(s.Name); s.CAS == "" && meant != "" {
+		wanted += ", or is it one of " + meant + "?"
+	}
+	return 0, &KeyError{Key: "molar_mass", What: "no molar mass of " + s.Name + " in the table", Wanted: wanted, Cause: chem.ErrNoData}
 }
 
 // NeedDensity returns the density of a substance, or an error that asks for it.

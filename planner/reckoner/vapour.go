@@ -216,6 +216,9 @@ func runVapour(_ context.Context, args Args) (Answer, error) {
 		return Answer{}, err
 	}
 	p, e, err := l.pressure(t)
+	if b := l.substance.Boiling; err != nil && len(l.equations) == 0 && b != nil && math.Abs(float64(t-*b)) <= nearBoiling {
+		return l.pressureAtBoiling(), nil
+	}
 	if err != nil {
 		return Answer{}, err
 	}
@@ -229,6 +232,24 @@ func runVapour(_ context.Context, args Args) (Answer, error) {
 			Value:    p.Kilopascals(), Unit: "kPa", Range: e.Range(), Source: e.Source,
 		},
 	}, nil
+}
+
+// nearBoiling is how near the normal boiling point the pressure is the atmosphere's to
+// within some 2 %.
+const nearBoiling = 0.5 // K
+
+// pressureAtBoiling answers for a liquid without an equation at its normal boiling point.
+func (l liquid) pressureAtBoiling() Answer {
+	note := "no vapour-pressure equation: the pressure at the tabulated normal boiling point, " + figures(l.substance.Boiling.Celsius()) + " °C"
+	return Answer{
+		Results: []Result{Number("pressure", chem.Atmosphere.Kilopascals(), "kPa")},
+		Notes:   []string{note},
+		Derivation: chem.Derivation{
+			Of: "vapour pressure of " + l.name, Formula: "tabulated normal boiling point", Unit: "kPa",
+			Inserted: fmt.Sprintf("101.325 kPa at %.6g °C", l.substance.Boiling.Celsius()), Value: chem.Atmosphere.Kilopascals(),
+			Range: "within 0.5 K of it", Source: l.substance.Sources["boiling"],
+		},
+	}
 }
 
 // pressure returns the vapour pressure and the equation that gave it.
