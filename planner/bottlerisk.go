@@ -15,14 +15,23 @@ type bottleRisk struct {
 	content  quantity // ledger units
 	strength quantity // against the low end that was planned with
 	off      float64  // ledger units that aren't for this need
+	floor    float64  // what it gives at the least if it is found, in the unit of the need
 	doubtful bool     // weighing would tell more
 }
 
+// isMissing reports whether the bottle isn't found in draw i.
+func (b *bottleRisk) isMissing(i int) bool { return b.found.Uniform(i) < b.missing }
+
 // have is what the bottle gives in draw i, in the unit of the need.
 func (b *bottleRisk) have(i int) float64 {
-	if b.found.Uniform(i) < b.missing {
+	if b.isMissing(i) {
 		return 0
 	}
+	return b.holds(i)
+}
+
+// holds is the same of a bottle that is found.
+func (b *bottleRisk) holds(i int) float64 {
 	return max(0, b.content.at(i)-b.off) * b.strength.at(i) * b.fit.pure
 }
 
@@ -43,6 +52,7 @@ func (a *assessor) bottleRisk(x *fit, own float64) bottleRisk {
 	if x.top > x.strength && b.LotAssay == 0 && x.form.Measure != inventory.ByCount && !x.aged {
 		r.strength.flat, r.strength.most = true, float64(x.top/x.strength)
 	}
+	r.floor = r.least()
 	return r
 }
 

@@ -25,7 +25,8 @@ const (
 type matter struct {
 	name, cas string
 	formula   chem.Formula
-	text      string  // the formula as written
+	text      string  // the formula as its source has it
+	written   string  // the formula in our own spelling
 	molar     float64 // kg/mol
 	home      int     // phase it belongs to
 	miscible  bool    // with water in every proportion
@@ -146,6 +147,7 @@ func (m matter) finish() (matter, error) {
 		return m, fmt.Errorf("the formula of %s: %w", m.name, err)
 	}
 	m.formula = f.Anhydrous()
+	m.written = m.formula.String()
 	m.molar, m.charge = steady(float64(f.Anhydrous().MolarMass())), float64(f.Charge())
 	if !(m.molar > 0) {
 		return m, fmt.Errorf("%s has no molar mass", m.name)

@@ -66,7 +66,7 @@ func (c *compiler) doses(list []charge) ([]dose, error) {
 func (c *compiler) ask(component int, accept Accept, rule scaleRule, key string, exact bool) int {
 	m := &c.p.matter[component]
 	c.p.asks = append(c.p.asks, Ask{
-		Substance: m.name, CAS: m.cas, Formula: m.formula.String(), Step: c.step.N, StepName: c.step.Name,
+		Substance: m.name, CAS: m.cas, Formula: m.written, Step: c.step.N, StepName: c.step.Name,
 		Accept: accept, Rule: ruleWords[rule], Hidden: key != "", Key: key, Exact: exact,
 	})
 	return len(c.p.asks) - 1

@@ -129,6 +129,7 @@ func (c *compiler) caughtFactor() int {
 func (c *compiler) addYield() {
 	c.step = nil
 	d, err := c.r.Yield.Dist()
+	c.p.yield, c.p.yieldErr = d, err
 	c.p.yieldFactor = c.factor("isolated yield", float64(c.r.Yield.Mean), func(*policyTable) (chem.Dist, error) { return d, err })
 }
 

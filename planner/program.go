@@ -5,6 +5,8 @@ import (
 	"fmt"
 	"math"
 	"slices"
+
+	"stillroom/chem"
 )
 
 // Program is a recipe with every name looked up once, ready to be walked
@@ -32,6 +34,8 @@ type Program struct {
 	partition                [][]float64 // [solute][solvent]: c_org/c_aq of the neutral form; NaN for none
 	carbonic                 int
 	yieldFactor              int
+	yield                    chem.Dist // of the recipe's yield, unless yieldErr says why not
+	yieldErr                 error
 	salting                  []float64  // by component: salting-out constant in L/mol
 	mutual                   []mutualOf // by solvent
 	dilutions                []dilutionOf

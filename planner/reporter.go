@@ -104,7 +104,7 @@ func deriveCharge(w *Workspace, a *Ask, c, ask int, n, stock float64) chem.Deriv
 		Inserted: plainf("%.6g mol · %.6g g/mol / %.6g = %.6g g", n, m.molar*1e3, s.pure, stock*1e3),
 		Inputs: []chem.Input{
 			{Symbol: "n", Name: "amount, " + a.Rule, Value: n, Unit: "mol", Source: fmt.Sprintf("step %d of the recipe at this scale", a.Step)},
-			{Symbol: "M", Name: "molar mass of " + m.formula.String(), Value: m.molar * 1e3, Unit: "g/mol", Source: "standard atomic weights, IUPAC"},
+			{Symbol: "M", Name: "molar mass of " + m.written, Value: m.molar * 1e3, Unit: "g/mol", Source: "standard atomic weights, IUPAC"},
 			{Symbol: "w", Name: "mass fraction of pure, anhydrous substance in the stock", Value: s.pure, Source: source},
 		},
 		Value: stock * 1e3, Unit: "g", Source: "OpenStax Chemistry 2e, 4.3 and 4.4",
@@ -159,7 +159,7 @@ func (w *Workspace) contents(v int) []Content {
 			if n*m.molar <= unseen*all {
 				continue
 			}
-			content := Content{Substance: m.name, Formula: m.formula.String(), Phase: phaseNames[phase], Amount: chem.Amount(n), Mass: chem.Mass(n * m.molar)}
+			content := Content{Substance: m.name, Formula: m.written, Phase: phaseNames[phase], Amount: chem.Amount(n), Mass: chem.Mass(n * m.molar)}
 			if phase != gas {
 				content.Volume = chem.Volume(volumeBeside(m, n*m.molar, water, phase))
 			}

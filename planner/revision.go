@@ -4,6 +4,7 @@ import (
 	"crypto/sha256"
 	"fmt"
 	"hash"
+	"strconv"
 )
 
 // revisionOf is the fingerprint of what a chemist would act on: recipe, target,
@@ -60,12 +61,21 @@ func putStep(h hash.Hash, s *StepReport) {
 // put writes one record, each part with its length, so that no two plans write
 // the same text.
 func put(h hash.Hash, parts ...any) {
+	var line []byte
 	for _, part := range parts {
-		text := fmt.Sprint(part)
-		if f, ok := part.(float64); ok {
-			text = fmt.Sprintf("%.9g", f)
-		}
-		fmt.Fprintf(h, "%d:%s;", len(text), text)
+		text := recordText(part)
+		line = append(strconv.AppendInt(line, int64(len(text)), 10), ':')
+		line = append(append(line, text...), ';')
 	}
-	h.Write([]byte{'\n'})
+	h.Write(append(line, '\n'))
+}
+
+func recordText(part any) string {
+	switch x := part.(type) {
+	case string:
+		return x
+	case float64:
+		return strconv.FormatFloat(x, 'g', 9, 64)
+	}
+	return fmt.Sprint(part)
 }

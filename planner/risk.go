@@ -28,6 +28,7 @@ type needRisk struct {
 	bottles []bottleRisk
 	certain bool      // it suffices whatever happens, if the bottles drawn on are found
 	drawn   []float64 // draws of the need, where the walk-through was drawn
+	least   float64   // the need doesn't come to less in any draw
 	most    float64   // more than the need comes to in any draw
 	usual   float64   // more than it comes to if every charge keeps to what is usual
 	safe    float64   // of a single bottle: if its content's random number is above this, it suffices
@@ -172,17 +173,18 @@ func (a *assessor) waitFor(r *needRisk) {
 // usualShare is the share of the draws in which a charge keeps to what is usual.
 const usualShare = 0.999
 
-// bound finds the most the need can be and usually is, whether the bottles
+// bound finds the least and most the need can be and what it usually is, whether the bottles
 // drawn on suffice whatever the draw, as long as each is found, and for a single
 // bottle the random number above which its content is enough for what is usual,
 // so that most draws are decided by a few comparisons.
 func (r *needRisk) bound() {
-	r.most, r.usual, r.safe = 0, 0, 1
+	r.least, r.most, r.usual, r.safe = 0, 0, 0, 1
 	if r.drawn != nil {
-		r.most = slices.Max(r.drawn)
+		r.least, r.most = slices.Min(r.drawn), slices.Max(r.drawn)
 		r.usual = r.most
 	} else {
 		for k := range r.charges {
+			r.least += r.charges[k] * r.losses[k].extreme(false)
 			r.most += r.charges[k] * r.losses[k].extreme(true)
 			r.usual += r.charges[k] * r.losses[k].usual()
 		}
@@ -208,7 +210,7 @@ func (r *needRisk) shortAt(bottles []bottleRisk, i int) bool {
 	if r.safe < 1 && len(bottles) == 1 {
 		b := &bottles[0]
 		if b.content.stream.Uniform(i) > r.safe && r.usually(i) {
-			return b.found.Uniform(i) < b.missing
+			return b.isMissing(i)
 		}
 	}
 	if r.certain && allFound(bottles, i) {
@@ -221,9 +223,19 @@ func (r *needRisk) shortAt(bottles []bottleRisk, i int) bool {
 func (r *needRisk) shortOf(bottles []bottleRisk, i int) bool {
 	have := 0.0
 	for k := range bottles {
-		if have += bottles[k].have(i); have > r.most {
+		b := &bottles[k]
+		if b.isMissing(i) {
+			continue
+		}
+		if have+b.floor > r.most {
 			return false
 		}
+		if have += b.holds(i); have > r.most {
+			return false
+		}
+	}
+	if have < r.least {
+		return true
 	}
 	return (have <= r.usual || !r.usually(i)) && have < r.needAt(i)
 }
@@ -243,7 +255,7 @@ func (r *needRisk) usually(i int) bool {
 
 func allFound(bottles []bottleRisk, i int) bool {
 	for k := range bottles {
-		if bottles[k].found.Uniform(i) < bottles[k].missing {
+		if bottles[k].isMissing(i) {
 			return false
 		}
 	}
@@ -319,6 +331,7 @@ func (a *assessor) afterWeighing(r *needRisk, b, bad int, best float64) float64 
 	bottles[b].missing = 0 // what is weighed has been found
 	if bottles[b].doubtful {
 		bottles[b].content = a.weighed(&bottles[b])
+		bottles[b].floor = bottles[b].least()
 	}
 	onlyBetter := !bottles[b].doubtful || r.sureWith(bottles)
 	for i := range r.short {
@@ -341,7 +354,7 @@ func (a *assessor) afterWeighing(r *needRisk, b, bad int, best float64) float64 
 func (r *needRisk) sureWith(bottles []bottleRisk) bool {
 	least := 0.0
 	for k := range bottles {
-		least += bottles[k].least()
+		least += bottles[k].floor
 	}
 	return least > r.most
 }

@@ -39,11 +39,10 @@ func (p *Program) ScaleFor(target chem.Mass, certainty chem.Fraction, _ inventor
 	if !(certainty > 0 && certainty < 1) {
 		return Scale{}, &StepError{Recipe: p.Recipe.Name, What: fmt.Sprintf("a certainty of %v", float64(certainty)), Would: "give a share between 0 and 1, such as 90 %", Err: ErrScale}
 	}
-	yield, err := p.Recipe.Yield.Dist()
-	if err != nil {
-		return Scale{}, &StepError{Recipe: p.Recipe.Name, What: "the yield: " + err.Error(), Would: "give a mean and a spread that fit", Err: ErrScale}
+	if p.yieldErr != nil {
+		return Scale{}, &StepError{Recipe: p.Recipe.Name, What: "the yield: " + p.yieldErr.Error(), Would: "give a mean and a spread that fit", Err: ErrScale}
 	}
-	planned := yield.Quantile(1 - float64(certainty))
+	planned := p.yield.Quantile(1 - float64(certainty))
 	if !(planned > 0) {
 		return Scale{}, &StepError{Recipe: p.Recipe.Name, What: plainf("no yield is reached with %.3g %% certainty", certainty.Percent()), Would: "lower the certainty", Err: ErrScale}
 	}
@@ -67,7 +66,7 @@ func (p *Program) deriveScale(target chem.Mass, n, planned float64, certainty ch
 		Inserted: plainf("%.6g g / (%.6g g/mol · %.4g · %.4g) = %.6g mol", target.Grams(), m.molar*1e3, p.perLimiting, planned, n),
 		Inputs: []chem.Input{
 			{Symbol: "m(target)", Name: "mass of " + m.name + " wanted", Value: target.Grams(), Unit: "g", Source: "request"},
-			{Symbol: "M", Name: "molar mass of " + m.formula.String(), Value: m.molar * 1e3, Unit: "g/mol", Source: "standard atomic weights, IUPAC"},
+			{Symbol: "M", Name: "molar mass of " + m.written, Value: m.molar * 1e3, Unit: "g/mol", Source: "standard atomic weights, IUPAC"},
 			{Symbol: "ν", Name: "moles of product for one of limiting reagent", Value: p.perLimiting, Source: "reactions of the recipe"},
 			{Symbol: "Y", Name: plainf("yield reached with %.3g %% certainty (mean %.3g %%, standard deviation %.3g points, %s)", certainty.Percent(), p.Recipe.Yield.Mean.Percent(), p.Recipe.Yield.SD.Percent(), p.Recipe.Yield.Basis), Value: planned, Source: "recipe, percentile of the policy"},
 		},

@@ -12,7 +12,7 @@ import (
 // product sets the product's range and the chance of the target beside the
 // rest, from the yield's distribution itself: the mass is proportional to it.
 func (r *Risk) product(p Product, scale Scale, target chem.Mass) {
-	yield, err := p.Yield.Dist()
+	yield, err := p.yieldDist()
 	if err != nil || p.Amount <= 0 || p.PerLimiting <= 0 {
 		r.TargetMet = -1
 		return

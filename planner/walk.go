@@ -83,6 +83,16 @@ type Product struct {
 	Yield    Yield
 	// PerLimiting is the amount of product in theory per amount of limiting reagent.
 	PerLimiting float64
+
+	yield chem.Dist // of Yield; nil if it hasn't been worked out
+}
+
+// yieldDist returns the yield as a distribution.
+func (p *Product) yieldDist() (chem.Dist, error) {
+	if p.yield != nil {
+		return p.yield, nil
+	}
+	return p.Yield.Dist()
 }
 
 // Loss is product that isn't isolated, by the step that loses it.

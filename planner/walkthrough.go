@@ -129,9 +129,9 @@ func (d *Discard) times(x float64) {
 func (r *reporter) product(w *Workspace) Product {
 	m := &r.p.matter[r.p.product]
 	return Product{
-		Substance: m.name, CAS: m.cas, Formula: m.formula.String(),
+		Substance: m.name, CAS: m.cas, Formula: m.written,
 		Amount: chem.Amount(w.isolated * w.batches), Mass: chem.Mass(w.isolated * m.molar * w.batches),
-		Arriving: chem.Amount(w.arriving * w.batches), Yield: r.p.Recipe.Yield, PerLimiting: r.p.perLimiting,
+		Arriving: chem.Amount(w.arriving * w.batches), Yield: r.p.Recipe.Yield, PerLimiting: r.p.perLimiting, yield: r.p.yield,
 	}
 }
 
