@@ -14,24 +14,32 @@ import (
 // are apart, because each is a mixture by itself.
 func (m *mixtures) vesselNotes(s StepReport) []HazardNote {
 	var phases []string
-	byPhase := map[string][]Content{}
 	for _, c := range s.Contents {
-		if _, ok := byPhase[c.Phase]; !ok {
+		if !slices.Contains(phases, c.Phase) {
 			phases = append(phases, c.Phase)
 		}
-		byPhase[c.Phase] = append(byPhase[c.Phase], c)
 	}
 	var notes []HazardNote
 	for _, phase := range phases {
 		if phase == "gas" {
 			continue
 		}
-		if note, ok := m.note(s.Name, phaseName(phase, len(phases)), byPhase[phase], 0); ok {
+		if note, ok := m.note(s.Name, phaseName(phase, len(phases)), inPhase(s.Contents, phase), 0); ok {
 			note.Step = s.N
 			notes = append(notes, note)
 		}
 	}
 	return notes
+}
+
+func inPhase(contents []Content, phase string) []Content {
+	list := make([]Content, 0, len(contents))
+	for _, c := range contents {
+		if c.Phase == phase {
+			list = append(list, c)
+		}
+	}
+	return list
 }
 
 func phaseName(phase string, phases int) string {
@@ -50,6 +58,11 @@ type mixtures struct {
 	ingredients map[string]chem.Ingredient
 	records     map[string]*chem.Substance // by the name used; nil for none
 	seen        []seenMixture
+	labels      map[string]chem.Label // by the classes
+}
+
+func newMixtures() *mixtures {
+	return &mixtures{ingredients: map[string]chem.Ingredient{}, records: map[string]*chem.Substance{}, labels: map[string]chem.Label{}}
 }
 
 type seenMixture struct {
@@ -88,13 +101,32 @@ func (m *mixtures) classified(contents []Content, total chem.Mass, pH float64) H
 	got, err := chem.ClassifyMixtureWith(ingredients, chem.MixtureOptions{PH: pH, HasPH: pH != 0})
 	note := unknownNote("", "")
 	if err == nil {
-		note = noteOf("", ": "+shares(contents, total), got)
+		note = m.noteOf("", ": "+shares(contents, total), got)
 		if note.Signal == "" && got.Unknown.Percent() >= 1 { // below, it is in the notes; the standard counts from 1 % on
 			note.Basis = basisNoData + plainf(" (%.3g %% of it)", got.Unknown.Percent())
 		}
 	}
 	m.seen = append(m.seen, seenMixture{contents, pH, note})
 	return note
+}
+
+// labelOf is the label of classes. Mixtures differ from step to step more often
+// than their classes do.
+func (m *mixtures) labelOf(texts []string) chem.Label {
+	key := strings.Join(texts, "\x00")
+	if label, ok := m.labels[key]; ok {
+		return label
+	}
+	var classes []chem.HazardClass
+	for _, text := range texts {
+		if class, ok := chem.ParseHazardClass(text); ok {
+			classes = append(classes, class)
+		}
+	}
+	label := chem.LabelOf(classes)
+	label.Statements = slices.Clip(label.Statements) // notes add to them
+	m.labels[key] = label
+	return label
 }
 
 func (m *mixtures) record(name string) *chem.Substance {
@@ -139,20 +171,14 @@ func shares(contents []Content, total chem.Mass) string {
 
 // noteOf turns a classified mixture into a note, with its physical hazards as
 // those of the worst ingredient.
-func noteOf(at, what string, c chem.Classification) HazardNote {
+func (m *mixtures) noteOf(at, what string, c chem.Classification) HazardNote {
 	note := HazardNote{At: at, What: what, Classes: c.Classes, Signal: c.Signal, Pictograms: c.Pictograms, P: c.P,
 		Statements: c.Statements, Basis: basisCalculated, Limits: []string{noLimit}, Notes: c.Notes}
 	if len(c.Physical) == 0 {
 		return note
 	}
 	note.Classes = slices.Concat(c.Physical, c.Classes)
-	var classes []chem.HazardClass
-	for _, text := range note.Classes {
-		if class, ok := chem.ParseHazardClass(text); ok {
-			classes = append(classes, class)
-		}
-	}
-	label := chem.LabelOf(classes)
+	label := m.labelOf(note.Classes)
 	note.Signal, note.Pictograms, note.P, note.Statements = label.Signal, label.Pictograms, label.P, label.Statements
 	for _, s := range c.Statements { // supplemental ones
 		if strings.HasPrefix(s, "EUH") {

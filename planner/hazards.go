@@ -27,14 +27,15 @@ const (
 // each step, layer by layer, what is formed on the way, and the waste lots.
 // What has no record gets a note that says so.
 func NoteHazards(needs []Need, steps []StepReport, waste []WasteLot) []HazardNote {
-	m := &mixtures{ingredients: map[string]chem.Ingredient{}, records: map[string]*chem.Substance{}}
-	var notes []HazardNote
+	m := newMixtures()
+	notes := make([]HazardNote, 0, 2*(len(needs)+len(steps)+len(waste))) // two layers a step
+	m.seen = make([]seenMixture, 0, 2*(len(steps)+len(waste)))
 	stored := map[string]bool{}
 	for _, n := range needs {
 		if n.Count {
 			continue
 		}
-		for _, note := range storedNotes(n) {
+		for _, note := range m.storedNotes(n) {
 			if !slices.ContainsFunc(notes, func(had HazardNote) bool { return had.What == note.What }) {
 				notes = append(notes, note)
 			}
@@ -58,7 +59,7 @@ func NoteHazards(needs []Need, steps []StepReport, waste []WasteLot) []HazardNot
 
 // storedNotes speak of each stock form drawn; of the substance itself where
 // nothing is drawn.
-func storedNotes(n Need) []HazardNote {
+func (m *mixtures) storedNotes(n Need) []HazardNote {
 	if len(n.Draws) == 0 {
 		return []HazardNote{substanceNote(AsStored, n.Substance, n.CAS)}
 	}
@@ -69,7 +70,7 @@ func storedNotes(n Need) []HazardNote {
 			continue
 		}
 		seen[d.Form.Name] = true
-		note := formNote(n, d)
+		note := m.formNote(n, d)
 		note.What = d.Form.Name
 		notes = append(notes, note)
 	}
@@ -78,7 +79,7 @@ func storedNotes(n Need) []HazardNote {
 
 // HazardOf is the note of what is in a bottle, at the high end of its strength.
 func HazardOf(s inventory.Substance, f inventory.StockForm, b inventory.Bottle) HazardNote {
-	note := formNote(Need{Substance: s.Name, CAS: s.CAS}, Draw{Form: f, Bottle: b})
+	note := newMixtures().formNote(Need{Substance: s.Name, CAS: s.CAS}, Draw{Form: f, Bottle: b})
 	note.What = f.Name
 	return note
 }
@@ -86,7 +87,7 @@ func HazardOf(s inventory.Substance, f inventory.StockForm, b inventory.Bottle) 
 // formNote classifies a stock form at the high end of its strength, which is the
 // end for hazards. A solution in water is a mixture; the impurity of a reagent
 // that nobody named is not.
-func formNote(n Need, d Draw) HazardNote {
+func (m *mixtures) formNote(n Need, d Draw) HazardNote {
 	strength := chem.Fraction(max(d.Form.AssayHigh, d.Bottle.LotAssay))
 	if !strings.EqualFold(d.Form.Diluent, "water") || strength <= 0 || strength >= 1 {
 		return substanceNote(AsStored, hydrateName(n, d), n.CAS)
@@ -100,7 +101,7 @@ func formNote(n Need, d Draw) HazardNote {
 	if err != nil || solute == nil {
 		return unknownNote(AsStored, d.Form.Name)
 	}
-	note := noteOf(AsStored, d.Form.Name, got)
+	note := m.noteOf(AsStored, d.Form.Name, got)
 	note.Limits = limits(solute)
 	if solute.Hazard.Unverified {
 		note.Basis = basisUnverified

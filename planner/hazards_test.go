@@ -146,3 +146,12 @@ func TestSortWasteClash(t *testing.T) {
 		t.Errorf("lot %+v, want it kept out of the carboy with nitric acid", lots[0])
 	}
 }
+
+// BenchmarkNoteHazards is the hazard notes of the longest recipe's plan.
+func BenchmarkNoteHazards(b *testing.B) {
+	plan := demoPlan(b, "pentanoic-acid-dichromate", 50, 44)
+	b.ReportAllocs()
+	for b.Loop() {
+		NoteHazards(plan.Needs, plan.Steps, plan.Waste)
+	}
+}
