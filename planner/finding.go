@@ -37,6 +37,7 @@ const (
 //	no-carriers          the bottles could not be put into carriers
 //	no-room-for-waste    no carboy takes a waste lot
 //	not-a-working-day    nobody is at the bench on the day of the run
+//	hold-too-long        the run would stand at a hold point for longer than the recipe allows
 //	past-the-day         steps that have to be done in one go end after the working day
 //	no-working-day       the policy's working day can't be read
 //	policy-row-missing   a row of the policy table was taken from the delivered table
