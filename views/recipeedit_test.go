@@ -180,7 +180,7 @@ func TestSavingAVersion(t *testing.T) {
 	if words := text(one(t, kept, "p.sub")); strings.Contains(words, "Revised") {
 		t.Errorf("the run changed with the recipe: %s", words)
 	}
-	if words := text(one(t, kept, "main")); !strings.Contains(words, "Planned by version " + original.Version + " of the recipe, which it keeps; the latest is version revised.") {
+	if words := text(one(t, kept, "main")); !strings.Contains(words, "Planned by version "+original.Version+" of the recipe, which it keeps; the latest is version revised.") {
 		t.Error("the run doesn't say that its recipe has a later version")
 	}
 	if w := get(t, s, dichromate+"?saved=0"); w.Code != 200 || !strings.Contains(text(parse(t, w)), "earlier version") {
