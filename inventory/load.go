@@ -2,6 +2,9 @@ package inventory
 
 import (
 	"context"
+	"slices"
+	"strings"
+	"sync"
 
 	"gorm.io/gorm"
 )
@@ -66,27 +69,77 @@ func (s *Store) load(ctx context.Context) (*Shelf, error) {
 }
 
 // LoadFor is Load with the bottles of only some substances, by name, synonym or
-// registry number; everything else is whole. Substances that may be put in
-// another's place have to be named too. A site with a million bottles plans with it.
+// registry number, without those that are empty or discarded; everything else
+// is whole. Substances that may be put in another's place have to be named too.
+// A site with a million bottles plans with it. As long as nothing was written,
+// the same names give the same shelf.
 func (s *Store) LoadFor(ctx context.Context, substances []string) (*Shelf, error) {
+	const doing = "load a part of the shelf"
+	version, known, err := s.version(ctx)
+	if err != nil {
+		return nil, translate(doing, err)
+	}
+	names := slices.Compact(slices.Sorted(slices.Values(substances)))
+	if shelf, ok := s.parts.get(version, names); known && ok {
+		return shelf, nil
+	}
+	shelf, err := s.loadFor(ctx, doing, names)
+	if err == nil && known {
+		s.parts.put(version, names, shelf)
+	}
+	return shelf, err
+}
+
+func (s *Store) loadFor(ctx context.Context, doing string, names []string) (*Shelf, error) {
 	var lab Lab
-	err := s.read(ctx, "load the shelf", func(tx *gorm.DB) error {
+	err := s.read(ctx, doing, func(tx *gorm.DB) error {
 		if err := loadRest(tx, &lab); err != nil {
 			return err
 		}
-		ids := formsNamed(lab, substances)
+		if err := tx.Find(&lab.Earmarks).Error; err != nil {
+			return err
+		}
+		ids := formsNamed(lab, names)
 		if len(ids) == 0 {
 			return nil
 		}
-		if err := tx.Where("form_id IN ? AND state NOT IN ?", ids, []BottleState{Discarded, Empty}).Find(&lab.Bottles).Error; err != nil {
-			return err
-		}
-		return tx.Where("bottle_id IN (SELECT id FROM bottles WHERE form_id IN ?)", ids).Find(&lab.Earmarks).Error
+		return tx.Where("form_id IN ? AND state NOT IN ?", ids, []BottleState{Discarded, Empty}).Order("form_id, code").Find(&lab.Bottles).Error
 	})
 	if err != nil {
 		return nil, err
 	}
 	return shelfOf(lab), nil
+}
+
+// loadedParts are the parts of the shelf loaded since the last write, by the
+// names of their substances.
+type loadedParts struct {
+	mu      sync.Mutex
+	version int64
+	shelves map[string]*Shelf
+}
+
+// mostParts bounds the parts kept: the slate's, and those of a few recipes that
+// aren't on it.
+const mostParts = 4
+
+func (p *loadedParts) get(version int64, names []string) (*Shelf, bool) {
+	p.mu.Lock()
+	defer p.mu.Unlock()
+	if p.version != version {
+		return nil, false
+	}
+	shelf, ok := p.shelves[strings.Join(names, "\n")]
+	return shelf, ok
+}
+
+func (p *loadedParts) put(version int64, names []string, shelf *Shelf) {
+	p.mu.Lock()
+	defer p.mu.Unlock()
+	if p.version != version || len(p.shelves) >= mostParts || p.shelves == nil {
+		p.version, p.shelves = version, map[string]*Shelf{}
+	}
+	p.shelves[strings.Join(names, "\n")] = shelf
 }
 
 // loadRest reads all lists but those that grow with the bottles.

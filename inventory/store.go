@@ -46,6 +46,7 @@ type Store struct {
 	names   atomic.Pointer[catalogue]
 	watcher *sql.DB // one connection that never writes; nil but for SQLite files
 	loaded  atomic.Pointer[loadedShelf]
+	parts   loadedParts
 }
 
 type engine int
