@@ -6,49 +6,54 @@ import (
 	"gorm.io/gorm"
 )
 
-// LoadBottle reads one bottle by its code, typed or scanned, with what hangs on
-// it: its form, substance and place, its earmarks and their runs. The shelf has
-// nothing else. The error is ErrNotFound or a *CodeError where there is no such
-// bottle.
+// LoadBottle reads one bottle by its code, typed or scanned, with what its page
+// needs: its form, substance and earmarks, the runs to come and those of its
+// earmarks, without their recipes' texts, all places and the policy. The shelf
+// has nothing else. The error is ErrNotFound or ErrBadCode where there is no
+// such bottle.
 func (s *Store) LoadBottle(ctx context.Context, code string) (b Bottle, shelf *Shelf, err error) {
 	const doing = "look up"
+	names, err := s.catalogue(ctx)
+	if err != nil {
+		return b, nil, err
+	}
 	err = s.read(ctx, doing, func(tx *gorm.DB) error {
 		if b, err = bottleByCode(tx, doing, code); err != nil {
 			return err
 		}
-		shelf, err = shelfAround(tx, []Bottle{b})
-		return err
+		lab := Lab{Bottles: []Bottle{b}, Places: names.places}
+		if err := lab.loadAround(tx); err != nil {
+			return err
+		}
+		over := []RunState{Closed, Dropped}
+		of := idsOf(lab.Earmarks, func(e *Earmark) int64 { return e.RunID })
+		var policy []PolicyRow
+		if err := tx.Find(&policy).Error; err != nil {
+			return err
+		}
+		lab.Policy = PolicyOf(policy)
+		if err := tx.Omit("recipe_text").Where("state NOT IN ? OR id IN ?", over, of).Find(&lab.Runs).Error; err != nil {
+			return err
+		}
+		shelf = NewShelf(lab)
+		return nil
 	})
 	return b, shelf, err
 }
 
-// shelfAround reads what a few bottles hang on and what hangs on them.
-func shelfAround(tx *gorm.DB, bottles []Bottle) (*Shelf, error) {
-	lab := Lab{Bottles: bottles}
-	if len(bottles) == 0 {
-		return NewShelf(lab), nil
+// loadAround reads the forms and substances of a few bottles and the earmarks
+// on them.
+func (lab *Lab) loadAround(tx *gorm.DB) error {
+	if len(lab.Bottles) == 0 {
+		return nil
 	}
-	bottleIDs := idsOf(bottles, func(b *Bottle) int64 { return b.ID })
-	for _, list := range []struct {
-		rows  any
-		where string
-		ids   func() []int64
-	}{
-		{&lab.Forms, "id IN ?", func() []int64 { return idsOf(bottles, func(b *Bottle) int64 { return b.FormID }) }},
-		{&lab.Substances, "id IN ?", func() []int64 { return idsOf(lab.Forms, func(f *StockForm) int64 { return f.SubstanceID }) }},
-		{&lab.Places, "id IN ?", func() []int64 { return idsOf(bottles, func(b *Bottle) int64 { return b.PlaceID }) }},
-		{&lab.Earmarks, "bottle_id IN ?", func() []int64 { return bottleIDs }},
-		{&lab.Runs, "id IN ?", func() []int64 { return idsOf(lab.Earmarks, func(e *Earmark) int64 { return e.RunID }) }},
-	} {
-		ids := list.ids()
-		if len(ids) == 0 {
-			continue
-		}
-		if err := tx.Where(list.where, ids).Find(list.rows).Error; err != nil {
-			return nil, err
-		}
+	if err := tx.Where("bottle_id IN ?", idsOf(lab.Bottles, func(b *Bottle) int64 { return b.ID })).Find(&lab.Earmarks).Error; err != nil {
+		return err
 	}
-	return NewShelf(lab), nil
+	if err := tx.Where("id IN ?", idsOf(lab.Bottles, func(b *Bottle) int64 { return b.FormID })).Find(&lab.Forms).Error; err != nil {
+		return err
+	}
+	return tx.Where("id IN ?", idsOf(lab.Forms, func(f *StockForm) int64 { return f.SubstanceID })).Find(&lab.Substances).Error
 }
 
 func idsOf[R any](rows []R, id func(*R) int64) (ids []int64) {

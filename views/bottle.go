@@ -1,6 +1,7 @@
 package views
 
 import (
+	"errors"
 	"html/template"
 	"net/http"
 
@@ -63,14 +64,12 @@ func (s *Server) showBottle(c *gin.Context) error {
 
 // findBottle makes the page of the bottle an address names.
 func (s *Server) findBottle(c *gin.Context) (*bottlePage, error) {
-	shelf, err := s.Lab.Load(c.Request.Context())
+	b, shelf, err := s.Lab.LoadBottle(c.Request.Context(), c.Param("code"))
+	if errors.Is(err, inventory.ErrNotFound) || errors.Is(err, inventory.ErrBadCode) {
+		return nil, &missing{"bottle", c.Param("code"), "Look for it by the name of what is in it, with the field at the top. " + wrongCode(err)}
+	}
 	if err != nil {
 		return nil, err
-	}
-	code, err := inventory.NormalCode(c.Param("code"))
-	b, ok := shelf.BottleByCode(code)
-	if err != nil || !ok {
-		return nil, &missing{"bottle", c.Param("code"), "Look for it by the name of what is in it, with the field at the top. " + wrongCode(err)}
 	}
 	p := s.bottlePage(shelf, b)
 	entries, err := s.Lab.Ledger(c.Request.Context(), b.Code, ledgerLines)
@@ -106,7 +105,7 @@ func ledgerRows(entries []inventory.Entry, measure inventory.Measure) []ledgerRo
 }
 
 func wrongCode(err error) string {
-	if err == nil {
+	if errors.Is(err, inventory.ErrNotFound) {
 		return "The code reads well, but no bottle has it."
 	}
 	return sentence(err.Error())

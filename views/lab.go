@@ -9,6 +9,8 @@ import (
 // Lab is what the pages ask of the stock records; *inventory.Store is one.
 type Lab interface {
 	Load(ctx context.Context) (*inventory.Shelf, error)
+	LoadFor(ctx context.Context, substances []string) (*inventory.Shelf, error)
+	LoadBottle(ctx context.Context, code string) (inventory.Bottle, *inventory.Shelf, error)
 	Search(ctx context.Context, query string) (inventory.Found, error)
 	Ledger(ctx context.Context, code string, limit int) ([]inventory.Entry, error)
 

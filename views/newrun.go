@@ -73,7 +73,7 @@ func (s *Server) addRun(c *gin.Context) error {
 }
 
 func (s *Server) tryPlan(ctx context.Context, recipe *planner.Recipe, ask askForm) error {
-	shelf, err := s.Lab.Load(ctx)
+	shelf, err := s.shelfFor(ctx, recipe)
 	if err != nil {
 		return err
 	}

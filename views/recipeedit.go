@@ -158,7 +158,7 @@ func (s *Server) showEditor(c *gin.Context, status int, p *editPage) error {
 // check finds what is wrong with the text by itself and among the other
 // recipes.
 func (s *Server) check(c *gin.Context, p *editPage) error {
-	shelf, err := s.Lab.Load(c.Request.Context())
+	shelf, err := s.Lab.LoadFor(c.Request.Context(), nil)
 	if err != nil {
 		return err
 	}

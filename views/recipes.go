@@ -42,7 +42,7 @@ func (s *Server) showRecipes(c *gin.Context) error {
 	if err != nil {
 		return err
 	}
-	shelf, err := s.Lab.Load(c.Request.Context())
+	shelf, err := s.Lab.LoadFor(c.Request.Context(), nil)
 	if err != nil {
 		return err
 	}
@@ -83,7 +83,7 @@ func (s *Server) showRecipe(c *gin.Context) error {
 	if shown.recipe == nil {
 		return s.goTo(c, "/recipes/"+versions.name+"/edit?saved="+shown.Address())
 	}
-	shelf, err := s.Lab.Load(c.Request.Context())
+	shelf, err := s.Lab.LoadFor(c.Request.Context(), nil)
 	if err != nil {
 		return err
 	}

@@ -252,7 +252,7 @@ func (p *runPage) refused(err error) error {
 
 // findRun reads the run and the recipe it was planned with.
 func (s *Server) findRun(c *gin.Context) (*inventory.Shelf, inventory.Run, *planner.Recipe, error) {
-	shelf, err := s.Lab.Load(c.Request.Context())
+	shelf, err := s.Lab.LoadFor(c.Request.Context(), nil)
 	if err != nil {
 		return nil, inventory.Run{}, nil, err
 	}
@@ -262,6 +262,10 @@ func (s *Server) findRun(c *gin.Context) (*inventory.Shelf, inventory.Run, *plan
 		return nil, run, nil, &missing{"run", c.Param("id"), "The runs to come are on the slate."}
 	}
 	recipe, err := s.recipeOf(c.Request.Context(), run)
+	if err != nil {
+		return nil, run, nil, err
+	}
+	shelf, err = s.shelfFor(c.Request.Context(), recipe)
 	return shelf, run, recipe, err
 }
 

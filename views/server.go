@@ -158,7 +158,7 @@ func redirectTo(address string) gin.HandlerFunc {
 func (s *Server) health(c *gin.Context) error {
 	ctx, cancel := context.WithTimeout(c.Request.Context(), 5*time.Second)
 	defer cancel()
-	if _, err := s.Lab.Load(ctx); err != nil {
+	if _, err := s.Lab.LoadFor(ctx, nil); err != nil {
 		s.Log.Error("health", "cause", err)
 		c.String(http.StatusServiceUnavailable, "the stock can't be read\n")
 		return nil

@@ -50,7 +50,7 @@ func (s *Server) showSlate(c *gin.Context) error {
 // the earlier ones leave it. A run whose recipe can't be read is among them with
 // the reason.
 func (s *Server) slate(c *gin.Context) (*inventory.Shelf, []planner.SlateLine, error) {
-	shelf, err := s.Lab.Load(c.Request.Context())
+	shelf, err := s.shelfFor(c.Request.Context(), nil)
 	if err != nil {
 		return nil, nil, err
 	}
