@@ -207,10 +207,14 @@ func (l *laddering) relaxed() func(*Ask) {
 	}
 }
 
+// mostParts is into how many runs it is worth splitting one of which only the
+// first can be made.
+const mostParts = 4
+
 // split looks for the fewest equal parts of which the first can be made from
 // the shelf.
 func (l *laddering) split() (Rung, bool) {
-	for k := 2; k <= mostBatches; k++ {
+	for k := 2; k <= mostParts; k++ {
 		target := l.req.Target / chem.Mass(k)
 		text := fmt.Sprintf("split into %d runs of %s: the shelf suffices for the first", k, massText(target))
 		if r, ok := l.rung("split", text, func(p *planning) { p.req.Target = target }); ok && r.Works {

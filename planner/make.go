@@ -75,40 +75,6 @@ func (p *planning) plan() (*Plan, error) {
 	return p.write()
 }
 
-// fitAndMatch chooses the batches with the stock as the recipe asks for it, and
-// looks again once it is known what is drawn: a weaker stock fills more.
-func (p *planning) fitAndMatch() error {
-	for p.batches = max(1, p.req.Batches); ; p.batches++ {
-		if err := p.chooseBatches(); err != nil {
-			return err
-		}
-		if err := p.matchAndWalk(); err != nil {
-			return err
-		}
-		tooBig, big := findingOf(p.walk, noVesselFits)
-		if !big {
-			p.saySplit()
-			return nil
-		}
-		if p.req.Batches > 0 || p.batches >= mostBatches {
-			return p.noVessel(tooBig)
-		}
-		p.tooBig = tooBig
-	}
-}
-
-// saySplit says why a run that wasn't asked for in batches is planned in some.
-func (p *planning) saySplit() {
-	if p.batches == max(1, p.req.Batches) {
-		return
-	}
-	p.found = append(p.found, Finding{
-		Kind: "split", Severity: Warning, Step: p.tooBig.Step,
-		Text:  fmt.Sprintf("planned as %d equal batches; with one fewer, %s", p.batches, p.tooBig.Text),
-		Would: firstOf(p.tooBig.Would, "a larger vessel would take it in fewer"),
-	})
-}
-
 func (p *planning) chooseScale() error {
 	certainty := p.req.Certainty
 	if certainty == 0 {
@@ -125,80 +91,6 @@ func (p *planning) conditions() Conditions {
 		Limiting: p.scale.Amount, Batches: p.batches, Stocks: p.stocks, Off: p.req.Off,
 		Equipment: p.shelf.Equipment, Policy: p.shelf.Policy,
 	}
-}
-
-// mostBatches is how far a run is split by itself; beyond it somebody has to
-// ask for more batches or a smaller target.
-const mostBatches = 4
-
-// noVesselFits is the kind of finding that says that a step needs ware the lab
-// doesn't own.
-const noVesselFits = "no-vessel-fits"
-
-// chooseBatches takes the number asked for, or the fewest from p.batches on that
-// the ware can hold.
-func (p *planning) chooseBatches() error {
-	for ; ; p.batches++ {
-		walk, err := p.program.Walk(p.conditions())
-		if err != nil {
-			return err
-		}
-		tooBig, big := findingOf(walk, noVesselFits)
-		if !big {
-			p.walk = walk
-			return nil
-		}
-		if p.req.Batches > 0 || p.batches >= mostBatches {
-			return p.noVessel(tooBig)
-		}
-		p.tooBig = tooBig
-	}
-}
-
-func findingOf(walk *Walk, kind string) (Finding, bool) {
-	for _, f := range walk.Findings {
-		if f.Kind == kind {
-			return f, true
-		}
-	}
-	return Finding{}, false
-}
-
-// noVessel refuses a target that the lab's ware can't hold, and says what it
-// could.
-func (p *planning) noVessel(f Finding) error {
-	e := &RequestError{Field: "target", Got: massText(p.req.Target), What: "no vessel fits: " + f.Text, Would: f.Would, Err: ErrNoVessel}
-	if most := p.largestThatFits(); most > 0 {
-		e.Would = fmt.Sprintf("at most %s fits in one batch, and %d are planned at the most without being asked for", massText(most), mostBatches)
-		if p.req.Batches > 0 {
-			e.Would = fmt.Sprintf("at most %s fits in %d batches", massText(most), p.req.Batches)
-		}
-	}
-	return e
-}
-
-// largestThatFits halves the interval between nothing and the target.
-func (p *planning) largestThatFits() chem.Mass {
-	fits := func(share float64) bool {
-		in := p.conditions()
-		in.Limiting *= chem.Amount(share)
-		in.Batches = max(1, p.req.Batches)
-		walk, err := p.program.Walk(in)
-		if err != nil {
-			return false
-		}
-		_, big := findingOf(walk, noVesselFits)
-		return !big
-	}
-	low, high := 0.0, 1.0
-	for range int(p.policy.value("slate.steps")) {
-		if mid := (low + high) / 2; fits(mid) {
-			low = mid
-		} else {
-			high = mid
-		}
-	}
-	return p.req.Target * chem.Mass(low)
 }
 
 // matchAndWalk matches and allocates, and repeats the walk-through with the

@@ -320,8 +320,8 @@ func TestPlanNoVessel(t *testing.T) {
 		t.Fatalf("error %v, want no vessel", err)
 	}
 	// One litre takes one mole, which is 61.3 g of product at the yield planned.
-	if !strings.Contains(err.Error(), "61.3 g") {
-		t.Errorf("error %q doesn't name the 61.3 g that fit", err)
+	if !strings.Contains(err.Error(), "at most 61.3 g fits in one batch; ask for 17 batches or for less product") {
+		t.Errorf("error %q doesn't name the 61.3 g that fit and the 17 batches of 1000 g", err)
 	}
 }
 

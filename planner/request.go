@@ -48,6 +48,9 @@ const (
 	mostTarget  = 1e6 * chem.Kilogram
 )
 
+// mostAsked bounds the batches that can be asked for.
+const mostAsked = 1000
+
 // check refuses what no plan can be made of, before anything is computed.
 func (r *Request) check() error {
 	switch {
@@ -64,8 +67,8 @@ func (r *Request) check() error {
 	case r.On < r.Today:
 		return &RequestError{Field: "on", Got: r.On.String(), What: "lies in the past; today is " + r.Today.String(),
 			Would: "give today or a later day", Err: ErrDate}
-	case r.Batches < 0 || r.Batches > 1000:
-		return &RequestError{Field: "batches", Got: fmt.Sprint(r.Batches), What: "must be from 1 to 1000", Would: "leave it out to have it worked out", Err: ErrBatches}
+	case r.Batches < 0 || r.Batches > mostAsked:
+		return &RequestError{Field: "batches", Got: fmt.Sprint(r.Batches), What: fmt.Sprintf("must be from 1 to %d", mostAsked), Would: "leave it out to have it worked out", Err: ErrBatches}
 	case r.Certainty < 0 || r.Certainty >= 1 || !chem.Finite(r.Certainty):
 		return &RequestError{Field: "certainty", Got: fmt.Sprintf("%g %%", r.Certainty.Percent()), What: "must be above 0 and below 100 %",
 			Would: "leave it out to take the policy's", Err: ErrTarget}

@@ -143,7 +143,7 @@ func (r *reporter) tooSmall(u *use, owned []inventory.Equipment) Finding {
 	case largest >= need:
 		f.Would = fmt.Sprintf("all %ss that are large enough are in use at that step", vessel.Ware)
 	default:
-		n := r.walk.Batches * int(math.Ceil(need/largest))
+		n := int(math.Ceil(float64(r.walk.Batches) * need / largest))
 		f.Would = plainf("%d equal batches fit the %.3g L one; strips, filter papers, rinses and the time come with every batch", n, largest*1e3)
 	}
 	return f
