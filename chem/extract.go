@@ -40,17 +40,22 @@ func ExtractFloor(d float64, aq, total Volume) Fraction {
 	return Fraction(math.Exp(-d * float64(total/aq)))
 }
 
+// checkRecovery refuses what no extraction to a recovery can be.
+func checkRecovery(of string, d float64, aq, org Volume, recovery Fraction) error {
+	return firstError(
+		mustBePositive(of, "distribution ratio", d),
+		mustBePositive(of, "aqueous volume", aq),
+		mustBePositive(of, "organic volume", org),
+		mustBeShare(of, "recovery", recovery, false),
+	)
+}
+
 // PortionsFor returns the smallest number of portions, each of volume org,
 // that recovers a share of the solute. It refuses a recovery of one or more,
 // and a distribution ratio that would need more than 1000 portions.
 func PortionsFor(d float64, aq, org Volume, recovery Fraction) (int, error) {
 	of := "number of portions"
-	if err := firstError(
-		mustBePositive(of, "distribution ratio", d),
-		mustBePositive(of, "aqueous volume", aq),
-		mustBePositive(of, "organic volume", org),
-		mustBeShare(of, "recovery", recovery, false),
-	); err != nil {
+	if err := checkRecovery(of, d, aq, org, recovery); err != nil {
 		return 0, err
 	}
 	// a recovery that a whole number of portions meets exactly must not be
@@ -149,12 +154,7 @@ func CounterCurrentLeft(d float64, aq, org Volume, stages int) Fraction {
 // recovers more than E, and the error names that limit.
 func CounterCurrentStages(d float64, aq, org Volume, recovery Fraction) (int, error) {
 	of := "number of counter-current stages"
-	if err := firstError(
-		mustBePositive(of, "distribution ratio", d),
-		mustBePositive(of, "aqueous volume", aq),
-		mustBePositive(of, "organic volume", org),
-		mustBeShare(of, "recovery", recovery, false),
-	); err != nil {
+	if err := checkRecovery(of, d, aq, org, recovery); err != nil {
 		return 0, err
 	}
 	for n := range mostPortions + 1 {

@@ -25,11 +25,6 @@ func withATE(in Ingredient, route string, value float64) Ingredient {
 	return in
 }
 
-func withSCL(in Ingredient, scl string) Ingredient {
-	in.Hazard.SCL = scl
-	return in
-}
-
 // tableIngredient takes the classification from the embedded hazard table.
 func tableIngredient(t *testing.T, id string, percent float64) Ingredient {
 	t.Helper()

@@ -1,9 +1,7 @@
 package chem
 
 import (
-	"encoding/csv"
 	"math"
-	"os"
 	"strconv"
 	"strings"
 	"testing"
@@ -22,27 +20,11 @@ type workedRow struct {
 // solutionRows reads the rows of the methods c, c', d and i.
 func solutionRows(t *testing.T) []workedRow {
 	t.Helper()
-	file, err := os.Open("../testdata/worked_examples.csv")
-	if err != nil {
-		t.Fatal(err)
-	}
-	defer file.Close()
-	records, err := csv.NewReader(file).ReadAll()
-	if err != nil {
-		t.Fatal(err)
-	}
 	var rows []workedRow
-	for _, f := range records[1:] {
-		switch f[1] {
-		case "c_concentration", "c_dilution_heat", "d_acid_base", "i_green":
-		default:
-			continue
-		}
-		r := workedRow{t: t, id: f[0], unit: f[4], source: f[6], inputs: map[string]string{}, expected: f[3]}
-		r.tolerance, _ = strconv.ParseFloat(f[5], 64)
-		for _, item := range strings.Split(f[2], ";") {
-			key, value, _ := strings.Cut(strings.TrimSpace(item), "=")
-			r.inputs[key] = value
+	for _, e := range workedExamples(t, "c_concentration", "c_dilution_heat", "d_acid_base", "i_green") {
+		r := workedRow{t: t, id: e.id, unit: e.unit, source: e.source, inputs: map[string]string{}, expected: e.expected, tolerance: e.tolerance}
+		for _, item := range e.items {
+			r.inputs[item.key] = item.value
 		}
 		rows = append(rows, r)
 	}

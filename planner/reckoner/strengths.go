@@ -120,15 +120,10 @@ func diluteSum() Sum {
 }
 
 func runDilute(_ context.Context, args Args) (Answer, error) {
-	s, err := namedSubstance(args, "substance")
+	s, solute, notes, err := soluteToMix(args)
 	if err != nil {
 		return Answer{}, err
 	}
-	t, notes, err := temperatureOr20(args)
-	if err != nil {
-		return Answer{}, err
-	}
-	solute := soluteOf(s, t)
 	if byVolume, ok := dilutedByVolume(args); ok && !args.Has("density") {
 		if _, err := strengthAt(args, "from", "density", solute); errors.Is(err, chem.ErrNoData) {
 			return byVolume, nil
@@ -156,6 +151,16 @@ func runDilute(_ context.Context, args Args) (Answer, error) {
 	answer.Results = append(answer.Results, Number("water_mass", d.Water.Grams(), "g"))
 	answer.addDilutionHeat(solute, from, to, make)
 	return answer, nil
+}
+
+// soluteToMix reads the substance and the temperature of a dilution or a blend.
+func soluteToMix(args Args) (chem.Substance, chem.Solute, []string, error) {
+	s, err := namedSubstance(args, "substance")
+	if err != nil {
+		return s, chem.Solute{}, nil, err
+	}
+	t, notes, err := temperatureOr20(args)
+	return s, soluteOf(s, t), notes, err
 }
 
 // dilutedByVolume dilutes by volume alone, for solutions without any density: both
@@ -243,15 +248,10 @@ func blendSum() Sum {
 }
 
 func runBlend(_ context.Context, args Args) (Answer, error) {
-	s, err := namedSubstance(args, "substance")
+	s, solute, notes, err := soluteToMix(args)
 	if err != nil {
 		return Answer{}, err
 	}
-	t, notes, err := temperatureOr20(args)
-	if err != nil {
-		return Answer{}, err
-	}
-	solute := soluteOf(s, t)
 	var w [3]chem.Fraction
 	for i, key := range []string{"strong", "weak", "to"} {
 		if w[i], err = strengthAt(args, key, key+"_density", solute); err != nil {
