@@ -50,7 +50,7 @@ func (h *hazardSheet) minimise() {
 
 // prepare has waste, people and signatures.
 func (h *hazardSheet) prepare() {
-	h.heading("Prepare: waste", 35)
+	h.heading("Prepare: waste", 20)
 	if len(h.plan.Waste) == 0 {
 		h.paragraph("", textLeft, h.right-textLeft, "No waste computed: not assessed.")
 	}

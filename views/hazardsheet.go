@@ -38,7 +38,7 @@ func (h *hazardSheet) caution() {
 
 // recognise lists the substances and the pairs.
 func (h *hazardSheet) recognise() {
-	h.heading("Recognise: substances used", 55)
+	h.heading("Recognise: substances used", 42)
 	h.notes(func(n planner.HazardNote) bool { return n.At == planner.AsStored && !n.Formed })
 	formed := func(n planner.HazardNote) bool { return n.Formed }
 	if slices.ContainsFunc(h.plan.Hazards, formed) {

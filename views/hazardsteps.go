@@ -155,7 +155,7 @@ func (h *hazardSheet) discards(steps []planner.StepReport) {
 	if len(steps) == 0 {
 		return
 	}
-	h.room(4 * lineHeight)
+	h.room(float64(min(len(steps)+1, 15)) * lineHeight) // on one page, if it isn't long
 	h.put(family, "B", textSize, textLeft, h.y, "Where it goes: steps that only discard, see “Prepare: waste”")
 	h.y += lineHeight
 	what, vessel := textLeft, textLeft+44
