@@ -47,11 +47,15 @@ func refusedBeside(t *testing.T, s *Server, status int, field, says, address str
 	if got := text(one(t, doc, "#"+field+"-fault")); !strings.Contains(got, says) {
 		t.Errorf("POST %s %q: beside %s stands %q, want %q in it", address, fields, field, got, says)
 	}
+	typed := map[string]string{}
 	for i := 0; i+1 < len(fields); i += 2 {
-		form, _, _ := strings.Cut(field, "-")
-		for _, n := range all(doc, "input#"+form+"-"+fields[i]) {
-			if kept, _ := attribute(n, "value"); kept != fields[i+1] && fields[i] != "sure" {
-				t.Errorf("POST %s: %s came back as %q, want %q", address, fields[i], kept, fields[i+1])
+		typed[fields[i]] = fields[i+1]
+	}
+	form, _, _ := strings.Cut(field, "-")
+	for name, value := range typed {
+		for _, n := range all(doc, "input#"+form+"-"+name) {
+			if kept, _ := attribute(n, "value"); kept != value && name != "sure" {
+				t.Errorf("POST %s: %s came back as %q, want %q", address, name, kept, value)
 			}
 		}
 	}

@@ -174,6 +174,19 @@ func TestRoutes(t *testing.T) {
 		{"/shelf.json", 200, ""},
 		{"/shelf/import", 200, "Bring in a stock list"},
 		{"/shelf/bottles/NOSUCH", 404, "No bottle “NOSUCH”"},
+		{"/shelf/receive", 200, "Take bottles in"},
+		{"/shelf/receive?what=acid", 200, "Take bottles in"},
+		{"/shelf/receive?what=nothing+of+that+name", 200, "Take bottles in"},
+		{"/shelf/receive?form=1", 200, "Take bottles in"},
+		{"/shelf/receive?form=x", 404, "No stock form “x”"},
+		{"/shelf/receive?order=1", 200, "Take bottles in"},
+		{"/shelf/receive?order=3", 404, "No order under way “3”"},
+		{"/shelf/stock-take", 200, "Stock-take"},
+		{"/shelf/stock-take?by=walk&who=Ines", 200, "Stock-take"},
+		{"/shelf/stock-take?scan=BOGUS", 422, "Stock-take"},
+		{"/shelf/stock-take?scan=BG9SH1", 303, ""},
+		{"/shelf/stock-take/NOSUCH", 404, "No bottle “NOSUCH”"},
+		{"/waste/NOSUCH", 404, "No carboy “NOSUCH”"},
 		{"/recipes", 200, "Recipes"},
 		{"/recipes/pentanoic-acid-dichromate", 200, "Pentanoic acid from 1-pentanol with acid dichromate"},
 		{"/recipes/pentanoic-acid-dichromate/edit", 200, "Change pentanoic-acid-dichromate"},
@@ -246,7 +259,7 @@ func (s *Server) firstBottle(t testing.TB) string {
 func TestPagesAreWellFormed(t *testing.T) {
 	s := newSampleServer(t)
 	for _, address := range []string{"/slate", "/runs/new", "/runs/1", "/runs/1?wanted=x", "/runs/1/promise", "/runs/1/hazards", "/runs/1/answers", "/runs/1/steps/1", "/runs/1/explain/need-2",
-		"/shelf", "/shelf?find=zzzz", "/shelf/import", "/shelf/bottles/" + s.firstBottle(t), "/recipes", "/recipes/pentanoic-acid-dichromate", "/recipes/pentanoic-acid-dichromate/edit", "/recipes/pentanoic-acid-dichromate/difference", "/recipes/new", "/runs/1/chance",
+		"/shelf", "/shelf/receive", "/shelf/receive?what=acid", "/shelf/receive?order=1", "/shelf/receive?form=1", "/shelf/stock-take", "/shelf/stock-take?scan=BOGUS", "/shelf/stock-take/" + s.firstBottle(t), "/waste/" + inventory.MakeCode(inventory.CarboyCode, 2), "/shelf?find=zzzz", "/shelf/import", "/shelf/bottles/" + s.firstBottle(t), "/recipes", "/recipes/pentanoic-acid-dichromate", "/recipes/pentanoic-acid-dichromate/edit", "/recipes/pentanoic-acid-dichromate/difference", "/recipes/new", "/runs/1/chance",
 		"/shortfalls", "/buying", "/waste", "/reckoner", "/reckoner/amount?mass=50+g", "/reckoner/amount?mass=x", "/nowhere"} {
 		doc := parse(t, get(t, s, address))
 		if lang, _ := attribute(one(t, doc, "html"), "lang"); lang != "en" {

@@ -11,6 +11,8 @@ import (
 	"testing"
 
 	"github.com/chromedp/chromedp"
+
+	"stillroom/inventory"
 )
 
 // TestRunInBrowser does what a chemist does: opens a run, asks for more than
@@ -64,7 +66,8 @@ var pages = []string{"/slate", "/runs/new", "/runs/1", "/runs/1/answers", "/runs
 	"/runs/1/steps/4", "/runs/1/chance", "/runs/1/hazards", "/shelf/import", "/shelf/bottles/BG9SH1",
 	"/shelf", "/shelf?find=acid", "/recipes", "/recipes/pentanoic-acid-dichromate", "/recipes/pentanoic-acid-dichromate/edit",
 	"/recipes/pentanoic-acid-dichromate/difference", "/recipes/new", "/shortfalls", "/buying", "/waste",
-	"/reckoner", "/reckoner/dilute", "/nowhere", "/shelf?find=zzzz"}
+	"/shelf/receive", "/shelf/receive?what=acid", "/shelf/receive?order=1", "/shelf/stock-take", "/shelf/stock-take?scan=BOGUS", "/shelf/stock-take/BG9SH1",
+	"/waste/" + inventory.MakeCode(inventory.CarboyCode, 2), "/reckoner", "/reckoner/dilute", "/nowhere", "/shelf?find=zzzz"}
 
 // TestPagesAreAccessible runs axe over every page, wide and narrow, light and
 // dark: WCAG 2.2 A and AA and its best practices.
