@@ -59,7 +59,7 @@ func (f *fields) faultAt(n ast.Node, what, expected string) {
 }
 
 func (f *fields) fault(at *token.Position, what, expected string) {
-	f.errs.Faults = append(f.errs.Faults, RecipeFault{f.file, at.Line, at.Column, what, expected})
+	f.errs.Faults = append(f.errs.Faults, RecipeFault{f.file, at.Line, at.Column, shortened(what), expected})
 }
 
 // node returns the value of key; a missing one that is needed is a fault.

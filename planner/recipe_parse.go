@@ -242,5 +242,16 @@ func checkSubstanceNotes(r *Recipe, errs *RecipeErrors) {
 }
 
 func (e *RecipeErrors) add(at place, what, expected string) {
-	e.Faults = append(e.Faults, RecipeFault{at.file, at.line, at.column, what, expected})
+	e.Faults = append(e.Faults, RecipeFault{at.file, at.line, at.column, shortened(what), expected})
+}
+
+// longestFault bounds what a fault quotes, so that a file that is no recipe at
+// all doesn't come back whole as its own error message.
+const longestFault = 240
+
+func shortened(what string) string {
+	if letters := []rune(what); len(letters) > longestFault {
+		return string(letters[:longestFault]) + " …"
+	}
+	return what
 }

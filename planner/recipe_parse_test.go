@@ -184,3 +184,17 @@ func FuzzParseRecipe(f *testing.F) {
 		}
 	})
 }
+
+// A file that is no recipe doesn't come back whole in its own error message.
+func TestFaultsAreShort(t *testing.T) {
+	_, err := ParseRecipe("noise.yaml", []byte(strings.Repeat("noise ", 5000)))
+	var faults *RecipeErrors
+	if !errors.As(err, &faults) {
+		t.Fatalf("ParseRecipe of noise = %v, want *RecipeErrors", err)
+	}
+	for _, f := range faults.Faults {
+		if n := len(f.Error()); n > 2*longestFault {
+			t.Errorf("a fault of %d bytes, want at most %d: %.80s…", n, 2*longestFault, f)
+		}
+	}
+}
