@@ -252,7 +252,7 @@ func BenchmarkBottlePage(b *testing.B) {
 	ctx := context.Background()
 	code := MakeCode(BottleCode, int64(*benchBottles/2))
 	for b.Loop() {
-		if _, err := s.Bottle(ctx, code); err != nil {
+		if _, _, err := s.LoadBottle(ctx, code); err != nil {
 			b.Fatal(err)
 		}
 		if _, err := s.Ledger(ctx, code, 50); err != nil {
@@ -325,5 +325,26 @@ func BenchmarkCheck(b *testing.B) {
 	}
 	for b.Loop() {
 		growth(b, check(small), check(large))
+	}
+}
+
+// BenchmarkBrowse reads a page of the shelf in the usual order, once after a
+// write and again without one, and by date, which looks at every bottle.
+func BenchmarkBrowse(b *testing.B) {
+	s := stocked(b, *benchBottles)
+	ctx := context.Background()
+	browse := func(q Browse) float64 {
+		from := time.Now()
+		page, err := s.Browse(ctx, q)
+		if err != nil || len(page.Bottles) != 50 {
+			b.Fatal(len(page.Bottles), err)
+		}
+		return float64(time.Since(from).Microseconds()) / 1000
+	}
+	for b.Loop() {
+		s.counted.Store(nil)
+		b.ReportMetric(browse(Browse{Page: 2, Rows: 50}), "counting-ms")
+		b.ReportMetric(browse(Browse{Page: 2, Rows: 50}), "again-ms")
+		b.ReportMetric(browse(Browse{Sort: "expiry", Rows: 50}), "by-date-ms")
 	}
 }

@@ -17,6 +17,7 @@ type catalogue struct {
 	substances []Substance
 	entries    []catalogueEntry
 	formsOf    map[int64][]int64
+	forms      []StockForm // of which ID, substance, name, registry number and storage class are read
 	places     []Place
 	placeNames []string
 }
@@ -50,9 +51,8 @@ func (s *Store) catalogue(ctx context.Context) (*catalogue, error) {
 }
 
 func (c *catalogue) load(tx *gorm.DB) error {
-	var forms []StockForm
 	for _, err := range []error{tx.Order("id").Find(&c.substances).Error, tx.Order("walk, id").Find(&c.places).Error,
-		tx.Select("id", "substance_id", "name", "cas").Order("id").Find(&forms).Error} {
+		tx.Select("id", "substance_id", "name", "cas", "storage_class").Order("id").Find(&c.forms).Error} {
 		if err != nil {
 			return err
 		}
@@ -73,7 +73,7 @@ func (c *catalogue) load(tx *gorm.DB) error {
 		add(i, 3, s.Formula)
 	}
 	c.formsOf = make(map[int64][]int64, len(c.substances))
-	for _, f := range forms {
+	for _, f := range c.forms {
 		c.formsOf[f.SubstanceID] = append(c.formsOf[f.SubstanceID], f.ID)
 		if i, ok := at[f.SubstanceID]; ok {
 			add(i, 2, f.Name, f.CAS)

@@ -47,6 +47,7 @@ type Store struct {
 	watcher *sql.DB // one connection that never writes; nil but for SQLite files
 	loaded  atomic.Pointer[loadedShelf]
 	parts   loadedParts
+	counted atomic.Pointer[census]
 }
 
 type engine int

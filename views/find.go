@@ -1,6 +1,7 @@
 package views
 
 import (
+	"slices"
 	"strings"
 	"unicode"
 
@@ -9,40 +10,12 @@ import (
 	"stillroom/inventory"
 )
 
-// answering tells which bottles of the shelf answer what was looked for. Substances
-// and places stand for all their bottles.
-type answering struct {
-	all     bool // nothing was looked for
-	bottles map[int64]bool
-	forms   map[int64]bool
-	places  map[int64]bool
-	// nearly says that the name looked for occurs nowhere as it was typed.
-	nearly bool
-}
-
-func newAnswering(find string, found inventory.Found, shelf *inventory.Shelf) answering {
-	a := answering{all: find == "", bottles: map[int64]bool{}, forms: map[int64]bool{}, places: map[int64]bool{}}
-	for _, b := range found.Bottles {
-		a.bottles[b.ID] = true
-	}
-	for _, p := range found.Places {
-		a.places[p.ID] = true
-	}
+// spelledNearly reports that a name looked for occurs nowhere as it was typed,
+// and that what was found is spelt nearly so.
+func spelledNearly(find string, found inventory.Found) bool {
 	words := foldedWords(find)
-	a.nearly = len(found.Substances) > 0 && len(found.Places) == 0
-	for _, substance := range found.Substances {
-		for _, f := range shelf.FormsOf(substance.ID) {
-			a.forms[f.ID] = true
-		}
-		if isCalled(substance, words) {
-			a.nearly = false
-		}
-	}
-	return a
-}
-
-func (a answering) has(b *inventory.Bottle) bool {
-	return a.all || a.bottles[b.ID] || a.forms[b.FormID] || a.places[b.PlaceID]
+	return len(found.Substances) > 0 && len(found.Places) == 0 &&
+		!slices.ContainsFunc(found.Substances, func(s inventory.Substance) bool { return isCalled(s, words) })
 }
 
 // isCalled reports whether every word occurs in what a substance is called.

@@ -11,6 +11,7 @@ type Lab interface {
 	Load(ctx context.Context) (*inventory.Shelf, error)
 	LoadFor(ctx context.Context, substances []string) (*inventory.Shelf, error)
 	LoadBottle(ctx context.Context, code string) (inventory.Bottle, *inventory.Shelf, error)
+	Browse(ctx context.Context, q inventory.Browse) (inventory.Browsed, error)
 	Search(ctx context.Context, query string) (inventory.Found, error)
 	Ledger(ctx context.Context, code string, limit int) ([]inventory.Entry, error)
 

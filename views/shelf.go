@@ -1,7 +1,6 @@
 package views
 
 import (
-	"cmp"
 	"html/template"
 	"net/http"
 	"net/url"
@@ -63,41 +62,9 @@ type shelfColumn struct {
 	Number               bool
 }
 
-// shelfEntry is a bottle with what the page sorts and filters by; the rest is
-// looked up for the rows of one page only.
-type shelfEntry struct {
-	bottle    *inventory.Bottle
-	substance string
-	place     *inventory.Place
-}
-
-// shelfOrders are the ways to sort, by their names in the address.
-var shelfOrders = map[string]func(a, b shelfEntry) int{
-	"substance": func(a, b shelfEntry) int { return cmp.Compare(a.substance, b.substance) },
-	"bottle":    func(a, b shelfEntry) int { return cmp.Compare(a.bottle.Code, b.bottle.Code) },
-	"place": func(a, b shelfEntry) int {
-		return cmp.Or(cmp.Compare(a.place.Walk, b.place.Walk), cmp.Compare(a.place.ID, b.place.ID))
-	},
-	"expiry": func(a, b shelfEntry) int {
-		return cmp.Compare(lastIfNone(a.bottle.Expiry), lastIfNone(b.bottle.Expiry))
-	},
-	"state": func(a, b shelfEntry) int { return cmp.Compare(a.bottle.State, b.bottle.State) },
-}
-
-func lastIfNone(d inventory.Date) inventory.Date {
-	if !d.Set() {
-		return 1 << 30
-	}
-	return d
-}
-
 // showShelf answers /shelf. A bottle's code, typed or scanned, leads straight to
 // the bottle.
 func (s *Server) showShelf(c *gin.Context) error {
-	shelf, err := s.Lab.Load(c.Request.Context())
-	if err != nil {
-		return err
-	}
 	q := readShelfQuery(c.Request.URL.Query())
 	found, err := s.Lab.Search(c.Request.Context(), q.Find)
 	if err != nil {
@@ -106,7 +73,13 @@ func (s *Server) showShelf(c *gin.Context) error {
 	if found.Bottle != nil {
 		return s.goTo(c, "/shelf/bottles/"+found.Bottle.Code)
 	}
-	return s.render(c, http.StatusOK, "shelf", s.shelfPage(shelf, q, newAnswering(q.Find, found, shelf)))
+	part, err := s.Lab.Browse(c.Request.Context(), q.browse(&found))
+	if err != nil {
+		return err
+	}
+	p := s.shelfPage(part, q)
+	p.Near = q.Find != "" && spelledNearly(q.Find, found)
+	return s.render(c, http.StatusOK, "shelf", p)
 }
 
 // goTo sends the browser to another page; htmx has to be told by a header of
@@ -124,8 +97,8 @@ func (s *Server) goTo(c *gin.Context, address string) error {
 func readShelfQuery(v url.Values) shelfQuery {
 	q := shelfQuery{Find: strings.TrimSpace(v.Get("find")), Store: v.Get("store"), Class: v.Get("class"), State: v.Get("state"),
 		Sort: v.Get("sort"), Down: v.Get("down") == "1", Page: 1}
-	if _, ok := shelfOrders[q.Sort]; !ok {
-		q.Sort = "substance"
+	if !slices.Contains(inventory.BrowseOrders, q.Sort) {
+		q.Sort = inventory.BrowseOrders[0]
 	}
 	if n, err := strconv.Atoi(v.Get("page")); err == nil && n > 1 {
 		q.Page = n
@@ -156,47 +129,41 @@ func (q shelfQuery) address() string {
 	return "/shelf?" + v.Encode()
 }
 
-func (s *Server) shelfPage(shelf *inventory.Shelf, q shelfQuery, answers answering) *shelfPage {
-	p := &shelfPage{Query: q, Bottles: len(shelf.Bottles), Near: answers.nearly}
+// browse asks the stock records for the page.
+func (q shelfQuery) browse(found *inventory.Found) inventory.Browse {
+	if q.Find == "" {
+		found = nil
+	}
+	return inventory.Browse{Store: q.Store, Class: q.Class, State: inventory.BottleState(q.State),
+		Answers: found, Sort: q.Sort, Down: q.Down, Page: q.Page, Rows: shelfRows}
+}
+
+func (s *Server) shelfPage(part inventory.Browsed, q shelfQuery) *shelfPage {
+	q.Page = part.Page
+	p := &shelfPage{Query: q, Bottles: part.All, Total: part.Total, Stores: part.Stores, Classes: part.Classes, States: part.States}
 	p.Title, p.Section, p.Find = "Shelf", "/shelf", q.Find
-	p.Stores, p.Classes, p.States = shelfChoices(shelf)
-	entries := shelfEntries(shelf, q, answers)
-	order := shelfOrders[q.Sort]
-	slices.SortFunc(entries, func(a, b shelfEntry) int {
-		if q.Down {
-			a, b = b, a
-		}
-		return cmp.Or(order(a, b), cmp.Compare(a.substance, b.substance), cmp.Compare(a.bottle.Code, b.bottle.Code))
-	})
 	today := s.Today()
-	for _, e := range p.cut(entries) {
-		p.Rows = append(p.Rows, newShelfRow(shelf, *e.bottle, today))
+	for _, b := range part.Bottles {
+		p.Rows = append(p.Rows, newShelfRow(part.Shelf, b, today))
 	}
 	p.Columns = shelfColumns(q)
+	p.place()
 	return p
 }
 
-// cut gives the entries of the page asked for; a page beyond the last is the
-// last.
-func (p *shelfPage) cut(entries []shelfEntry) []shelfEntry {
-	p.Total = len(entries)
-	pages := max((p.Total+shelfRows-1)/shelfRows, 1)
-	q := p.Query
-	q.Page = min(q.Page, pages)
-	from := (q.Page - 1) * shelfRows
-	part := entries[from:min(from+shelfRows, p.Total)]
-	p.First, p.Last = from+1, from+len(part)
-	earlier, later := q, q
+// place says which rows are shown and where the pages before and after are.
+func (p *shelfPage) place() {
+	p.First = (p.Query.Page-1)*shelfRows + 1
+	p.Last = p.First - 1 + len(p.Rows)
+	earlier, later := p.Query, p.Query
 	earlier.Page--
 	later.Page++
-	if q.Page > 1 {
+	if p.Query.Page > 1 {
 		p.Earlier = earlier.address()
 	}
-	if q.Page < pages {
+	if p.Last < p.Total {
 		p.Later = later.address()
 	}
-	p.Query = q
-	return part
 }
 
 func shelfColumns(q shelfQuery) []shelfColumn {
@@ -219,39 +186,6 @@ func shelfColumns(q shelfQuery) []shelfColumn {
 		c.Address = to.address()
 	}
 	return columns
-}
-
-// shelfEntries lists the bottles that answer and pass the filters. Without a
-// filter on the state, empty and discarded bottles are left out.
-func shelfEntries(shelf *inventory.Shelf, q shelfQuery, answers answering) []shelfEntry {
-	names, classes := make(map[int64]string, len(shelf.Forms)), make(map[int64]string, len(shelf.Forms))
-	for i := range shelf.Forms {
-		f := &shelf.Forms[i]
-		substance, _ := shelf.SubstanceByID(f.SubstanceID)
-		names[f.ID], classes[f.ID] = substance.Name, f.StorageClass
-	}
-	places := make(map[int64]*inventory.Place, len(shelf.Places))
-	for i := range shelf.Places {
-		places[shelf.Places[i].ID] = &shelf.Places[i]
-	}
-	var entries []shelfEntry
-	nowhere := &inventory.Place{}
-	for i := range shelf.Bottles {
-		b := &shelf.Bottles[i]
-		place := cmp.Or(places[b.PlaceID], nowhere)
-		if q.passes(b.State, place.Store, classes[b.FormID]) && answers.has(b) {
-			entries = append(entries, shelfEntry{b, names[b.FormID], place})
-		}
-	}
-	return entries
-}
-
-// passes reports whether a bottle's state, store and storage class are those
-// asked for.
-func (q shelfQuery) passes(state inventory.BottleState, store, class string) bool {
-	gone := state == inventory.Empty || state == inventory.Discarded
-	return (q.State == "" && !gone || q.State == string(state)) &&
-		(q.Store == "" || q.Store == store) && (q.Class == "" || q.Class == class)
 }
 
 // newShelfRow works out what a row shows.
@@ -278,27 +212,4 @@ func promised(shelf *inventory.Shelf, bottleID int64, today inventory.Date) int6
 		}
 	}
 	return sum
-}
-
-// shelfChoices lists what the filters offer: what occurs on the shelf.
-func shelfChoices(shelf *inventory.Shelf) (stores, classes []string, states []inventory.BottleState) {
-	for _, p := range shelf.Places {
-		stores = append(stores, p.Store)
-	}
-	for _, f := range shelf.Forms {
-		if f.StorageClass != "" {
-			classes = append(classes, f.StorageClass)
-		}
-	}
-	seen := map[inventory.BottleState]bool{}
-	for i := range shelf.Bottles {
-		if state := shelf.Bottles[i].State; !seen[state] {
-			seen[state] = true
-			states = append(states, state)
-		}
-	}
-	slices.Sort(stores)
-	slices.Sort(classes)
-	slices.Sort(states)
-	return slices.Compact(stores), slices.Compact(classes), states
 }

@@ -66,18 +66,3 @@ func TestShelfFilters(t *testing.T) {
 		t.Errorf("%d bottles in a store that isn't there", n)
 	}
 }
-
-// The shelf page with 100,000 bottles on it, without the database.
-func BenchmarkShelfPage(b *testing.B) {
-	s := newSampleServer(b)
-	lab := inventory.DemoLab(sampleToday)
-	for n := int64(len(lab.Bottles)); n < 100_000; n++ {
-		bottle := lab.Bottles[n%80]
-		bottle.ID, bottle.Code = n+1, inventory.MakeCode(inventory.BottleCode, n+1)
-		lab.Bottles = append(lab.Bottles, bottle)
-	}
-	shelf := inventory.NewShelf(lab)
-	for b.Loop() {
-		s.shelfPage(shelf, shelfQuery{Sort: "expiry", Page: 1}, answering{all: true})
-	}
-}
