@@ -151,7 +151,6 @@ type allocator struct {
 	need      float64
 	p         points
 	lines     []line
-	order     []int // lines in the order of drawing, after sorting
 	firstLife inventory.Date
 	firstWalk int
 

@@ -128,7 +128,6 @@ type candidate struct {
 	pure       float64 // in a pack
 	arrives    inventory.Date
 	orderBy    inventory.Date
-	dilute     bool
 	conversion string
 }
 
