@@ -101,7 +101,13 @@ func (o *coDistilOp) run(w *Workspace) error {
 	recovery := w.value(o.factor)
 	water := o.waterFor(there*m.molar, recovery, pot)
 	over := water / w.p.matter[w.p.water].molar
-	w.draw(o.waterAsk, w.p.water, v, over)
+	if w.off[o.waterAsk] {
+		if water > pot {
+			return w.refuse(ErrEmptyVessel, plainf("%s holds %.4g g of water, and %.4g g have to go over with the %s", w.p.places[v], pot*1e3, water*1e3, o.carry), "let the water of the distillate be put back")
+		}
+	} else {
+		w.draw(o.waterAsk, w.p.water, v, over)
+	}
 	w.move(v, aqueous, o.target, aqueous, w.p.water, over)
 	o.carryOver(w, v, recovery)
 	if o.start > 0 {
@@ -153,7 +159,9 @@ const carriedMargin = 25
 func (o *coDistilOp) tell(w *Workspace, mass, recovery, pot, water float64) {
 	w.report.step.Temperature = chem.Celsius(o.start)
 	w.say("%.4g g of distillate water carry %.3g %% of the %s over; no oily drops follow when it is done", water*1e3, 100*recovery, o.carry)
-	w.say("the pot is kept up with the same amount of water")
+	if !w.off[o.waterAsk] {
+		w.say("the pot is kept up with the same amount of water")
+	}
 	if a := &w.report.asks[o.waterAsk]; a.Hidden {
 		a.Why = plainf("%.4g g of water leave with the distillate and are put back", water*1e3)
 	}

@@ -400,3 +400,15 @@ func TestRefusals(t *testing.T) {
 		}
 	}
 }
+
+// Without water put back, a co-distillation goes on as long as the pot's own
+// water lasts.
+func TestCoDistilOutOfThePot(t *testing.T) {
+	p := mustCompile(t, "pentanoic-acid-dichromate")
+	in := labConditions(0.8)
+	in.Off = []string{"distillate-water"}
+	_, err := p.Walk(in)
+	if step := IsStep(err); step == nil || step.Name != "carry the acid over" || !errors.Is(err, ErrEmptyVessel) {
+		t.Errorf("error %v, want the step that carries the acid over: more water goes over than the pot holds", err)
+	}
+}

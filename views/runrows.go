@@ -3,7 +3,6 @@ package views
 import (
 	"fmt"
 	"html/template"
-	"strings"
 
 	"stillroom/chem"
 	"stillroom/inventory"
@@ -20,7 +19,13 @@ type needRow struct {
 	Lack    string // what is short, in words
 	Chance  string
 	Note    string
+	Parts   []partRow
 	Explain string // address part of the derivation
+}
+
+// partRow is what one key of hidden charges adds to a need.
+type partRow struct {
+	Key, Amount, Why string
 }
 
 // drawRow is a bottle in a line of the needs table.
@@ -37,7 +42,7 @@ func (p *runPage) needRows() []needRow {
 	for i, n := range p.Plan.Needs {
 		rows[i] = needRow{
 			Need: n, N: i + 1, Word: n.State.String(), Amount: neededText(n), Lack: lackText(n),
-			Chance: chanceOf(n), Note: noteOf(n), Explain: fmt.Sprintf("need-%d", i+1),
+			Chance: chanceOf(n), Note: noteOf(n), Parts: partRows(n), Explain: fmt.Sprintf("need-%d", i+1),
 		}
 		for j, d := range n.Draws {
 			rows[i].Draws = append(rows[i].Draws, drawRow{
@@ -45,6 +50,28 @@ func (p *runPage) needRows() []needRow {
 				Amount: drawnText(d), Why: d.Why, Explain: fmt.Sprintf("draw-%d-%d", i+1, j+1),
 			})
 		}
+	}
+	return rows
+}
+
+// partRows sums the hidden charges of a need by their keys, with the reason of
+// the first charge of each.
+func partRows(n planner.Need) []partRow {
+	sums := map[string]planner.Need{}
+	var keys []string
+	for _, part := range n.Parts {
+		sum, met := sums[part.Key]
+		if !met {
+			keys = append(keys, part.Key)
+			sum.Count, sum.Why = n.Count, part.Why
+		}
+		sum.Mass += part.Mass
+		sum.Pieces += part.Pieces
+		sums[part.Key] = sum
+	}
+	rows := make([]partRow, len(keys))
+	for i, key := range keys {
+		rows[i] = partRow{key, neededText(sums[key]), bound(sums[key].Why)}
 	}
 	return rows
 }
@@ -88,17 +115,12 @@ func chanceOf(n planner.Need) string {
 	return chanceText(n.ChanceShort)
 }
 
-// noteOf is the small print beside a substance: why it is needed where the
-// recipe doesn't say, and why its state isn't "covered".
+// noteOf is the small print beside a substance: why its state isn't "covered".
 func noteOf(n planner.Need) string {
-	var parts []string
-	if n.Hidden && n.Why != "" {
-		parts = append(parts, n.Why)
+	if n.State == planner.Covered {
+		return ""
 	}
-	if n.Because != "" && n.State != planner.Covered {
-		parts = append(parts, n.Because)
-	}
-	return bound(strings.Join(parts, " · "))
+	return bound(n.Because)
 }
 
 // wasteRow is a waste lot with the carboy that takes it, drawn as it would
