@@ -65,7 +65,7 @@ func (s *Shelf) weigh(c *ToCount, today Date) {
 	if days, ok := s.Policy.Value("stocktake.promised-days"); ok {
 		for _, m := range s.EarmarksOn(b.ID) {
 			if m.ForDate >= today && m.ForDate <= today.AddDays(int(days)) {
-				add(weighsPromised, "promised to run %d on %s", m.RunID, m.ForDate)
+				add(weighsPromised, "promised to run %d on %s", m.RunID, m.ForDate.Short())
 				break
 			}
 		}
@@ -75,10 +75,10 @@ func (s *Shelf) weigh(c *ToCount, today Date) {
 		add(weighsRegulated, "regulated: %s", notes[0].Instrument)
 	}
 	if days, ok := s.Policy.Value("stocktake.lapsing-days"); ok && b.Expiry >= today && b.Expiry <= today.AddDays(int(days)) {
-		add(weighsLapsing, "lapses on %s", b.Expiry)
+		add(weighsLapsing, "lapses on %s", b.Expiry.Short())
 	}
 	if days, ok := s.Policy.Value("stocktake.unseen-days"); ok && b.MeasuredOn.Set() && b.MeasuredOn.AddDays(int(days)) < today {
-		add(weighsUnseen, "unseen since %s", b.MeasuredOn)
+		add(weighsUnseen, "unseen since %s", b.MeasuredOn.Short())
 	}
 	if b.State == Missing {
 		add(weighsMissing, "missing")
