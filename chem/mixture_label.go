@@ -48,8 +48,19 @@ func (m *mixture) elicitation(p mixPart) {
 	}
 }
 
-// physical lists the physical hazards of the ingredients from 1 % on.
+// pureShare is the per cent from which a mixture has the physical hazards of
+// its one ingredient: what is sold as pure. A choice of this program.
+const pureShare = 99
+
+// physical lists the physical hazards of the ingredients from 1 % on. What is
+// all but pure has those of its substance.
 func (m *mixture) physical() {
+	for _, p := range m.parts {
+		if atLeast(p.percent, pureShare) && p.Known {
+			m.physicalOf(p)
+			return
+		}
+	}
 	var classes []HazardClass
 	var from []string
 	for _, p := range m.parts {
@@ -76,6 +87,17 @@ func (m *mixture) physical() {
 	for _, c := range classes {
 		m.out.Physical = append(m.out.Physical, c.String())
 	}
+}
+
+// physicalOf takes the physical hazards over from the substance that is all
+// but pure.
+func (m *mixture) physicalOf(p mixPart) {
+	for _, c := range p.classes {
+		if classRank(c.Name) < classRank("Acute Tox.") {
+			m.classes = append(m.classes, c)
+		}
+	}
+	m.note("physical hazards are those of %s, which is %g %% of it", p.Name, p.percent)
 }
 
 func (m *mixture) label() {

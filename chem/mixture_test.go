@@ -307,3 +307,23 @@ func TestLabelOfTable(t *testing.T) {
 		}
 	}
 }
+
+// What is all but pure has the physical hazards of its substance: acetic acid
+// is Flam. Liq. 3 H226 in CLP Annex VI (607-002-00-6), its solution isn't
+// called so without a test.
+func TestPureSubstanceKeepsPhysicalHazards(t *testing.T) {
+	acid, _ := LookupSubstance("acetic acid")
+	water, _ := LookupSubstance("water")
+	for _, tt := range []struct {
+		share Fraction
+		want  bool
+	}{{1, true}, {0.995, true}, {0.5, false}} {
+		got, err := ClassifyMixture([]Ingredient{IngredientOf("acetic acid", acid, tt.share), IngredientOf("water", water, 1-tt.share)})
+		if err != nil {
+			t.Fatal(err)
+		}
+		if has := slices.Contains(got.Classes, "Flam. Liq. 3 H226"); has != tt.want {
+			t.Errorf("acetic acid at %g %%: classes %v, want flammable: %v", tt.share.Percent(), got.Classes, tt.want)
+		}
+	}
+}

@@ -21,7 +21,7 @@ func classifySum() Sum {
 			{"mix", "Ingredients with their mass fractions", "acetic acid: 12 % w/w; water: 88 % w/w", false},
 			{"ph", "pH of the mixture, if it was measured", "1.5", true},
 		},
-		Gives:   []string{"classes", "statements", "pictograms", "signal", "unknown", "one row for each sum"},
+		Gives:   []string{"classes", "statements", "pictograms", "signal", "unknown", "physical", "one row for each sum"},
 		Example: []string{"mix=acetic acid: 12 % w/w; water: 88 % w/w"},
 		Range:   "health and environmental classes; physical hazards need a test and are only listed for the worst ingredient",
 		Source:  "UN GHS with the categories of EU CLP 1272/2008, Annex I; each row names its rule",
@@ -62,6 +62,7 @@ func classifyAnswer(got chem.Classification, ingredients []chem.Ingredient) Answ
 		Results: []Result{
 			words("classes", got.Classes), words("statements", got.Statements), words("pictograms", got.Pictograms),
 			words("signal", []string{got.Signal}), Number("unknown", got.Unknown.Percent(), "% w/w"),
+			untested(got.Physical),
 		},
 		Notes: append([]string{"by " + string(got.System)}, got.Notes...),
 	}
@@ -79,6 +80,15 @@ func classifyAnswer(got chem.Classification, ingredients []chem.Ingredient) Answ
 	answer.Derivation = chem.Derivation{Of: "classification of the mixture", Formula: "Σ C/L ≥ 1; 100 / ATE = Σ C/ATE; Σ C·M ≥ 25 %",
 		Inserted: strings.Join(inserted, "; "), Range: "mass fractions in per cent", Source: "CLP 1272/2008 Annex I, parts 3 and 4"}
 	return answer
+}
+
+// untested says what the physical hazards may be when nobody tested the mixture.
+func untested(physical []string) Result {
+	text := "no others on record"
+	if len(physical) > 0 {
+		text = "not determined; treat as " + strings.Join(physical, "; ")
+	}
+	return Result{Name: "physical", Text: text, IsText: true}
 }
 
 // words is a text result of a list; "none" if it is empty, so that no field is
