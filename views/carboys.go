@@ -1,6 +1,7 @@
 package views
 
 import (
+	"errors"
 	"net/http"
 	"slices"
 	"strings"
@@ -21,6 +22,7 @@ type carboyPage struct {
 	Unknown  []string // names the compatibility chart says nothing about
 	Life     []lifeRow
 	Unstated string // why the content can't be read
+	Clash    bool   // the chart warned of what was to go in
 }
 
 func carboyAddress(code string) string { return "/waste/" + code }
@@ -69,7 +71,9 @@ func (p *carboyPage) assess() {
 	}
 }
 
-// pour answers the form that notes what went into a carboy.
+// pour answers the form that notes what went into a carboy. The compatibility
+// chart warns by groups, of a chromium salt in water as of a strong oxidiser in
+// a solvent; somebody in charge, who is named, may let in what it warns of.
 func (s *Server) pour(c *gin.Context) error {
 	p, err := s.carboyPage(c)
 	if err != nil {
@@ -78,10 +82,15 @@ func (s *Server) pour(c *gin.Context) error {
 	p.keep(c, "pour")
 	pouring := inventory.Pouring{Carboy: p.Code, VolumeUL: p.readVolume(), Parts: p.readParts()}
 	act := p.act("")
+	if leave := p.typed("leave"); leave != "" {
+		pouring.Despite, p.Clash = true, true
+		act.Why += "; let in by " + leave
+	}
 	if len(p.Faults) > 0 {
 		return s.render(c, http.StatusUnprocessableEntity, "carboy", p)
 	}
 	if _, err := s.Lab.Pour(c.Request.Context(), pouring, act); err != nil {
+		p.Clash = p.Clash || errors.Is(err, inventory.ErrInvalid)
 		status, err := p.refuse(err, "volume")
 		if err != nil {
 			return err

@@ -268,6 +268,18 @@ func TestPouringAndPickUp(t *testing.T) {
 	if first := text(all(parse(t, page), "section[aria-labelledby=h-life] tbody tr")[0]); !strings.Contains(first, "washings <u> Ines") || strings.Contains(page.Body.String(), "<u>") {
 		t.Errorf("the newest line of what was done is %q", first)
 	}
+	oxidiser := []string{"volume", "1 mL", "parts", "potassium permanganate", "why", "a trace", "who", "Ines", "key", "o"}
+	if w := post(t, s, at+"/pour", oxidiser...); w.Code != 422 || len(all(parse(t, w), "#pour-leave")) != 1 {
+		t.Errorf("an oxidiser into solvent = %d, want 422 and who may let it in asked", w.Code)
+	}
+	mustGoTo(t, s, at, at+"/pour", append(oxidiser, "leave", "Rut")...)
+	after := parse(t, get(t, s, at))
+	if first := text(all(after, "section[aria-labelledby=h-life] tbody tr")[0]); !strings.Contains(first, "a trace; let in by Rut") {
+		t.Errorf("let in, the newest line is %q", first)
+	}
+	if n := len(all(after, "li.warning")); n == 0 {
+		t.Error("the page doesn't say what is together in the carboy")
+	}
 	refusedBeside(t, s, 422, "collect-sure", "can’t be taken back", at+"/collect", "why", "paper 12", "who", "Ines")
 	mustGoTo(t, s, at, at+"/collect", "sure", "1", "why", "paper 12", "who", "Ines")
 	if now := carboy(); now.ContentUL != 0 || now.Contains != "" {
