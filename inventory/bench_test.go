@@ -152,27 +152,74 @@ func BenchmarkImport(b *testing.B) {
 	}
 	for b.Loop() {
 		small, large := one(*benchBottles/10), one(*benchBottles)
+		bare := bareImport(b, b.TempDir(), *benchBottles)
 		b.ReportMetric(float64(*benchBottles)/large.Seconds(), "rows/s")
+		b.ReportMetric(float64(*benchBottles)/bare.Seconds(), "bare/s")
+		b.ReportMetric(bare.Seconds()/large.Seconds(), "share")
 		growth(b, small, large)
 	}
 }
 
-// bareDraws is what the engine does alone: the same pragmas, one row into a
-// table like the ledger and one changed in each transaction.
-func bareDraws(b *testing.B, dir string, n int) time.Duration {
+// bareImport is what the engine does alone with as many rows: the same pragmas,
+// a row with a unique code into a table like that of the bottles and one into a
+// table like the ledger, each by a prepared statement, all in one transaction.
+func bareImport(b *testing.B, dir string, n int) time.Duration {
+	b.Helper()
+	pool := bareEngine(b, dir, "CREATE TABLE b (id INTEGER PRIMARY KEY, c TEXT UNIQUE, f INTEGER, p INTEGER, l TEXT, a INTEGER) STRICT",
+		"CREATE TABLE l (id INTEGER PRIMARY KEY, b INTEGER, a INTEGER, t TEXT, h BLOB) STRICT")
+	from := time.Now()
+	tx, err := pool.Begin()
+	if err != nil {
+		b.Fatal(err)
+	}
+	bottle, err := tx.Prepare("INSERT INTO b (id, c, f, p, l, a) VALUES (?, ?, ?, ?, ?, ?)")
+	if err != nil {
+		b.Fatal(err)
+	}
+	entry, err := tx.Prepare("INSERT INTO l (b, a, t, h) VALUES (?, ?, ?, ?)")
+	if err != nil {
+		b.Fatal(err)
+	}
+	hash := make([]byte, 32)
+	for i := range int64(n) {
+		if _, err := bottle.Exec(i, MakeCode(BottleCode, i), i%100, i%1400, "L00001", i); err != nil {
+			b.Fatal(err)
+		}
+		if _, err := entry.Exec(i, i, "2026-12-01T12:00:00.000Z", hash); err != nil {
+			b.Fatal(err)
+		}
+	}
+	if err := tx.Commit(); err != nil {
+		b.Fatal(err)
+	}
+	return time.Since(from)
+}
+
+// bareEngine opens a database of its own with the pragmas of a Store's writer.
+func bareEngine(b *testing.B, dir string, tables ...string) *sql.DB {
 	b.Helper()
 	bare := &Store{options: Options{Dir: dir, BusyTimeout: time.Second}, path: filepath.Join(dir, "bare.db")}
 	pool, err := sql.Open("sqlite", bare.sqliteDSN("immediate"))
 	if err != nil {
 		b.Fatal(err)
 	}
-	defer pool.Close()
+	b.Cleanup(func() { pool.Close() })
 	pool.SetMaxOpenConns(1)
-	for _, q := range []string{"CREATE TABLE l (id INTEGER PRIMARY KEY, b INTEGER, a INTEGER, t TEXT, h BLOB) STRICT", "CREATE TABLE b (id INTEGER PRIMARY KEY, c INTEGER) STRICT", "INSERT INTO b VALUES (1, 0)"} {
+	for _, q := range tables {
 		if _, err := pool.Exec(q); err != nil {
 			b.Fatal(err)
 		}
 	}
+	return pool
+}
+
+// bareDraws is what the engine does alone: the same pragmas, one row into a
+// table like the ledger and one changed in each transaction.
+func bareDraws(b *testing.B, dir string, n int) time.Duration {
+	b.Helper()
+	pool := bareEngine(b, dir, "CREATE TABLE l (id INTEGER PRIMARY KEY, b INTEGER, a INTEGER, t TEXT, h BLOB) STRICT",
+		"CREATE TABLE b (id INTEGER PRIMARY KEY, c INTEGER) STRICT", "INSERT INTO b VALUES (1, 0)")
+	defer pool.Close()
 	insert, err := pool.Prepare("INSERT INTO l (b, a, t, h) VALUES (1, -1, ?, ?)")
 	if err != nil {
 		b.Fatal(err)

@@ -31,8 +31,9 @@ func (r *CheckReport) add(what, where, why string, args ...any) {
 // Check verifies the whole database at one moment: the file itself and its
 // references, every bottle's content against the sum of its ledger, promises
 // against earmarks, the hash chain of every store, and codes and registry
-// numbers. The error is for what kept it from checking; a database too damaged
-// to read gives ErrCorrupt.
+// numbers. Rows are read as they come: what is kept is one sum for each bottle,
+// however long the ledger. The error is for what kept it from checking; a
+// database too damaged to read gives ErrCorrupt.
 func (s *Store) Check(ctx context.Context) (CheckReport, error) {
 	var report CheckReport
 	err := s.read(ctx, "check", func(tx *gorm.DB) error {
@@ -202,23 +203,34 @@ func checkPlaces(tx *gorm.DB, report *CheckReport) error {
 // checkNumbers tries the check symbols of codes and the check digits of
 // registry numbers.
 func checkNumbers(tx *gorm.DB, report *CheckReport) error {
-	var codes []string
-	if err := tx.Raw("SELECT code FROM bottles UNION ALL SELECT code FROM carboys").Scan(&codes).Error; err != nil {
-		return err
-	}
-	for _, code := range codes {
+	err := eachText(tx, "SELECT code FROM bottles UNION ALL SELECT code FROM carboys", func(code string) {
 		if _, err := NormalCode(code); err != nil {
 			report.add("codes", "bottle or carboy "+code, "%v", err)
 		}
-	}
-	var numbers []string
-	if err := tx.Raw("SELECT cas FROM substances WHERE cas <> '' UNION ALL SELECT cas FROM stock_forms WHERE cas <> ''").Scan(&numbers).Error; err != nil {
+	})
+	if err != nil {
 		return err
 	}
-	for _, cas := range numbers {
+	return eachText(tx, "SELECT cas FROM substances WHERE cas <> '' UNION ALL SELECT cas FROM stock_forms WHERE cas <> ''", func(cas string) {
 		if !ValidCAS(cas) {
 			report.add("codes", "CAS "+cas, "the check digit doesn't fit")
 		}
+	})
+}
+
+// eachText calls f for every row of a query for one text, as they come.
+func eachText(tx *gorm.DB, query string, f func(string)) error {
+	rows, err := tx.Raw(query).Rows()
+	if err != nil {
+		return err
 	}
-	return nil
+	defer rows.Close()
+	for rows.Next() {
+		var text string
+		if err := rows.Scan(&text); err != nil {
+			return err
+		}
+		f(text)
+	}
+	return rows.Err()
 }

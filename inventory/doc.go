@@ -53,7 +53,10 @@
 //	an earmark            the run's row, bottles by id in order, earmarks by
 //	                      (bottle_id, run_id)
 //	the slate             runs by (store_id, on_date); earmarks by run_id
-//	the shelf of a plan   bottles by form_id, earmarks by bottle_id
+//	the shelf of a plan   bottles by form_id; earmarks, which are no more than the runs
+//	                      to come ask for, whole
+//	a page of the shelf   bottles counted by (form_id, store_id, state), then those of
+//	                      the page by form_id and code; earmarks by bottle_id
 //	search                names in memory, bottles by the plain spelling of number or
 //	                      lot, by code from a beginning on, by words of notes, by
 //	                      form_id and place_id
