@@ -35,6 +35,7 @@ type bottlePage struct {
 	Runs      []option            // that something may be taken for
 	Places    []inventory.Place
 
+	today         inventory.Date
 	peroxideLimit float64 // ppm from which a bottle is barred; 0 for none set
 }
 
@@ -113,7 +114,7 @@ func wrongCode(err error) string {
 
 func (s *Server) bottlePage(shelf *inventory.Shelf, b inventory.Bottle) *bottlePage {
 	today := s.Today()
-	p := &bottlePage{Bottle: b}
+	p := &bottlePage{Bottle: b, today: today}
 	p.Form, _ = shelf.Form(b.FormID)
 	p.Substance, _ = shelf.SubstanceByID(p.Form.SubstanceID)
 	p.Place, _ = shelf.Place(b.PlaceID)

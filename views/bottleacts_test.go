@@ -224,8 +224,9 @@ func TestStatesOfABottle(t *testing.T) {
 
 func TestMoveAndPeroxideTest(t *testing.T) {
 	s := newSampleServer(t)
-	ether := s.bottleLike(t, "a peroxide former", func(b inventory.Bottle, f inventory.StockForm) bool {
-		return f.PeroxideTestDays > 0 && f.StorageClass == "flammable liquid"
+	// Opened half a year ago and never tested: the interval counts from the opening.
+	ether := s.bottleLike(t, "a peroxide former never tested", func(b inventory.Bottle, f inventory.StockForm) bool {
+		return f.PeroxideTestDays == 180 && f.StorageClass == "flammable liquid" && !b.PeroxideTested.Set() && b.Opened.Set() && b.Opened.AddDays(180) < sampleToday
 	})
 	shelf, err := s.Lab.Load(t.Context())
 	if err != nil {
@@ -252,6 +253,21 @@ func TestMoveAndPeroxideTest(t *testing.T) {
 	mustGoTo(t, s, at+"#h-life", at+"/move", "place", flammables, "why", "tidied", "who", "Ines")
 	mustGoTo(t, s, at+"#h-life", at+"/move", "place", oxidisers, "despite", "1", "why", "while the cabinet is cleaned", "who", "Ines")
 
+	cautions := func() string {
+		var texts []string
+		for _, n := range all(parse(t, get(t, s, at)), "section[aria-labelledby=h-draw] li.warning") {
+			texts = append(texts, text(n))
+		}
+		return strings.Join(texts, " ")
+	}
+	due := ether.Opened.AddDays(180)
+	if got := cautions(); !strings.Contains(got, "due since "+due.Short()) {
+		t.Errorf("before a test the page cautions %q, want that one is due since %s", got, due.Short())
+	}
+	mustGoTo(t, s, at+"#h-life", at+"/peroxide", "ppm", "100", "who", "Ines")
+	if got := cautions(); !strings.Contains(got, "found 100") || strings.Contains(got, "due since") {
+		t.Errorf("after a test at the limit the page cautions %q", got)
+	}
 	refusedBeside(t, s, 422, "peroxide-ppm", "what the strip shows", at+"/peroxide", "ppm", "some", "who", "Ines")
 	refusedBeside(t, s, 422, "peroxide-ppm", "0 or more", at+"/peroxide", "ppm", "-1", "who", "Ines")
 	mustGoTo(t, s, at+"#h-life", at+"/peroxide", "ppm", "2.5 ppm", "who", "Ines")

@@ -198,3 +198,32 @@ func (p *bottlePage) PeroxideLimit() string {
 	}
 	return with(numberText(p.peroxideLimit), "ppm")
 }
+
+// Cautions are what somebody should know before touching the bottle. That none
+// is given says nothing about what isn't on record.
+func (p *bottlePage) Cautions() []string {
+	var cautions []string
+	if p.Lapsed {
+		cautions = append(cautions, "It expired on "+p.Expiry.Short()+".")
+	}
+	if since := p.testDue(); since.Set() && since < p.today {
+		cautions = append(cautions, "Its peroxide test has been due since "+since.Short()+": don’t open or move it, ask the person in charge.")
+	}
+	if p.peroxideLimit > 0 && p.PeroxidePPM >= p.peroxideLimit {
+		cautions = append(cautions, "Its last peroxide test found "+with(numberText(p.PeroxidePPM), "ppm")+", where plans leave a bottle alone from "+p.PeroxideLimit()+" on: don’t open or move it, ask the person in charge.")
+	}
+	return cautions
+}
+
+// testDue is the day by which a peroxide former has to be tested: counted from
+// its last test, or from its opening; no day for what needs none.
+func (p *bottlePage) testDue() inventory.Date {
+	last := p.Opened
+	if p.PeroxideTested.Set() {
+		last = p.PeroxideTested
+	}
+	if p.Form.PeroxideTestDays == 0 || !last.Set() {
+		return 0
+	}
+	return last.AddDays(p.Form.PeroxideTestDays)
+}
