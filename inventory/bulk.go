@@ -14,7 +14,8 @@ type bulk struct {
 	engine  engine
 	head    string // INSERT INTO … VALUES
 	columns int
-	batch   int // rows with each statement
+	batch   int   // rows with each statement
+	fixed   []any // values of the first columns, the same in all rows
 	args    []any
 	full    *sql.Stmt // for a whole batch; nil until the first
 }
@@ -30,24 +31,45 @@ func newBulk(tx *gorm.DB, engine engine, table string, columns ...string) *bulk 
 	return b
 }
 
+// fix gives the first columns their values once for all rows, before any is
+// added; add then takes the rest.
+func (b *bulk) fix(values ...any) *bulk {
+	for i, v := range values {
+		if b.engine == onSQLite {
+			v = sql.Named(fixedName(i), v)
+		}
+		b.fixed = append(b.fixed, v)
+	}
+	b.columns -= len(values)
+	return b
+}
+
+func fixedName(i int) string { return "fixed" + strconv.Itoa(i) }
+
 func (b *bulk) statement(rows int) string {
 	var s strings.Builder
 	s.WriteString(b.head)
-	n := 0
+	n := len(b.fixed)
 	for row := range rows {
 		if row > 0 {
 			s.WriteByte(',')
 		}
 		s.WriteByte('(')
-		for c := range b.columns {
+		for c := range len(b.fixed) + b.columns {
 			if c > 0 {
 				s.WriteByte(',')
 			}
-			n++
-			if b.engine == onPostgres {
-				s.WriteByte('$')
-				s.WriteString(strconv.Itoa(n))
-			} else {
+			at := c + 1
+			if c >= len(b.fixed) {
+				n++
+				at = n
+			}
+			switch {
+			case b.engine == onPostgres:
+				s.WriteString("$" + strconv.Itoa(at))
+			case c < len(b.fixed):
+				s.WriteString(":" + fixedName(c))
+			default:
 				s.WriteByte('?')
 			}
 		}
@@ -57,8 +79,11 @@ func (b *bulk) statement(rows int) string {
 }
 
 func (b *bulk) add(values ...any) error {
+	if len(b.args) == 0 {
+		b.args = append(b.args, b.fixed...)
+	}
 	b.args = append(b.args, values...)
-	if len(b.args) < b.columns*b.batch {
+	if len(b.args) < len(b.fixed)+b.columns*b.batch {
 		return nil
 	}
 	pool, ctx := b.tx.Statement.ConnPool, b.tx.Statement.Context
@@ -82,7 +107,7 @@ func (b *bulk) flush() error {
 	if len(b.args) == 0 {
 		return nil
 	}
-	_, err := b.tx.Statement.ConnPool.ExecContext(b.tx.Statement.Context, b.statement(len(b.args)/b.columns), b.args...)
+	_, err := b.tx.Statement.ConnPool.ExecContext(b.tx.Statement.Context, b.statement((len(b.args)-len(b.fixed))/b.columns), b.args...)
 	b.args = b.args[:0]
 	return err
 }

@@ -26,12 +26,14 @@ func (in *importer) bottles(ctx context.Context) error {
 	ctx, stop := context.WithCancel(ctx)
 	defer stop()
 	s := in.store
+	stamp, today, why := s.stamp(), s.today(), "import of "+in.table.Name // once: the hashes are over them
 	// Bottles and ledger are flushed together, so that no entry comes before its
 	// bottle.
-	w := &importWriter{in: in, heads: map[int64]*chain{}, stamp: s.stamp(), today: s.today(), why: "import of " + in.table.Name,
-		bottles: newBulk(in.tx, s.engine, "bottles", "id", "store_id", "code", "mark", "form_id", "place_id", "state", "lot", "content",
-			"size", "received", "opened", "expiry", "measured_by", "measured_on", "supplier", "note", "import_id"),
-		ledger: newBulk(in.tx, s.engine, "ledger", "store_id", "seq", "bottle_id", "kind", "amount", "content", "by_whom", "at", "why", "hash"),
+	w := &importWriter{in: in, heads: map[int64]*chain{}, stamp: stamp, today: today, why: why,
+		bottles: newBulk(in.tx, s.engine, "bottles", "measured_on", "import_id", "id", "store_id", "code", "mark", "form_id", "place_id", "state", "lot", "content",
+			"size", "received", "opened", "expiry", "measured_by", "supplier", "note").fix(orNull(today), in.id),
+		ledger: newBulk(in.tx, s.engine, "ledger", "kind", "by_whom", "at", "why", "store_id", "seq", "bottle_id", "amount", "content", "hash").
+			fix(string(Receipt), in.options.Act.By, stamp.String(), why),
 	}
 	for part := range readAll(ctx, in.table, in.mapping) {
 		for i := range part {
@@ -117,12 +119,11 @@ func (w *importWriter) add(b *Bottle) error {
 		ByWhom: w.in.options.Act.By, At: w.stamp, Why: w.why}
 	e.Hash = chainHash(head.Hash, &e)
 	head.Seq, head.Hash = e.Seq, e.Hash
-	at := e.At.String()
 	if err := w.bottles.add(b.ID, b.StoreID, b.Code, b.Mark, b.FormID, b.PlaceID, string(b.State), b.Lot, b.Content, b.Size,
-		orNull(b.Received), orNull(b.Opened), orNull(b.Expiry), string(b.MeasuredBy), orNull(b.MeasuredOn), b.Supplier, b.Note, w.in.id); err != nil {
+		orNull(b.Received), orNull(b.Opened), orNull(b.Expiry), string(b.MeasuredBy), b.Supplier, b.Note); err != nil {
 		return err
 	}
-	return w.ledger.add(e.StoreID, e.Seq, e.BottleID, string(e.Kind), e.Amount, e.Content, e.ByWhom, at, e.Why, e.Hash)
+	return w.ledger.add(e.StoreID, e.Seq, e.BottleID, e.Amount, e.Content, e.Hash)
 }
 
 // orNull stores a date, or NULL for none.
