@@ -91,7 +91,7 @@ var epaChart = sync.OnceValue(func() map[[2]int][]chartRow {
 			panic("chem: incompatibility.csv: groups " + row.text("group_a") + ", " + row.text("group_b"))
 		}
 		note, source := row.text("note"), row.text("source")
-		if strings.HasPrefix(note, "missing from the transcription") {
+		if strings.HasPrefix(note, "missing from the copy") {
 			note, source = "", note+"; "+source // it speaks of the table, not of the pair
 		}
 		key := [2]int{min(a, b), max(a, b)}
