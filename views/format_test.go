@@ -7,6 +7,7 @@ import (
 
 	"stillroom/chem"
 	"stillroom/inventory"
+	"stillroom/planner"
 )
 
 // What is expected follows from the rules of rounding to significant figures
@@ -57,6 +58,24 @@ func TestReadDate(t *testing.T) {
 	for _, s := range []string{"03/04/2027", "3.4.2027", "tomorrow", "2027-01", "31 Feb 2027", ""} {
 		if d, err := readDate(s); err == nil {
 			t.Errorf("readDate(%q) = %v, want an error", s, d)
+		}
+	}
+}
+
+// Charges under one key with different reasons show all of them: what melts ice
+// in three steps isn't said by the first step alone.
+func TestReasonText(t *testing.T) {
+	part := func(step int, why string) planner.HiddenPart { return planner.HiddenPart{Step: step, Why: why} }
+	for _, tt := range []struct {
+		parts []planner.HiddenPart
+		want  string
+	}{
+		{[]planner.HiddenPart{part(2, "a")}, "a"},
+		{[]planner.HiddenPart{part(2, "a"), part(3, "a")}, "a"},
+		{[]planner.HiddenPart{part(2, "a"), part(3, "b")}, "step 2: a; step 3: b"},
+	} {
+		if got := reasonText(tt.parts); got != tt.want {
+			t.Errorf("reasonText(%v) = %q, want %q", tt.parts, got, tt.want)
 		}
 	}
 }

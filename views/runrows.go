@@ -3,6 +3,8 @@ package views
 import (
 	"fmt"
 	"html/template"
+	"slices"
+	"strings"
 
 	"stillroom/chem"
 	"stillroom/inventory"
@@ -55,25 +57,41 @@ func (p *runPage) needRows() []needRow {
 }
 
 // partRows sums the hidden charges of a need by their keys, with the reason of
-// the first charge of each.
+// each charge.
 func partRows(n planner.Need) []partRow {
 	sums := map[string]planner.Need{}
+	reasons := map[string][]planner.HiddenPart{}
 	var keys []string
 	for _, part := range n.Parts {
 		sum, met := sums[part.Key]
 		if !met {
 			keys = append(keys, part.Key)
-			sum.Count, sum.Why = n.Count, part.Why
+			sum.Count = n.Count
 		}
 		sum.Mass += part.Mass
 		sum.Pieces += part.Pieces
 		sums[part.Key] = sum
+		reasons[part.Key] = append(reasons[part.Key], part)
 	}
 	rows := make([]partRow, len(keys))
 	for i, key := range keys {
-		rows[i] = partRow{key, neededText(sums[key]), bound(sums[key].Why)}
+		rows[i] = partRow{key, neededText(sums[key]), bound(reasonText(reasons[key]))}
 	}
 	return rows
+}
+
+// reasonText says why each of some charges is made; what is the same for all of
+// them is said once.
+func reasonText(parts []planner.HiddenPart) string {
+	same := !slices.ContainsFunc(parts, func(p planner.HiddenPart) bool { return p.Why != parts[0].Why })
+	if same {
+		return parts[0].Why
+	}
+	texts := make([]string, len(parts))
+	for i, p := range parts {
+		texts[i] = fmt.Sprintf("step %d: %s", p.Step, p.Why)
+	}
+	return strings.Join(texts, "; ")
 }
 
 func neededText(n planner.Need) string {
