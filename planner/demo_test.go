@@ -7,6 +7,7 @@ import (
 	"math"
 	"math/rand/v2"
 	"os"
+	"reflect"
 	"slices"
 	"strings"
 	"testing"
@@ -245,7 +246,7 @@ func TestDrawnWalks(t *testing.T) {
 		t.Errorf("median %.3f g, want %.3f g", r.MassMedian.Grams(), want)
 	}
 	again, err := MakePlan(req, inventory.NewShelf(inventory.DemoLab(demoToday)))
-	if err != nil || again.Risk != r {
+	if err != nil || !reflect.DeepEqual(again.Risk, r) {
 		t.Errorf("drawn again: %+v, want %+v", again.Risk, r)
 	}
 }

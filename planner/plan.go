@@ -313,6 +313,8 @@ type WasteLot struct {
 	Carboy   string // code, "" if none takes it
 	Fits     bool
 	Note     string
+	// Derivation sums what each step puts into the stream.
+	Derivation chem.Derivation
 }
 
 // HazardNote is one hazard of the hazard sheet.
@@ -348,8 +350,10 @@ type Risk struct {
 	Seed  uint64
 	// Drawn says that the walk-through itself was drawn; Failed is the share of
 	// draws in which a step could not be done.
-	Drawn      bool
-	Failed     float64
+	Drawn  bool
+	Failed float64
+	// Derivation lists the chance of each need behind RunEnough.
+	Derivation chem.Derivation
 	RunEnough  float64 // chance that every need is met; negative means not assessed
 	TargetMet  float64
 	MassLow    chem.Mass // 5th percentile of product

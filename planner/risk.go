@@ -81,7 +81,25 @@ func (a *assessor) assess(covers []coverage, asks []Ask, do func(step int) strin
 	risk := Risk{Draws: a.n, Seed: a.seed, RunEnough: a.enough()}
 	a.decides(&risk)
 	a.weighFirst(&risk)
+	risk.Derivation = a.derivation(risk, covers)
 	return risk
+}
+
+// derivation shows the chance of each need behind that of the run. The draws
+// are common to all needs, so the chances don't simply multiply.
+func (a *assessor) derivation(risk Risk, covers []coverage) chem.Derivation {
+	d := chem.Derivation{Of: "chance that everything suffices", Formula: "P = draws in which no need runs short / draws",
+		Inserted: fmt.Sprintf("P = %.0f / %d", risk.RunEnough*float64(risk.Draws), risk.Draws),
+		Value:    risk.RunEnough, Range: fmt.Sprintf("%d draws with seed %d, the same in every need", risk.Draws, risk.Seed),
+		Source: "Monte Carlo with common random numbers; the spreads are the policy's priors"}
+	for i := range covers {
+		n := &covers[i].need
+		if n.ChanceShort > 0 {
+			d.Inputs = append(d.Inputs, chem.Input{Symbol: "p", Name: n.Substance + " runs short", Value: 100 * n.ChanceShort,
+				Unit: "%", Source: "its draws: content, assay and finding of its bottles, spread of the need"})
+		}
+	}
+	return d
 }
 
 func (a *assessor) enough() float64 {

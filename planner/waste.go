@@ -41,10 +41,24 @@ func SortWaste(discards []Discard, carboys []inventory.Carboy, fillLimit float64
 		lots[i].take(d)
 	}
 	for i := range lots {
+		lots[i].derive(discards)
 		lots[i].judgeStream()
 		lots[i].findCarboy(carboys, fillLimit)
 	}
 	return lots
+}
+
+// derive shows the sum over the steps that discard into the stream.
+func (w *WasteLot) derive(discards []Discard) {
+	w.Derivation = chem.Derivation{Of: w.Stream, Formula: "m = Σ mᵢ over the steps that discard into it",
+		Inserted: plainf("m = %.4g g", w.Mass.Grams()),
+		Value:    w.Mass.Grams(), Unit: "g", Source: "material balance of the walk-through"}
+	for _, d := range discards {
+		if d.Stream == w.Stream {
+			w.Derivation.Inputs = append(w.Derivation.Inputs, chem.Input{Symbol: "m", Name: d.StepName, Value: d.Mass.Grams(),
+				Unit: "g", Source: fmt.Sprintf("step %d: what was left in its vessel", d.Step)})
+		}
+	}
 }
 
 // take adds a discard, component by component.

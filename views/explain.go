@@ -42,8 +42,8 @@ func (s *Server) explain(c *gin.Context) error {
 	return s.render(c, http.StatusOK, "explain", why)
 }
 
-// explanation finds what an address part such as "need-3", "draw-3-1", "step-4"
-// or "scale" stands for.
+// explanation finds what an address part such as "need-3", "draw-3-1", "step-4",
+// "waste-2", "chance" or "scale" stands for.
 func explanation(plan *planner.Plan, what string) (*explainPage, bool) {
 	kind, rest, _ := strings.Cut(what, "-")
 	first, second, _ := strings.Cut(rest, "-")
@@ -52,6 +52,13 @@ func explanation(plan *planner.Plan, what string) (*explainPage, bool) {
 	switch kind {
 	case "scale":
 		return &explainPage{Heading: "the scale", Derivations: []chem.Derivation{plan.Scale.Derivation}}, true
+	case "chance":
+		return &explainPage{Heading: "the chance that everything suffices", Derivations: told(plan.Risk.Derivation)}, true
+	case "waste":
+		if i >= 1 && i <= len(plan.Waste) {
+			lot := plan.Waste[i-1]
+			return &explainPage{Heading: massText(lot.Mass) + " of " + lot.Stream, Derivations: told(lot.Derivation)}, true
+		}
 	case "need":
 		if i >= 1 && i <= len(plan.Needs) {
 			return explainNeed(plan.Needs[i-1], plan.Steps), true

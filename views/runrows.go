@@ -147,12 +147,14 @@ type wasteRow struct {
 	planner.WasteLot
 	Picture template.HTML
 	After   string
+	Explain string // address part of the derivation
 }
 
 func wasteRows(lots []planner.WasteLot, carboys []inventory.Carboy) []wasteRow {
 	rows := make([]wasteRow, len(lots))
 	for i, lot := range lots {
 		rows[i].WasteLot = lot
+		rows[i].Explain = fmt.Sprintf("waste-%d", i+1)
 		for _, c := range carboys {
 			if c.Code == lot.Carboy && c.SizeUL > 0 {
 				c.ContentUL += int64(lot.Volume / chem.Microlitre)

@@ -62,7 +62,7 @@ func refuses(t *testing.T, b tab) {
 }
 
 // pages are all that a person can open in the demonstration lab.
-var pages = []string{"/slate", "/runs/new", "/runs/1", "/runs/1/answers", "/runs/1/promise", "/runs/1/explain/scale",
+var pages = []string{"/slate", "/runs/new", "/runs/1", "/runs/1/answers", "/runs/1/promise", "/runs/1/explain/scale", "/runs/1/explain/chance", "/runs/1/explain/waste-1",
 	"/runs/1/steps/4", "/runs/1/chance", "/runs/1/hazards", "/shelf/import", "/shelf/bottles/BG9SH1",
 	"/shelf", "/shelf?find=acid", "/recipes", "/recipes/pentanoic-acid-dichromate", "/recipes/pentanoic-acid-dichromate/edit",
 	"/recipes/pentanoic-acid-dichromate/difference", "/recipes/new", "/shortfalls", "/buying", "/waste",
